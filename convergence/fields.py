@@ -1,0 +1,36 @@
+"""What a level leaves for the figures: its mesh, displacement, stress and error, as plain arrays."""
+
+from dataclasses import asdict, dataclass
+from pathlib import Path
+
+import numpy as np
+
+
+@dataclass(frozen=True)
+class Fields:
+    """One solved level. All arrays are float64 or int64.
+
+    points (2, n) nodes; cells (3 or 4, m) vertex indices of each cell, counter-clockwise; boundary
+    (2, b) vertex indices of boundary segments; displacement (2, n); von_mises (n,) recovered stress at
+    the nodes; error (m,) recovered energy-norm error of each cell, squared, per unit area.
+    Degree-2 meshes are cut into four cells each, so that curved edges and gradients show.
+    """
+
+    points: np.ndarray
+    cells: np.ndarray
+    boundary: np.ndarray
+    displacement: np.ndarray
+    von_mises: np.ndarray
+    error: np.ndarray
+
+    def save(self, path: Path) -> None:
+        """Write atomically as .npz."""
+        spare = path.with_suffix(".part.npz")
+        np.savez_compressed(spare, **asdict(self))
+        spare.replace(path)
+
+
+def load_fields(path: Path) -> Fields:
+    """Read what `Fields.save` wrote."""
+    with np.load(path) as data:
+        return Fields(**{name: data[name] for name in data.files})

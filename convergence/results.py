@@ -1,0 +1,196 @@
+"""Level, Ladder, Estimate, Check, Verdict, Findings: what the four steps hand to each other."""
+
+import functools
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING, Any, Literal
+
+import numpy as np
+
+if TYPE_CHECKING:
+    import pandas as pd
+
+VerdictWord = Literal["sound", "refine", "singular", "unproven"]
+Kind = Literal["energy", "displacement", "reaction", "resultant", "point_stress", "peak_stress", "unknown"]
+
+
+@dataclass(frozen=True)
+class Level:
+    """One mesh: measured cell size h, its cost, and one number per quantity and record.
+
+    A place belonging to a quantity is kept as NAME.x and NAME.y, a check's record as CHECK.NAME.
+    """
+
+    h: float
+    cells: int
+    dofs: int
+    seconds: float
+    values: Mapping[str, float]
+
+
+@dataclass(frozen=True)
+class Ladder:
+    """Levels from coarse to fine; index 0 is the coarsest.
+
+    `resolution` is half a unit of the last printed digit where the values came from print.
+    """
+
+    levels: tuple[Level, ...]
+    source: str
+    fingerprint: str = ""
+    remarks: tuple[str, ...] = ()
+    resolution: Mapping[str, float] = field(default_factory=dict)
+
+    @property
+    def h(self) -> np.ndarray:
+        return np.array([level.h for level in self.levels], dtype=float)
+
+    def column(self, name: str) -> np.ndarray:
+        """Return one number per level, NaN where a level has none."""
+        return np.array([level.values.get(name, np.nan) for level in self.levels], dtype=float)
+
+    def frame(self) -> "pd.DataFrame":
+        """Return the ladder as a table, one row a level."""
+        import pandas as pd
+
+        return pd.DataFrame(
+            [
+                {"h": lv.h, "cells": lv.cells, "dofs": lv.dofs, "seconds": lv.seconds, **lv.values}
+                for lv in self.levels
+            ]
+        )
+
+
+@dataclass(frozen=True)
+class Quantity:
+    """A quantity of interest: how it is measured, what theory says of it, what is accepted.
+
+    `formal_order` holds for a smooth solution, None where kind or degree is not known. `measure`
+    maps a Solution to a float or Located; None for a column of a table.
+    """
+
+    name: str
+    kind: Kind = "unknown"
+    unit: str = ""
+    formal_order: float | None = None
+    relative: float | None = None
+    absolute: float | None = None
+    assumed_tolerance: bool = False
+    measure: "functools.partial[Any] | None" = None
+    description: str = ""
+
+    @property
+    def measure_name(self) -> str:
+        """Return the name of the quantity function, "" for a column of a table."""
+        return self.measure.func.__name__ if self.measure else ""
+
+    @property
+    def arguments(self) -> Mapping[str, Any]:
+        """Return the arguments of the quantity function."""
+        return self.measure.keywords if self.measure else {}
+
+
+@dataclass(frozen=True)
+class Corner:
+    """A singular corner of the model: place, opening in degrees, conditions on its two sides, exponent."""
+
+    name: str
+    x: float
+    y: float
+    opening: float
+    sides: tuple[str, str]
+    exponent: float
+
+
+@dataclass(frozen=True)
+class Facts:
+    """What is known beside the ladder: the model's theory and the limits of linear analysis.
+
+    `size` is the largest extent of the part; `corners` is None where the model is not known; `covered`
+    has the singular corners within the reach of each quantity; `components` what a stress is; `intervals`
+    the stated (low, high) per name, NaN where there is none.
+    """
+
+    degree: int | None = None
+    dimension: int = 2
+    size: float | None = None
+    yield_strength: float | None = None
+    yield_source: str = ""
+    corners: tuple[Corner, ...] | None = None
+    covered: Mapping[str, tuple[Corner, ...]] = field(default_factory=dict)
+    kinds: Mapping[str, Kind] = field(default_factory=dict)
+    components: Mapping[str, str] = field(default_factory=dict)
+    intervals: Mapping[str, tuple[float, float]] = field(default_factory=dict)
+
+    @property
+    def exponent(self) -> float | None:
+        """Return the weakest exponent of the corners, None without a singular corner."""
+        return min((corner.exponent for corner in self.corners or ()), default=None)
+
+
+@dataclass(frozen=True)
+class Estimate:
+    """What one published method says: limit, observed order, half-width about the finest value.
+
+    `remark` is empty where the method's own conditions hold; NaN stands for "none".
+    """
+
+    limit: float
+    order: float
+    uncertainty: float
+    remark: str = ""
+
+
+@dataclass(frozen=True)
+class Check:
+    """A passed (or None: not applicable) check, its finding in one sentence, what a failure spoils.
+
+    `spoils` maps quantity names ("" for every one) to the reason; `leads_to` is the verdict it forces.
+    """
+
+    name: str
+    passed: bool | None
+    finding: str
+    spoils: Mapping[str, str] = field(default_factory=dict)
+    leads_to: VerdictWord = "unproven"
+    values: Mapping[str, tuple[float, ...]] = field(default_factory=dict)
+
+
+@dataclass(frozen=True)
+class Verdict:
+    """The statement on one quantity. Half-widths and tolerance are absolute; NaN where there is none."""
+
+    word: VerdictWord
+    value: float
+    limit: float
+    low: float
+    high: float
+    uncertainty: float
+    tolerance: float
+    behaviour: str
+    observed_order: float
+    formal_order: float | None
+    expected_order: float | None
+    next_h: float
+    next_cells: float
+    next_dofs: float
+    next_seconds: float
+    coverage: float | None
+    reasons: tuple[str, ...]
+
+
+@dataclass(frozen=True)
+class Findings:
+    """Everything that is said about one ladder."""
+
+    title: str
+    ladder: Ladder
+    quantities: tuple[Quantity, ...]
+    facts: Facts
+    estimates: Mapping[str, Mapping[str, Estimate]]
+    checks: tuple[Check, ...]
+    verdicts: Mapping[str, Verdict]
+
+    @property
+    def all_sound(self) -> bool:
+        return all(verdict.word == "sound" for verdict in self.verdicts.values())
