@@ -1,0 +1,82 @@
+"""Where a place lies in a mesh: its cells and the local coordinates in each.
+
+A node belongs to every cell that shares it. Elsewhere the cell is found among the nearest ones by
+inverting its map; on meshes of degree 1 a place on a curved boundary may lie outside the chord by
+the sagitta and is then taken from the nearest cell.
+"""
+
+import numpy as np
+from scipy.spatial import KDTree
+
+from convergence.errors import Unsuitable
+from convergence.fem.mesh import Mesh
+
+CANDIDATES = 12
+NEWTON_STEPS = 20
+OVERSHOOT = 0.3
+
+
+def locate(mesh: Mesh, place: tuple[float, float]) -> tuple[np.ndarray, np.ndarray]:
+    """Return cells (n,) and local coordinates (2, n, 1) that contain a place.
+
+    Unsuitable where the place lies outside the part.
+    """
+    nodes, dofs = mesh.nodes, mesh.skfem.dofs.element_dofs
+    distance = np.hypot(nodes[0] - place[0], nodes[1] - place[1])
+    nearest = int(distance.argmin())
+    if distance[nearest] < 1e-9 * mesh.part.size:
+        local_nodes, cells = np.nonzero(dofs == nearest)
+        return cells, mesh.skfem.elem.doflocs[local_nodes].T[:, :, None]
+    return locate_many(mesh, np.array(place)[:, None])
+
+
+def locate_many(mesh: Mesh, places: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
+    """Return one cell (n,) and local coordinates (2, n, 1) for each of the places (2, n)."""
+    centres = mesh.skfem.p[:, mesh.skfem.t].mean(axis=1)
+    count = min(CANDIDATES, mesh.cells)
+    candidates = KDTree(centres.T).query(places.T, k=count)[1].reshape(-1, count)
+    local = _invert(mesh, candidates.ravel(), np.repeat(places, count, axis=1))
+    excess = _excess(local, mesh.shape).reshape(-1, count)
+    best = excess.argmin(axis=1)
+    rows = np.arange(len(best))
+    outside = excess[rows, best] > OVERSHOOT
+    if outside.any():
+        x, y = places[:, outside][:, 0]
+        raise Unsuitable([("at", (float(x), float(y)), "a place on the part")])
+    return candidates[rows, best], local.reshape(2, -1, count)[:, rows, best][:, :, None]
+
+
+def _excess(local: np.ndarray, shape: str) -> np.ndarray:
+    """Return how far local coordinates lie outside the reference cell, 0 inside."""
+    outside = [-local[0], -local[1]]
+    outside += [local[0] + local[1] - 1.0] if shape == "triangle" else [local[0] - 1.0, local[1] - 1.0]
+    return np.asarray(np.maximum(np.max(outside, axis=0), 0.0))
+
+
+def _invert(mesh: Mesh, cells: np.ndarray, places: np.ndarray) -> np.ndarray:
+    """Return local coordinates (2, n) of each place in its cell by Newton; infinite where it fails."""
+    mapping = mesh.skfem.mapping()
+    local = np.full((2, len(cells), 1), 1.0 / 3.0)
+    for _ in range(NEWTON_STEPS):
+        miss = places[:, :, None] - np.asarray(mapping.F(local, tind=cells))
+        step = np.einsum("ij...,j...->i...", np.asarray(mapping.invDF(local, tind=cells)), miss)
+        local = np.clip(local + step, -3.0, 4.0)
+        if np.abs(step).max() < 1e-12:
+            break
+    lost = np.abs(step[:, :, 0]).max(axis=0) > 1e-8
+    found: np.ndarray = local[:, :, 0]
+    found[:, lost] = np.inf
+    return found
+
+
+def line_points(
+    mesh: Mesh, start: tuple[float, float], end: tuple[float, float]
+) -> tuple[np.ndarray, np.ndarray]:
+    """Return Gauss points (2, n) and weights (n,) along a straight line, four per cell size crossed."""
+    a, b = np.array(start), np.array(end)
+    length = float(np.hypot(*(b - a)))
+    pieces = max(4, int(np.ceil(2.0 * length / mesh.h)))
+    at, weight = np.polynomial.legendre.leggauss(4)
+    s = ((np.arange(pieces)[:, None] + 0.5 * (at + 1.0)) / pieces).ravel()
+    weights = np.tile(0.5 * weight / pieces * length, pieces)
+    return a[:, None] + (b - a)[:, None] * s, weights
