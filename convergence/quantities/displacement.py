@@ -1,0 +1,39 @@
+"""Displacement at a point.
+
+Order p + 1 away from singular corners (Aubin-Nitsche, textbook result; a logarithm for p = 1 is left out).
+"""
+
+from collections.abc import Mapping
+from typing import Annotated, Any, Literal
+
+import numpy as np
+
+from convergence.dimensions import Length, Point, PointName
+from convergence.fem.location import locate
+from convergence.fem.solution import Solution
+from convergence.quantities._place import place_of
+from convergence.results import Kind
+
+KIND: Kind = "displacement"
+
+
+def formal_order(degree: int, arguments: Mapping[str, Any]) -> float:
+    """Return p + 1."""
+    return float(degree + 1)
+
+
+def displacement(
+    solution: Solution,
+    *,
+    at: Annotated[Point | PointName, "point of the part, by name or coordinates"],
+    component: Annotated[Literal["x", "y", "magnitude"], "direction"] = "y",
+) -> Length:
+    """Unsuitable where the point lies outside the part."""
+    mesh = solution.mesh
+    cells, local = locate(mesh, place_of(solution.mesh.part, at))
+    element, mapping = mesh.skfem.elem(), mesh.skfem.mapping()
+    u = np.zeros(2)
+    for number, nodes in enumerate(mesh.skfem.dofs.element_dofs[:, cells[:1]]):
+        value = np.asarray(element.gbasis(mapping, local[:, :1], number, tind=cells[:1])[0])
+        u += solution.displacement[:, nodes[0]] * value.ravel()[0]
+    return float(np.hypot(*u) if component == "magnitude" else u["xy".index(component)])

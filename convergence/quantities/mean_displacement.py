@@ -1,0 +1,39 @@
+"""Mean displacement of a boundary.
+
+A linear functional with a smooth weight: order 2p on a smooth solution (Babuska & Miller 1984, Int. J.
+Numer. Meth. Engng 20:1085).
+"""
+
+from collections.abc import Mapping
+from typing import Annotated, Any, Literal
+
+import numpy as np
+
+from convergence.dimensions import BoundaryName, Length
+from convergence.fem.solution import Solution
+from convergence.results import Kind
+
+KIND: Kind = "displacement"
+
+
+def formal_order(degree: int, arguments: Mapping[str, Any]) -> float:
+    """Return 2p."""
+    return 2.0 * degree
+
+
+def mean_displacement(
+    solution: Solution,
+    *,
+    boundary: Annotated[BoundaryName, "boundary to average over"],
+    component: Annotated[Literal["x", "y"], "direction"] = "y",
+) -> Length:
+    """Average over the length of the boundary."""
+    from skfem import FacetBasis
+
+    mesh = solution.mesh
+    basis = FacetBasis(
+        mesh.skfem, mesh.skfem.elem(), facets=mesh.facets[boundary], intorder=2 * mesh.degree + 2
+    )
+    u = solution.displacement["xy".index(component)]
+    values = np.asarray(basis.interpolate(u))
+    return float((values * basis.dx).sum() / basis.dx.sum())

@@ -1,0 +1,43 @@
+"""Stress at a point: a component, a principal or the von Mises stress.
+
+Recovered stress: order p + 1 (Zienkiewicz & Zhu 1992, Int. J. Numer. Meth. Engng 33:1331). Direct: the
+elements' own stress, averaged over the cells that meet at the point, order p.
+"""
+
+from collections.abc import Mapping
+from typing import Annotated, Any
+
+import numpy as np
+
+from convergence.dimensions import STRESS, Located, Point, PointName
+from convergence.fem.part import Part
+from convergence.fem.solution import Solution
+from convergence.fem.stress import Component
+from convergence.fem.stress import component as component_of
+from convergence.quantities._place import Recovery, place_of, point_stress, stress_order
+from convergence.results import Kind
+
+KIND: Kind = "point_stress"
+
+
+def formal_order(degree: int, arguments: Mapping[str, Any]) -> float:
+    """Return p + 1 for recovered stress, p for direct stress."""
+    return stress_order(degree, arguments.get("recovery", "recovered"))
+
+
+def covers(part: Part, point: str, arguments: Mapping[str, Any]) -> bool:
+    """Return whether the stress is read at this point of the part."""
+    distance = np.subtract(part.points[point], place_of(part, arguments["at"]))
+    return bool(np.hypot(*distance) <= 1e-9 * part.size)
+
+
+def stress(
+    solution: Solution,
+    *,
+    at: Annotated[Point | PointName, "point of the part, by name or coordinates"],
+    component: Annotated[Component, "component, principal or von Mises stress"] = "von_mises",
+    recovery: Annotated[Recovery, "recovered by patches, or direct from the elements"] = "recovered",
+) -> Annotated[Located, STRESS]:
+    """Unsuitable where the point lies outside the part."""
+    value = float(component_of(point_stress(solution, at, recovery), component))
+    return Located(value, *place_of(solution.mesh.part, at))
