@@ -1,0 +1,31 @@
+"""Strain energy against the work of loads and prescribed displacements, on every level.
+
+½ u·K u = ½ (f + reactions)·u (Clapeyron's theorem). It proves the solver, not the mesh. Limit: 1e-8
+(common practice for a direct solver).
+"""
+
+import numpy as np
+
+from convergence.checks._ladder import not_applicable, per_level, recorded
+from convergence.fem.solution import Solution
+from convergence.results import Check, Facts, Ladder
+
+LIMIT = 1e-8
+
+
+def record(solution: Solution) -> dict[str, float]:
+    """Return the difference as a share of the energy."""
+    difference = abs(solution.energy - solution.work)
+    return {"difference": difference / max(abs(solution.energy), float(np.finfo(float).tiny))}
+
+
+def energy_balance(ladder: Ladder, facts: Facts) -> Check:
+    """Pass where energy and work agree on every level."""
+    columns = recorded(ladder, "energy_balance", "difference")
+    if columns is None:
+        return not_applicable("energy_balance", "The ladder has no energies of our own solver.")
+    worst = float(np.nanmax(columns["difference"]))
+    passed = worst <= LIMIT
+    finding = f"Strain energy and external work differ by at most {worst:.1e} (allowed {LIMIT:.0e})."
+    spoils = {} if passed else {"": "strain energy and external work disagree"}
+    return Check("energy_balance", passed, finding, spoils, values=per_level(columns))

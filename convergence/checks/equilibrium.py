@@ -1,0 +1,53 @@
+"""Balance of forces and moments: loads and reactions, on every level.
+
+The nodal forces K u − f of the supports against the applied loads, moments about the part's middle. It
+proves bookkeeping and solver, not the mesh: it holds on any mesh to round-off. Limit: 1e-6 of the load
+(common practice for a direct solver).
+"""
+
+import numpy as np
+
+from convergence.checks._ladder import not_applicable, per_level, recorded
+from convergence.fem.solution import Solution
+from convergence.results import Check, Facts, Ladder
+
+LIMIT = 1e-6
+
+
+def record(solution: Solution) -> dict[str, float]:
+    """Return out-of-balance force and moment, as shares of the load and of load × half the part's size."""
+    nodes = solution.mesh.nodes
+    middle = nodes.mean(axis=1)
+    about = (float(middle[0]), float(middle[1]))
+    applied = solution.resultant(solution.load, about)
+    reactions = solution.resultant(solution.reactions, about)
+    forces = solution.load if np.any(solution.load) else solution.reactions
+    scale = max(float(np.hypot(*forces.reshape(-1, 2).T).sum()), float(np.finfo(float).tiny))
+    missing = applied + reactions
+    return {
+        "force": float(np.hypot(missing[0], missing[1])) / scale,
+        "moment": abs(float(missing[2])) / (scale * 0.5 * solution.mesh.part.size),
+        "load_x": float(applied[0]),
+        "load_y": float(applied[1]),
+        "reaction_x": float(reactions[0]),
+        "reaction_y": float(reactions[1]),
+    }
+
+
+def equilibrium(ladder: Ladder, facts: Facts) -> Check:
+    """Pass where force and moment balance on every level."""
+    columns = recorded(
+        ladder, "equilibrium", "force", "moment", "load_x", "load_y", "reaction_x", "reaction_y"
+    )
+    if columns is None:
+        return not_applicable("equilibrium", "The ladder has no loads and reactions.")
+    worst = float(np.nanmax([columns["force"], columns["moment"]]))
+    passed = worst <= LIMIT
+    finding = (
+        f"Loads and reactions balance to {worst:.1e} of the load on every level (allowed {LIMIT:.0e}). "
+        "This proves bookkeeping and solver, not the mesh."
+        if passed
+        else f"Loads and reactions miss each other by {worst:.1e} of the load (allowed {LIMIT:.0e})."
+    )
+    spoils = {} if passed else {"": "loads and reactions are out of balance"}
+    return Check("equilibrium", passed, finding, spoils, values=per_level(columns))

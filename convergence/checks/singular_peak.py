@@ -1,0 +1,109 @@
+"""Whether a stress has a limit at all: growth over the ladder, and corners of the model.
+
+Two witnesses. The model: a corner whose exponent λ is below one (Williams 1952, J. Appl. Mech. 19:526) at
+the place of the value. The ladder: increments that do not shrink, as h^(λ−1) or log h makes them grow. Faster
+growth than λ = 0.2 is no singularity but a notch that the coarse levels did not resolve.
+"""
+
+import numpy as np
+
+from convergence.checks._ladder import not_applicable
+from convergence.fem.corners import singular_corners
+from convergence.fem.recovery import element_energy
+from convergence.fem.solution import Solution
+from convergence.results import Check, Corner, Facts, Ladder
+from convergence.sequences import noise_floor, observed_order
+
+STRESS_KINDS = ("peak_stress", "point_stress", "unknown")
+FASTEST, SLOWEST = -0.8, 0.05
+NEAR = 2.0
+
+
+def record(solution: Solution) -> dict[str, float]:
+    """Return the mean stress intensity of the cells that touch each singular corner, by its name.
+
+    That is the root of the mean energy density, which grows like h^(λ−1) whatever the component.
+    """
+    numbers = {}
+    for corner in singular_corners(solution.problem):
+        mesh = solution.mesh
+        cells = np.flatnonzero((mesh.skfem.t == mesh.vertices[corner.name]).any(axis=0))
+        energy = element_energy(solution, cells).sum() / solution.problem.thickness
+        numbers[corner.name] = float(np.sqrt(energy / mesh.cell_areas[cells].sum()))
+    return numbers
+
+
+def singular_peak(ladder: Ladder, facts: Facts) -> Check:
+    """Pass where no stress sits on a singular corner or grows like one."""
+    names = [name for name, kind in facts.kinds.items() if kind in STRESS_KINDS]
+    if not names:
+        return not_applicable("singular_peak", "No stress among the quantities.")
+    spoils = {}
+    for name in names:
+        reason = _reason(ladder, facts, name)
+        if reason:
+            spoils[name] = reason
+    if not spoils:
+        return Check("singular_peak", True, "No stress sits on a singular corner or grows without limit.")
+    finding = "; ".join(f"{name}: {reason}" for name, reason in spoils.items())
+    return Check("singular_peak", False, finding, spoils, leads_to="singular")
+
+
+def growth_exponent(h: np.ndarray, f: np.ndarray) -> float:
+    """Return λ of f = B + A h^(λ−1) through the three finest levels; NaN where the values do not grow so."""
+    values = np.abs(f)
+    if len(f) < 3 or not np.all(np.isfinite(values[-3:])) or not values[-3] < values[-2] < values[-1]:
+        return float("nan")
+    if values[-1] - values[-2] <= noise_floor(f):
+        return float("nan")
+    order = observed_order(h, values)
+    return 1.0 + order if FASTEST <= order <= SLOWEST else float("nan")
+
+
+def _reason(ladder: Ladder, facts: Facts, name: str) -> str:
+    f = ladder.column(name)
+    exponent = growth_exponent(ladder.h, f)
+    before = growth_exponent(ladder.h[:-1], f[:-1])
+    corner = _corner_at(ladder, facts, name)
+    if corner is not None:
+        grows = len(f) < 3 or abs(f[-1]) > abs(f[-2])
+        return _at_corner(corner, corner_exponent(ladder, corner.name)) if grows else ""
+    if facts.corners is None and np.isfinite(exponent) and np.isfinite(before):
+        growth = "log h" if abs(exponent - 1.0) <= SLOWEST else f"h^({exponent:.2f}-1)"
+        return (
+            f"the value grows like {growth} over the levels and shows no limit; "
+            "report the stress at a stated distance, a mean or a resultant, or model the real radius"
+        )
+    return ""
+
+
+def corner_exponent(ladder: Ladder, corner: str) -> float:
+    """Return λ from the stress intensity at a corner on the last two levels; NaN without them."""
+    intensity = ladder.column(f"singular_peak.{corner}")[-2:]
+    if len(intensity) < 2 or not np.all(intensity > 0.0):
+        return float("nan")
+    return float(1.0 + np.log(intensity[1] / intensity[0]) / np.log(ladder.h[-1] / ladder.h[-2]))
+
+
+def _at_corner(corner: Corner, exponent: float) -> str:
+    data = (
+        "the levels do not measure it"
+        if np.isnan(exponent)
+        else f"the cells at the corner give {exponent:.3f}"
+    )
+    return (
+        f"the value sits on the {corner.sides[0]}-{corner.sides[1]} corner {corner.name} of "
+        f"{corner.opening:.4g}° at ({corner.x:.4g}, {corner.y:.4g}), where stress grows like "
+        f"h^(λ-1) without limit: theory λ = {corner.exponent:.3f}, {data}; report the stress at a stated distance, a mean over a line or a "
+        "resultant, or model the real radius"
+    )
+
+
+def _corner_at(ladder: Ladder, facts: Facts, name: str) -> Corner | None:
+    """Return the corner within two cell sizes of the value's place on the finest level."""
+    x, y = ladder.column(f"{name}.x"), ladder.column(f"{name}.y")
+    if not facts.corners or not len(x) or not (np.isfinite(x[-1]) and np.isfinite(y[-1])):
+        return None
+    reach = NEAR * float(ladder.h[-1])
+    near = [c for c in facts.corners if np.hypot(c.x - x[-1], c.y - y[-1]) <= reach]
+    return min(near, key=lambda c: float(np.hypot(c.x - x[-1], c.y - y[-1])), default=None)

@@ -1,0 +1,32 @@
+"""Residual of the equations on every level, against the change between the last two levels.
+
+Iterative and round-off error should stay two to three orders below the discretization error (common
+practice; also asked for by Celik et al. 2008, J. Fluids Eng. 130:078001). Limit: 1e-8 of the nodal forces.
+"""
+
+import numpy as np
+
+from convergence.checks._ladder import not_applicable, per_level, recorded
+from convergence.fem.solution import Solution
+from convergence.results import Check, Facts, Ladder
+
+LIMIT = 1e-8
+
+
+def record(solution: Solution) -> dict[str, float]:
+    """Return ‖K u − f − reactions‖ over the norm of all nodal forces."""
+    left = solution.internal - solution.load - solution.reactions
+    scale = np.linalg.norm(solution.load) + np.linalg.norm(solution.reactions)
+    return {"relative": float(np.linalg.norm(left) / max(scale, np.finfo(float).tiny))}
+
+
+def solver_residual(ladder: Ladder, facts: Facts) -> Check:
+    """Pass where the residual is below the limit on every level."""
+    columns = recorded(ladder, "solver_residual", "relative")
+    if columns is None:
+        return not_applicable("solver_residual", "The ladder has no residuals of our own solver.")
+    worst = float(np.nanmax(columns["relative"]))
+    passed = worst <= LIMIT
+    finding = f"The equations are solved to {worst:.1e} of the nodal forces (allowed {LIMIT:.0e})."
+    spoils = {} if passed else {"": "the equations are not solved accurately enough"}
+    return Check("solver_residual", passed, finding, spoils, values=per_level(columns))
