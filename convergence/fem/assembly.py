@@ -14,7 +14,7 @@ from convergence.fem.problem import BearingLoad, BodyForce, Load, Pressure, Prob
 
 CHUNK = 20_000
 STIFFNESS_ORDER = {("triangle", 1): 1, ("triangle", 2): 4, ("quadrilateral", 1): 5, ("quadrilateral", 2): 7}
-LOAD_ORDER = 9
+LOAD_ORDER = 19
 
 
 def unknowns(dofs: np.ndarray) -> np.ndarray:

@@ -1,7 +1,9 @@
 """The singular corners of a problem: openings, conditions on both sides, exponents.
 
 Where no table of corners is at hand, theory alone says which ones are singular (Williams 1952,
-J. Appl. Mech. 19:526). A support that ends on a straight or curved edge is a corner of 180°.
+J. Appl. Mech. 19:526). A support that ends on a straight or curved edge is a corner of 180°. Where the exact
+field of the problem is known and stays bounded, as when its own displacements are prescribed, the corner is
+not excited and left out.
 """
 
 import numpy as np
@@ -13,6 +15,7 @@ from convergence.results import Corner
 
 REGULAR = 0.999
 STEP = 1e-6
+GROWTH = 1.1
 
 
 def singular_corners(problem: Problem) -> tuple[Corner, ...]:
@@ -25,10 +28,28 @@ def singular_corners(problem: Problem) -> tuple[Corner, ...]:
         index = part.outline[edges[0]]
         kappa = problem.materials[_region(part, index)].kappa(problem.kind)
         exponent = weakest_exponent(opening, sides, kappa=kappa)
-        if exponent is not None and exponent < REGULAR:
+        if exponent is not None and exponent < REGULAR and _excited(problem, name):
             x, y = part.points[name]
             found.append(Corner(name, float(x), float(y), opening, sides, exponent))
     return tuple(sorted(found, key=lambda corner: corner.exponent))
+
+
+def _excited(problem: Problem, name: str) -> bool:
+    """Return whether the exact stress, where it is known, grows towards the corner along its bisector."""
+    if problem.exact is None:
+        return True
+    part = problem.part
+    block = next(block for block in part.blocks if name in block)
+    place = block.index(name)
+    ahead, behind = (_unit(_tangent(part, name, block[(place + step) % 4])) for step in (1, -1))
+    inward = ahead + behind
+    x, y = np.array(part.points[name])[:, None] + part.size * inward[:, None] * np.array([1e-3, 1e-6])
+    outer, inner = np.linalg.norm(problem.exact.stress(x, y), axis=0)
+    return bool(inner > outer * GROWTH)
+
+
+def _unit(vector: np.ndarray) -> np.ndarray:
+    return np.asarray(vector / np.hypot(*vector))
 
 
 def _boundary_points(part: Part) -> dict[str, tuple[EdgeName, EdgeName]]:

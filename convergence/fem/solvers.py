@@ -1,4 +1,8 @@
-"""A direct solution of K u = f with prescribed unknowns, by SuperLU ordered for symmetric matrices."""
+"""A direct solution of K u = f with prescribed unknowns, by SuperLU ordered for symmetric matrices.
+
+One step of iterative refinement (Golub & Van Loan, Matrix Computations, sect. 3.5.3) keeps round-off below
+the differences between fine levels.
+"""
 
 import numpy as np
 from scipy import sparse
@@ -28,6 +32,7 @@ def direct(matrix: sparse.csr_matrix, load: np.ndarray, held: np.ndarray, values
     except RuntimeError as error:
         raise SolvingError("the supports do not hold the part: the stiffness matrix is singular") from error
     u[free] = factor.solve(right)
+    u[free] += factor.solve(right - reduced @ u[free])
     residual = np.linalg.norm(reduced @ u[free] - right)
     scale = np.linalg.norm(right)
     if not np.isfinite(u).all() or residual > RESIDUAL_LIMIT * max(scale, np.finfo(float).tiny):
