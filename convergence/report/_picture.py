@@ -1,0 +1,88 @@
+"""A drawn figure as SVG and PNG, and the one way to draw it; matplotlib is loaded here only."""
+
+import html
+import io
+import re
+from collections.abc import Callable
+from dataclasses import dataclass
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from matplotlib.figure import Figure
+
+BLUE, RED, GREEN, GREY, INK = "#0072b2", "#d55e00", "#00795a", "#6b6b6b", "#1a1a1a"
+
+STYLE: dict[str, Any] = {
+    "font.family": "DejaVu Sans",
+    "font.size": 9.0,
+    "axes.titlesize": 9.0,
+    "axes.labelsize": 9.0,
+    "xtick.labelsize": 8.0,
+    "ytick.labelsize": 8.0,
+    "legend.fontsize": 8.0,
+    "legend.frameon": False,
+    "axes.edgecolor": GREY,
+    "axes.labelcolor": INK,
+    "axes.spines.right": False,
+    "axes.spines.top": False,
+    "axes.grid": True,
+    "axes.axisbelow": True,
+    "grid.color": "#dddddd",
+    "grid.linewidth": 0.6,
+    "xtick.color": GREY,
+    "ytick.color": GREY,
+    "xtick.labelcolor": INK,
+    "ytick.labelcolor": INK,
+    "lines.linewidth": 1.5,
+    "lines.markersize": 6.0,
+    "figure.facecolor": "white",
+    "savefig.facecolor": "white",
+    "figure.constrained_layout.use": True,
+    "hatch.linewidth": 0.7,
+    "svg.fonttype": "none",
+    "text.usetex": False,
+    "text.parse_math": False,
+}
+DOTS_PER_INCH = 180
+
+
+@dataclass(frozen=True)
+class Picture:
+    """One figure: file stem, its words (alt, caption), SVG text, PNG bytes, inches."""
+
+    name: str
+    alt: str
+    caption: str
+    svg: str
+    png: bytes
+    width: float
+
+    def inline(self) -> str:
+        """Return the SVG as it stands inside a page: no prolog, own ids, a name for screen readers."""
+        body = self.svg[self.svg.index("<svg") :]
+        body = re.sub(r"<metadata>.*?</metadata>", "", body, flags=re.DOTALL)
+        body = re.sub(r'(\bid="|url\(#|href="#)', rf"\g<1>{self.name}-", body)
+        return body.replace("<svg ", f'<svg role="img" aria-label="{html.escape(self.alt)}" ', 1).strip()
+
+
+def draw(
+    name: str, size: tuple[float, float], alt: str, caption: str, paint: Callable[["Figure"], None]
+) -> Picture:
+    """Let `paint` fill a new figure of `size` inches and return it in both formats.
+
+    The same input gives the same bytes: no date, ids salted by the name only.
+    """
+    import matplotlib
+    from matplotlib.backends.backend_agg import FigureCanvasAgg
+    from matplotlib.figure import Figure
+
+    settings: Any = {**STYLE, "svg.hashsalt": name}
+    with matplotlib.rc_context(settings):
+        figure = Figure(figsize=size)
+        FigureCanvasAgg(figure)
+        paint(figure)
+        vector, pixels = io.StringIO(), io.BytesIO()
+        figure.savefig(vector, format="svg", dpi=DOTS_PER_INCH, metadata={"Date": None, "Creator": None})
+        figure.savefig(pixels, format="png", dpi=DOTS_PER_INCH, metadata={"Software": None})
+    svg = vector.getvalue().replace("'DejaVu Sans'", "'DejaVu Sans', Verdana, sans-serif")
+    return Picture(name, alt, caption, svg, pixels.getvalue(), size[0])

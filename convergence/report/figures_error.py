@@ -1,0 +1,98 @@
+"""Where the error sits on the finest mesh, and how its energy norm falls over the ladder."""
+
+import math
+from typing import TYPE_CHECKING
+
+import numpy as np
+
+from convergence.dimensions import Units
+from convergence.fields import Fields
+from convergence.report import _plane
+from convergence.report._axes import bracket, cell_size_axis, log_ticks
+from convergence.report._picture import INK, RED, Picture, draw
+from convergence.report._slopes import slope_words, slopes
+from convergence.results import Facts, Ladder
+
+if TYPE_CHECKING:
+    from matplotlib.figure import Figure
+
+
+def error_map(field: Fields, units: Units) -> Picture | None:
+    """Return the map of the squared energy-norm error per area, None where it is zero everywhere."""
+    from matplotlib.colors import LogNorm
+    from matplotlib.tri import Triangulation
+
+    known = field.error[np.isfinite(field.error) & (field.error > 0)]
+    if not known.size:
+        return None
+    high = float(known.max())
+    low = float(np.clip(np.quantile(known, 0.02), high * 1e-9, high * 0.1))
+    width, height = _plane.panel(_plane.shape_of(field.points))
+    flat = _plane.triangles(field.cells)
+    x, y = field.points[:, flat.ravel()]
+    split = Triangulation(x, y, np.arange(flat.size).reshape(-1, 3))
+    shade = np.repeat(np.tile(field.error, len(flat) // len(field.error)), 3)
+    energy = f"{units.force} {units.length}/{units.length}²" if units.length and units.force else ""
+
+    def paint(figure: "Figure") -> None:
+        axes = figure.add_subplot()
+        drawn = axes.tripcolor(
+            split,
+            np.clip(np.nan_to_num(shade), low, high),
+            shading="gouraud",
+            cmap="cividis",
+            norm=LogNorm(low, high),
+            rasterized=True,
+        )
+        bar = figure.colorbar(drawn, ax=axes, extend="min", shrink=0.85, pad=0.02)
+        bar.set_label(f"squared error per area{bracket(energy)}")
+        log_ticks(bar.ax, low, high)
+        _plane.outline(axes, field.points, field.boundary, "-")
+        _plane.view(axes, field.points)
+
+    caption = (
+        "Squared energy-norm error per area on the finest mesh, from the recovered stress, logarithmic"
+        " colours: bright cells are where refinement pays."
+    )
+    alt = "Map of the estimated energy-norm error density on the finest mesh"
+    return draw("error-map", (max(width + 1.5, 4.5), max(height + 0.3, 2.6)), alt, caption, paint)
+
+
+def norm_figure(ladder: Ladder, facts: Facts, length: str) -> Picture | None:
+    """Return the relative energy-norm error against the cell size, None where it was not recorded."""
+    columns = {name: ladder.column(f"energy_norm.{name}") for name in ("estimated", "exact")}
+    columns = {name: column for name, column in columns.items() if np.any(column > 0)}
+    if "estimated" not in columns:
+        return None
+    estimated = columns["estimated"]
+    known = estimated > 0
+    orders = _orders(ladder.h[known], estimated[known], facts)
+
+    def paint(figure: "Figure") -> None:
+        axes = figure.add_subplot()
+        cell_size_axis(axes, ladder, length)
+        slopes(axes, ladder.h[known][-1], estimated[known][-1], orders)
+        axes.plot(ladder.h[known], estimated[known], "o", color=INK, label="estimated", zorder=4)
+        if "exact" in columns:
+            axes.plot(ladder.h, columns["exact"], "x", color=RED, markersize=8, label="exact", zorder=5)
+        seen = np.concatenate([column[column > 0] for column in columns.values()])
+        log_ticks(axes, float(seen.min()) / 1.6, float(seen.max()) * 1.6, percent=True)
+        axes.set_ylabel("error in the energy norm, relative")
+        figure.legend(loc="outside lower center", ncols=2)
+
+    caption = (
+        "Relative error in the energy norm on every level, both axes logarithmic. It speaks for the whole"
+        " part, not for one quantity."
+    )
+    alt = f"Relative energy-norm error against the cell size; {slope_words(orders)}"
+    return draw("energy-norm", (5.2, 4.1), alt, caption, paint)
+
+
+def _orders(h: np.ndarray, error: np.ndarray, facts: Facts) -> dict[str, float]:
+    """Return the slope of the three finest levels and min(degree, exponent), where known."""
+    orders = {}
+    if len(h) > 1 and h[-1] < h[-2]:
+        orders["observed"] = float(np.polyfit(np.log(h[-3:]), np.log(error[-3:]), 1)[0])
+    if facts.degree is not None:
+        orders["theory"] = min(float(facts.degree), facts.exponent or math.inf)
+    return {name: order for name, order in orders.items() if order > 0}

@@ -1,0 +1,60 @@
+"""Error against the cell size on log axes, beside the slopes of theory and of the data."""
+
+import math
+from typing import TYPE_CHECKING
+
+import numpy as np
+
+from convergence.report._axes import bracket, cell_size_axis, log_ticks
+from convergence.report._picture import GREY, INK, Picture, draw
+from convergence.report._slopes import slope_words, slopes
+from convergence.results import Ladder, Quantity, Verdict
+
+if TYPE_CHECKING:
+    from matplotlib.figure import Figure
+
+
+def error_figure(
+    stem: str, quantity: Quantity, verdict: Verdict, ladder: Ladder, length: str
+) -> Picture | None:
+    """Return the figure, None where no difference is left to draw.
+
+    Without a stated limit the changes from level to level are drawn: they fall with the same order.
+    """
+    values = ladder.column(quantity.name)
+    limited = math.isfinite(verdict.limit)
+    errors = np.abs(values - verdict.limit) if limited else np.abs(np.diff(values, prepend=np.nan))
+    drawn = np.isfinite(errors) & (errors > 0)
+    if not drawn.any():
+        return None
+    what = "difference from the limit" if limited else "change from the level before"
+
+    def paint(figure: "Figure") -> None:
+        axes = figure.add_subplot()
+        cell_size_axis(axes, ladder, length)
+        h, error = ladder.h[drawn], errors[drawn]
+        slopes(axes, h[-1], error[-1], _orders(verdict))
+        axes.plot(h, error, "o", color=INK, label="levels", zorder=4)
+        low, high = float(error.min()) / 2.5, float(error.max()) * 1.8
+        if low < verdict.tolerance < high * 30:
+            high = max(high, 1.3 * verdict.tolerance)
+            axes.axhline(verdict.tolerance, color=GREY, linestyle=(0, (1, 2)), label="tolerance")
+        log_ticks(axes, low, high)
+        axes.set_ylabel(f"{what}{bracket(quantity.unit)}")
+        figure.legend(loc="outside lower center", ncols=2)
+
+    caption = f"Size of the {what}, both axes logarithmic: a constant order is a straight line."
+    if limited:
+        caption += " The limit is extrapolated from the same levels and is no independent witness."
+    alt = f"{what} of {quantity.name} against the cell size; {slope_words(_orders(verdict))}"
+    return draw(stem, (5.2, 4.1), alt, caption, paint)
+
+
+def _orders(verdict: Verdict) -> dict[str, float]:
+    """Return the orders worth a line: of the data, of a smooth solution, of this model."""
+    formal, expected = verdict.formal_order or math.nan, verdict.expected_order or math.nan
+    orders = {"observed": verdict.observed_order}
+    if math.isfinite(expected) and not math.isclose(expected, formal):
+        orders["expected here"] = expected
+    orders["smooth theory" if "expected here" in orders else "theory"] = formal
+    return {name: order for name, order in orders.items() if math.isfinite(order) and order > 0}

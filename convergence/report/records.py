@@ -1,0 +1,134 @@
+"""Findings as objects for JSON: the short one that `judge --json` prints, the full one kept on disk."""
+
+import math
+import platform
+from dataclasses import asdict
+from importlib import metadata
+from typing import Any
+
+from convergence.results import Check, Estimate, Findings, Level, Quantity, Verdict
+
+PACKAGES = ("meshassay", "numpy", "scipy", "scikit-fem")
+
+
+def _number(value: float | None) -> float | None:
+    """Return a finite float, None for what JSON has no number for."""
+    return float(value) if value is not None and math.isfinite(value) else None
+
+
+def _estimate(estimate: Estimate) -> dict[str, Any]:
+    return {
+        "limit": _number(estimate.limit),
+        "uncertainty": _number(estimate.uncertainty),
+        "order": _number(estimate.order),
+        "remark": estimate.remark,
+    }
+
+
+def _statement(findings: Findings, name: str) -> dict[str, Any]:
+    verdict = findings.verdicts[name]
+    return {
+        "verdict": verdict.word,
+        "value": _number(verdict.value),
+        "limit": _number(verdict.limit),
+        "low": _number(verdict.low),
+        "high": _number(verdict.high),
+        "coverage": _number(verdict.coverage),
+        "observed_order": _number(verdict.observed_order),
+        "formal_order": _number(verdict.formal_order),
+        "behaviour": verdict.behaviour,
+        "next_h": _number(verdict.next_h),
+        "estimates": {method: _estimate(e) for method, e in findings.estimates.get(name, {}).items()},
+        "reasons": list(verdict.reasons),
+    }
+
+
+def judge_object(findings: Findings) -> dict[str, Any]:
+    """Return the object of one ladder; null (None) where there is no number."""
+    return {
+        "ladder": findings.ladder.source,
+        "levels": len(findings.ladder.levels),
+        "quantities": {q.name: _statement(findings, q.name) for q in findings.quantities},
+    }
+
+
+def _more(quantity: Quantity, verdict: Verdict) -> dict[str, Any]:
+    """Return what findings.json says of a quantity beyond `judge_object`."""
+    return {
+        "kind": quantity.kind,
+        "unit": quantity.unit,
+        "description": quantity.description,
+        "uncertainty": _number(verdict.uncertainty),
+        "tolerance": _number(verdict.tolerance),
+        "relative_tolerance": _number(quantity.relative),
+        "absolute_tolerance": _number(quantity.absolute),
+        "assumed_tolerance": quantity.assumed_tolerance,
+        "expected_order": _number(verdict.expected_order),
+        "next_cells": _number(verdict.next_cells),
+        "next_dofs": _number(verdict.next_dofs),
+        "next_seconds": _number(verdict.next_seconds),
+    }
+
+
+def _level(level: Level) -> dict[str, Any]:
+    return {
+        "h": _number(level.h),
+        "cells": int(level.cells),
+        "dofs": int(level.dofs),
+        "seconds": _number(level.seconds),
+        "values": {name: _number(value) for name, value in level.values.items()},
+    }
+
+
+def _check(check: Check) -> dict[str, Any]:
+    return {
+        "name": check.name,
+        "passed": check.passed,
+        "finding": check.finding,
+        "spoils": dict(check.spoils),
+        "leads_to": check.leads_to,
+        "values": {name: [_number(value) for value in row] for name, row in check.values.items()},
+    }
+
+
+def _facts(findings: Findings) -> dict[str, Any]:
+    facts = findings.facts
+    corners = None if facts.corners is None else [asdict(corner) for corner in facts.corners]
+    return {
+        "degree": facts.degree,
+        "dimension": facts.dimension,
+        "size": _number(facts.size),
+        "yield_strength": _number(facts.yield_strength),
+        "yield_source": facts.yield_source,
+        "exponent": _number(facts.exponent),
+        "corners": corners,
+    }
+
+
+def versions() -> dict[str, str]:
+    """Return the versions that the numbers depend on."""
+    found = {"python": platform.python_version()}
+    for package in PACKAGES:
+        try:
+            found[package] = metadata.version(package)
+        except metadata.PackageNotFoundError:
+            found[package] = "not installed as a package"
+    return found
+
+
+def findings_object(findings: Findings) -> dict[str, Any]:
+    """Return everything that is known about one ladder, for findings.json."""
+    record = judge_object(findings)
+    for quantity in findings.quantities:
+        record["quantities"][quantity.name].update(_more(quantity, findings.verdicts[quantity.name]))
+    return {
+        "title": findings.title,
+        **record,
+        "all_sound": findings.all_sound,
+        "fingerprint": findings.ladder.fingerprint,
+        "remarks": list(findings.ladder.remarks),
+        "table": [_level(level) for level in findings.ladder.levels],
+        "checks": [_check(check) for check in findings.checks],
+        "facts": _facts(findings),
+        "versions": versions(),
+    }

@@ -1,0 +1,34 @@
+"""The end of the document: caution, and what it takes to get the same numbers again."""
+
+from convergence.report import html, records
+from convergence.report.html import Html, text
+from convergence.results import Findings
+
+CAUTION = (
+    "The discretization error is one part of the uncertainty of a result. It says how far the numbers are"
+    " from the exact answer of this model, not how far the model is from the part.",
+    "Modelling, loads, material data and code checks stay with the analyst.",
+    "Local codes and licensed practice decide what may be built, operated or approved.",
+    "A balance of forces proves bookkeeping and solver; it says nothing about the mesh.",
+)
+
+
+def caution_section() -> Html:
+    """Return what the document must not be taken for."""
+    return html.section("caution", "Caution", html.bullets(CAUTION))
+
+
+def trace_section(findings: Findings, study_text: str, study_name: str, command: str, date: str) -> Html:
+    """Return command, date, versions and the study itself."""
+    facts = {"study": study_name, "command": command, "date": date, "ladder": findings.ladder.source}
+    if findings.ladder.fingerprint:
+        facts["fingerprint"] = findings.ladder.fingerprint
+    facts.update(records.versions())
+    rows = [[text(name), text(value)] for name, value in facts.items()]
+    study = html.element("pre", {"tabindex": "0"}, text(study_text))
+    return html.section(
+        "trace",
+        "Traceability",
+        html.table("How to get these numbers again", ("what", "which"), rows, "words"),
+        html.details("The study as it was read", study) if study_text else Html(""),
+    )

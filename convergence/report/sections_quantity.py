@@ -1,0 +1,80 @@
+"""The evidence for each quantity: figures, reasons, levels, and what every method says."""
+
+import math
+from collections.abc import Mapping
+
+import numpy as np
+
+from convergence.report import _words, html, numbers
+from convergence.report._picture import Picture
+from convergence.report.html import Html, text
+from convergence.results import Estimate, Findings, Ladder, Quantity, Verdict
+
+
+def quantities_section(findings: Findings, pictures: Mapping[str, list[Picture]], length: str) -> Html:
+    """Return one part a quantity; `pictures` by its name."""
+    parts = [_part(findings, quantity, pictures[quantity.name], length) for quantity in findings.quantities]
+    return html.section("quantities", "Quantities", *parts)
+
+
+def _part(findings: Findings, quantity: Quantity, pictures: list[Picture], length: str) -> Html:
+    verdict = findings.verdicts[quantity.name]
+    title = html.element(
+        "h3",
+        {"id": _words.anchor(findings, quantity)},
+        text(quantity.name),
+        html.badge(verdict.word),
+    )
+    shown = html.element("div", {"class": "pictures"}, *(html.figure(picture) for picture in pictures))
+    return html.join(
+        title,
+        html.paragraph(quantity.description, "tiny") if quantity.description else Html(""),
+        html.bullets([_words.sentence(reason) for reason in verdict.reasons]),
+        shown if pictures else html.paragraph("No level has a value: there is nothing to draw."),
+        _levels(findings.ladder, quantity, verdict, length),
+        _estimates(findings.estimates.get(quantity.name, {}), quantity),
+    )
+
+
+def _levels(ladder: Ladder, quantity: Quantity, verdict: Verdict, length: str) -> Html:
+    """Return the table of levels; cells and unknowns only where they are known."""
+    values = ladder.column(quantity.name)
+    changes = np.diff(values, prepend=np.nan)
+    moves = np.abs(changes[np.isfinite(changes) & (changes != 0)])
+    fine = float(moves.min()) / 10 if moves.size else verdict.uncertainty
+    unit = f" [{quantity.unit}]" if quantity.unit else ""
+    columns = {
+        "level": [str(number) for number in range(1, len(values) + 1)],
+        f"h [{length}]" if length else "h": [numbers.significant(level.h, 4) for level in ladder.levels],
+        "cells": [numbers.count(level.cells) if level.cells > 0 else "" for level in ladder.levels],
+        "unknowns": [numbers.count(level.dofs) if level.dofs > 0 else "" for level in ladder.levels],
+        f"value{unit}": [numbers.rounded(value, fine) for value in values],
+        f"change{unit}": [numbers.significant(change, 3) for change in changes],
+        "relative change": [
+            numbers.percent(abs(change / value) if value else math.nan)
+            for change, value in zip(changes, values, strict=True)
+        ],
+    }
+    known = {name: cells for name, cells in columns.items() if any(cells)}
+    rows = [[text(cell) for cell in row] for row in zip(*known.values(), strict=True)]
+    return html.table("Levels from coarse to fine", list(known), rows)
+
+
+def _estimates(estimates: Mapping[str, Estimate], quantity: Quantity) -> Html:
+    """Return what each method says; its name leads to its source."""
+    if not estimates:
+        return Html("")
+    unit = f" [{quantity.unit}]" if quantity.unit else ""
+    rows = [
+        [
+            html.element("a", {"href": f"#method-{name}"}, text(_words.plain(name))),
+            text(numbers.rounded(estimate.limit, estimate.uncertainty)),
+            text(numbers.significant(estimate.uncertainty, 3)),
+            text(numbers.significant(estimate.order, 3)),
+            text(estimate.remark or "its conditions hold"),
+        ]
+        for name, estimate in estimates.items()
+    ]
+    head = ("method", f"limit{unit}", f"uncertainty{unit}", "order", "remark")
+    caption = "What each method says (uncertainty: half-width about the finest value)"
+    return html.table(caption, head, rows, "methods")

@@ -1,0 +1,54 @@
+"""The two JSON objects: exact keys, null where there is no number."""
+
+import json
+from dataclasses import replace
+
+from convergence.report.records import findings_object, judge_object
+from convergence.results import Estimate, Findings
+
+KEYS = {
+    "verdict", "value", "limit", "low", "high", "coverage", "observed_order", "formal_order", "behaviour",
+    "next_h", "estimates", "reasons",
+}  # fmt: skip
+
+
+def test_the_short_object_has_exactly_its_keys(findings: Findings) -> None:
+    record = judge_object(findings)
+    assert set(record) == {"ladder", "levels", "quantities"}
+    assert record["ladder"] == "out/bracket/ladder.csv"
+    assert record["levels"] == 5
+    assert list(record["quantities"]) == [quantity.name for quantity in findings.quantities]
+    for quantity in record["quantities"].values():
+        assert set(quantity) == KEYS
+        for estimate in quantity["estimates"].values():
+            assert set(estimate) == {"limit", "uncertainty", "order", "remark"}
+
+
+def test_nothing_is_null(findings: Findings) -> None:
+    record = judge_object(findings)["quantities"]
+    singular = record["corner_stress"]
+    assert [singular[key] for key in ("limit", "low", "high", "observed_order", "coverage")] == [None] * 5
+    assert singular["value"] == findings.verdicts["corner_stress"].value
+    assert record["fillet_stress"]["estimates"]["richardson"]["limit"] is None
+    assert record["tip_deflection"]["next_h"] == 0.31
+
+
+def test_both_are_strict_json(findings: Findings) -> None:
+    unbounded = {"fillet_stress": {"richardson": Estimate(float("-inf"), 1.0, float("inf"))}}
+    for record in (judge_object, findings_object):
+        text = json.dumps(record(replace(findings, estimates=unbounded)), allow_nan=False)
+        assert json.loads(text)["quantities"]["fillet_stress"]["estimates"]["richardson"]["limit"] is None
+
+
+def test_the_full_object_holds_the_rest(findings: Findings) -> None:
+    record = findings_object(findings)
+    tip = record["quantities"]["tip_deflection"]
+    assert tip["next_cells"] == 249_740.1
+    assert tip["expected_order"] == 1.09
+    assert tip["relative_tolerance"] == 0.01
+    assert len(record["table"]) == 5
+    assert record["table"][0]["values"]['<b>pin & "reaction"</b> $x$'] is None
+    assert [check["passed"] for check in record["checks"]] == [True, False, None]
+    assert record["facts"]["corners"][0]["exponent"] == 0.5445
+    assert {"python", "numpy", "scipy", "scikit-fem"} <= set(record["versions"])
+    assert record["all_sound"] is False
