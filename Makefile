@@ -1,0 +1,48 @@
+# Targets of the contributor's loop; each sets up what it needs. `make` alone prints this help.
+PYTHON ?= python3
+VENV := .venv
+BIN := $(VENV)/bin
+READY := $(VENV)/ready
+
+export OPENBLAS_NUM_THREADS ?= 1
+
+.DEFAULT_GOAL := help
+.PHONY: help demo test check figures calibrate clean
+
+help: ## show this help
+	@awk -F ':.*## ' '/^[a-z]+:.*## / {printf "  make %-10s %s\n", $$1, $$2}' $(MAKEFILE_LIST)
+
+$(READY): pyproject.toml
+	@$(PYTHON) -c 'import sys; sys.exit(sys.version_info < (3, 11))' \
+	  || { echo "Python 3.11 or newer is needed; try: make PYTHON=python3.12"; exit 2; }
+	$(PYTHON) -m venv $(VENV)
+	$(BIN)/python -m pip install --quiet --upgrade pip
+	$(BIN)/python -m pip install --quiet --editable ".[dev]"
+	@touch $(READY)
+
+demo: $(READY) ## solve and judge the davit's lug; says where the report is
+	@$(BIN)/meshassay run studies/lug.toml; code=$$?; \
+	  if [ $$code -gt 1 ]; then exit $$code; fi; \
+	  echo "Open out/lug/report.html in a browser."
+
+test: $(READY) ## all tests
+	$(BIN)/python -m pytest
+
+check: $(READY) ## format, lint, types and the fast tests
+	$(BIN)/ruff format --check convergence tests
+	$(BIN)/ruff check convergence tests
+	$(BIN)/mypy
+	$(BIN)/python -m pytest -m "not slow"
+
+figures: $(READY) ## redraw figures/ from two studies: the lug and the sharp bracket
+	@for study in lug bracket_sharp; do \
+	  $(BIN)/meshassay run studies/$$study.toml || [ $$? -eq 1 ] || exit 3; \
+	  mkdir -p figures/$$study && cp out/$$study/figures/*.svg figures/$$study/ || exit 3; \
+	done
+
+calibrate: $(READY) ## measure how often each estimate covers the exact value: figures/coverage.md
+	$(BIN)/python -m convergence.calibration
+
+clean: ## remove what the targets made, the environment too
+	rm -rf $(VENV) out build *.egg-info .pytest_cache .mypy_cache .ruff_cache .hypothesis
+	find . -name __pycache__ -type d -prune -exec rm -rf {} +

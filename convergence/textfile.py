@@ -1,0 +1,44 @@
+"""Text files: read with one clear message for each way to fail, written atomically."""
+
+import difflib
+from pathlib import Path
+
+from convergence.errors import Fault, InputError
+
+
+def read_text(path: Path, wanted: str) -> str:
+    """Return the text of a UTF-8 file; `wanted` says what the user should give, e.g. "a study file"."""
+    where = str(path)
+    instead = f"give the path of {wanted}"
+    if path.is_dir():
+        raise InputError([Fault(where, "a folder", instead)])
+    try:
+        raw = path.read_bytes()
+    except FileNotFoundError:
+        raise InputError([Fault(where, "no such file", _neighbour(path) or instead)]) from None
+    except OSError as error:
+        raise InputError([Fault(where, f"cannot be read ({error.strerror})", instead)]) from None
+    try:
+        text = raw.decode("utf-8-sig")
+    except UnicodeDecodeError:
+        text = "\0"
+    if "\0" in text:
+        raise InputError([Fault(where, "not a text file in UTF-8", f"{instead}, saved as text in UTF-8")])
+    if not text.strip():
+        raise InputError([Fault(where, "the file is empty", instead)])
+    return text
+
+
+def write_text(path: Path, text: str) -> None:
+    """Write a whole file or nothing: a killed program leaves the old file."""
+    spare = path.with_name(f"{path.name}.part")
+    spare.write_text(text, encoding="utf-8", newline="\n")
+    spare.replace(path)
+
+
+def _neighbour(path: Path) -> str:
+    """Return "did you mean ...?" for a file of nearly the same name in the same folder."""
+    found = path.parent.glob(f"*{path.suffix}") if path.parent.is_dir() else []
+    names = {file.stem: file.name for file in found}
+    close = difflib.get_close_matches(path.stem, names, n=1)
+    return f"did you mean {names[close[0]]!r}?" if close else ""
