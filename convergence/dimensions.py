@@ -99,7 +99,7 @@ class Units:
     def label(self, dimension: Dimension) -> str:
         """Return the unit of a dimension as it is printed, e.g. "N mm"."""
         if dimension in (RATIO, ANGLE):
-            return "rad" if dimension == ANGLE else ""
+            return "°" if dimension == ANGLE else ""
         known = {LENGTH: self.length, STRESS: self.stress, FORCE: self.force}
         if dimension in known:
             return known[dimension]

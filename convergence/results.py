@@ -143,7 +143,7 @@ class Estimate:
 
 @dataclass(frozen=True)
 class Check:
-    """A passed (or None: not applicable) check, its finding in one sentence, what a failure spoils.
+    """A passed (or None: no statement is possible) check, its finding in one sentence, what a failure spoils.
 
     `spoils` maps quantity names ("" for every one) to the reason; `leads_to` is the verdict it forces.
     """

@@ -1,0 +1,94 @@
+"""Quantities of a table: its columns, with what is known of their kind."""
+
+from collections.abc import Mapping
+from typing import Annotated, get_args
+
+from convergence.bind import bind
+from convergence.dimensions import Bounds, Units
+from convergence.errors import Fault, InputError, nearest
+from convergence.quantity_tables import ASSUMED_TOLERANCE, TOLERANCE_KEYS, place_of, read_tolerances
+from convergence.results import Kind, Ladder, Quantity
+from convergence.tomlfile import TomlFile
+
+Degree = Annotated[int, Bounds(1, 10, closed=True)]
+
+
+def column(
+    *,
+    column: Annotated[str | None, "the table's column, the quantity's name if not given"] = None,
+    kind: Annotated[Kind, "what the numbers are"] = "unknown",
+    degree: Annotated[Degree | None, "polynomial degree of the elements they come from"] = None,
+) -> tuple[str | None, Kind, int | None]:
+    """Return what a study says of a column."""
+    return column, kind, degree
+
+
+def formal_order(kind: Kind, degree: int | None) -> float | None:
+    """Return the order of theory for a smooth solution, None where kind or degree is not known.
+
+    Energy and reactions 2p, displacements p + 1, stresses and what is integrated from them p (textbook
+    results); a program that recovers its stresses well can be better.
+    """
+    if degree is None or kind == "unknown":
+        return None
+    orders = {"energy": 2 * degree, "reaction": 2 * degree, "displacement": degree + 1}
+    return float(orders.get(kind, degree))
+
+
+def read_column(
+    file: TomlFile, name: str, units: Units, found: Mapping[str, str]
+) -> tuple[Quantity | None, str, list[Fault]]:
+    """Read one quantity of a table study; `found` is the unit per column. Return its column too."""
+    table, place = file.data["quantities"][name], place_of(file, name)
+    accepted, faults = read_tolerances(file, name, units)
+    arguments, more = bind(column, table, where=place, units=units, also=TOLERANCE_KEYS)
+    faults += more
+    if faults:
+        return None, "", faults
+    source, kind, degree = column(**arguments)
+    if (source or name) not in found:
+        key = "column" if source else ""
+        return None, "", [Fault(place(key), "no such column", nearest(source or name, found), source or name)]
+    quantity = Quantity(
+        name=name,
+        kind=kind,
+        unit=found[source or name],
+        formal_order=formal_order(kind, degree),
+        relative=accepted.relative,
+        absolute=accepted.absolute,
+        assumed_tolerance=accepted.assumed,
+        description=f"column {source or name}",
+    )
+    return quantity, source or name, []
+
+
+def bare_quantities(
+    ladder: Ladder,
+    found: Mapping[str, str],
+    *,
+    kinds: Mapping[str, Kind],
+    degree: int | None,
+    relative: float | None,
+) -> tuple[Quantity, ...]:
+    """Return a quantity for every column of a bare table; NAME.x and NAME.y are the place of NAME."""
+    columns = list(dict.fromkeys(name for level in ladder.levels for name in level.values))
+    return tuple(
+        Quantity(
+            name=name,
+            kind=kinds.get(name, "unknown"),
+            unit=found.get(name, ""),
+            formal_order=formal_order(kinds.get(name, "unknown"), degree),
+            relative=ASSUMED_TOLERANCE if relative is None else relative,
+            assumed_tolerance=relative is None,
+        )
+        for name in columns
+        if not (name.endswith((".x", ".y")) and name[:-2] in columns)
+    )
+
+
+def kind_of(name: str, word: str) -> Kind:
+    """Return a kind by its name; `InputError` names the nearest one."""
+    kinds: dict[str, Kind] = {kind: kind for kind in get_args(Kind)}
+    if word not in kinds:
+        raise InputError([Fault(f"--kind {name}", "unknown kind", nearest(word, kinds), word)])
+    return kinds[word]

@@ -1,0 +1,96 @@
+"""Study facts and a ladder -> findings; nothing is solved and no file is read or written here."""
+
+from collections.abc import Mapping
+from dataclasses import replace
+
+import numpy as np
+
+from convergence import rooms
+from convergence.checks.linear_range import PEAK
+from convergence.fem.corners import singular_corners
+from convergence.intervals import Interval, interval
+from convergence.results import Check, Corner, Facts, Findings, Ladder, Quantity
+from convergence.study import Study
+from convergence.verdicts import verdict
+
+BALANCES = ("equilibrium.force", "energy_balance.difference", "solver_residual.relative")
+
+
+def facts_of(study: Study) -> Facts:
+    """Return what theory and the study say beside the numbers."""
+    quantities = study.quantities
+    facts = Facts(
+        dimension=study.dimension,
+        yield_strength=study.material.yield_strength,
+        yield_source=study.material.yield_source,
+    )
+    if study.ladder is None:
+        return facts
+    problem = study.problem()
+    corners = singular_corners(problem)
+    return replace(
+        facts,
+        degree=study.ladder.degree,
+        size=problem.part.size,
+        corners=corners,
+        covered={q.name: _covered(q, study, corners) for q in quantities},
+        components={q.name: str(q.arguments.get("component", "")) for q in quantities},
+    )
+
+
+def _covered(quantity: Quantity, study: Study, corners: tuple[Corner, ...]) -> tuple[Corner, ...]:
+    """Return the singular corners within the reach of a quantity."""
+    covers = rooms.beside("quantities", quantity.measure_name, "covers")
+    if covers is None:
+        return ()
+    part = study.problem().part
+    return tuple(corner for corner in corners if covers(part, corner.name, quantity.arguments))
+
+
+def judge(ladder: Ladder, quantities: tuple[Quantity, ...], facts: Facts, title: str) -> Findings:
+    """Return estimates, checks and a verdict for every quantity of a ladder."""
+    intervals = {q.name: _interval(ladder, q.name, q.formal_order) for q in quantities}
+    stated = {name: (found.low, found.high) for name, found in intervals.items()}
+    peak = _interval(ladder, PEAK, None)
+    facts = replace(
+        facts,
+        kinds={q.name: q.kind for q in quantities},
+        intervals={**stated, PEAK: (peak.low, peak.high)},
+    )
+    checks = tuple(rooms.find("checks", name)(ladder, facts) for name in rooms.names("checks"))
+    return Findings(
+        title=title,
+        ladder=ladder,
+        quantities=quantities,
+        facts=facts,
+        estimates={name: found.estimates for name, found in intervals.items()},
+        checks=checks,
+        verdicts={
+            q.name: verdict(q, intervals[q.name], spoiled(checks, q.name), ladder, facts) for q in quantities
+        },
+    )
+
+
+def _interval(ladder: Ladder, name: str, formal_order: float | None) -> Interval:
+    f = ladder.column(name)
+    resolution = max(ladder.resolution.get(name, 0.0), _solver_noise(ladder) * _largest(f))
+    return interval(ladder.h, f, formal_order=formal_order, resolution=resolution)
+
+
+def _solver_noise(ladder: Ladder) -> float:
+    """Return how far the worst level is from balance, as a share: smaller differences are no evidence."""
+    return max(_largest(ladder.column(name)) for name in BALANCES)
+
+
+def _largest(values: np.ndarray) -> float:
+    return float(np.max(np.abs(values), initial=0.0, where=np.isfinite(values)))
+
+
+def spoiled(checks: tuple[Check, ...], name: str) -> Mapping[str, str]:
+    """Return verdict word -> reason for the failed checks that concern a quantity."""
+    reasons: dict[str, str] = {}
+    for check in checks:
+        for key in (name, ""):
+            if check.passed is False and key in check.spoils:
+                reasons.setdefault(check.leads_to, check.spoils[key])
+    return reasons

@@ -1,0 +1,40 @@
+"""The ladder a study asks for: sizes from coarse to fine, cell shape and degree."""
+
+from dataclasses import dataclass
+from typing import Annotated, Literal
+
+from convergence.dimensions import RATIO, Bounds, PositiveLength
+from convergence.errors import require
+
+Shape = Literal["triangle", "quadrilateral"]
+Divisions = Annotated[int, Bounds(1, 1000, closed=True)]
+Levels = Annotated[int, Bounds(1, 12, closed=True)]
+RefinementRatio = Annotated[float, RATIO, Bounds(1.0, 10.0)]
+
+
+@dataclass(frozen=True)
+class LadderSpec:
+    """Exactly one of `size` and `divisions` is given; each level is finer by `ratio`."""
+
+    size: float | None
+    divisions: int | None
+    ratio: float
+    levels: int
+    shape: Shape
+    degree: int
+
+
+def ladder(
+    *,
+    size: Annotated[PositiveLength | None, "largest cell edge on the coarsest level"] = None,
+    divisions: Annotated[Divisions | None, "cells along the shortest edges on the coarsest level"] = None,
+    ratio: Annotated[RefinementRatio, "how much finer each level is"] = 2.0,
+    levels: Annotated[Levels, "number of levels; four or more tell most"] = 5,
+    shape: Annotated[Shape, "shape of the cells"] = "triangle",
+    degree: Annotated[Literal[1, 2], "polynomial degree of the elements"] = 2,
+) -> LadderSpec:
+    """Return the ladder of a study's [ladder]; two divisions where neither size nor divisions is given."""
+    require((size is None or divisions is None, "divisions", divisions, "give either size or divisions"))
+    if size is None and divisions is None:
+        divisions = 2
+    return LadderSpec(size, divisions, ratio, levels, shape, degree)

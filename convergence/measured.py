@@ -1,0 +1,78 @@
+"""Quantities of a model study: a measure with its arguments, checked against the names of the problem."""
+
+import functools
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass, field
+from typing import Any
+
+from convergence import rooms
+from convergence.bind import bind, parameters
+from convergence.dimensions import Units, returned_dimension
+from convergence.errors import Fault, Unsuitable, listing, nearest
+from convergence.quantity_tables import TOLERANCE_KEYS, place_of, read_tolerances
+from convergence.results import Quantity
+from convergence.tomlfile import TomlFile
+
+
+@dataclass(frozen=True)
+class Measured:
+    """A quantity of a model study, and the arguments of its measure, for the fingerprint."""
+
+    quantity: Quantity
+    measure: str
+    arguments: Mapping[str, Any] = field(default_factory=dict)
+
+
+def read_measured(
+    file: TomlFile, name: str, degree: int, units: Units, known: Mapping[str, tuple[str, ...]] | None
+) -> tuple[Measured | None, list[Fault]]:
+    """Read one quantity of a model study; `known` are the problem's names, None where there is none."""
+    table, place = file.data["quantities"][name], place_of(file, name)
+    accepted, faults = read_tolerances(file, name, units)
+    measure, known_measures = table.get("measure"), rooms.names("quantities")
+    if measure is None:
+        right = f"add measure = one of {listing(known_measures)}"
+        return None, [*faults, Fault(place(""), "the key 'measure' is missing", right)]
+    if measure not in known_measures:
+        right = nearest(str(measure), known_measures)
+        return None, [*faults, Fault(place("measure"), "unknown measure", right, measure)]
+    function = rooms.find("quantities", measure)
+    also = ("measure", *TOLERANCE_KEYS)
+    arguments, more = bind(function, table, where=place, units=units, also=also)
+    faults += more + _unknown_names(function, arguments, place, known or {})
+    if faults:
+        return None, faults
+    try:
+        order = rooms.beside("quantities", measure, "formal_order")(degree, arguments)
+    except Unsuitable as error:
+        return None, [Fault(place(key), "unsuitable", right, found) for key, found, right in error.problems]
+    dimension = returned_dimension(function)
+    said = ", ".join(f"{key} {value}" for key, value in arguments.items() if value is not None)
+    quantity = Quantity(
+        name=name,
+        kind=rooms.beside("quantities", measure, "KIND"),
+        unit=units.label(dimension) if dimension else "",
+        formal_order=order,
+        relative=accepted.relative,
+        absolute=accepted.absolute,
+        assumed_tolerance=accepted.assumed,
+        measure=functools.partial(function, **arguments),
+        description=f"{measure} ({said})" if said else measure,
+    )
+    return Measured(quantity, measure, arguments), []
+
+
+def _unknown_names(
+    function: Callable[..., Any],
+    arguments: Mapping[str, Any],
+    place: Callable[[str], str],
+    known: Mapping[str, tuple[str, ...]],
+) -> list[Fault]:
+    """Return a fault for every argument that names a boundary, point ... which the problem has not."""
+    faults = []
+    for parameter in parameters(function):
+        value, names = arguments.get(parameter.name), known.get(parameter.names)
+        if names is not None and isinstance(value, str) and value not in names:
+            what = f"the model has no such {parameter.names}"
+            faults.append(Fault(place(parameter.name), what, nearest(value, names), value))
+    return faults

@@ -1,0 +1,76 @@
+"""A commented study file that runs, made from the signatures it will be checked against."""
+
+import json
+import re
+from collections.abc import Callable, Iterable, Mapping
+from typing import Any
+
+from convergence import rooms
+from convergence.bind import REQUIRED, Parameter, parameters
+from convergence.dimensions import SYSTEMS
+from convergence.fem.material import material
+from convergence.ladder_spec import ladder
+
+UNITS = "mm, N, MPa"
+WIDTH = 30
+
+
+def study_template(model: str) -> str:
+    """Return the text of a study file; `InputError` where there is no such model."""
+    function = rooms.find("models", model)
+    about = rooms.shelf("models")[model]
+    wanted: Mapping[str, Mapping[str, Any]] = rooms.beside("models", model, "QUANTITIES") or {}
+    lines = [
+        f"# {about}",
+        f"# Run it with: meshassay run {model}.toml",
+        "",
+        f"title = {_toml(about.rstrip('.'))}",
+        _line(f"units = {_toml(UNITS)}", f"one of: {'; '.join(SYSTEMS)}"),
+        *_section("model", function, given=["material"], first={"name": model}),
+        *_section("material", material),
+        *_section("ladder", ladder, first={"divisions": 2}),
+        "",
+        "# A quantity is sound when its interval lies inside the tolerance.",
+        f"# Measures: {', '.join(rooms.names('quantities'))}.",
+    ]
+    for name, table in wanted.items():
+        lines += ["", f"[quantities.{_key(name)}]"]
+        lines += [f"{key} = {_toml(value)}" for key, value in table.items()]
+    return "\n".join(lines) + "\n"
+
+
+def _section(
+    name: str, function: Callable[..., Any], given: Iterable[str] = (), first: Mapping[str, Any] | None = None
+) -> list[str]:
+    """Return a table with every parameter, those in `first` on top with the values given there."""
+    found = {parameter.name: parameter for parameter in parameters(function, given)}
+    lines = ["", f"[{name}]"]
+    for key, value in (first or {}).items():
+        lines.append(_line(f"{key} = {_toml(value)}", _about(found.pop(key)) if key in found else ""))
+    return lines + [_parameter(parameter) for parameter in found.values()]
+
+
+def _parameter(parameter: Parameter) -> str:
+    if parameter.default in (None, "", REQUIRED):
+        state = "to be filled in" if parameter.default is REQUIRED else "optional"
+        return _line(f"# {parameter.name} =", f"{state}: {_about(parameter)}")
+    return _line(f"{parameter.name} = {_toml(parameter.default)}", _about(parameter))
+
+
+def _about(parameter: Parameter) -> str:
+    wanted = parameter.wanted(SYSTEMS[UNITS])
+    return f"{parameter.doc}; {wanted}" if parameter.doc else wanted
+
+
+def _line(text: str, comment: str) -> str:
+    return f"{text:<{WIDTH}}  # {comment}" if comment else text
+
+
+def _toml(value: Any) -> str:
+    if isinstance(value, tuple | list):
+        return f"[{', '.join(_toml(item) for item in value)}]"
+    return json.dumps(value, ensure_ascii=False) if isinstance(value, str | bool) else repr(value)
+
+
+def _key(name: str) -> str:
+    return name if re.fullmatch(r"[A-Za-z0-9_-]+", name) else _toml(name)

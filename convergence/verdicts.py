@@ -1,0 +1,182 @@
+"""The verdict on one quantity: the word, the next mesh and the reasons in plain words."""
+
+import math
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+import numpy as np
+
+from convergence.intervals import Interval
+from convergence.results import Facts, Ladder, Level, Quantity, Verdict, VerdictWord
+
+LEAST_ORDER, MOST_ORDER = 0.3, 4.0
+AFFORDABLE_DOFS = 5e7
+NO_COVERAGE = "its coverage has not been calibrated"
+
+
+@dataclass(frozen=True)
+class Next:
+    """The mesh at which the interval is expected to fit the tolerance; NaN where there is none."""
+
+    h: float = math.nan
+    cells: float = math.nan
+    dofs: float = math.nan
+    seconds: float = math.nan
+
+
+def verdict(
+    quantity: Quantity, found: Interval, spoiled: Mapping[str, str], ladder: Ladder, facts: Facts
+) -> Verdict:
+    """Return the statement on a quantity; `spoiled` has the verdicts that failed checks force, with why."""
+    expected = expected_order(quantity, facts)
+    tolerance = accepted(quantity, found.value)
+    word = _word(found, tolerance, spoiled)
+    ahead = _next_mesh(found, tolerance, expected, ladder, facts) if word == "refine" else Next()
+    stated = word != "singular"
+    return Verdict(
+        word=word,
+        value=found.value,
+        limit=found.limit if stated else math.nan,
+        low=found.low if stated else math.nan,
+        high=found.high if stated else math.nan,
+        uncertainty=found.half_width if stated else math.nan,
+        tolerance=tolerance,
+        behaviour=found.behaviour,
+        observed_order=found.order,
+        formal_order=quantity.formal_order,
+        expected_order=expected,
+        next_h=ahead.h,
+        next_cells=ahead.cells,
+        next_dofs=ahead.dofs,
+        next_seconds=ahead.seconds,
+        coverage=None,
+        reasons=tuple(_reasons(quantity, found, spoiled, tolerance, expected, ahead, word)),
+    )
+
+
+def expected_order(quantity: Quantity, facts: Facts) -> float | None:
+    """Return the formal order, limited to 2λ by the weakest corner of the model (Szabó & Babuška 1991)."""
+    if quantity.formal_order is None or facts.exponent is None:
+        return quantity.formal_order
+    return min(quantity.formal_order, 2.0 * facts.exponent)
+
+
+def accepted(quantity: Quantity, value: float) -> float:
+    """Return the accepted half-width: the larger of the relative and the absolute tolerance."""
+    relative = (quantity.relative or 0.0) * abs(value)
+    return max(relative, quantity.absolute or 0.0)
+
+
+def _word(found: Interval, tolerance: float, spoiled: Mapping[str, str]) -> VerdictWord:
+    if "singular" in spoiled:
+        return "singular"
+    if spoiled or found.flaw or found.levels < 3:
+        return "unproven"
+    if found.half_width <= tolerance:
+        return "sound"
+    if tolerance <= 0.0 or found.behaviour == "constant":
+        return "unproven"
+    return "refine"
+
+
+def _next_mesh(
+    found: Interval, tolerance: float, expected: float | None, ladder: Ladder, facts: Facts
+) -> Next:
+    order = found.order if math.isfinite(found.order) else (expected or 1.0)
+    ceiling = MOST_ORDER if expected is None else min(expected, MOST_ORDER)
+    order = min(max(order, LEAST_ORDER), max(ceiling, LEAST_ORDER))
+    finest = ladder.levels[-1]
+    h = finest.h * (tolerance / found.half_width) ** (1.0 / order)
+    growth = (finest.h / h) ** facts.dimension
+    return Next(
+        h,
+        finest.cells * growth,
+        finest.dofs * growth,
+        finest.seconds * growth ** _cost_exponent(ladder.levels),
+    )
+
+
+def _cost_exponent(levels: tuple[Level, ...]) -> float:
+    """Return how seconds grow with unknowns, from the last two levels, between 1 and 2."""
+    if len(levels) < 2:
+        return 1.5
+    coarse, fine = levels[-2], levels[-1]
+    if min(coarse.seconds, fine.seconds, coarse.dofs) <= 0.0 or fine.dofs <= coarse.dofs:
+        return 1.5
+    return float(np.clip(np.log(fine.seconds / coarse.seconds) / np.log(fine.dofs / coarse.dofs), 1.0, 2.0))
+
+
+def _reasons(
+    quantity: Quantity,
+    found: Interval,
+    spoiled: Mapping[str, str],
+    tolerance: float,
+    expected: float | None,
+    ahead: Next,
+    word: VerdictWord,
+) -> list[str]:
+    decisive = [spoiled["singular"]] if "singular" in spoiled else spoiled.values()
+    reasons = [f"{_capital(reason)}." for reason in decisive]
+    if found.lost:
+        reasons.append(f"{found.lost} level(s) without a value were left out.")
+    if found.flaw and word != "singular":
+        reasons.append(f"No interval: {found.flaw}.")
+    if word == "singular":
+        return reasons
+    if found.flaw:
+        return reasons
+    reasons += _about_order(found, quantity.formal_order, expected)
+    widths = ", ".join(f"{name} {width:.3g}" for name, width in found.widths.items())
+    if found.behaviour == "constant":
+        reasons.append("The last three levels give the same value, to round-off or to its printed digits.")
+    elif found.widths:
+        reasons.append(f"Half-width {found.half_width:.3g}, the widest of {widths}; {NO_COVERAGE}.")
+    if found.levels == 2:
+        reasons.append("Two levels cannot show an order; a third one would.")
+    return reasons + _about_tolerance(quantity, found, tolerance, ahead, word)
+
+
+def _about_order(found: Interval, formal: float | None, expected: float | None) -> list[str]:
+    if not math.isfinite(found.order):
+        return []
+    lines = [f"The last three levels show {found.behaviour}, observed order {found.order:.2f}."]
+    if expected is None or formal is None:
+        return lines
+    cause = (
+        f" (the formal {formal:.3g} is limited in the end by the model's weakest corner)"
+        if expected < formal
+        else ""
+    )
+    lines.append(f"Theory expects {expected:.3g}{cause}.")
+    if found.order < 0.5 * expected:
+        lines.append(
+            "The observed order is far below theory: the levels are not yet in the asymptotic range."
+        )
+    elif found.order > formal + 1.0:
+        lines.append("The observed order is above theory: part of the change cancels by accident.")
+    return lines
+
+
+def _about_tolerance(
+    quantity: Quantity, found: Interval, tolerance: float, ahead: Next, word: VerdictWord
+) -> list[str]:
+    parts = [f"{100 * quantity.relative:.4g} % of the value"] if quantity.relative else []
+    parts += [f"{quantity.absolute:.4g} {quantity.unit}".strip()] if quantity.absolute else []
+    assumed = " (assumed, none was given)" if quantity.assumed_tolerance else ""
+    accepted_text = f"Accepted: {' or '.join(parts)}{assumed}, that is {tolerance:.4g}."
+    if not quantity.absolute and abs(found.value) <= found.half_width and word != "sound":
+        accepted_text += " The value is zero within its interval: give an absolute_tolerance."
+    lines = [accepted_text]
+    if word == "refine" and math.isfinite(ahead.h):
+        cost = [f"{n:.2g} {what}" for n, what in ((ahead.cells, "cells"), (ahead.dofs, "unknowns")) if n > 0]
+        about = f" ({', '.join(cost)})" if cost else ""
+        lines.append(f"A cell size of about {ahead.h:.3g}{about} would do, if the order holds.")
+        if ahead.dofs > AFFORDABLE_DOFS:
+            lines.append(
+                "That is out of reach: use degree 2, a smaller part around the place, or another quantity."
+            )
+    return lines
+
+
+def _capital(text: str) -> str:
+    return text[:1].upper() + text[1:]
