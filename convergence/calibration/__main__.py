@@ -29,7 +29,8 @@ def page() -> str:
     ladders = " and ".join(f"of {n} levels from {d} divisions, ratio {r:g}" for d, r, n in LADDERS)
     head = HEAD.format(cases=", ".join(CASES), ladders=ladders)
     methods = sorted({method for method, _ in counts} - {STATED})
-    rows = [_row(method, levels, counts[method, levels]) for method in (*methods, STATED) for levels in LEVELS]
+    keys = [(method, levels) for method in (*methods, STATED) for levels in LEVELS]
+    rows = [_row(*key, counts[key]) for key in keys]
     return head + "\n".join(rows) + "\n"
 
 

@@ -19,7 +19,7 @@ NEGLIGIBLE = 1e-8
 
 @dataclass(frozen=True)
 class Count:
-    """What one method did on one number of levels: cases, those with an answer, covered, U/e of each answer."""
+    """What one method did on one number of levels: cases, answers, covered, U/e of each answer."""
 
     cases: int
     answered: int

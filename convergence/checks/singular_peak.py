@@ -93,9 +93,9 @@ def _at_corner(corner: Corner, exponent: float) -> str:
     )
     return (
         f"the value sits on the {corner.sides[0]}-{corner.sides[1]} corner {corner.name} of "
-        f"{corner.opening:.4g}° at ({corner.x:.4g}, {corner.y:.4g}), where stress grows like "
-        f"h^(λ-1) without limit: theory λ = {corner.exponent:.3f}, {data}; report the stress at a stated distance, a mean over a line or a "
-        "resultant, or model the real radius"
+        f"{corner.opening:.4g}° at ({corner.x:.4g}, {corner.y:.4g}), where stress grows like h^(λ-1) without "
+        f"limit: theory λ = {corner.exponent:.3f}, {data}; report the stress at a stated distance, a mean "
+        "over a line or a resultant, or model the real radius"
     )
 
 

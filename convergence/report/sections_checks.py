@@ -4,7 +4,7 @@ from convergence.report import _words, html, numbers
 from convergence.report.html import Html, text
 from convergence.results import Check, Findings
 
-OUTCOMES = {True: "passed", False: "FAILED", None: "not applicable"}
+OUTCOMES = {True: "passed", False: "FAILED", None: "no statement"}
 
 
 def checks_section(findings: Findings) -> Html:

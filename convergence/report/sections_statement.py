@@ -51,7 +51,7 @@ def _not_covered(findings: Findings) -> list[str]:
     ]
     idle = [_words.plain(check.name) for check in findings.checks if check.passed is None]
     if idle:
-        items.append(f"Checks that do not apply here: {', '.join(idle)}.")
+        items.append(f"Checks that can make no statement here: {', '.join(idle)}.")
     if any(verdict.coverage is None for verdict in findings.verdicts.values()):
         items.append("How often such an interval holds the answer: its coverage has not been calibrated.")
     return [*items, *(_words.sentence(remark) for remark in findings.ladder.remarks)]

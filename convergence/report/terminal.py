@@ -1,8 +1,12 @@
-"""The table of verdicts as plain strings; the command line decides how it looks."""
+"""The tables of verdicts and of methods as plain strings; the command line decides how they look."""
+
+import math
 
 from convergence.report import _words
+from convergence.report.numbers import percent, significant
 from convergence.results import Findings
 
+METHOD_COLUMNS = ("method", "order", "limit", "half-width", "of the value")
 COLUMNS = ("quantity", "value", "unit", "interval", "verdict", "order / theory", "next step")
 
 
@@ -20,6 +24,26 @@ def summary_rows(findings: Findings) -> list[tuple[str, ...]]:
                 verdict.word,
                 _words.order_text(verdict),
                 _words.next_step(verdict),
+            )
+        )
+    return rows
+
+
+def method_rows(findings: Findings, name: str) -> list[tuple[str, ...]]:
+    """Return one row a method that has an answer for a quantity, in the order of `METHOD_COLUMNS`."""
+    value = findings.verdicts[name].value
+    rows: list[tuple[str, ...]] = []
+    for method, estimate in findings.estimates[name].items():
+        if not math.isfinite(estimate.uncertainty):
+            continue
+        share = percent(estimate.uncertainty / abs(value)) if value else "none"
+        rows.append(
+            (
+                _words.plain(method),
+                significant(estimate.order),
+                significant(estimate.limit, 6),
+                significant(estimate.uncertainty),
+                share,
             )
         )
     return rows

@@ -1,0 +1,64 @@
+"""`meshassay judge`: a verdict on tables, studies or the folders of runs, without solving."""
+
+import sys
+from pathlib import Path
+
+import click
+
+from convergence.errors import Fault, InputError
+
+
+@click.command()
+@click.argument("inputs", nargs=-1, required=True, type=click.Path(path_type=Path))
+@click.option("--json", "as_json", is_flag=True, help="Print one object, an array for several inputs.")
+@click.option("--out", type=click.Path(path_type=Path), help="Write a report into this folder.")
+@click.option("--kind", "kinds", multiple=True, metavar="NAME=KIND", help="What a column of a table is.")
+@click.option("--degree", type=click.IntRange(1, 10), help="Degree of the elements of a table.")
+@click.option("--tolerance", metavar="5%|0.05", help="Accepted error of a table's values.")
+@click.option("--dimension", type=click.Choice([2, 3]), help="Dimension, where sizes follow from counts.")
+def judge(
+    inputs: tuple[Path, ...],
+    as_json: bool,
+    out: Path | None,
+    kinds: tuple[str, ...],
+    degree: int | None,
+    tolerance: str | None,
+    dimension: int | None,
+) -> int:
+    """Judge INPUTS: a table (.csv), a study (.toml) or the folder of a run.
+
+    The four options on tables are for bare tables; a study states them itself.
+    """
+    from convergence.cli import _judging
+    from convergence.cli._folder import report
+    from convergence.cli._show import show_json, show_table
+
+    said = _judging.Said(_judging.kinds_of(kinds), degree, _judging.tolerance_of(tolerance), dimension)
+    cases: list[_judging.Case] = []
+    faults: list[Fault] = []
+    for path in inputs:
+        try:
+            cases.append(_judging.judge_path(path, said))
+        except InputError as error:
+            faults += error.faults
+    if faults:
+        raise InputError(faults)
+    if as_json:
+        show_json([case.findings for case in cases])
+    for number, case in enumerate(cases):
+        if not as_json:
+            click.echo("\n" * (number > 0), nl=False)
+            show_table(case.findings, methods=True)
+        if out:
+            folder = out if len(cases) == 1 else out / case.name
+            command = "meshassay " + " ".join(sys.argv[1:])
+            page = report(
+                case.findings,
+                folder,
+                units=case.units,
+                study_text=case.study_text,
+                name=case.name,
+                command=command,
+            )
+            click.echo(f"Report: {page}", err=as_json)
+    return 0 if all(case.findings.all_sound for case in cases) else 1
