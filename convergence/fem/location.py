@@ -1,8 +1,8 @@
 """Where a place lies in a mesh: its cells and the local coordinates in each.
 
-A node belongs to every cell that shares it. Elsewhere the cell is found among the nearest ones by
-inverting its map; on meshes of degree 1 a place on a curved boundary may lie outside the chord by
-the sagitta and is then taken from the nearest cell.
+A node or a place on an edge belongs to every cell that shares it. Elsewhere the cell is found among the
+nearest ones by inverting its map; on meshes of degree 1 a place on a curved boundary may lie outside the
+chord by the sagitta and is then taken from the nearest cell.
 """
 
 import numpy as np
@@ -11,9 +11,9 @@ from scipy.spatial import KDTree
 from convergence.errors import Unsuitable
 from convergence.fem.mesh import Mesh
 
-CANDIDATES = 12
+CANDIDATES, MANY = 12, 200
 NEWTON_STEPS = 20
-OVERSHOOT = 0.3
+INSIDE, SHARED = 1e-6, 1e-8
 
 
 def locate(mesh: Mesh, place: tuple[float, float]) -> tuple[np.ndarray, np.ndarray]:
@@ -27,23 +27,38 @@ def locate(mesh: Mesh, place: tuple[float, float]) -> tuple[np.ndarray, np.ndarr
     if distance[nearest] < 1e-9 * mesh.part.size:
         local_nodes, cells = np.nonzero(dofs == nearest)
         return cells, mesh.skfem.elem.doflocs[local_nodes].T[:, :, None]
-    return locate_many(mesh, np.array(place)[:, None])
+    cells, local, excess = _search(mesh, np.array(place)[:, None])
+    sharing = excess[0] <= excess[0].min() + SHARED
+    return cells[0, sharing], local[:, 0, sharing][:, :, None]
 
 
 def locate_many(mesh: Mesh, places: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
     """Return one cell (n,) and local coordinates (2, n, 1) for each of the places (2, n)."""
-    centres = mesh.skfem.p[:, mesh.skfem.t].mean(axis=1)
-    count = min(CANDIDATES, mesh.cells)
-    candidates = KDTree(centres.T).query(places.T, k=count)[1].reshape(-1, count)
-    local = _invert(mesh, candidates.ravel(), np.repeat(places, count, axis=1))
-    excess = _excess(local, mesh.shape).reshape(-1, count)
-    best = excess.argmin(axis=1)
-    rows = np.arange(len(best))
-    outside = excess[rows, best] > OVERSHOOT
+    cells, local, excess = _search(mesh, places)
+    rows, best = np.arange(len(excess)), excess.argmin(axis=1)
+    return cells[rows, best], local[:, rows, best][:, :, None]
+
+
+def _search(mesh: Mesh, places: np.ndarray) -> tuple[np.ndarray, np.ndarray, np.ndarray]:
+    """Return for the cells around each place: numbers (n, k), local places (2, n, k), excess (n, k)."""
+    found = _around(mesh, places, CANDIDATES)
+    doubtful = found[2].min(axis=1) > INSIDE
+    if not doubtful.any():
+        return found
+    outside = doubtful.copy()
+    outside[doubtful] = ~mesh.part.contains(places[:, doubtful])
     if outside.any():
         x, y = places[:, outside][:, 0]
         raise Unsuitable([("at", (float(x), float(y)), "a place on the part")])
-    return candidates[rows, best], local.reshape(2, -1, count)[:, rows, best][:, :, None]
+    return _around(mesh, places, MANY)
+
+
+def _around(mesh: Mesh, places: np.ndarray, count: int) -> tuple[np.ndarray, np.ndarray, np.ndarray]:
+    centres = mesh.skfem.p[:, mesh.skfem.t].mean(axis=1)
+    count = min(count, mesh.cells)
+    cells = KDTree(centres.T).query(places.T, k=count)[1].reshape(-1, count)
+    local = _invert(mesh, cells.ravel(), np.repeat(places, count, axis=1))
+    return cells, local.reshape(2, -1, count), _excess(local, mesh.shape).reshape(-1, count)
 
 
 def _excess(local: np.ndarray, shape: str) -> np.ndarray:
@@ -72,7 +87,7 @@ def _invert(mesh: Mesh, cells: np.ndarray, places: np.ndarray) -> np.ndarray:
 def line_points(
     mesh: Mesh, start: tuple[float, float], end: tuple[float, float]
 ) -> tuple[np.ndarray, np.ndarray]:
-    """Return Gauss points (2, n) and weights (n,) along a straight line, four per cell size crossed."""
+    """Return Gauss points (2, n) and weights (n,) along a straight line, eight per cell size crossed."""
     a, b = np.array(start), np.array(end)
     length = float(np.hypot(*(b - a)))
     pieces = max(4, int(np.ceil(2.0 * length / mesh.h)))

@@ -117,6 +117,18 @@ class Part:
         along = np.concatenate([self.edge(*edge, steps) for edge in self.outline], axis=1)
         return float(np.hypot(*np.ptp(along, axis=1)))
 
+    def contains(self, places: np.ndarray) -> np.ndarray:
+        """Return which places (2, n) lie in the part or within 1e-5 of its size of it, by winding numbers."""
+        steps = np.linspace(0.0, 1.0, 201)
+        along = np.stack([self.edge(*edge, steps) for edge in self.outline], axis=1)
+        start, end = along[:, :, :-1].reshape(2, 1, -1), along[:, :, 1:].reshape(2, 1, -1)
+        to_start, to_end, side = start - places[:, :, None], end - places[:, :, None], end - start
+        turn = np.arctan2(to_start[0] * to_end[1] - to_start[1] * to_end[0], (to_start * to_end).sum(axis=0))
+        share = np.clip(-(to_start * side).sum(axis=0) / (side**2).sum(axis=0), 0.0, 1.0)
+        distance = np.hypot(*(to_start + share * side)).min(axis=1)
+        inside: np.ndarray = (turn.sum(axis=1) > np.pi) | (distance <= 1e-5 * self.size)
+        return inside
+
     def _family_lengths(self) -> dict[int, float]:
         lengths: dict[int, float] = {}
         for edge, number in self.families.items():

@@ -28,7 +28,7 @@ SAMPLES = {
 POWERS = {
     ("triangle", 1): ((0, 0), (1, 0), (0, 1)),
     ("triangle", 2): ((0, 0), (1, 0), (0, 1), (2, 0), (1, 1), (0, 2)),
-    ("quadrilateral", 1): ((0, 0), (1, 0), (0, 1), (1, 1)),
+    ("quadrilateral", 1): ((0, 0), (1, 0), (0, 1)),  # x y vanishes at the samples of a patch turned by 45°
     ("quadrilateral", 2): ((0, 0), (1, 0), (0, 1), (2, 0), (1, 1), (0, 2), (2, 1), (1, 2), (2, 2)),
 }
 SMALLEST_EIGENVALUE = 1e-7

@@ -7,11 +7,13 @@ from functools import cached_property
 import numpy as np
 from scipy import sparse
 
-from convergence.errors import Unsuitable
+from convergence.errors import SolvingError, Unsuitable
 from convergence.fem.assembly import load_vector, stiffness
 from convergence.fem.mesh import Mesh
 from convergence.fem.problem import Problem, Support
 from convergence.fem.solvers import direct
+
+LOOSE = 1e-12
 
 
 @dataclass(frozen=True, eq=False)
@@ -70,6 +72,7 @@ class Solution:
 def solve(problem: Problem, mesh: Mesh) -> Solution:
     """Solve a problem on a mesh. SolvingError where it cannot be solved."""
     held, numbers, values = _held(problem, mesh)
+    _require_no_rigid_motion(mesh, numbers)
     matrix, load = stiffness(problem, mesh), load_vector(problem, mesh)
     u = direct(matrix, load, numbers, values)
     return Solution(problem, mesh, matrix, load, u, held)
@@ -98,6 +101,17 @@ def _held(problem: Problem, mesh: Mesh) -> tuple[dict[str, np.ndarray], np.ndarr
         held[support.name] = np.concatenate(mine)
     numbers = np.flatnonzero(taken)
     return held, numbers, values[numbers]
+
+
+def _require_no_rigid_motion(mesh: Mesh, held: np.ndarray) -> None:
+    """Check that the held unknowns stop both shifts and the turn: balanced loads hide a loose part."""
+    x, y = (mesh.nodes - mesh.nodes.mean(axis=1, keepdims=True)) / mesh.part.size
+    ones, none = np.ones_like(x), np.zeros_like(x)
+    motions = np.array([[ones, none], [none, ones], [-y, x]]).transpose(0, 2, 1).reshape(3, -1)[:, held]
+    stopped, modes = np.linalg.eigh(motions @ motions.T)
+    if stopped[0] <= LOOSE * stopped[-1]:
+        way = ("move along x", "move along y", "turn")[int(np.abs(modes[:, 0]).argmax())]
+        raise SolvingError(f"the supports do not hold the part: it can still {way}; hold it there")
 
 
 def support_nodes(support: Support, mesh: Mesh) -> np.ndarray:

@@ -1,0 +1,149 @@
+"""Rates of convergence against every exact solution, for every cell shape and degree k.
+
+Theory for a smooth solution (Strang & Fix 1973, An Analysis of the Finite Element Method, ch. 3):
+displacement h^(k+1) in L2, stress h^k in the energy norm, strain energy h^(2k). With a corner of
+exponent l (Szabo & Babuska 1991, ch. 10): 2 min(k, l) for the energy, min(k, l) + l for the
+displacement. The order seen on the two finest of four meshes is off by what the next power of h leaves:
+a term of relative size c h changes it by c h / ln 2, below 0.1 here once meshes have 500 cells.
+"""
+
+from collections.abc import Callable
+from typing import Any
+
+import numpy as np
+import pytest
+
+from convergence import rooms
+from convergence.fem.material import Material, PlaneKind
+from convergence.fem.mesh import Shape
+from convergence.fem.problem import Problem
+from convergence.fem.recovery import exact_energy_error
+from convergence.fem.solution import Solution
+
+Climb = Callable[..., list[Solution]]
+SHAPES: tuple[Shape, ...] = ("triangle", "quadrilateral")
+STEEL = Material(210000.0, 0.3)
+EXACT_EVERYWHERE = "patch_test"
+SINGULAR = "l_domain"
+NEXT_POWER = 0.1
+
+
+def with_exact() -> list[str]:
+    return [
+        name for name in rooms.names("models") if rooms.find("models", name)(material=STEEL).exact is not None
+    ]
+
+
+SMOOTH = [name for name in with_exact() if name not in (EXACT_EVERYWHERE, SINGULAR)]
+BOTH_KINDS = pytest.mark.parametrize("kind", ["plane stress", "plane strain"])
+BOTH_SHAPES = pytest.mark.parametrize("shape", SHAPES)
+BOTH_DEGREES = pytest.mark.parametrize("degree", [1, 2])
+
+
+def model(name: str, kind: PlaneKind, **arguments: Any) -> Problem:
+    problem: Problem = rooms.find("models", name)(material=STEEL, kind=kind, **arguments)
+    return problem
+
+
+def exact_energy(problem: Problem) -> float:
+    assert problem.exact is not None
+    assert problem.exact.energy is not None
+    return problem.exact.energy
+
+
+def last_order(solutions: list[Solution], errors: list[float]) -> float:
+    coarse, fine = errors[-2:]
+    return float(np.log(coarse / fine) / np.log(solutions[-2].mesh.h / solutions[-1].mesh.h))
+
+
+def test_the_sweep_has_every_exact_solution() -> None:
+    assert {"thick_cylinder", "perforated_plate", "exact_cantilever"} <= set(SMOOTH)
+    assert {EXACT_EVERYWHERE, SINGULAR} <= set(with_exact())
+
+
+def test_last_order_tells_orders_apart() -> None:
+    class Fake:
+        def __init__(self, h: float):
+            self.mesh = type("M", (), {"h": h})
+
+    levels: Any = [Fake(0.4), Fake(0.2)]
+    assert last_order(levels, [0.4**2, 0.2**2]) == pytest.approx(2.0)
+    assert abs(last_order(levels, [0.4**1.8, 0.2**1.8]) - 2.0) > NEXT_POWER
+
+
+@BOTH_DEGREES
+@BOTH_SHAPES
+@BOTH_KINDS
+def test_patch_test_is_exact(
+    climb: Climb, displacement_error: Any, kind: PlaneKind, shape: Shape, degree: int
+) -> None:
+    problem = model(EXACT_EVERYWHERE, kind)
+    largest = 1e-3 * 1.5 * 240.0
+    for solution in climb(problem, shape, degree, 1, 2):
+        # rounding: 1e-16 times a condition number below 1e4
+        assert displacement_error(solution) < 1e-12 * largest * np.sqrt(solution.mesh.area)
+        assert exact_energy_error(solution).sum() < 1e-20 * exact_energy(problem)
+        assert solution.energy == pytest.approx(exact_energy(problem), rel=1e-12)
+
+
+@BOTH_DEGREES
+@BOTH_SHAPES
+@BOTH_KINDS
+@pytest.mark.parametrize("name", SMOOTH)
+def test_smooth_rates(
+    climb: Climb, displacement_error: Any, name: str, kind: PlaneKind, shape: Shape, degree: int
+) -> None:
+    problem = model(name, kind)
+    solutions = climb(problem, shape, degree, 2, 4)
+    norms = [float(np.sqrt(exact_energy_error(solution).sum())) for solution in solutions]
+    assert last_order(solutions, norms) == pytest.approx(degree, abs=NEXT_POWER)
+    found = last_order(solutions, [displacement_error(solution) for solution in solutions])
+    # quadratic triangles come from above: their h^4 part is large on the coarse meshes
+    assert degree + 1 - NEXT_POWER < found < degree + 1 + 3 * NEXT_POWER
+    exact = exact_energy(problem)
+    errors = [exact - solution.energy for solution in solutions]
+    if prescribed(problem):
+        # two parts of opposite sign: the bound O(h^(2k)) holds for the ladder, not from level to level
+        mean_order = np.log2(abs(errors[0] / errors[-1])) / (len(errors) - 1)
+        assert mean_order > 2 * degree - 2 * NEXT_POWER
+    else:
+        assert min(errors) > 0
+        assert last_order(solutions, errors) == pytest.approx(2 * degree, abs=NEXT_POWER)
+
+
+def prescribed(problem: Problem) -> bool:
+    """Return whether displacements other than zero are held; the energy's error then has two signs."""
+    return any(callable(support.x) or callable(support.y) for support in problem.supports)
+
+
+@BOTH_DEGREES
+@BOTH_SHAPES
+@BOTH_KINDS
+@pytest.mark.parametrize("mode", ["I", "II"])
+def test_singular_rates(
+    climb: Climb, published: Any, mode: str, kind: PlaneKind, shape: Shape, degree: int
+) -> None:
+    """The corner's h^(2 l) after the smooth part's h^(2k), known in power, is eliminated."""
+    exponent = published["l_domain"]["exponents"][mode]
+    problem = model(SINGULAR, kind, mode=mode)
+    solutions = climb(problem, shape, degree, 2, 5)
+    errors = np.array([exact_energy(problem) - solution.energy for solution in solutions])
+    assert (errors > 0).all()
+    assert (np.diff(errors) < 0).all()
+    singular = errors[:-1] - 4.0**degree * errors[1:]
+    order = np.log2(singular[:-1] / singular[1:])
+    # what is left are powers 2 l + 1 and above: a tenth of a power on meshes of 1536 cells
+    assert order[-1] == pytest.approx(2 * min(degree, exponent), abs=NEXT_POWER)
+
+
+@BOTH_SHAPES
+@BOTH_KINDS
+@pytest.mark.parametrize("mode", ["I", "II"])
+def test_singular_displacement(
+    climb: Climb, displacement_error: Any, published: Any, mode: str, kind: PlaneKind, shape: Shape
+) -> None:
+    """Quadratic cells only: with linear ones h^2 and h^(2 l) cannot be told apart on these meshes."""
+    exponent = published["l_domain"]["exponents"][mode]
+    solutions = climb(model(SINGULAR, kind, mode=mode), shape, 2, 2, 4)
+    found = last_order(solutions, [displacement_error(solution) for solution in solutions])
+    assert found == pytest.approx(2 * exponent, abs=NEXT_POWER)
