@@ -18,6 +18,7 @@ PARTS = {
     "least_squares": "least-squares uncertainty",
     "last change": "last change",
 }
+LEAST_ORDER = 0.05
 
 
 @dataclass(frozen=True)
@@ -124,4 +125,6 @@ def _flaw(h: np.ndarray, f: np.ndarray, usable: np.ndarray, manner: str, formal_
     if manner.endswith("divergence"):
         order = observed_order(h, usable)
         return f"the last three levels show {manner}, observed order {order:.2f}: the changes grow"
+    if manner == "monotone convergence" and observed_order(h, usable) < LEAST_ORDER:
+        return "the changes of the last three levels hardly shrink: growth like log h looks the same"
     return ""

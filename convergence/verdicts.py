@@ -30,7 +30,7 @@ def verdict(
     """Return the statement on a quantity; `spoiled` has the verdicts that failed checks force, with why."""
     expected = expected_order(quantity, facts)
     tolerance = accepted(quantity, found.value)
-    word = _word(found, tolerance, spoiled)
+    word = _word(quantity, found, tolerance, spoiled)
     ahead = _next_mesh(found, tolerance, expected, ladder, facts) if word == "refine" else Next()
     stated = word != "singular"
     return Verdict(
@@ -67,16 +67,21 @@ def accepted(quantity: Quantity, value: float) -> float:
     return max(relative, quantity.absolute or 0.0)
 
 
-def _word(found: Interval, tolerance: float, spoiled: Mapping[str, str]) -> VerdictWord:
+def _word(quantity: Quantity, found: Interval, tolerance: float, spoiled: Mapping[str, str]) -> VerdictWord:
     if "singular" in spoiled:
         return "singular"
     if spoiled or found.flaw or found.levels < 3:
         return "unproven"
     if found.half_width <= tolerance:
         return "sound"
-    if tolerance <= 0.0 or found.behaviour == "constant":
+    if tolerance <= 0.0 or found.behaviour == "constant" or _nothing_to_relate(quantity, found):
         return "unproven"
     return "refine"
+
+
+def _nothing_to_relate(quantity: Quantity, found: Interval) -> bool:
+    """Return whether only a relative tolerance is given and the value may be zero."""
+    return not quantity.absolute and abs(found.value) <= found.half_width
 
 
 def _next_mesh(
@@ -164,7 +169,7 @@ def _about_tolerance(
     parts += [f"{quantity.absolute:.4g} {quantity.unit}".strip()] if quantity.absolute else []
     assumed = " (assumed, none was given)" if quantity.assumed_tolerance else ""
     accepted_text = f"Accepted: {' or '.join(parts)}{assumed}, that is {tolerance:.4g}."
-    if not quantity.absolute and abs(found.value) <= found.half_width and word != "sound":
+    if word != "sound" and _nothing_to_relate(quantity, found):
         accepted_text += " The value is zero within its interval: give an absolute_tolerance."
     lines = [accepted_text]
     if word == "refine" and math.isfinite(ahead.h):

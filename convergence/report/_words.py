@@ -75,7 +75,7 @@ def order_text(verdict: Verdict) -> str:
     theory = verdict.formal_order if verdict.expected_order is None else verdict.expected_order
     theory = None if verdict.word == "singular" else theory
     shown = numbers.NONE if theory is None else numbers.compact(theory, 3)
-    return f"{numbers.significant(verdict.observed_order, 3)} / {shown}"
+    return f"{numbers.order(verdict.observed_order)} / {shown}"
 
 
 def next_step(verdict: Verdict, length: str = "") -> str:

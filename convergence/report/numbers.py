@@ -47,6 +47,12 @@ def significant(value: float, digits: int = 4) -> str:
     return _text(_round(number, number.adjusted() - digits + 1))
 
 
+def order(value: float) -> str:
+    """Return an order of accuracy to two decimals: more are never supported by three values."""
+    special = _special(value)
+    return special if special is not None else _text(_round(_decimal(value), -2))
+
+
 def _without_fill(number: str) -> str:
     """Drop zeros behind the point that only fill up digits."""
     mantissa, mark, power = number.partition("e")

@@ -70,7 +70,7 @@ def _estimates(estimates: Mapping[str, Estimate], quantity: Quantity) -> Html:
             html.element("a", {"href": f"#method-{name}"}, text(_words.plain(name))),
             text(numbers.rounded(estimate.limit, estimate.uncertainty)),
             text(numbers.significant(estimate.uncertainty, 3)),
-            text(numbers.significant(estimate.order, 3)),
+            text(numbers.order(estimate.order)),
             text(estimate.remark or "its conditions hold"),
         ]
         for name, estimate in estimates.items()

@@ -3,7 +3,7 @@
 import math
 
 from convergence.report import _words
-from convergence.report.numbers import percent, significant
+from convergence.report.numbers import order, percent, significant
 from convergence.results import Findings
 
 METHOD_COLUMNS = ("method", "order", "limit", "half-width", "of the value")
@@ -40,7 +40,7 @@ def method_rows(findings: Findings, name: str) -> list[tuple[str, ...]]:
         rows.append(
             (
                 _words.plain(method),
-                significant(estimate.order),
+                order(estimate.order),
                 significant(estimate.limit, 6),
                 significant(estimate.uncertainty),
                 share,
