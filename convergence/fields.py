@@ -10,14 +10,15 @@ import numpy as np
 class Fields:
     """One solved level. All arrays are float64 or int64.
 
-    points (2, n) nodes; cells (3 or 4, m) vertex indices of each cell, counter-clockwise; boundary
-    (2, b) vertex indices of boundary segments; displacement (2, n); von_mises (n,) recovered stress at
-    the nodes; error (m,) recovered energy-norm error of each cell, squared, per unit area.
-    Degree-2 meshes are cut into four cells each, so that curved edges and gradients show.
+    points (2, n) nodes; cells (3 or 4, m) node indices of each cell, counter-clockwise; edges (2 or 3, e)
+    the nodes along each edge of the mesh; boundary (2, b) nodes of boundary segments; displacement (2, n);
+    von_mises (n,) recovered stress at the nodes; error (m,) recovered energy-norm error of each cell,
+    squared, per unit area. In `cells` those of degree 2 are cut into four, so that gradients show.
     """
 
     points: np.ndarray
     cells: np.ndarray
+    edges: np.ndarray
     boundary: np.ndarray
     displacement: np.ndarray
     von_mises: np.ndarray

@@ -62,7 +62,7 @@ def interval(
     noise = noise_floor(y, resolution)
     manner = behaviour(x, y, noise)
     widths = _widths(x, y, estimates, noise, formal_order)
-    flaw = _flaw(x, f, y, manner, formal_order)
+    flaw = _flaw(x, f, y, manner, formal_order, estimates["least_squares"].order)
     half = max(widths.values(), default=math.nan)
     if manner == "constant":
         half = max(noise, float(np.ptp(y[-3:])))
@@ -112,8 +112,18 @@ def _limit(f: np.ndarray, estimates: Mapping[str, Estimate], manner: str) -> flo
     return math.nan
 
 
-def _flaw(h: np.ndarray, f: np.ndarray, usable: np.ndarray, manner: str, formal_order: float | None) -> str:
-    """Return why no interval can be stated, "" where one can."""
+def _flaw(
+    h: np.ndarray,
+    f: np.ndarray,
+    usable: np.ndarray,
+    manner: str,
+    formal_order: float | None,
+    fitted_order: float,
+) -> str:
+    """Return why no interval can be stated, "" where one can.
+
+    Diverging changes of the last three levels are no flaw where the fit over all levels converges.
+    """
     if len(usable) == 0 or not math.isfinite(f[-1]):
         return "the finest level has no value"
     if np.any(h[1:] >= h[:-1]):
@@ -122,7 +132,7 @@ def _flaw(h: np.ndarray, f: np.ndarray, usable: np.ndarray, manner: str, formal_
         return "one level says nothing about its error; add at least two more"
     if len(usable) == 2 and formal_order is None:
         return "two levels say nothing about the order, and theory's is not known; add a level"
-    if manner.endswith("divergence"):
+    if manner.endswith("divergence") and not math.isfinite(fitted_order):
         order = observed_order(h, usable)
         return f"the last three levels show {manner}, observed order {order:.2f}: the changes grow"
     if manner == "monotone convergence" and observed_order(h, usable) < LEAST_ORDER:

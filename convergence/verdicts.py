@@ -145,6 +145,12 @@ def _about_order(found: Interval, formal: float | None, expected: float | None) 
     if not math.isfinite(found.order):
         return []
     lines = [f"The last three levels show {found.behaviour}, observed order {found.order:.2f}."]
+    if found.behaviour.endswith("divergence"):
+        fitted = found.estimates["least_squares"].order
+        return [
+            *lines,
+            f"All levels together converge with order {fitted:.2f}, so these changes are scatter.",
+        ]
     if expected is None or formal is None:
         return lines
     cause = (

@@ -75,7 +75,7 @@ def _peaks(ladder: Ladder, facts: Facts) -> dict[str, tuple[float, float]]:
     ]
     reached = {name for name in names if facts.covered.get(name)} | ({PEAK} if facts.corners else set())
     peaks = {}
-    for name in (*names, PEAK):
+    for name in (*names, PEAK) if ladder.levels else ():
         value = float(ladder.column(name)[-1])
         upper = np.nan if name in reached else facts.intervals.get(name, (np.nan, np.nan))[1]
         if np.isfinite(value):

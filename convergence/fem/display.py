@@ -2,6 +2,7 @@
 
 import numpy as np
 
+from convergence.fem.mesh import Mesh
 from convergence.fem.recovery import energy_error, nodal_values, recovered_stress
 from convergence.fem.solution import Solution
 from convergence.fem.stress import component
@@ -29,6 +30,7 @@ def display(solution: Solution) -> Fields:
     return Fields(
         points=mesh.nodes,
         cells=cells,
+        edges=_edges(mesh),
         boundary=_boundary(cells),
         displacement=solution.displacement,
         von_mises=component(nodal_values(solution, recovered), "von_mises"),
@@ -43,6 +45,14 @@ def _pieces(shape: str, degree: int, doflocs: np.ndarray) -> list[tuple[int, ...
         return [tuple(range(corners))]
     number = [int(np.hypot(*(doflocs - place).T).argmin()) for place in PLACES[shape]]
     return [tuple(number[node] for node in piece) for piece in PIECES[shape]]
+
+
+def _edges(mesh: Mesh) -> np.ndarray:
+    """Return the nodes along each edge (2, e), with the one in the middle (3, e) at degree 2."""
+    start, end = mesh.skfem.facets
+    if mesh.degree == 1:
+        return np.array([start, end])
+    return np.array([start, mesh.skfem.dofs.facet_dofs[0], end])
 
 
 def _boundary(cells: np.ndarray) -> np.ndarray:

@@ -11,7 +11,7 @@ if TYPE_CHECKING:
     from matplotlib.axes import Axes
 
 PAGE_WIDTH = 9.4
-MOST_EDGES = 120_000  # more would print as a black patch
+CLOSEST_EDGES = 2.5  # points on the page; closer ones print as a black patch
 
 
 def size_of(points: np.ndarray) -> float:
@@ -48,23 +48,26 @@ def triangles(cells: np.ndarray) -> np.ndarray:
     return np.hstack((cells[[0, 1, 2]], cells[[0, 2, 3]])).T
 
 
-def too_dense(fields: Fields) -> bool:
-    """Tell whether the edges are too many to be told apart on a page."""
-    return fields.cells.size > 2 * MOST_EDGES
+def edge_length(fields: Fields, width: float) -> float:
+    """Return the median length of an edge in points on a panel of that width in inches."""
+    ends = fields.points[:, fields.edges[[0, -1]]]
+    length = float(np.median(np.hypot(*(ends[:, 0] - ends[:, 1]))))
+    return length * 72 * width / max(float(np.ptp(fields.points[0])), 1e-300)
+
+
+def too_dense(fields: Fields, width: float) -> bool:
+    """Tell whether the edges cannot be told apart on a panel of that width."""
+    return edge_length(fields, width) < CLOSEST_EDGES
 
 
 def edges(axes: "Axes", fields: Fields, width: float) -> None:
-    """Draw every edge once, thinner where cells are small; `width` of the panel in inches."""
+    """Draw every edge, thinner where cells are small; `width` of the panel in inches."""
     from matplotlib.collections import LineCollection
 
-    count = len(fields.cells)
-    pairs = np.hstack([fields.cells[[k, (k + 1) % count]] for k in range(count)])
-    pairs = np.unique(np.sort(pairs, axis=0), axis=1)
-    lines = LineCollection(list(fields.points[:, pairs].transpose(2, 1, 0)), colors="#27425c")
-    length = float(np.median(np.hypot(*(fields.points[:, pairs[0]] - fields.points[:, pairs[1]]))))
-    lines.set_linewidth(float(np.clip(0.1 * length * 72 * width / size_of(fields.points), 0.12, 0.6)))
+    lines = LineCollection(list(fields.points[:, fields.edges].transpose(2, 1, 0)), colors="#27425c")
+    lines.set_linewidth(float(np.clip(0.1 * edge_length(fields, width), 0.15, 0.6)))
     lines.set_snap(False)
-    lines.set_rasterized(pairs.shape[1] > 3000)
+    lines.set_rasterized(fields.edges.shape[1] > 3000)
     axes.add_collection(lines)
 
 

@@ -22,6 +22,8 @@ from convergence.report.sections_quantity import quantities_section
 from convergence.report.sections_statement import statement_section
 from convergence.results import Findings, Quantity
 
+ROUND_OFF = 1e-7  # an energy-norm error below this share is no error to draw
+
 
 def write_report(
     findings: Findings,
@@ -112,14 +114,16 @@ def _field_parts(
 ) -> tuple[list[tuple[str, str, html.Html]], list[Picture]]:
     """Return the sections that need a mesh, with anchor and title, and their pictures."""
     parts, pictures = [], []
-    errors = [norm_figure(findings.ladder, findings.facts, units.length)]
+    exact = findings.ladder.column("energy_norm.estimated")[-1] < ROUND_OFF
+    errors = [] if exact else [norm_figure(findings.ladder, findings.facts, units.length)]
     if fields:
         meshes = mesh_figure(fields, findings.ladder, units.length)
         stress = stress_figure(fields[-1], findings, units.stress)
         parts.append(("meshes", "Meshes", sections_fields.meshes_section(meshes)))
         parts.append(("stress", "Stress", sections_fields.stress_section(findings, stress)))
         pictures += [meshes, stress]
-        errors.insert(0, error_map(fields[-1], units))
+        if not exact:
+            errors.insert(0, error_map(fields[-1], units))
     drawn = [picture for picture in errors if picture is not None]
     if drawn:
         parts.append(("error", "Error", sections_fields.error_section(drawn)))

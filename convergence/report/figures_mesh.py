@@ -24,7 +24,7 @@ def mesh_figure(fields: Sequence[Fields], ladder: Ladder, length: str) -> Pictur
     def paint(figure: "Figure") -> None:
         for number, (level, field) in enumerate(zip(levels, fields, strict=True), start=first):
             axes = figure.add_subplot(rows, columns, number - first + 1)
-            if _plane.too_dense(field):
+            if _plane.too_dense(field, width):
                 _plane.tint(axes, field)
             else:
                 _plane.edges(axes, field, width)
@@ -33,8 +33,8 @@ def mesh_figure(fields: Sequence[Fields], ladder: Ladder, length: str) -> Pictur
             between = ", " if width > 2.4 else "\n"
             axes.set_title(f"level {number}: {numbers.count(level.cells)} cells{between}{size}")
 
-    caption = "Same view and scale. Cells of degree 2 are drawn as four."
-    dense = [str(n) for n, field in enumerate(fields, start=first) if _plane.too_dense(field)]
+    caption = "Same view and scale."
+    dense = [str(n) for n, field in enumerate(fields, start=first) if _plane.too_dense(field, width)]
     if dense:
         caption += f" Of level {' and '.join(dense)} the outline only: its cells are too small to print."
     alt = f"Meshes of {numbers.several(len(fields), 'level')} from coarse to fine in the same view and scale"

@@ -17,7 +17,7 @@ if TYPE_CHECKING:
 def error_figure(
     stem: str, quantity: Quantity, verdict: Verdict, ladder: Ladder, length: str
 ) -> Picture | None:
-    """Return the figure, None where no difference is left to draw.
+    """Return the figure, None where no difference beyond round-off is left to draw.
 
     Without a stated limit the changes from level to level are drawn: they fall with the same order.
     """
@@ -25,7 +25,7 @@ def error_figure(
     limited = math.isfinite(verdict.limit)
     errors = np.abs(values - verdict.limit) if limited else np.abs(np.diff(values, prepend=np.nan))
     drawn = np.isfinite(errors) & (errors > 0)
-    if not drawn.any():
+    if verdict.behaviour == "constant" or not drawn.any():
         return None
     what = "difference from the limit" if limited else "change from the level before"
 

@@ -122,7 +122,7 @@ def _mark(axes: "Axes", field: Fields, factor: float, marks: Sequence[Peak]) -> 
             markerfacecolor="#ffffff99",
             markeredgecolor="black",
             linestyle="none",
-            label=f"peak of {middle(mark.names)}",
+            label=f"place of {middle(mark.names)}",
             zorder=6,
         )
     if marks:

@@ -61,7 +61,7 @@ def _view(values: np.ndarray, verdict: Verdict) -> tuple[float, float, list[str]
     for name, pair in stated.items():
         if not all(math.isfinite(end) for end in pair):
             continue
-        if span == 0 or pair[1] - pair[0] <= 4 * span:
+        if span <= 1e-9 * max(map(abs, ends)) or pair[1] - pair[0] <= 4 * span:
             ends.extend(pair)
         elif pair[0] < min(ends) - 0.1 * span or pair[1] > max(ends) + 0.1 * span:
             cut.append(name)

@@ -66,7 +66,7 @@ def make_fields(divisions: int) -> Fields:
     radius = np.hypot(points[0] - 60, points[1] - 60) + 30.0 / divisions
     middle = points[:, cells].mean(axis=1)
     return Fields(
-        points=points, cells=cells, boundary=pairs[:, first[times == 1]],
+        points=points, cells=cells, edges=pairs[:, first], boundary=pairs[:, first[times == 1]],
         displacement=np.vstack((1e-3 * points[1] ** 2 / 120, -2e-3 * points[0] ** 2 / 120)),
         von_mises=220 * radius**-0.45 + 0.4 * np.abs(points[1] - 60),
         error=1e-4 / ((np.hypot(*(middle - 60)) + 3.0) ** 2),
