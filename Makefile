@@ -34,11 +34,13 @@ check: $(READY) ## format, lint, types and the fast tests
 	$(BIN)/mypy
 	$(BIN)/python -m pytest -m "not slow"
 
-figures: $(READY) ## redraw figures/ from two studies: the lug and the sharp bracket
+figures: $(READY) ## redraw the README's pictures from two studies: the lug and the sharp bracket
 	@for study in lug bracket_sharp; do \
 	  $(BIN)/meshassay run studies/$$study.toml || [ $$? -eq 1 ] || exit 3; \
-	  mkdir -p figures/$$study && cp out/$$study/figures/*.svg figures/$$study/ || exit 3; \
 	done
+	cp out/lug/figures/stress.png figures/lug-stress.png
+	cp out/lug/figures/hole-peak-value.svg figures/lug-hole-peak.svg
+	cp out/bracket_sharp/figures/corner-stress-growth.svg figures/bracket-corner-growth.svg
 
 calibrate: $(READY) ## measure how often each estimate covers the exact value: figures/coverage.md
 	$(BIN)/python -m convergence.calibration

@@ -32,7 +32,8 @@ class Level:
 class Ladder:
     """Levels from coarse to fine; index 0 is the coarsest.
 
-    `resolution` is half a unit of the last printed digit where the values came from print.
+    `resolution` is half a unit of the last printed digit where the values came from print; `h_unit` the
+    unit of the sizes, "" where it is not known or they are relative.
     """
 
     levels: tuple[Level, ...]
@@ -40,6 +41,7 @@ class Ladder:
     fingerprint: str = ""
     remarks: tuple[str, ...] = ()
     resolution: Mapping[str, float] = field(default_factory=dict)
+    h_unit: str = ""
 
     @property
     def h(self) -> np.ndarray:

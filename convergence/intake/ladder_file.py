@@ -34,7 +34,12 @@ def write_ladder(ladder: Ladder, path: Path) -> None:
     names = list(dict.fromkeys(name for level in ladder.levels for name in level.values))
     text = io.StringIO()
     text.write(f"# meshassay ladder, fingerprint {ladder.fingerprint}, levels {len(ladder.levels)}\n")
-    about = {"source": ladder.source, "resolution": dict(ladder.resolution), "remarks": list(ladder.remarks)}
+    about = {
+        "source": ladder.source,
+        "h_unit": ladder.h_unit,
+        "resolution": dict(ladder.resolution),
+        "remarks": list(ladder.remarks),
+    }
     text.write(f"# {json.dumps(about, ensure_ascii=False)}\n")
     writer = csv.writer(text, lineterminator="\n")
     writer.writerow([*COST, *names])
@@ -65,6 +70,7 @@ def read_ladder(path: Path) -> Ladder:
             fingerprint=found[1],
             remarks=tuple(facts["remarks"]),
             resolution=facts["resolution"],
+            h_unit=facts["h_unit"],
         )
     except (ValueError, KeyError, IndexError, TypeError, csv.Error):
         raise InputError([Fault(str(path), "a damaged ladder", _REPAIR)]) from None

@@ -61,12 +61,15 @@ def read_table(path: Path, *, size: str | None = None, dimension: int = 2) -> tu
     remarks = [f"column {name!r} has no number and is ignored" for name in empty]
     if len(levels) < len(rows):
         remarks.append(f"rows that repeat another exactly are dropped: {len(rows) - len(levels)}")
+    if by.lower() in COUNTS:
+        remarks.append(f"sizes are relative, h = (1/N)^(1/{dimension}) from the column {by!r}")
     printed = {name: [cell for cell in kept[name] if not _no_number(cell)] for name in quantities}
     ladder = Ladder(
         levels=tuple(levels),
         source=str(path),
         remarks=tuple(remarks),
         resolution={name: resolution(cells) for name, cells in printed.items()},
+        h_unit="" if by.lower() in COUNTS else units[by],
     )
     return ladder, {name: units[name] for name in (by, *quantities)}
 

@@ -60,5 +60,6 @@ pre { background: var(--tint); padding: .8rem 1rem; overflow-x: auto; font-size:
 @media print { nav { display: none; } body { font-size: 10.5pt; background: #fff; color: #000; }
   main { max-width: none; padding: 0; } figure, tr, blockquote { break-inside: avoid; }
   h2, h3 { break-after: avoid; } pre { white-space: pre-wrap; }
-  .pictures { grid-template-columns: 1fr 1fr; } }
+  .pictures { grid-template-columns: 1fr 1fr; } .scroll { overflow: visible; }
+  table { font-size: 7.5pt; } th, td { padding: 0.2rem 0.35rem; } }
 """

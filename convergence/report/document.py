@@ -42,11 +42,11 @@ def write_report(
     replaced as a whole, the page last; figures of an earlier run that are not drawn any more go.
     The same input gives the same bytes.
     """
-    by_quantity = _quantity_pictures(findings, units.length)
+    by_quantity = _quantity_pictures(findings, findings.ladder.h_unit)
     field_parts, field_pictures = _field_parts(findings, fields, units)
     sections = [
-        ("statement", "Statement", statement_section(findings, units.length)),
-        ("quantities", "Quantities", quantities_section(findings, by_quantity, units.length)),
+        ("statement", "Statement", statement_section(findings, findings.ladder.h_unit)),
+        ("quantities", "Quantities", quantities_section(findings, by_quantity, findings.ladder.h_unit)),
         ("checks", "Checks", checks_section(findings)),
         *field_parts,
         ("interval", "Interval", made_section(findings)),
@@ -115,9 +115,9 @@ def _field_parts(
     """Return the sections that need a mesh, with anchor and title, and their pictures."""
     parts, pictures = [], []
     exact = findings.ladder.column("energy_norm.estimated")[-1] < ROUND_OFF
-    errors = [] if exact else [norm_figure(findings.ladder, findings.facts, units.length)]
+    errors = [] if exact else [norm_figure(findings.ladder, findings.facts, findings.ladder.h_unit)]
     if fields:
-        meshes = mesh_figure(fields, findings.ladder, units.length)
+        meshes = mesh_figure(fields, findings.ladder, findings.ladder.h_unit)
         stress = stress_figure(fields[-1], findings, units.stress)
         parts.append(("meshes", "Meshes", sections_fields.meshes_section(meshes)))
         parts.append(("stress", "Stress", sections_fields.stress_section(findings, stress)))
