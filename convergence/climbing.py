@@ -58,7 +58,8 @@ def plan(spec: LadderSpec, problem: Problem) -> list[dict[int, int]]:
 
 
 def _save(study: Study, levels: list[Level], folder: Path) -> None:
-    write_ladder(Ladder(tuple(levels), study.file.name, study.fingerprint), folder / LADDER)
+    ladder = Ladder(tuple(levels), study.file.name, study.fingerprint, h_unit=study.units.length)
+    write_ladder(ladder, folder / LADDER)
 
 
 def _saved(study: Study, folder: Path, wanted: int) -> list[Level]:

@@ -134,7 +134,8 @@ def _flaw(
         return "two levels say nothing about the order, and theory's is not known; add a level"
     if manner.endswith("divergence") and not math.isfinite(fitted_order):
         order = observed_order(h, usable)
-        return f"the last three levels show {manner}, observed order {order:.2f}: the changes grow"
+        stated = f", observed order {order:.2f}" if math.isfinite(order) else ""
+        return f"the last three levels show {manner}{stated}: the changes grow"
     if manner == "monotone convergence" and observed_order(h, usable) < LEAST_ORDER:
         return "the changes of the last three levels hardly shrink: growth like log h looks the same"
     return ""

@@ -6,11 +6,12 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from convergence.intervals import Interval
+from convergence.intervals import LEAST_ORDER, Interval
 from convergence.results import Facts, Ladder, Level, Quantity, Verdict, VerdictWord
 
-LEAST_ORDER, MOST_ORDER = 0.3, 4.0
+MOST_ORDER = 4.0
 AFFORDABLE_DOFS = 5e7
+OUT_OF_REACH = 1e-40
 NO_COVERAGE = "its coverage has not been calibrated"
 
 
@@ -87,11 +88,13 @@ def _nothing_to_relate(quantity: Quantity, found: Interval) -> bool:
 def _next_mesh(
     found: Interval, tolerance: float, expected: float | None, ladder: Ladder, facts: Facts
 ) -> Next:
-    order = found.order if math.isfinite(found.order) else (expected or 1.0)
+    scattered = found.behaviour.endswith("divergence")
+    order = found.estimates["least_squares"].order if scattered else found.order
+    order = order if math.isfinite(order) else (expected or 1.0)
     ceiling = MOST_ORDER if expected is None else min(expected, MOST_ORDER)
     order = min(max(order, LEAST_ORDER), max(ceiling, LEAST_ORDER))
     finest = ladder.levels[-1]
-    h = finest.h * (tolerance / found.half_width) ** (1.0 / order)
+    h = finest.h * max((tolerance / found.half_width) ** (1.0 / order), OUT_OF_REACH)
     growth = (finest.h / h) ** facts.dimension
     return Next(
         h,

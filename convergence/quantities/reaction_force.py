@@ -1,7 +1,8 @@
 """Reaction force of a support, from the nodal forces K u − f.
 
 Order 2p on a smooth solution (Babuska & Miller 1984, Int. J. Numer. Meth. Engng 20:1085). Where
-equilibrium alone fixes the reaction, it is the same on every mesh and says nothing about the mesh.
+equilibrium alone fixes the reaction, it is the same on every mesh and says nothing about the mesh. Where
+two supports hold one component of a node, the first one has its force, a share that falls with h only.
 """
 
 from collections.abc import Mapping

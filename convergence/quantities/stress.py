@@ -1,7 +1,8 @@
 """Stress at a point: a component, a principal or the von Mises stress.
 
 Recovered stress: order p + 1 (Zienkiewicz & Zhu 1992, Int. J. Numer. Meth. Engng 33:1331). Direct: the
-elements' own stress, averaged over the cells that meet at the point, order p.
+elements' own stress, averaged over the cells that meet at the point, order p. Recovered stress too keeps
+only p on the boundary of triangle meshes and between the vertices of quadratic triangles.
 """
 
 from collections.abc import Mapping

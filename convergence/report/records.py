@@ -6,9 +6,10 @@ from dataclasses import asdict
 from importlib import metadata
 from typing import Any
 
+from convergence import __version__
 from convergence.results import Check, Estimate, Findings, Level, Quantity, Verdict
 
-PACKAGES = ("meshassay", "numpy", "scipy", "scikit-fem")
+PACKAGES = ("numpy", "scipy", "scikit-fem")
 
 
 def _number(value: float | None) -> float | None:
@@ -107,13 +108,8 @@ def _facts(findings: Findings) -> dict[str, Any]:
 
 def versions() -> dict[str, str]:
     """Return the versions that the numbers depend on."""
-    found = {"python": platform.python_version()}
-    for package in PACKAGES:
-        try:
-            found[package] = metadata.version(package)
-        except metadata.PackageNotFoundError:
-            found[package] = "not installed as a package"
-    return found
+    found = {"meshassay": __version__, "python": platform.python_version()}
+    return found | {package: metadata.version(package) for package in PACKAGES}
 
 
 def findings_object(findings: Findings) -> dict[str, Any]:

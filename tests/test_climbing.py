@@ -1,0 +1,225 @@
+"""Climbing: saved level by level, continued after a kill with the same numbers, no level solved twice."""
+
+from collections.abc import Callable
+from itertools import pairwise
+from pathlib import Path
+
+import numpy as np
+import pytest
+
+from convergence import climbing
+from convergence.climbing import LADDER, climb, level_file, plan
+from convergence.errors import InputError, SolvingError
+from convergence.fields import load_fields
+from convergence.intake.ladder_file import read_ladder
+from convergence.ladder_spec import ladder as ladder_spec
+from convergence.results import Ladder, Level
+from convergence.rooms import names
+from convergence.study import Study, load
+
+STUDY = """
+title = "Barrel of the luffing cylinder"
+
+[model]
+name = "thick_cylinder"
+inner_radius = {inner}
+
+[ladder]
+divisions = {divisions}
+ratio = 2.0
+levels = {levels}
+shape = "{shape}"
+degree = {degree}
+
+[quantities.growth]
+measure = "displacement"
+at = "bore_x"
+component = "x"
+relative_tolerance = 0.01
+
+[quantities.peak]
+measure = "peak_stress"
+relative_tolerance = {tolerance}
+"""
+
+
+def study(folder: Path, **changes: object) -> Study:
+    settings: dict[str, object] = {
+        "inner": 30.0, "divisions": 2, "levels": 4, "shape": "quadrilateral", "degree": 1, "tolerance": 0.05,
+    }  # fmt: skip
+    file = folder / "barrel.toml"
+    file.write_text(STUDY.format(**(settings | changes)))
+    return load(file)
+
+
+def numbers(ladder: Ladder) -> list[tuple]:
+    """Everything of the levels but the seconds."""
+    return [(level.h, level.cells, level.dofs, dict(level.values)) for level in ladder.levels]
+
+
+@pytest.fixture
+def solved(monkeypatch: pytest.MonkeyPatch) -> list[int]:
+    """The cells of every mesh that is solved."""
+    seen: list[int] = []
+    original = climbing.solve
+
+    def counting(problem: object, meshed: object) -> object:
+        seen.append(meshed.cells)
+        return original(problem, meshed)
+
+    monkeypatch.setattr(climbing, "solve", counting)
+    return seen
+
+
+@pytest.fixture
+def folder(tmp_path: Path) -> Path:
+    return tmp_path / "out"
+
+
+def test_every_level_is_saved_before_it_is_yielded(tmp_path: Path, folder: Path) -> None:
+    found: list[Level] = []
+    for number, level in enumerate(climb(study(tmp_path), folder)):
+        found.append(level)
+        saved = read_ladder(folder / LADDER)
+        assert numbers(saved) == numbers(Ladder(tuple(found), ""))
+        assert saved.fingerprint == study(tmp_path).fingerprint and saved.source == "barrel.toml"
+        fields = load_fields(level_file(folder, number))
+        assert fields.displacement.size == level.dofs
+    assert [level.cells for level in found] == [18, 72, 288, 1152]
+    assert all(fine.h < coarse.h for coarse, fine in pairwise(found))
+    assert all(level.seconds > 0.0 for level in found)
+
+
+def test_a_level_has_the_quantities_with_their_places_and_every_record(tmp_path: Path, folder: Path) -> None:
+    (first, *_) = climb(study(tmp_path, levels=1), folder)
+    assert {"growth", "peak", "peak.x", "peak.y"} <= set(first.values)
+    assert "growth.x" not in first.values
+    recorded = {name.split(".")[0] for name in first.values} - {"growth", "peak"}
+    assert {"equilibrium", "energy_norm", "linear_range"} <= recorded <= set(names("checks"))
+    # a Lamé cylinder's peak stands at the bore
+    assert np.hypot(first.values["peak.x"], first.values["peak.y"]) == pytest.approx(30.0)
+
+
+def test_nothing_is_solved_twice(tmp_path: Path, folder: Path, solved: list[int]) -> None:
+    whole = list(climb(study(tmp_path), folder))
+    assert solved == [18, 72, 288, 1152]
+    again = list(climb(study(tmp_path), folder))
+    assert again == whole and solved == [18, 72, 288, 1152]
+    more = list(climb(study(tmp_path, levels=5), folder))
+    assert more[:4] == whole and solved[4:] == [4608]
+
+
+@pytest.mark.parametrize("stop", [0, 1, 2, 3])
+def test_a_stopped_climb_goes_on(stop: int, tmp_path: Path, folder: Path, solved: list[int]) -> None:
+    """Stopped in the middle of level `stop`, whose solution is lost; the ladder ends up the same."""
+    straight = list(climb(study(tmp_path), tmp_path / "straight"))
+    solved.clear()
+    steps = climb(study(tmp_path), folder)
+    for _ in range(stop):
+        next(steps)
+    steps.close()
+    finished = list(climb(study(tmp_path), folder))
+    assert sorted(solved) == [18, 72, 288, 1152]
+    assert numbers(Ladder(tuple(finished), "")) == numbers(Ladder(tuple(straight), ""))
+    assert numbers(read_ladder(folder / LADDER)) == numbers(read_ladder(tmp_path / "straight" / LADDER))
+
+
+def test_fields_without_their_level_are_solved_again(tmp_path: Path, folder: Path, solved: list[int]) -> None:
+    """A kill after the fields and before the ladder: the level does not count as solved."""
+    next(climb(study(tmp_path), folder))
+    level_file(folder, 0).replace(level_file(folder, 1))
+    list(climb(study(tmp_path), folder))
+    assert solved == [18, 72, 288, 1152]
+
+
+@pytest.mark.parametrize("change", [{"inner": 31.0}, {"degree": 2}, {"shape": "triangle"}, {"divisions": 3}])
+def test_the_ladder_of_another_study_is_kept(change: dict, tmp_path: Path, folder: Path) -> None:
+    first = study(tmp_path)
+    list(climb(first, folder))
+    before = (folder / LADDER).read_bytes()
+    second = study(tmp_path, **change)
+    assert second.fingerprint != first.fingerprint
+    found = list(climb(second, folder))
+    assert (folder / f"ladder-{first.fingerprint}.csv").read_bytes() == before
+    assert read_ladder(folder / LADDER).fingerprint == second.fingerprint
+    fresh = list(climb(second, tmp_path / "fresh"))
+    assert numbers(Ladder(tuple(found), "")) == numbers(Ladder(tuple(fresh), ""))
+
+
+def test_a_change_of_tolerance_or_title_solves_nothing(
+    tmp_path: Path, folder: Path, solved: list[int]
+) -> None:
+    list(climb(study(tmp_path), folder))
+    list(climb(study(tmp_path, tolerance=0.01), folder))
+    assert len(solved) == 4 and len(list(folder.glob("ladder*.csv"))) == 1
+
+
+def test_fewer_levels_than_saved(tmp_path: Path, folder: Path, solved: list[int]) -> None:
+    """The ladder holds what the study asks for; the longer one is kept beside it."""
+    whole = list(climb(study(tmp_path), folder))
+    kept = list(climb(study(tmp_path, levels=2), folder))
+    assert kept == whole[:2] and len(solved) == 4
+    assert len(read_ladder(folder / LADDER).levels) == 2
+    assert len(read_ladder(folder / f"ladder-{study(tmp_path).fingerprint}.csv").levels) == 4
+
+
+def test_a_damaged_ladder_is_put_aside(tmp_path: Path, folder: Path) -> None:
+    """Its message says: run the study again. That has to work."""
+    straight = list(climb(study(tmp_path), folder))
+    text = (folder / LADDER).read_text()
+    (folder / LADDER).write_text(text[: len(text) // 2])
+    with pytest.raises(InputError, match="run the study again"):
+        read_ladder(folder / LADDER)
+    again = list(climb(study(tmp_path), folder))
+    assert numbers(Ladder(tuple(again), "")) == numbers(Ladder(tuple(straight), ""))
+    assert (folder / "ladder-damaged.csv").read_text() == text[: len(text) // 2]
+
+
+@pytest.mark.parametrize(
+    ("raised", "told"),
+    [
+        (SolvingError("the cells are badly shaped"), "level 2: the cells are badly shaped"),
+        (MemoryError(), "level 2: out of memory; the levels before it are kept"),
+    ],
+)
+def test_a_level_that_fails_is_named_and_the_others_are_kept(
+    raised: Exception, told: str, tmp_path: Path, folder: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    original: Callable = climbing.solve
+
+    def failing(problem: object, meshed: object) -> object:
+        if meshed.cells == 288:
+            raise raised
+        return original(problem, meshed)
+
+    monkeypatch.setattr(climbing, "solve", failing)
+    with pytest.raises(SolvingError) as caught:
+        list(climb(study(tmp_path), folder))
+    assert str(caught.value) == told
+    assert len(read_ladder(folder / LADDER).levels) == 2
+
+
+def test_a_place_outside_the_part_names_the_quantity(tmp_path: Path, folder: Path) -> None:
+    asked = study(tmp_path)
+    text = asked.text.replace('at = "bore_x"', "at = [50.0, 1.0]")
+    (tmp_path / "barrel.toml").write_text(text)
+    with pytest.raises(InputError) as caught:
+        list(climb(load(tmp_path / "barrel.toml"), folder))
+    assert str(caught.value) == (
+        "barrel.toml: quantities.growth.at: unsuitable, got (50.0, 1.0); a place on the part"
+    )
+    assert not (folder / LADDER).exists()
+
+
+def test_two_levels_of_the_same_mesh_are_refused(tmp_path: Path, folder: Path) -> None:
+    problem = study(tmp_path).problem()
+    assert len(plan(ladder_spec(divisions=2, ratio=1.5, levels=4), problem)) == 4
+    with pytest.raises(InputError) as caught:
+        plan(ladder_spec(divisions=1, ratio=1.05, levels=3), problem)
+    assert str(caught.value) == (
+        "[ladder]: levels 0 and 1 have the same mesh, got 1.05; take a larger ratio or more divisions"
+    )
+    (tmp_path / "barrel.toml").write_text(study(tmp_path).text.replace("ratio = 2.0", "ratio = 1.02"))
+    with pytest.raises(InputError, match="have the same mesh"):
+        next(climb(load(tmp_path / "barrel.toml"), folder))
+    assert not folder.exists(), "refused before anything is solved"
