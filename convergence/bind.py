@@ -7,7 +7,7 @@ from collections.abc import Callable, Iterable, Mapping
 from dataclasses import dataclass, replace
 from typing import Annotated, Any, Literal, Union, get_args, get_origin, get_type_hints
 
-from convergence.dimensions import Bounds, Dimension, Names, Units
+from convergence.dimensions import Bounds, Dimension, Names, OnPart, Units
 from convergence.errors import Fault, nearest
 
 Form = Literal["number", "whole number", "text", "true or false", "point"]
@@ -20,7 +20,8 @@ _FORMS: dict[Any, Form] = {float: "number", int: "whole number", str: "text", bo
 class Parameter:
     """What a keyword accepts. `forms` are the alternatives, `many` a list of them of any length.
 
-    `names` is the kind of thing a text names ("boundary" ...); `default` is in mm, N, MPa.
+    `names` is the kind of thing a text names ("boundary" ...), `on_part` whether a place must lie on the
+    part; `default` is in mm, N, MPa.
     """
 
     name: str
@@ -29,6 +30,7 @@ class Parameter:
     bounds: Bounds | None = None
     choices: tuple[Any, ...] = ()
     names: str = ""
+    on_part: bool = False
     doc: str = ""
     optional: bool = False
     many: bool = False
@@ -129,6 +131,8 @@ def _noted(note: Any, found: Parameter) -> Parameter:
         return replace(found, dimension=note)
     if isinstance(note, Bounds):
         return replace(found, bounds=note)
+    if isinstance(note, OnPart):
+        return replace(found, on_part=True)
     if isinstance(note, Names):
         return replace(found, names=note.kind)
     return replace(found, doc=note) if isinstance(note, str) else found

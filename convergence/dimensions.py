@@ -65,6 +65,14 @@ Point = Annotated[tuple[float, float], LENGTH]
 
 
 @dataclass(frozen=True)
+class OnPart:
+    """A place that must lie on the part."""
+
+
+PartPoint = Annotated[tuple[float, float], LENGTH, OnPart()]
+
+
+@dataclass(frozen=True)
 class Names:
     """A text that names something of the problem: a boundary, support, point or region."""
 

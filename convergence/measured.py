@@ -5,10 +5,13 @@ from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
 from typing import Any
 
+import numpy as np
+
 from convergence import rooms
 from convergence.bind import bind, parameters
 from convergence.dimensions import Units, returned_dimension
 from convergence.errors import Fault, Unsuitable, listing, nearest
+from convergence.fem.problem import Problem
 from convergence.quantity_tables import TOLERANCE_KEYS, place_of, read_tolerances
 from convergence.results import Quantity
 from convergence.tomlfile import TomlFile
@@ -24,9 +27,14 @@ class Measured:
 
 
 def read_measured(
-    file: TomlFile, name: str, degree: int, units: Units, known: Mapping[str, tuple[str, ...]] | None
+    file: TomlFile,
+    name: str,
+    degree: int,
+    shape: str,
+    units: Units,
+    problem: Problem | None,
 ) -> tuple[Measured | None, list[Fault]]:
-    """Read one quantity of a model study; `known` are the problem's names, None where there is none."""
+    """Read one quantity of a model study; `problem` is None where it cannot be built."""
     table, place = file.data["quantities"][name], place_of(file, name)
     accepted, faults = read_tolerances(file, name, units)
     measure, known_measures = table.get("measure"), rooms.names("quantities")
@@ -39,11 +47,11 @@ def read_measured(
     function = rooms.find("quantities", measure)
     also = ("measure", *TOLERANCE_KEYS)
     arguments, more = bind(function, table, where=place, units=units, also=also)
-    faults += more + _unknown_names(function, arguments, place, known or {})
+    faults += more + (_misplaced(function, arguments, place, problem) if problem else [])
     if faults:
         return None, faults
     try:
-        order = rooms.beside("quantities", measure, "formal_order")(degree, arguments)
+        order = rooms.beside("quantities", measure, "formal_order")(degree, shape, arguments)
     except Unsuitable as error:
         return None, [Fault(place(key), "unsuitable", right, found) for key, found, right in error.problems]
     dimension = returned_dimension(function)
@@ -62,17 +70,21 @@ def read_measured(
     return Measured(quantity, measure, arguments), []
 
 
-def _unknown_names(
+def _misplaced(
     function: Callable[..., Any],
     arguments: Mapping[str, Any],
     place: Callable[[str], str],
-    known: Mapping[str, tuple[str, ...]],
+    problem: Problem,
 ) -> list[Fault]:
-    """Return a fault for every argument that names a boundary, point ... which the problem has not."""
+    """Return a fault for every name the problem has not, and every place outside the part."""
     faults = []
+    names = problem.names()
     for parameter in parameters(function):
-        value, names = arguments.get(parameter.name), known.get(parameter.names)
-        if names is not None and isinstance(value, str) and value not in names:
+        value = arguments.get(parameter.name)
+        if isinstance(value, str) and value not in names.get(parameter.names, (value,)):
             what = f"the model has no such {parameter.names}"
-            faults.append(Fault(place(parameter.name), what, nearest(value, names), value))
+            faults.append(Fault(place(parameter.name), what, nearest(value, names[parameter.names]), value))
+        placed = parameter.on_part and isinstance(value, tuple)
+        if placed and not problem.part.contains(np.array(value)[:, None])[0]:
+            faults.append(Fault(place(parameter.name), "outside the part", "a place on the part", value))
     return faults

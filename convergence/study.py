@@ -108,12 +108,13 @@ def _material(sections: Sections) -> Material:
 
 def _model_study(sections: Sections, blank: Study) -> Study:
     spec = sections.read(ladder, "ladder") or ladder()
-    model, arguments, names = _model(sections, blank.material)
+    model, arguments, problem = _model(sections, blank.material)
     asked = sections.quantity_names()
     if not sections.file.data.get("quantities"):
         sections.fault((), "no quantity of interest", "add [quantities.NAME] with measure = ...")
     found = [
-        sections.keep(*read_measured(sections.file, name, spec.degree, blank.units, names)) for name in asked
+        sections.keep(*read_measured(sections.file, name, spec.degree, spec.shape, blank.units, problem))
+        for name in asked
     ]
     kept = [item for item in found if item]
     parts = {
@@ -134,8 +135,8 @@ def _model_study(sections: Sections, blank: Study) -> Study:
     )
 
 
-def _model(sections: Sections, of: Material) -> tuple[str, dict[str, Any], dict[str, tuple[str, ...]] | None]:
-    """Return the model, its arguments and the names of its problem (None where it cannot be built)."""
+def _model(sections: Sections, of: Material) -> tuple[str, dict[str, Any], Problem | None]:
+    """Return the model, its arguments and its problem (None where it cannot be built)."""
     said, members = sections.table("model"), rooms.names("models")
     model = said.get("name")
     if model not in members:
@@ -149,7 +150,7 @@ def _model(sections: Sections, of: Material) -> tuple[str, dict[str, Any], dict[
     if arguments is None:
         return model, {}, None
     problem: Problem | None = sections.called(function, {**arguments, "material": of}, "model")
-    return model, arguments, problem.names() if problem else None
+    return model, arguments, problem
 
 
 def _table_study(sections: Sections, blank: Study) -> Study:

@@ -199,14 +199,16 @@ def test_a_level_that_fails_is_named_and_the_others_are_kept(
     assert len(read_ladder(folder / LADDER).levels) == 2
 
 
-def test_a_place_outside_the_part_names_the_quantity(tmp_path: Path, folder: Path) -> None:
+def test_a_region_without_a_node_names_the_quantity(tmp_path: Path, folder: Path) -> None:
     asked = study(tmp_path)
-    text = asked.text.replace('at = "bore_x"', "at = [50.0, 1.0]")
+    peak = 'measure = "peak_stress"\nnear = [0.0, 0.0]\nradius = 1.0\n'
+    text = f"{asked.text}\n[quantities.centre_peak]\n{peak}"
     (tmp_path / "barrel.toml").write_text(text)
     with pytest.raises(InputError) as caught:
         list(climb(load(tmp_path / "barrel.toml"), folder))
     assert str(caught.value) == (
-        "barrel.toml: quantities.growth.at: unsuitable, got (50.0, 1.0); a place on the part"
+        "barrel.toml: quantities.centre_peak.radius: unsuitable, got 1.0; "
+        "a region, boundary and radius that hold at least one node"
     )
     assert not (folder / LADDER).exists()
 

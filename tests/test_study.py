@@ -68,7 +68,7 @@ def test_the_fingerprint_changes_with_the_numbers_only(tmp_path: Path) -> None:
     others = [
         changed(tmp_path, old, new).fingerprint
         for old, new in (
-            ("inner_radius = 25", "inner_radius = 26"),
+            ("inner_radius = 25", "inner_radius = 24"),
             ("young = 200000.0", "young = 210000.0"),
             ("divisions = 3", "divisions = 4"),
             ("divisions = 3", "size = 3.0"),

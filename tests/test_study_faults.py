@@ -154,3 +154,10 @@ def test_faults_of_a_table_study(tmp_path: Path) -> None:
         "did you mean 'displacement'?",
         "s.toml:10: quantities.energy: no such column, got 'energy'; known: cells, power, wx",
     ]
+
+
+def test_a_place_outside_the_part(tmp_path: Path) -> None:
+    text = CYLINDER.replace("at = [25.0, 0.0]", "at = [24.0, 0.0]")
+    assert said(tmp_path, text) == [
+        "s.toml:26: quantities.growth.at: outside the part, got (24.0, 0.0); a place on the part"
+    ]

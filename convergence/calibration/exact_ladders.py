@@ -79,7 +79,7 @@ def _ladder(
         rows.append([_measured(solution, probe) for probe in probes])
     h = np.array([level.h for level in meshes])
     for probe, values in zip(probes, np.array(rows).T, strict=True):
-        order = rooms.beside("quantities", probe.measure, "formal_order")(degree, probe.arguments)
+        order = rooms.beside("quantities", probe.measure, "formal_order")(degree, shape, probe.arguments)
         kind = rooms.beside("quantities", probe.measure, "KIND")
         yield KnownLadder(case, shape, degree, kind, h, values, probe.limit, order)
 

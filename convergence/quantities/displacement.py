@@ -8,7 +8,7 @@ from typing import Annotated, Any, Literal
 
 import numpy as np
 
-from convergence.dimensions import Length, Point, PointName
+from convergence.dimensions import Length, PartPoint, PointName
 from convergence.fem.location import locate
 from convergence.fem.solution import Solution
 from convergence.quantities._place import place_of
@@ -17,7 +17,7 @@ from convergence.results import Kind
 KIND: Kind = "displacement"
 
 
-def formal_order(degree: int, arguments: Mapping[str, Any]) -> float:
+def formal_order(degree: int, shape: str, arguments: Mapping[str, Any]) -> float:
     """Return p + 1."""
     return float(degree + 1)
 
@@ -25,7 +25,7 @@ def formal_order(degree: int, arguments: Mapping[str, Any]) -> float:
 def displacement(
     solution: Solution,
     *,
-    at: Annotated[Point | PointName, "point of the part, by name or coordinates"],
+    at: Annotated[PartPoint | PointName, "point of the part, by name or coordinates"],
     component: Annotated[Literal["x", "y", "magnitude"], "direction"] = "y",
 ) -> Length:
     """Unsuitable where the point lies outside the part."""

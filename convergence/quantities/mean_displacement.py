@@ -16,7 +16,7 @@ from convergence.results import Kind
 KIND: Kind = "displacement"
 
 
-def formal_order(degree: int, arguments: Mapping[str, Any]) -> float:
+def formal_order(degree: int, shape: str, arguments: Mapping[str, Any]) -> float:
     """Return 2p."""
     return 2.0 * degree
 

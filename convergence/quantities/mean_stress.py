@@ -7,7 +7,7 @@ a peak that has no limit (common practice). Order as the stress.
 from collections.abc import Mapping
 from typing import Annotated, Any
 
-from convergence.dimensions import Point, PointName, Stress
+from convergence.dimensions import PartPoint, PointName, Stress
 from convergence.fem.location import line_points
 from convergence.fem.solution import Solution
 from convergence.fem.stress import Component
@@ -18,16 +18,16 @@ from convergence.results import Kind
 KIND: Kind = "point_stress"
 
 
-def formal_order(degree: int, arguments: Mapping[str, Any]) -> float:
+def formal_order(degree: int, shape: str, arguments: Mapping[str, Any]) -> float:
     """Return the order of the stress."""
-    return stress_order(degree, arguments.get("recovery", "recovered"))
+    return stress_order(degree, shape, arguments.get("recovery", "recovered"))
 
 
 def mean_stress(
     solution: Solution,
     *,
-    start: Annotated[Point | PointName, "first end of the line"],
-    end: Annotated[Point | PointName, "second end of the line"],
+    start: Annotated[PartPoint | PointName, "first end of the line"],
+    end: Annotated[PartPoint | PointName, "second end of the line"],
     component: Annotated[Component, "component, principal or von Mises stress"] = "von_mises",
     recovery: Annotated[Recovery, "recovered by patches, or direct from the elements"] = "recovered",
 ) -> Stress:

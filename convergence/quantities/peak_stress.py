@@ -31,9 +31,9 @@ from convergence.results import Kind
 KIND: Kind = "peak_stress"
 
 
-def formal_order(degree: int, arguments: Mapping[str, Any]) -> float:
+def formal_order(degree: int, shape: str, arguments: Mapping[str, Any]) -> float:
     """Return the order of the stress, at most 2."""
-    return min(2.0, stress_order(degree, arguments.get("recovery", "recovered")))
+    return min(2.0, stress_order(degree, shape, arguments.get("recovery", "recovered")))
 
 
 def covers(part: Part, point: str, arguments: Mapping[str, Any]) -> bool:

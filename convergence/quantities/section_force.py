@@ -9,7 +9,7 @@ from typing import Annotated, Any, Literal
 
 import numpy as np
 
-from convergence.dimensions import Force, Point, PointName
+from convergence.dimensions import Force, PartPoint, PointName
 from convergence.fem.location import line_points
 from convergence.fem.solution import Solution
 from convergence.quantities._place import Recovery, line_stress, place_of, stress_order
@@ -18,16 +18,16 @@ from convergence.results import Kind
 KIND: Kind = "resultant"
 
 
-def formal_order(degree: int, arguments: Mapping[str, Any]) -> float:
+def formal_order(degree: int, shape: str, arguments: Mapping[str, Any]) -> float:
     """Return the order of the stress."""
-    return stress_order(degree, arguments.get("recovery", "recovered"))
+    return stress_order(degree, shape, arguments.get("recovery", "recovered"))
 
 
 def section_force(
     solution: Solution,
     *,
-    start: Annotated[Point | PointName, "first end of the section"],
-    end: Annotated[Point | PointName, "second end of the section"],
+    start: Annotated[PartPoint | PointName, "first end of the section"],
+    end: Annotated[PartPoint | PointName, "second end of the section"],
     component: Annotated[Literal["normal", "shear", "x", "y"], "direction of the force"] = "normal",
     recovery: Annotated[Recovery, "recovered by patches, or direct from the elements"] = "recovered",
 ) -> Force:

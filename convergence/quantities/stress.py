@@ -10,7 +10,7 @@ from typing import Annotated, Any
 
 import numpy as np
 
-from convergence.dimensions import STRESS, Located, Point, PointName
+from convergence.dimensions import STRESS, Located, PartPoint, PointName
 from convergence.fem.part import Part
 from convergence.fem.solution import Solution
 from convergence.fem.stress import Component
@@ -21,9 +21,9 @@ from convergence.results import Kind
 KIND: Kind = "point_stress"
 
 
-def formal_order(degree: int, arguments: Mapping[str, Any]) -> float:
+def formal_order(degree: int, shape: str, arguments: Mapping[str, Any]) -> float:
     """Return p + 1 for recovered stress, p for direct stress."""
-    return stress_order(degree, arguments.get("recovery", "recovered"))
+    return stress_order(degree, shape, arguments.get("recovery", "recovered"))
 
 
 def covers(part: Part, point: str, arguments: Mapping[str, Any]) -> bool:
@@ -35,7 +35,7 @@ def covers(part: Part, point: str, arguments: Mapping[str, Any]) -> bool:
 def stress(
     solution: Solution,
     *,
-    at: Annotated[Point | PointName, "point of the part, by name or coordinates"],
+    at: Annotated[PartPoint | PointName, "point of the part, by name or coordinates"],
     component: Annotated[Component, "component, principal or von Mises stress"] = "von_mises",
     recovery: Annotated[Recovery, "recovered by patches, or direct from the elements"] = "recovered",
 ) -> Annotated[Located, STRESS]:

@@ -78,6 +78,14 @@ def test_energy_norm_fails_where_its_two_views_disagree(solved: Callable, record
     assert energy_norm(changed(ladder, "energy_norm.energy", farther / energy), facts).passed is False
 
 
+def test_energy_norm_fails_where_the_energies_show_no_limit(solved: Callable, recorded: Callable) -> None:
+    """Energies that grow by a constant amount, or more, as under a point load on a solid (Flamant)."""
+    ladder = recorded(solved("thick_cylinder", "quadrilateral", 2, 2, 4), "energy_norm")
+    growing = changed(ladder, "energy_norm.energy", 1.0 + 0.01 * 2.0 ** np.arange(4))
+    check = energy_norm(growing, Facts(degree=2, corners=()))
+    assert check.passed is False and "The strain energies of the ladder show no limit." in check.finding
+
+
 def test_energy_norm_of_the_patch_is_zero(solved: Callable, recorded: Callable) -> None:
     check = energy_norm(recorded(solved("patch_test", "triangle", 1, 1, 3), "energy_norm"), Facts(degree=1))
     assert check.passed is True and "zero to round-off" in check.finding

@@ -5,6 +5,7 @@ import inspect
 import math
 import re
 from collections.abc import Callable, Mapping
+from itertools import product
 from types import ModuleType
 from typing import Annotated, Any, Literal, get_args, get_origin, get_type_hints
 
@@ -57,19 +58,20 @@ def check_kind(module: ModuleType) -> None:
 
 
 def check_order(module: ModuleType) -> None:
-    """formal_order(degree, arguments) is a positive number that does not fall with the degree."""
+    """formal_order(degree, shape, arguments) is a positive number that does not fall with the degree."""
     shape = re.sub(r"[\w.]*\.", "", str(inspect.signature(module.formal_order)))
-    assert shape == "(degree: int, arguments: Mapping[str, Any]) -> float"
+    assert shape == "(degree: int, shape: str, arguments: Mapping[str, Any]) -> float"
     default: Mapping[str, Any] = {
         name: parameter.default
         for name, parameter in inspect.signature(function_of(module)).parameters.items()
         if parameter.default is not parameter.empty
     }
-    for arguments in ({}, default):
-        linear, quadratic = (module.formal_order(degree, arguments) for degree in (1, 2))
+    for arguments, cells in product(({}, default), ("triangle", "quadrilateral")):
+        linear, quadratic = (module.formal_order(degree, cells, arguments) for degree in (1, 2))
         assert isinstance(linear, float) and isinstance(quadratic, float)
         assert 0.0 < linear <= quadratic < math.inf
-        assert module.formal_order(2, {}) == module.formal_order(2, default), "defaults of the function"
+        said, meant = (module.formal_order(2, cells, given) for given in ({}, default))
+        assert said == meant, "defaults of the function"
 
 
 def check_words(module: ModuleType) -> None:
@@ -146,15 +148,15 @@ def undocumented(solution: Solution) -> Force:
     return 0.0
 
 
-def falling(degree: int, arguments: Mapping[str, Any]) -> float:
+def falling(degree: int, shape: str, arguments: Mapping[str, Any]) -> float:
     return 1.0 / degree
 
 
-def whole(degree: int, arguments: Mapping[str, Any]) -> float:
+def whole(degree: int, shape: str, arguments: Mapping[str, Any]) -> float:
     return degree
 
 
-def other_default(degree: int, arguments: Mapping[str, Any]) -> float:
+def other_default(degree: int, shape: str, arguments: Mapping[str, Any]) -> float:
     return float(degree + (arguments.get("recovery", "direct") == "recovered"))
 
 

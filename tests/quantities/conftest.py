@@ -36,8 +36,8 @@ def order(solutions: tuple[Solution, ...], errors: np.ndarray) -> np.ndarray:
     return np.log(errors[:-1] / errors[1:]) / np.log(h[:-1] / h[1:])
 
 
-def promised(name: str, degree: int, **arguments: Any) -> float:
-    number: float = rooms.beside("quantities", name, "formal_order")(degree, arguments)
+def promised(name: str, degree: int, shape: str = "quadrilateral", **arguments: Any) -> float:
+    number: float = rooms.beside("quantities", name, "formal_order")(degree, shape, arguments)
     return number
 
 
