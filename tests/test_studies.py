@@ -1,0 +1,63 @@
+"""The studies of the demo scenario, from the file to the verdict, with the verdicts one would defend."""
+
+from pathlib import Path
+
+import pytest
+
+from convergence.climbing import climb
+from convergence.intake.ladder_file import read_ladder
+from convergence.judgement import facts_of, judge
+from convergence.results import Findings
+from convergence.study import load
+
+STUDIES = Path(__file__).parents[1] / "studies"
+EXPECTED = {
+    "arm": {"root_peak": "singular"},
+    "base_plate": {},
+    "bracket_filleted": {},
+    "bracket_sharp": {"corner_stress": "singular"},
+    "cutout": {"corner_stress": "singular"},
+    "cylinder": {"wall_force": "refine"},
+    "lug": {},
+    "patch": {},
+    "pin_link": {},
+    "roller_plate": {"weld_toe": "singular"},
+    "side_panel": {},
+    "test_beam": {},
+}
+
+
+def findings_of(name: str, folder: Path) -> Findings:
+    study = load(STUDIES / f"{name}.toml")
+    ladder = study.table
+    if ladder is None:
+        list(climb(study, folder))
+        ladder = read_ladder(folder / "ladder.csv")
+    return judge(ladder, study.quantities, facts_of(study), study.title)
+
+
+def test_every_study_is_expected() -> None:
+    assert {path.stem for path in STUDIES.glob("*.toml")} == set(EXPECTED)
+
+
+@pytest.mark.slow
+@pytest.mark.parametrize("name", EXPECTED)
+def test_study(name: str, tmp_path: Path) -> None:
+    """Quantities that are not named are sound; the intervals hold the exact values where these are known."""
+    findings = findings_of(name, tmp_path)
+    words = {quantity: verdict.word for quantity, verdict in findings.verdicts.items()}
+    assert words == {quantity: EXPECTED[name].get(quantity, "sound") for quantity in words}
+    for quantity, exact in EXACT.get(name, {}).items():
+        verdict = findings.verdicts[quantity]
+        assert verdict.low <= exact <= verdict.high
+
+
+# Lamé; Kirsch; Timoshenko & Goodier art. 21; equilibrium of the shear on the tip
+EXACT = {
+    "arm": {"mast_reaction": 6.0 * 120.0 * 12.0},
+    "base_plate": {"hole_stress": 180.0, "hole_stress_direct": 180.0},
+    "cylinder": {"bore_hoop_stress": 54.6, "wall_force": 21.0 * 30.0},
+    "lug": {"net_section_force": 25000.0 * 0.9396926207859084},
+    "patch": {"inner_stress": 300.0},
+    "test_beam": {"root_stress": -6000.0 * 480.0 * 60.0 / (10.0 * 120.0**3 / 12.0)},
+}
