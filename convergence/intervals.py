@@ -61,7 +61,7 @@ def interval(
     }
     noise = noise_floor(y, resolution)
     manner = behaviour(x, y, noise)
-    widths = _widths(x, y, estimates, noise, formal_order)
+    widths = _widths(x, y, estimates, noise)
     flaw = _flaw(x, f, y, manner, formal_order, estimates["least_squares"].order)
     half = max(widths.values(), default=math.nan)
     if manner == "constant":
@@ -83,15 +83,15 @@ def interval(
 
 
 def _widths(
-    h: np.ndarray, f: np.ndarray, estimates: Mapping[str, Estimate], noise: float, formal_order: float | None
+    h: np.ndarray, f: np.ndarray, estimates: Mapping[str, Estimate], noise: float
 ) -> dict[str, float]:
     found = {name: estimates[key].uncertainty for key, name in PARTS.items() if key in estimates}
     if len(f) >= 2:
-        found["last change"] = _last_change(h, f, noise, formal_order)
+        found["last change"] = _last_change(h, f, noise)
     return {name: float(width) for name, width in found.items() if math.isfinite(width)}
 
 
-def _last_change(h: np.ndarray, f: np.ndarray, noise: float, formal_order: float | None) -> float:
+def _last_change(h: np.ndarray, f: np.ndarray, noise: float) -> float:
     """Return the last change; one that vanishes by accident is replaced by the one before, at order one."""
     last = abs(float(f[-1] - f[-2]))
     if last > noise or len(f) < 3:

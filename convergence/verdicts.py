@@ -127,12 +127,10 @@ def _reasons(
     reasons = [f"{_capital(reason)}." for reason in decisive]
     if found.lost:
         reasons.append(f"{found.lost} level(s) without a value were left out.")
-    if found.flaw and word != "singular":
-        reasons.append(f"No interval: {found.flaw}.")
     if word == "singular":
         return reasons
     if found.flaw:
-        return reasons
+        return [*reasons, f"No interval: {found.flaw}."]
     reasons += _about_order(found, quantity.formal_order, expected)
     widths = ", ".join(f"{name} {width:.3g}" for name, width in found.widths.items())
     if found.behaviour == "constant":

@@ -9,14 +9,17 @@ from convergence.calibration.exact_ladders import CASES, LADDERS, exact_ladders
 
 HEAD = """# Coverage of the estimates on parts with exact solutions
 
-Every named point and one place inside every block of {cases}; triangles and quadrilaterals, degree 1 and
-2; ladders {ladders}; every run of 3, 4 and 5 neighbouring levels. Energies, displacements, direct and
-recovered stresses, each with its formal order given; values exact to 1e-8 are left out. All meshes of a
-ladder are similar (structured), which flatters every method: on ladders of unstructured meshes the classical
-ones do worse. Nothing here was fitted to these ladders, and the interval as stated is not calibrated.
+Parts: {cases}. Every named point and one place inside every block; triangles and quadrilaterals, degree 1
+and 2; ladders {ladders}; every run of 3, 4 and 5 neighbouring levels. Energies, displacements, direct and
+recovered stresses, each with its formal order given. Values exact to 1e-8 are left out.
 
-"Covers": share of answers whose half-width U about the finest value reaches the exact value. U/e: median of
-half-width over true error. "Answers": share of cases in which the method gives a half-width at all.
+All meshes of a ladder are similar (structured), which flatters every method: on ladders of unstructured
+meshes the classical ones do worse. Nothing was fitted to these ladders, and the interval as stated is not
+calibrated.
+
+- answers: share of cases in which the method gives a half-width U about the finest value at all;
+- covers: share of answers for which the exact value lies within U;
+- median U/e: half-width over true error.
 
 | method | levels | cases | answers | covers | median U/e |
 | --- | --- | --- | --- | --- | --- |

@@ -17,6 +17,23 @@ def not_applicable(check: str, why: str) -> Check:
     return Check(check, None, why)
 
 
+def largest_share(
+    ladder: Ladder, check: str, column: str, *, limit: float, says: str, failure: str, missing: str
+) -> Check:
+    """Return a check that passes where a recorded share stays within a limit on every level.
+
+    `says` is the finding, with {worst} in it; `failure` what a failure spoils every quantity by; `missing`
+    the finding where the ladder has no such record.
+    """
+    columns = recorded(ladder, check, column)
+    if columns is None:
+        return not_applicable(check, missing)
+    worst = float(np.nanmax(columns[column]))
+    finding = f"{says.format(worst=f'{worst:.1e}')} (allowed {limit:.0e})."
+    passed = worst <= limit
+    return Check(check, passed, finding, {} if passed else {"": failure}, values=per_level(columns))
+
+
 def per_level(columns: dict[str, np.ndarray]) -> dict[str, tuple[float, ...]]:
     """Return the columns as a check keeps them."""
     return {name: tuple(float(value) for value in column) for name, column in columns.items()}

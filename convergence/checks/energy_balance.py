@@ -6,7 +6,7 @@
 
 import numpy as np
 
-from convergence.checks._ladder import not_applicable, per_level, recorded
+from convergence.checks._ladder import largest_share
 from convergence.fem.solution import Solution
 from convergence.results import Check, Facts, Ladder
 
@@ -21,11 +21,12 @@ def record(solution: Solution) -> dict[str, float]:
 
 def energy_balance(ladder: Ladder, facts: Facts) -> Check:
     """Pass where energy and work agree on every level."""
-    columns = recorded(ladder, "energy_balance", "difference")
-    if columns is None:
-        return not_applicable("energy_balance", "The ladder has no energies of our own solver.")
-    worst = float(np.nanmax(columns["difference"]))
-    passed = worst <= LIMIT
-    finding = f"Strain energy and external work differ by at most {worst:.1e} (allowed {LIMIT:.0e})."
-    spoils = {} if passed else {"": "strain energy and external work disagree"}
-    return Check("energy_balance", passed, finding, spoils, values=per_level(columns))
+    return largest_share(
+        ladder,
+        "energy_balance",
+        "difference",
+        limit=LIMIT,
+        says="Strain energy and external work differ by at most {worst}",
+        failure="strain energy and external work disagree",
+        missing="The ladder has no energies of our own solver.",
+    )

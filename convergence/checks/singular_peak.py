@@ -100,7 +100,9 @@ def _at_corner(corner: Corner, exponent: float) -> str:
 
 
 def _corner_at(ladder: Ladder, facts: Facts, name: str) -> Corner | None:
-    """Return the corner within two cell sizes of the value's place on the finest level."""
+    """Return the corner at the place of a point stress, or within two cells of a peak on the finest level."""
+    if facts.kinds[name] == "point_stress":
+        return next(iter(facts.covered.get(name, ())), None)
     x, y = ladder.column(f"{name}.x"), ladder.column(f"{name}.y")
     if not facts.corners or not len(x) or not (np.isfinite(x[-1]) and np.isfinite(y[-1])):
         return None

@@ -6,7 +6,7 @@ practice; also asked for by Celik et al. 2008, J. Fluids Eng. 130:078001). Limit
 
 import numpy as np
 
-from convergence.checks._ladder import not_applicable, per_level, recorded
+from convergence.checks._ladder import largest_share
 from convergence.fem.solution import Solution
 from convergence.results import Check, Facts, Ladder
 
@@ -22,11 +22,12 @@ def record(solution: Solution) -> dict[str, float]:
 
 def solver_residual(ladder: Ladder, facts: Facts) -> Check:
     """Pass where the residual is below the limit on every level."""
-    columns = recorded(ladder, "solver_residual", "relative")
-    if columns is None:
-        return not_applicable("solver_residual", "The ladder has no residuals of our own solver.")
-    worst = float(np.nanmax(columns["relative"]))
-    passed = worst <= LIMIT
-    finding = f"The equations are solved to {worst:.1e} of the nodal forces (allowed {LIMIT:.0e})."
-    spoils = {} if passed else {"": "the equations are not solved accurately enough"}
-    return Check("solver_residual", passed, finding, spoils, values=per_level(columns))
+    return largest_share(
+        ladder,
+        "solver_residual",
+        "relative",
+        limit=LIMIT,
+        says="The equations are solved to {worst} of the nodal forces",
+        failure="the equations are not solved accurately enough",
+        missing="The ladder has no residuals of our own solver.",
+    )
