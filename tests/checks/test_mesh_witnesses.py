@@ -24,6 +24,7 @@ def changed(ladder: Ladder, name: str, factor: np.ndarray) -> Ladder:
     return replace(ladder, levels=levels)
 
 
+@pytest.mark.slow
 @pytest.mark.parametrize(
     ("shape", "degree"), [("triangle", 1), ("triangle", 2), ("quadrilateral", 1), ("quadrilateral", 2)]
 )

@@ -62,6 +62,7 @@ def judged(solutions: tuple, recorded: Callable, levels: int = 5) -> Findings:
 
 
 @SHAPES
+@pytest.mark.slow
 def test_the_sharp_bracket_is_singular_with_the_exponent_of_theory(
     shape: str, solved: Callable, recorded: Callable
 ) -> None:
@@ -92,6 +93,7 @@ def test_fewer_levels_suffice_where_the_model_is_known(
 
 
 @SHAPES
+@pytest.mark.slow
 def test_the_filleted_bracket_is_not_singular(shape: str, solved: Callable, recorded: Callable) -> None:
     findings = judged(solved("l_bracket", shape, 2, 1, 4, fillet_radius=20.0), recorded)
     checks = {check.name: check for check in findings.checks}

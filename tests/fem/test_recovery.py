@@ -24,6 +24,8 @@ from convergence.models.exact_cantilever import exact_cantilever
 from convergence.models.perforated_plate import perforated_plate
 from convergence.models.thick_cylinder import thick_cylinder
 
+pytestmark = pytest.mark.slow
+
 STEEL = Material(210000.0, 0.3)
 EVERY_CELL = list(product(("triangle", "quadrilateral"), (1, 2)))
 PROBLEMS = [

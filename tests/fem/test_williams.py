@@ -184,6 +184,7 @@ def test_roller_roller_closed_form() -> None:
         assert corner_exponents(opening, sides, kappa=1.8) == []
 
 
+@pytest.mark.slow
 @pytest.mark.parametrize("sides", PAIRS)
 @pytest.mark.parametrize("kappa", [1.04, 1.8, 2.7 / 1.3, 3.0, 6.0])
 @pytest.mark.parametrize("opening", [37.0, 75.0, 108.0, 152.0, 203.0, 236.0, 291.0, 337.0])

@@ -26,6 +26,8 @@ from convergence.models.tapered_arm import tapered_arm
 from convergence.models.thick_cylinder import thick_cylinder
 from convergence.quantities.displacement import displacement
 
+pytestmark = pytest.mark.slow
+
 Climb = Callable[..., list[Solution]]
 UNIT = Material(1.0, 0.3)
 LOOSE = 0.1  # of the order 2 l, by the next powers of h on these meshes

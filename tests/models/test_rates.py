@@ -20,6 +20,8 @@ from convergence.fem.problem import Problem
 from convergence.fem.recovery import exact_energy_error
 from convergence.fem.solution import Solution
 
+pytestmark = pytest.mark.slow
+
 Climb = Callable[..., list[Solution]]
 SHAPES: tuple[Shape, ...] = ("triangle", "quadrilateral")
 STEEL = Material(210000.0, 0.3)

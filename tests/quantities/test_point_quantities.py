@@ -9,6 +9,8 @@ from convergence.errors import Unsuitable
 from convergence.quantities.displacement import displacement
 from convergence.quantities.stress import covers, stress
 
+pytestmark = pytest.mark.slow
+
 COMPONENTS = {"xx": 0, "yy": 1, "zz": 2, "xy": 3}
 # inside the cylinder's ring 30 < r < 45, away from its boundary layers of patches
 RADII, ANGLES = np.linspace(34.0, 41.0, 7), np.radians(np.linspace(13.0, 77.0, 9))
