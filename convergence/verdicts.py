@@ -6,6 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from convergence import numbers
 from convergence.intervals import LEAST_ORDER, Interval
 from convergence.results import Facts, Ladder, Level, Quantity, Verdict, VerdictWord
 
@@ -136,7 +137,8 @@ def _reasons(
     if found.behaviour == "constant":
         reasons.append("The last three levels give the same value, to round-off or to its printed digits.")
     elif found.widths:
-        reasons.append(f"Half-width {found.half_width:.3g}, the widest of {widths}; {NO_COVERAGE}.")
+        half = numbers.beside_limit(found.half_width, tolerance)
+        reasons.append(f"Half-width {half}, the widest of {widths}; {NO_COVERAGE}.")
     if found.levels == 2:
         reasons.append("Two levels cannot show an order; a third one would.")
     return reasons + _about_tolerance(quantity, found, tolerance, ahead, word)
@@ -175,14 +177,13 @@ def _about_tolerance(
     parts = [f"{100 * quantity.relative:.4g} % of the value"] if quantity.relative else []
     parts += [f"{quantity.absolute:.4g} {quantity.unit}".strip()] if quantity.absolute else []
     assumed = " (assumed, none was given)" if quantity.assumed_tolerance else ""
-    accepted_text = f"Accepted: {' or '.join(parts)}{assumed}, that is {tolerance:.4g}."
+    accepted_text = f"Accepted: {' or '.join(parts)}{assumed}, that is {numbers.compact(tolerance, 5)}."
     if word != "sound" and _nothing_to_relate(quantity, found):
         accepted_text += " The value is zero within its interval: give an absolute_tolerance."
     lines = [accepted_text]
     if word == "refine" and math.isfinite(ahead.h):
-        cost = [f"{n:.2g} {what}" for n, what in ((ahead.cells, "cells"), (ahead.dofs, "unknowns")) if n > 0]
-        about = f" ({', '.join(cost)})" if cost else ""
-        lines.append(f"A cell size of about {ahead.h:.3g}{about} would do, if the order holds.")
+        cost = numbers.cost(ahead.cells, ahead.dofs, ahead.seconds)
+        lines.append(f"A cell size of about {ahead.h:.3g}{cost} would do, if the order holds.")
         if ahead.dofs > AFFORDABLE_DOFS:
             lines.append(
                 "That is out of reach: use degree 2, a smaller part around the place, or another quantity."

@@ -11,7 +11,18 @@ import pytest
 
 HOME = Path(__file__).parents[1] / "convergence"
 FOUNDATIONS = {
-    *("errors", "dimensions", "rooms", "results", "fields", "sequences", "textfile", "tomlfile", "bind"),
+    *(
+        "errors",
+        "dimensions",
+        "rooms",
+        "results",
+        "fields",
+        "numbers",
+        "sequences",
+        "textfile",
+        "tomlfile",
+        "bind",
+    ),
     *("ladder_spec", "quantity_tables", "columns", "sections"),
 }
 FLOORS = (

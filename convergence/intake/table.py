@@ -54,7 +54,9 @@ def read_table(path: Path, *, size: str | None = None, dimension: int = 2) -> tu
     faults = _cell_faults(kept, by, [f"{path}:{row.line}" for row in rows])
     quantities = [name for name in kept if name != by and name.lower() not in NO_QUANTITIES]
     if not quantities:
-        faults.append(Fault(str(path), "no column of a quantity", "add a column of numbers beside the sizes"))
+        ignored = "".join(f" ({name!r} has none, {columns[name][0]!r} for one)" for name in empty)
+        right = f"add a column of numbers beside the sizes{ignored}"
+        faults.append(Fault(str(path), "no column of a quantity", right))
     if faults:
         raise InputError(faults)
     levels = _levels(kept, by, quantities, dimension)

@@ -1,5 +1,5 @@
 """From findings to documents: text, figures and pages; nothing here computes a verdict.
 
-Files build on each other in one direction: numbers and furniture (`_x.py`), then html, records and
+Files build on each other in one direction: furniture (`_x.py`), then html, records and
 terminal, then figures_*, then sections_*, then document.
 """

@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
-from convergence.report import numbers
+from convergence import numbers
 from convergence.results import Ladder
 
 if TYPE_CHECKING:

@@ -4,7 +4,7 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
-from convergence.report import numbers
+from convergence import numbers
 from convergence.report._picture import GREEN, GREY, RED
 
 if TYPE_CHECKING:

@@ -2,7 +2,7 @@
 
 import math
 
-from convergence.report import numbers
+from convergence import numbers
 from convergence.results import Findings, Ladder, Quantity, Verdict
 
 NOT_CALIBRATED = "its coverage has not been calibrated"
@@ -89,17 +89,6 @@ def next_step(verdict: Verdict, length: str = "") -> str:
     return "see the reasons"
 
 
-def _cost(verdict: Verdict) -> str:
-    parts = [
-        f"{numbers.count(amount)} {what}"
-        for amount, what in ((verdict.next_cells, "cells"), (verdict.next_dofs, "unknowns"))
-        if amount > 0
-    ]
-    if verdict.next_seconds > 0:
-        parts.append(f"about {numbers.significant(verdict.next_seconds, 2)} s")
-    return f" ({', '.join(parts)})" if parts else ""
-
-
 def condition(ladder: Ladder, verdict: Verdict, length: str) -> str:
     """Return what the statement rests on: meshes, finest size, behaviour, order."""
     finest = ladder.levels[-1]
@@ -143,7 +132,9 @@ def _end(verdict: Verdict, length: str) -> str:
     start = "Refine" if verdict.word == "refine" else "It is unproven"
     if not math.isfinite(verdict.next_h):
         return f"{start}."
-    step = next_step(verdict, length) + _cost(verdict)
+    step = next_step(verdict, length) + numbers.cost(
+        verdict.next_cells, verdict.next_dofs, verdict.next_seconds
+    )
     return f"{start}: {step} would do." if verdict.word == "refine" else f"{start}; next: {step}."
 
 

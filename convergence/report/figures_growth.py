@@ -4,7 +4,7 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
-from convergence.report import numbers
+from convergence import numbers
 from convergence.report._axes import bracket, cell_size_axis, log_ticks, middle
 from convergence.report._picture import GREEN, INK, RED, Picture, draw
 from convergence.results import Ladder, Quantity

@@ -3,8 +3,9 @@
 from collections.abc import Sequence
 from typing import TYPE_CHECKING
 
+from convergence import numbers
 from convergence.fields import Fields
-from convergence.report import _plane, numbers
+from convergence.report import _plane
 from convergence.report._picture import Picture, draw
 from convergence.results import Ladder
 

@@ -7,8 +7,9 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from convergence import numbers
 from convergence.fields import Fields
-from convergence.report import _plane, numbers
+from convergence.report import _plane
 from convergence.report._axes import bracket, middle
 from convergence.report._picture import Picture, draw
 from convergence.results import Corner, Findings

@@ -5,7 +5,7 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
-from convergence.report import numbers
+from convergence import numbers
 from convergence.report._axes import bracket, cell_size_axis, middle, value_ticks
 from convergence.report._picture import BLUE, GREEN, GREY, INK, RED, Picture, draw
 from convergence.results import Ladder, Quantity, Verdict

@@ -1,6 +1,7 @@
 """What was checked beside the convergence of the numbers, passed or not."""
 
-from convergence.report import _words, html, numbers
+from convergence import numbers
+from convergence.report import _words, html
 from convergence.report.html import Html, text
 from convergence.results import Check, Findings
 

@@ -2,7 +2,8 @@
 
 from collections.abc import Sequence
 
-from convergence.report import html, numbers
+from convergence import numbers
+from convergence.report import html
 from convergence.report._picture import Picture
 from convergence.report.html import Html, text
 from convergence.results import Findings

@@ -1,7 +1,7 @@
 """How the interval came about, and where the methods were published."""
 
-from convergence import rooms
-from convergence.report import _words, html, numbers
+from convergence import numbers, rooms
+from convergence.report import _words, html
 from convergence.report.html import Html, text
 from convergence.results import Findings
 

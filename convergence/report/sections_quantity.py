@@ -5,7 +5,8 @@ from collections.abc import Mapping
 
 import numpy as np
 
-from convergence.report import _words, html, numbers
+from convergence import numbers
+from convergence.report import _words, html
 from convergence.report._picture import Picture
 from convergence.report.html import Html, text
 from convergence.results import Estimate, Findings, Ladder, Quantity, Verdict

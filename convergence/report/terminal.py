@@ -2,8 +2,8 @@
 
 import math
 
+from convergence.numbers import order, percent, significant
 from convergence.report import _words
-from convergence.report.numbers import order, percent, significant
 from convergence.results import Findings
 
 METHOD_COLUMNS = ("method", "order", "limit", "half-width", "of the value")

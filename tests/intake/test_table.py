@@ -116,7 +116,12 @@ def test_blank_columns_of_a_spreadsheet_are_dropped(tmp_path: Path) -> None:
             ["t.csv: no column of sizes; name one of the columns h, cells, nodes or dofs; found: mesh, u"],
         ),
         ("h,cells\n1,2\n", ["t.csv: no column of a quantity; add a column of numbers beside the sizes"]),
-        ("h,u\n1,nan\n", ["t.csv: no column of a quantity; add a column of numbers beside the sizes"]),
+        (
+            "h,u\n1,nan\n",
+            [
+                "t.csv: no column of a quantity; add a column of numbers beside the sizes ('u' has none, 'nan' for one)"
+            ],
+        ),
         (
             "h,u,U\n1,2,3\n",
             ["t.csv:1: two columns of one name, got 'U'; give each column its own"],

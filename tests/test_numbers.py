@@ -7,7 +7,7 @@ import pytest
 from hypothesis import assume, given
 from hypothesis import strategies as st
 
-from convergence.report import numbers
+from convergence import numbers
 
 FINITE = st.floats(allow_nan=False, allow_infinity=False, min_value=-1e300, max_value=1e300)
 SIZE = st.floats(min_value=1e-300, max_value=1e300)

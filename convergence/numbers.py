@@ -175,3 +175,10 @@ def count(number: float) -> str:
     if number != int(number):
         number = float(f"{number:.2e}")
     return f"{number:,.0f}"
+
+
+def cost(cells: float, dofs: float, seconds: float) -> str:
+    """Return what is known of the cost of a mesh, in brackets after a blank; "" where nothing is."""
+    parts = [f"{count(n)} {what}" for n, what in ((cells, "cells"), (dofs, "unknowns")) if n > 0]
+    parts += [f"about {significant(seconds, 2)} s"] if seconds > 0 else []
+    return f" ({', '.join(parts)})" if parts else ""
