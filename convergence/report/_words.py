@@ -132,9 +132,8 @@ def _end(verdict: Verdict, length: str) -> str:
     start = "Refine" if verdict.word == "refine" else "It is unproven"
     if not math.isfinite(verdict.next_h):
         return f"{start}."
-    step = next_step(verdict, length) + numbers.cost(
-        verdict.next_cells, verdict.next_dofs, verdict.next_seconds
-    )
+    cost = numbers.cost(verdict.next_cells, verdict.next_dofs, verdict.next_seconds)
+    step = next_step(verdict, length) + cost
     return f"{start}: {step} would do." if verdict.word == "refine" else f"{start}; next: {step}."
 
 

@@ -119,7 +119,8 @@ def test_blank_columns_of_a_spreadsheet_are_dropped(tmp_path: Path) -> None:
         (
             "h,u\n1,nan\n",
             [
-                "t.csv: no column of a quantity; add a column of numbers beside the sizes ('u' has none, 'nan' for one)"
+                "t.csv: no column of a quantity; "
+                "add a column of numbers beside the sizes ('u' has none, 'nan' for one)"
             ],
         ),
         (
