@@ -13,7 +13,7 @@ class Fields:
     points (2, n) nodes; cells (3 or 4, m) node indices of each cell, counter-clockwise; edges (2 or 3, e)
     the nodes along each edge of the mesh; boundary (2, b) nodes of boundary segments; displacement (2, n);
     von_mises (n,) recovered stress at the nodes; error (m,) recovered energy-norm error of each cell,
-    squared, per unit area. In `cells` those of degree 2 are cut into four, so that gradients show.
+    squared, per volume. In `cells` those of degree 2 are cut into four, so that gradients show.
     """
 
     points: np.ndarray

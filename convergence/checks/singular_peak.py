@@ -9,7 +9,7 @@ import numpy as np
 
 from convergence.checks._ladder import not_applicable
 from convergence.fem.corners import singular_corners
-from convergence.fem.recovery import element_energy
+from convergence.fem.recovery import cell_volumes, element_energy
 from convergence.fem.solution import Solution
 from convergence.results import Check, Corner, Facts, Ladder
 from convergence.sequences import noise_floor, observed_order
@@ -24,12 +24,12 @@ def record(solution: Solution) -> dict[str, float]:
 
     That is the root of the mean energy density, which grows like h^(λ−1) whatever the component.
     """
-    numbers = {}
+    numbers, mesh = {}, solution.mesh
+    volume = cell_volumes(solution)
     for corner in singular_corners(solution.problem):
-        mesh = solution.mesh
         cells = np.flatnonzero((mesh.skfem.t == mesh.vertices[corner.name]).any(axis=0))
-        energy = element_energy(solution, cells).sum() / solution.problem.thickness
-        numbers[corner.name] = float(np.sqrt(energy / mesh.cell_areas[cells].sum()))
+        energy = element_energy(solution, cells).sum()
+        numbers[corner.name] = float(np.sqrt(energy / volume[cells].sum()))
     return numbers
 
 

@@ -3,7 +3,7 @@
 import numpy as np
 
 from convergence.fem.mesh import Mesh
-from convergence.fem.recovery import energy_error, nodal_values, recovered_stress
+from convergence.fem.recovery import cell_volumes, energy_error, nodal_values, recovered_stress
 from convergence.fem.solution import Solution
 from convergence.fem.stress import component
 from convergence.fields import Fields
@@ -23,7 +23,7 @@ def display(solution: Solution) -> Fields:
     mesh = solution.mesh
     recovered = recovered_stress(solution)
     error = energy_error(solution, recovered)
-    areas = mesh.cell_areas * solution.problem.thickness
+    volume = cell_volumes(solution)
     pieces = _pieces(mesh.shape, mesh.degree, mesh.skfem.elem.doflocs)
     dofs = mesh.skfem.dofs.element_dofs
     cells = np.concatenate([dofs[list(piece)] for piece in pieces], axis=1)
@@ -34,7 +34,7 @@ def display(solution: Solution) -> Fields:
         boundary=_boundary(cells),
         displacement=solution.displacement,
         von_mises=component(nodal_values(solution, recovered), "von_mises"),
-        error=np.tile(error / areas, len(pieces)),
+        error=np.tile(error / volume, len(pieces)),
     )
 
 

@@ -1,4 +1,4 @@
-"""Isotropic linear elasticity of a part, in the plane and with the out-of-plane stress."""
+"""Isotropic linear elasticity of a part, in a plane or a meridian plane, with the stress out of it."""
 
 from dataclasses import dataclass
 from typing import Annotated, Literal
@@ -8,6 +8,7 @@ import numpy as np
 from convergence.dimensions import PoissonRatio, PositiveStress
 
 PlaneKind = Literal["plane stress", "plane strain"]
+ProblemKind = Literal["plane stress", "plane strain", "axisymmetric"]
 
 
 @dataclass(frozen=True)
@@ -23,21 +24,25 @@ class Material:
     def shear_modulus(self) -> float:
         return self.young / (2.0 * (1.0 + self.poisson))
 
-    def kappa(self, kind: PlaneKind) -> float:
-        """Return Kolosov's constant."""
+    def kappa(self, kind: ProblemKind) -> float:
+        """Return Kolosov's constant; near a corner an axisymmetric body is in plane strain."""
         nu = self.poisson
-        return 3.0 - 4.0 * nu if kind == "plane strain" else (3.0 - nu) / (1.0 + nu)
+        return (3.0 - nu) / (1.0 + nu) if kind == "plane stress" else 3.0 - 4.0 * nu
 
-    def elasticity(self, kind: PlaneKind) -> np.ndarray:
-        """Return D (4, 3): stresses xx, yy, zz, xy from strains xx, yy, 2xy."""
+    def elasticity(self, kind: ProblemKind) -> np.ndarray:
+        """Return D (4, 4): stresses xx, yy, zz, xy from strains xx, yy, zz, 2xy.
+
+        In plane stress the strain zz follows from the others and its column is zero; in plane strain
+        it is zero itself; axisymmetric it is the hoop strain.
+        """
         mu, nu = self.shear_modulus, self.poisson
-        if kind == "plane strain":
-            lam = 2.0 * mu * nu / (1.0 - 2.0 * nu)
-            through = [lam, lam, 0.0]
+        matrix = np.diag([2.0 * mu, 2.0 * mu, 2.0 * mu, mu])
+        if kind == "plane stress":
+            matrix[2, 2] = 0.0
+            matrix[:2, :2] += 2.0 * mu * nu / (1.0 - nu)
         else:
-            lam = 2.0 * mu * nu / (1.0 - nu)
-            through = [0.0, 0.0, 0.0]
-        return np.array([[lam + 2 * mu, lam, 0.0], [lam, lam + 2 * mu, 0.0], through, [0.0, 0.0, mu]])
+            matrix[:3, :3] += 2.0 * mu * nu / (1.0 - 2.0 * nu)
+        return matrix
 
     def compliance(self) -> np.ndarray:
         """Return S (4, 4): s.S.s is twice the energy density of the stresses xx, yy, zz, xy."""

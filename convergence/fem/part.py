@@ -25,12 +25,14 @@ def arc(centre: tuple[float, float], radius: float, start: float, end: float) ->
     return curve
 
 
-def ellipse(half_x: float, half_y: float, start: float, end: float) -> Curve:
-    """Return an arc of an ellipse about the origin, by the eccentric angle in degrees."""
+def ellipse(
+    half_x: float, half_y: float, start: float, end: float, *, centre: tuple[float, float] = (0.0, 0.0)
+) -> Curve:
+    """Return an arc of an ellipse, by the eccentric angle in degrees."""
 
     def curve(s: np.ndarray) -> np.ndarray:
         angle = np.radians(start + (end - start) * s)
-        return np.array([half_x * np.cos(angle), half_y * np.sin(angle)])
+        return np.array([centre[0] + half_x * np.cos(angle), centre[1] + half_y * np.sin(angle)])
 
     return curve
 

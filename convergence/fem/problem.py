@@ -5,7 +5,7 @@ from dataclasses import dataclass, field
 
 import numpy as np
 
-from convergence.fem.material import Material, PlaneKind
+from convergence.fem.material import Material, ProblemKind
 from convergence.fem.part import Part
 
 FieldFunction = Callable[[np.ndarray, np.ndarray], np.ndarray]
@@ -56,9 +56,9 @@ class BearingLoad:
 
 @dataclass(frozen=True)
 class BodyForce:
-    """Force per volume in a region (every region where None)."""
+    """Force per volume in a region (every region where None): a vector, or a function of (x, y)."""
 
-    value: tuple[float, float]
+    value: tuple[float, float] | FieldFunction
     region: str | None = None
 
 
@@ -76,16 +76,26 @@ class Exact:
 
 @dataclass(frozen=True)
 class Problem:
-    """A linear static problem in the plane. `materials` by region of the part."""
+    """A linear static problem in a plane. `materials` by region of the part.
+
+    Axisymmetric, x is the radius and y the axis; loads and energies are those of the whole ring, and the
+    stress zz is the hoop stress.
+    """
 
     title: str
     part: Part
     materials: Mapping[str, Material]
     supports: tuple[Support, ...]
     loads: tuple[Load, ...]
-    kind: PlaneKind = "plane stress"
+    kind: ProblemKind = "plane stress"
     thickness: float = 1.0
     exact: Exact | None = field(default=None, compare=False)
+
+    def depth(self, x: np.ndarray) -> np.ndarray:
+        """Return the extent out of the plane at x: the thickness, or the circumference 2πx."""
+        if self.kind == "axisymmetric":
+            return np.asarray(2.0 * np.pi * x)
+        return np.full_like(x, self.thickness)
 
     def names(self) -> dict[str, tuple[str, ...]]:
         """Return the names a quantity may use, by what they name."""

@@ -15,6 +15,7 @@ import numpy as np
 from scipy import sparse
 from skfem import Basis
 
+from convergence.fem.assembly import volumes
 from convergence.fem.solution import Solution
 from convergence.fem.stress import direct_stress
 
@@ -32,6 +33,7 @@ POWERS = {
     ("quadrilateral", 2): ((0, 0), (1, 0), (0, 1), (2, 0), (1, 1), (0, 2), (2, 1), (1, 2), (2, 2)),
 }
 SMALLEST_EIGENVALUE = 1e-7
+THINNEST = 1e-4
 RINGS = 3
 CHUNK = 20_000
 
@@ -58,7 +60,9 @@ def energy_error(solution: Solution, at_cell_nodes: np.ndarray) -> np.ndarray:
     """Return the squared energy norm (force × length) of recovered minus element stress, per cell."""
     basis = _fine_basis(solution, 2 * solution.mesh.degree + 2)
     better = interpolate(basis, at_cell_nodes)
-    return energy_norm_squared(solution, better - direct_stress(solution, basis.X), basis.dx)
+    return energy_norm_squared(
+        solution, better - direct_stress(solution, basis.X), volumes(solution.problem, basis)
+    )
 
 
 def exact_energy_error(solution: Solution) -> np.ndarray:
@@ -67,26 +71,36 @@ def exact_energy_error(solution: Solution) -> np.ndarray:
     basis = _fine_basis(solution, 10)
     x, y = np.asarray(basis.global_coordinates())
     difference = solution.problem.exact.stress(x, y) - direct_stress(solution, basis.X)
-    return energy_norm_squared(solution, difference, basis.dx)
+    return energy_norm_squared(solution, difference, volumes(solution.problem, basis))
 
 
 def element_energy(solution: Solution, cells: np.ndarray) -> np.ndarray:
     """Return twice the strain energy of the given cells."""
     basis = _fine_basis(solution, 2 * solution.mesh.degree, cells)
-    return energy_norm_squared(solution, direct_stress(solution, basis.X, cells), basis.dx, cells)
+    stress = direct_stress(solution, basis.X, cells)
+    return energy_norm_squared(solution, stress, volumes(solution.problem, basis), cells)
+
+
+def cell_volumes(solution: Solution) -> np.ndarray:
+    """Return the volume of each cell."""
+    basis = _fine_basis(solution, 2 * solution.mesh.degree)
+    return np.asarray(volumes(solution.problem, basis).sum(axis=1))
 
 
 def energy_norm_squared(
-    solution: Solution, stress: np.ndarray, dx: np.ndarray, cells: np.ndarray | None = None
+    solution: Solution, stress: np.ndarray, weights: np.ndarray, cells: np.ndarray | None = None
 ) -> np.ndarray:
-    """Return ∫ s.S.s t dA of each of the cells (all where None) from stresses (4, cells, points)."""
+    """Return ∫ s.S.s dV of each of the cells (all where None) from stresses (4, cells, points).
+
+    `weights` (cells, points) is the volume that each point stands for.
+    """
     chosen = np.arange(solution.mesh.cells) if cells is None else cells
     norm = np.empty(len(chosen))
     for region, members in solution.mesh.regions.items():
         mine = np.isin(chosen, members)
-        compliance = solution.problem.materials[region].compliance() * solution.problem.thickness
+        compliance = solution.problem.materials[region].compliance()
         values = stress[:, mine]
-        norm[mine] = np.einsum("seq,st,teq,eq->e", values, compliance, values, dx[mine], optimize=True)
+        norm[mine] = np.einsum("seq,st,teq,eq->e", values, compliance, values, weights[mine], optimize=True)
     return norm
 
 
@@ -124,7 +138,7 @@ class _Patches:
         self.samples = np.broadcast_to(at, (2, len(cells), SAMPLES[key].shape[1]))
         stress = direct_stress(solution, SAMPLES[key], cells)
         self.stress = np.broadcast_to(stress, (4, *self.samples.shape[1:]))
-        self.scale = np.ones(len(numbers))
+        self.frame = np.zeros((len(numbers), 2, 2))
         self.coefficients = self._fit(self._incidence())
 
     def _incidence(self) -> sparse.csr_matrix:
@@ -166,15 +180,16 @@ class _Patches:
             rows = patches[part]
             owner = np.repeat(np.arange(len(part)), np.diff(rows.indptr))
             offset = self.samples[:, rows.indices] - self.centre[:, part[owner], None]
-            reach = np.maximum.reduceat(np.hypot(*offset).max(axis=1), rows.indptr[:-1])
-            basis = _monomials(offset / reach[owner][:, None], self.powers[:terms])
+            spread = np.add.reduceat(np.einsum("ipq,jpq->pij", offset, offset), rows.indptr[:-1], axis=0)
+            count = np.diff(rows.indptr)[:, None, None] * self.samples.shape[2]
+            frame = _even_frame(spread / count)
+            basis = _monomials(np.einsum("pij,jpq->ipq", frame[owner], offset), self.powers[:terms])
             moments = np.add.reduceat(np.einsum("apq,bpq->pab", basis, basis), rows.indptr[:-1], axis=0)
             right = np.einsum("apq,spq->pas", basis, self.stress[:, rows.indices])
             right = np.add.reduceat(right, rows.indptr[:-1], axis=0)
-            count = np.diff(rows.indptr)[:, None, None] * self.samples.shape[2]
             good = np.linalg.eigvalsh(moments / count)[:, 0] > SMALLEST_EIGENVALUE
             out[part[good], :terms] = np.linalg.solve(moments[good], right[good])
-            self.scale[part[good]] = reach[good]
+            self.frame[part[good]] = frame[good]
             done[start : start + CHUNK] = good
         return done
 
@@ -192,9 +207,19 @@ class _Patches:
         return result
 
     def _evaluate(self, vertices: np.ndarray, places: np.ndarray) -> np.ndarray:
-        offset = (places - self.centre[:, vertices]) / self.scale[vertices]
+        offset = np.einsum("eij,je->ie", self.frame[vertices], places - self.centre[:, vertices])
         basis = _monomials(offset, self.powers)
         return np.asarray(np.einsum("te,ets->se", basis, self.coefficients[vertices]))
+
+
+def _even_frame(spread: np.ndarray) -> np.ndarray:
+    """Return (n, 2, 2) that maps offsets to even coordinates of size one, however thin their patch is.
+
+    `spread` (n, 2, 2) are the mean products of the offsets.
+    """
+    size = np.trace(spread, axis1=1, axis2=2)[:, None, None]
+    factor = np.linalg.cholesky(spread + (THINNEST**2 * size + np.finfo(float).tiny) * np.eye(2))
+    return np.asarray(0.5 * np.linalg.inv(factor))
 
 
 def _monomials(offset: np.ndarray, powers: tuple[tuple[int, int], ...]) -> np.ndarray:

@@ -62,17 +62,22 @@ class Solution:
         return self.resultant(forces, about)
 
     def resultant(self, forces: np.ndarray, about: tuple[float, float] = (0.0, 0.0)) -> np.ndarray:
-        """Return force x, force y and moment about a point of interleaved nodal forces."""
+        """Return force x, force y and moment about a point of interleaved nodal forces.
+
+        Around a ring the radial forces cancel: only the force along the axis is left.
+        """
         x, y = self.mesh.nodes
         fx, fy = forces[::2], forces[1::2]
         moment = (x - about[0]) @ fy - (y - about[1]) @ fx
+        if self.problem.kind == "axisymmetric":
+            return np.array([0.0, fy.sum(), 0.0])
         return np.array([fx.sum(), fy.sum(), moment])
 
 
 def solve(problem: Problem, mesh: Mesh) -> Solution:
     """Solve a problem on a mesh. SolvingError where it cannot be solved."""
     held, numbers, values = _held(problem, mesh)
-    _require_no_rigid_motion(mesh, numbers)
+    _require_no_rigid_motion(problem, mesh, numbers)
     matrix, load = stiffness(problem, mesh), load_vector(problem, mesh)
     u = direct(matrix, load, numbers, values)
     return Solution(problem, mesh, matrix, load, u, held)
@@ -103,14 +108,20 @@ def _held(problem: Problem, mesh: Mesh) -> tuple[dict[str, np.ndarray], np.ndarr
     return held, numbers, values[numbers]
 
 
-def _require_no_rigid_motion(mesh: Mesh, held: np.ndarray) -> None:
-    """Check that the held unknowns stop both shifts and the turn: balanced loads hide a loose part."""
+def _require_no_rigid_motion(problem: Problem, mesh: Mesh, held: np.ndarray) -> None:
+    """Check that the held unknowns stop every rigid motion: balanced loads hide a loose part.
+
+    In a plane these are both shifts and the turn; a ring can only move along its axis.
+    """
     x, y = (mesh.nodes - mesh.nodes.mean(axis=1, keepdims=True)) / mesh.part.size
     ones, none = np.ones_like(x), np.zeros_like(x)
-    motions = np.array([[ones, none], [none, ones], [-y, x]]).transpose(0, 2, 1).reshape(3, -1)[:, held]
+    ways = {"move along x": [ones, none], "move along y": [none, ones], "turn": [-y, x]}
+    if problem.kind == "axisymmetric":
+        ways = {"move along y": [none, ones]}
+    motions = np.array(list(ways.values())).transpose(0, 2, 1).reshape(len(ways), -1)[:, held]
     stopped, modes = np.linalg.eigh(motions @ motions.T)
-    if stopped[0] <= LOOSE * stopped[-1]:
-        way = ("move along x", "move along y", "turn")[int(np.abs(modes[:, 0]).argmax())]
+    if stopped[0] <= LOOSE * max(stopped[-1], 1.0):
+        way = list(ways)[int(np.abs(modes[:, 0]).argmax())]
         raise SolvingError(f"the supports do not hold the part: it can still {way}; hold it there")
 
 

@@ -32,13 +32,29 @@ def direct_stress(solution: Solution, local: np.ndarray, cells: np.ndarray | Non
     mesh = solution.mesh
     chosen = np.arange(mesh.cells) if cells is None else cells
     gradient = displacement_gradient(solution, local, chosen)
-    strain = np.array([gradient[0, 0], gradient[1, 1], gradient[0, 1] + gradient[1, 0]])
-    stress = np.zeros((4, *strain.shape[1:]))
+    hoop = _hoop_strain(solution, local, chosen, gradient[0, 0])
+    strain = np.array([gradient[0, 0], gradient[1, 1], hoop, gradient[0, 1] + gradient[1, 0]])
+    stress = np.zeros_like(strain)
     for region, members in mesh.regions.items():
         mine = np.isin(chosen, members)
         elasticity = solution.problem.materials[region].elasticity(solution.problem.kind)
         stress[:, mine] = np.einsum("st,teq->seq", elasticity, strain[:, mine])
     return stress
+
+
+def _hoop_strain(solution: Solution, local: np.ndarray, cells: np.ndarray, radial: np.ndarray) -> np.ndarray:
+    """Return u/x of an axisymmetric problem, du/dx on its axis; zero in a plane."""
+    if solution.problem.kind != "axisymmetric":
+        return np.zeros_like(radial)
+    mesh = solution.mesh
+    mapping, element = mesh.skfem.mapping(), mesh.skfem.elem()
+    x = np.broadcast_to(np.asarray(mapping.F(local, tind=cells))[0], radial.shape)
+    u = np.zeros_like(radial)
+    for number, nodes in enumerate(mesh.skfem.dofs.element_dofs[:, cells]):
+        shape = np.asarray(element.gbasis(mapping, local, number, tind=cells)[0])
+        u += solution.displacement[0, nodes][:, None] * shape
+    away = x > 1e-9 * mesh.part.size
+    return np.where(away, u / np.where(away, x, 1.0), radial)
 
 
 def displacement_gradient(solution: Solution, local: np.ndarray, cells: np.ndarray) -> np.ndarray:

@@ -10,6 +10,7 @@ from typing import Annotated, Any, Literal
 import numpy as np
 
 from convergence.dimensions import BoundaryName, Length
+from convergence.fem.assembly import volumes
 from convergence.fem.solution import Solution
 from convergence.results import Kind
 
@@ -27,7 +28,7 @@ def mean_displacement(
     boundary: Annotated[BoundaryName, "boundary to average over"],
     component: Annotated[Literal["x", "y"], "direction"] = "y",
 ) -> Length:
-    """Average over the length of the boundary."""
+    """Average over the area of the boundary."""
     from skfem import FacetBasis
 
     mesh = solution.mesh
@@ -35,5 +36,5 @@ def mean_displacement(
         mesh.skfem, mesh.skfem.elem(), facets=mesh.facets[boundary], intorder=2 * mesh.degree + 2
     )
     u = solution.displacement["xy".index(component)]
-    values = np.asarray(basis.interpolate(u))
-    return float((values * basis.dx).sum() / basis.dx.sum())
+    values, weights = np.asarray(basis.interpolate(u)), volumes(solution.problem, basis)
+    return float((values * weights).sum() / weights.sum())

@@ -38,6 +38,6 @@ def section_force(
     along = (b - a) / np.hypot(*(b - a))
     normal = np.array([along[1], -along[0]])
     traction = np.array([xx * normal[0] + xy * normal[1], xy * normal[0] + yy * normal[1]])
-    force = solution.problem.thickness * (traction @ weights)
+    force = traction @ (weights * solution.problem.depth(places[0]))
     directions = {"normal": normal, "shear": along, "x": np.array([1.0, 0.0]), "y": np.array([0.0, 1.0])}
     return float(force @ directions[component])

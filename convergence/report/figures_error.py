@@ -18,7 +18,7 @@ if TYPE_CHECKING:
 
 
 def error_map(field: Fields, units: Units) -> Picture | None:
-    """Return the map of the squared energy-norm error per area, None where it is zero everywhere."""
+    """Return the map of the squared energy-norm error per volume, None where it is zero everywhere."""
     from matplotlib.colors import LogNorm
     from matplotlib.tri import Triangulation
 
@@ -32,7 +32,7 @@ def error_map(field: Fields, units: Units) -> Picture | None:
     x, y = field.points[:, flat.ravel()]
     split = Triangulation(x, y, np.arange(flat.size).reshape(-1, 3))
     shade = np.repeat(np.tile(field.error, len(flat) // len(field.error)), 3)
-    energy = f"{units.force} {units.length}/{units.length}²" if units.length and units.force else ""
+    energy = f"{units.force} {units.length}/{units.length}³" if units.length and units.force else ""
 
     def paint(figure: "Figure") -> None:
         axes = figure.add_subplot()
@@ -45,13 +45,13 @@ def error_map(field: Fields, units: Units) -> Picture | None:
             rasterized=True,
         )
         bar = figure.colorbar(drawn, ax=axes, extend="min", shrink=0.85, pad=0.02)
-        bar.set_label(f"squared error per area{bracket(energy)}")
+        bar.set_label(f"squared error per volume{bracket(energy)}")
         log_ticks(bar.ax, low, high)
         _plane.outline(axes, field.points, field.boundary, "-")
         _plane.view(axes, field.points)
 
     caption = (
-        "Squared energy-norm error per area on the finest mesh, from the recovered stress, logarithmic"
+        "Squared energy-norm error per volume on the finest mesh, from the recovered stress, logarithmic"
         " colours: bright cells are where refinement pays."
     )
     alt = "Map of the estimated energy-norm error density on the finest mesh"

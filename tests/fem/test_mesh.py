@@ -82,7 +82,7 @@ def test_lengths_of_boundaries(shape: str, degree: int) -> None:
         name: float(FacetBasis(level.skfem, level.skfem.elem(), facets=facets, intorder=6).dx.sum())
         for name, facets in level.facets.items()
     }
-    straight = {"top": 80.0, "end": 80.0, "outer": 400.0, "inner": 200.0}
+    straight = {"top": 80.0, "end": 80.0, "left": 200.0, "bottom": 200.0, "inner": 200.0}
     assert {name: lengths[name] for name in straight} == pytest.approx(straight, rel=1e-12)
     # chords of 90 / 16 degrees at most: a²/24 of the arc
     assert lengths["fillet"] == pytest.approx(0.5 * np.pi * 20.0, rel=np.radians(90.0 / 16.0) ** 2 / 24.0)
