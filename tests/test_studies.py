@@ -22,7 +22,7 @@ EXPECTED = {
     "cutout": {"corner_stress": "singular"},
     "cylinder": {"wall_force": "refine"},
     "hinge_pin": {},
-    "lug": {},
+    "lug": {"base_corner": "singular"},
     "patch": {},
     "pin_link": {},
     "roller_plate": {"weld_toe": "singular"},
