@@ -155,7 +155,7 @@ def test_judging_solves_nothing(tmp_path: Path, monkeypatch: pytest.MonkeyPatch)
         raise AssertionError("solved while judging")
 
     monkeypatch.setattr(solution_module, "stiffness", refuse)
-    monkeypatch.setattr(solution_module, "direct", refuse)
+    monkeypatch.setattr(solution_module, "solve_equations", refuse)
     findings = judge(ladder, study.quantities, facts_of(study), study.title)
     assert findings.all_sound, "a linear field is exact on every mesh"
     assert all(check.passed is not False for check in findings.checks)

@@ -7,15 +7,16 @@ from typing import Any
 
 import numpy as np
 from scipy import sparse
-from skfem import Basis, FacetBasis
+from skfem import Basis
 
+from convergence.fem.edges import edge_basis
 from convergence.fem.mesh import Mesh
 from convergence.fem.problem import BodyForce, FieldFunction, Load, Pressure, Problem, Traction
 
 CHUNK = 20_000
 STIFFNESS_ORDER = {("triangle", 1): 1, ("triangle", 2): 4, ("quadrilateral", 1): 5, ("quadrilateral", 2): 7}
 HOOP_ORDER = 2  # more where the hoop strain u/x is integrated
-LOAD_ORDER = 19
+LOAD_POINTS = 10
 
 
 def unknowns(dofs: np.ndarray) -> np.ndarray:
@@ -84,39 +85,44 @@ def load_vector(problem: Problem, mesh: Mesh) -> np.ndarray:
 
 
 def _one_load(load: Load, problem: Problem, mesh: Mesh) -> np.ndarray:
-    element = mesh.skfem.elem()
     if isinstance(load, BodyForce):
-        members = None if load.region is None else mesh.regions[load.region]
-        basis = Basis(mesh.skfem, element, intorder=2 * mesh.degree + 2, elements=members)
-        return _integrate(basis, problem, mesh, _values(load.value, basis))
-    basis = FacetBasis(mesh.skfem, element, facets=mesh.facets[load.boundary], intorder=LOAD_ORDER)
-    x, y = np.asarray(basis.global_coordinates())
-    normal = np.asarray(basis.normals)
+        return _body_load(load, problem, mesh)
+    edges = edge_basis(mesh, load.boundary, LOAD_POINTS)
+    shapes, weights = edges.shapes[:, None, :], edges.dx * problem.depth(edges.places[0])
     if isinstance(load, Pressure):
-        return _integrate(basis, problem, mesh, -load.value * normal)
+        return _integrate(mesh, edges.nodes, shapes, weights, -load.value * edges.normals)
     if isinstance(load, Traction):
-        return _integrate(basis, problem, mesh, _values(load.value, basis))
-    force, arm = np.array(load.force), np.array([x - load.centre[0], y - load.centre[1]])
+        return _integrate(mesh, edges.nodes, shapes, weights, _values(load.value, edges.places))
+    force, arm = np.array(load.force), edges.places - np.array(load.centre)[:, None, None]
     direction = force / np.hypot(*force)
     cosine = np.einsum("c,c...->...", direction, arm / np.hypot(*arm))
-    vector = _integrate(basis, problem, mesh, -np.clip(cosine, 0.0, None) * normal)
+    vector = _integrate(mesh, edges.nodes, shapes, weights, -np.clip(cosine, 0.0, None) * edges.normals)
     resultant = np.array([vector[::2].sum(), vector[1::2].sum()])
     return np.asarray(vector * (np.hypot(*force) / (resultant @ direction)))
 
 
-def _values(value: tuple[float, float] | FieldFunction, basis: Any) -> np.ndarray:
-    """Return a vector or a vector field at the points of a basis, (2, cells, points)."""
-    x, y = np.asarray(basis.global_coordinates())
-    return np.asarray(value(x, y)) if callable(value) else np.multiply.outer(value, np.ones_like(x))
+def _body_load(load: BodyForce, problem: Problem, mesh: Mesh) -> np.ndarray:
+    cells = np.arange(mesh.cells) if load.region is None else mesh.regions[load.region]
+    basis = Basis(mesh.skfem, mesh.skfem.elem(), intorder=2 * mesh.degree + 2, elements=cells)
+    shapes = np.array([np.asarray(function[0]) for function in basis.basis])
+    values = _values(load.value, np.asarray(basis.global_coordinates()))
+    return _integrate(mesh, mesh.skfem.dofs.element_dofs[:, cells], shapes, volumes(problem, basis), values)
 
 
-def _integrate(basis: Any, problem: Problem, mesh: Mesh, values: np.ndarray) -> np.ndarray:
-    """Return the integrals of values (2, cells, points) times each shape function."""
-    weights = volumes(problem, basis)
+def _values(value: tuple[float, float] | FieldFunction, places: np.ndarray) -> np.ndarray:
+    """Return a vector or a vector field at places (2, ...)."""
+    if callable(value):
+        return np.asarray(value(places[0], places[1]))
+    return np.asarray(np.multiply.outer(value, np.ones_like(places[0])))
+
+
+def _integrate(
+    mesh: Mesh, dofs: np.ndarray, shapes: np.ndarray, weights: np.ndarray, values: np.ndarray
+) -> np.ndarray:
+    """Return the integrals of values (2, m, points) times the shapes (n, m or 1, points) of dofs (n, m)."""
     vector = np.zeros(2 * mesh.nodes.shape[1])
-    dofs = basis.element_dofs if basis.tind is None else mesh.skfem.dofs.element_dofs[:, basis.tind]
-    for number, function in enumerate(basis.basis):
-        weighted = np.einsum("ceq,eq->ce", values * np.asarray(function[0]), weights)
-        np.add.at(vector, 2 * dofs[number], weighted[0])
-        np.add.at(vector, 2 * dofs[number] + 1, weighted[1])
+    for nodes, shape in zip(dofs, shapes, strict=True):
+        weighted = (values * (shape * weights)).sum(axis=2)
+        np.add.at(vector, 2 * nodes, weighted[0])
+        np.add.at(vector, 2 * nodes + 1, weighted[1])
     return vector

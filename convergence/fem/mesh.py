@@ -20,9 +20,13 @@ Shape = Literal["triangle", "quadrilateral"]
 
 @dataclass(frozen=True, eq=False)
 class Mesh:
-    """A part cut into cells. `skfem` is scikit-fem's mesh; facets and vertices are its numbers."""
+    """A part cut into cells. `skfem` is scikit-fem's mesh; facets and vertices are its numbers.
+
+    `counts` holds the cells along each family of the part's edges.
+    """
 
     part: Part
+    counts: Mapping[int, int]
     skfem: Any
     shape: Shape
     degree: int
@@ -87,6 +91,12 @@ class _Numbering:
         return ids
 
 
+def block_grids(part: Part, counts: Mapping[int, int]) -> list[np.ndarray]:
+    """Return the vertices of each block as a grid, numbered as in `mesh`; first index from a to b."""
+    numbering = _Numbering(part, counts)
+    return [numbering.grid(index) for index in range(len(part.blocks))]
+
+
 def _pair_keys(first: np.ndarray, second: np.ndarray) -> np.ndarray:
     keys: np.ndarray = np.minimum(first, second).astype(np.int64) * 2**31 + np.maximum(first, second)
     return keys
@@ -147,6 +157,7 @@ def mesh(part: Part, counts: Mapping[int, int], *, shape: Shape, degree: int) ->
     regions = part.regions or {"body": tuple(range(len(part.blocks)))}
     return Mesh(
         part=part,
+        counts=dict(counts),
         skfem=native,
         shape=shape,
         degree=degree,

@@ -9,9 +9,9 @@ from scipy import sparse
 
 from convergence.errors import SolvingError, Unsuitable
 from convergence.fem.assembly import load_vector, stiffness
+from convergence.fem.equations import solve_equations
 from convergence.fem.mesh import Mesh
 from convergence.fem.problem import Problem, Support
-from convergence.fem.solvers import direct
 
 LOOSE = 1e-12
 
@@ -79,7 +79,7 @@ def solve(problem: Problem, mesh: Mesh) -> Solution:
     held, numbers, values = _held(problem, mesh)
     _require_no_rigid_motion(problem, mesh, numbers)
     matrix, load = stiffness(problem, mesh), load_vector(problem, mesh)
-    u = direct(matrix, load, numbers, values)
+    u = solve_equations(mesh, matrix, load, numbers, values)
     return Solution(problem, mesh, matrix, load, u, held)
 
 

@@ -7,6 +7,7 @@ import numpy as np
 from convergence.fem.part import Curve, EdgeName, Part, arc, graded
 
 ARC_CELLS = 2.0
+STEEP = 4.0
 
 
 def _points(w: float, height: float, d: float, length: float, r: float) -> dict[str, tuple[float, float]]:
@@ -56,7 +57,7 @@ def l_shape(w: float, height: float, d: float, length: float, r: float) -> Part:
             ("top_left", "left", "post_middle", "top_middle"),
             ("top_right", "top_middle", "post_middle", post),
         ),
-        curves=_curves(points, r) if r else {},
+        curves=_curves(points, w, d, r) if r else {},
         boundaries={
             "top": (("top_right", "top_middle"), ("top_middle", "top_left")),
             "end": (("end_lower", "tip"), ("tip", "end_upper")),
@@ -73,15 +74,23 @@ def l_shape(w: float, height: float, d: float, length: float, r: float) -> Part:
     )
 
 
-def _curves(points: Mapping[str, tuple[float, float]], r: float) -> dict[EdgeName, Curve]:
-    """Return the two halves of the fillet, and the spokes behind it with small cells at the fillet."""
+def _curves(points: Mapping[str, tuple[float, float]], w: float, d: float, r: float) -> dict[EdgeName, Curve]:
+    """Return the two halves of the fillet, and the edges along which cells grow away from it."""
     centre = (points["arm_upper"][0], points["post_right"][1])
-    spokes = (("inner_corner", "centre"), ("arm_upper", "arm_middle"), ("post_right", "post_middle"))
-    ratio = _growth(points["centre"][0], points["centre"][1], r)
+    arm, post = (_away(w, d, r, cells) for cells in _arc_cells(w, d, r))
+    growing = {
+        ("inner_corner", "centre"): _growth(0.5 * w, 0.5 * d, r),
+        ("arm_upper", "arm_middle"): _growth(0.5 * w, 0.5 * d, r),
+        ("post_right", "post_middle"): _growth(0.5 * w, 0.5 * d, r),
+        **dict.fromkeys((("arm_upper", "end_upper"), ("arm_middle", "tip"), ("bottom", "end_lower")), arm),
+        **dict.fromkeys(
+            (("post_right", "top_right"), ("post_middle", "top_middle"), ("left", "top_left")), post
+        ),
+    }
     return {
         ("arm_upper", "inner_corner"): arc(centre, r, 270.0, 225.0),
         ("inner_corner", "post_right"): arc(centre, r, 225.0, 180.0),
-        **{(a, b): graded(points[a], points[b], ratio) for a, b in spokes},
+        **{(a, b): graded(points[a], points[b], ratio) for (a, b), ratio in growing.items()},
     }
 
 
@@ -90,15 +99,36 @@ def _growth(half_width: float, half_depth: float, r: float) -> float:
     return max(1.0, (max(half_width, half_depth) + r) / (0.25 * np.pi * r))
 
 
+def _cell(w: float, d: float) -> float:
+    """Return the size of cells far from the fillet at one division: a quarter of the narrower leg."""
+    return 0.25 * min(w, d)
+
+
+def _arc_cells(w: float, d: float, r: float) -> tuple[float, float]:
+    """Return the cells at one division on the fillet's half at the arm, and on that at the post."""
+    return tuple(max(ARC_CELLS, (0.5 * side + r) / _cell(w, d)) for side in (w, d))  # type: ignore[return-value]
+
+
+def _away(w: float, d: float, r: float, arc_cells: float) -> float:
+    """Return how much larger the last cell of a leg is than the first, next to the fillet; 1 if little."""
+    ratio = _cell(w, d) * arc_cells / (0.25 * np.pi * r)
+    return ratio if ratio > STEEP else 1.0
+
+
 def _weights(w: float, height: float, d: float, length: float, r: float) -> dict[EdgeName, float]:
-    """Return the cells per division: a quarter of the narrower leg, smaller at the fillet."""
-    cell = 0.25 * min(w, d)
+    """Return the cells per division: of one size far from the fillet, smaller at it."""
+    cell, (arm, post) = _cell(w, d), _arc_cells(w, d, r)
     return {
         ("outer_corner", "bottom_middle"): 0.5 * w / cell,
         ("outer_corner", "left_middle"): 0.5 * d / cell,
-        ("inner_corner", "arm_upper"): max(ARC_CELLS, (0.5 * w + r) / cell),
-        ("inner_corner", "post_right"): max(ARC_CELLS, (0.5 * d + r) / cell),
+        ("inner_corner", "arm_upper"): arm,
+        ("inner_corner", "post_right"): post,
         ("centre", "inner_corner"): 0.5 * max(w, d) / cell + float(np.log(_growth(0.5 * w, 0.5 * d, r))),
-        ("bottom", "end_lower"): (length - w - r) / cell,
-        ("left", "top_left"): (height - d - r) / cell,
+        ("bottom", "end_lower"): (length - w - r) / cell * _more(_away(w, d, r, arm)),
+        ("left", "top_left"): (height - d - r) / cell * _more(_away(w, d, r, post)),
     }
+
+
+def _more(ratio: float) -> float:
+    """Return how many more cells an edge has for starting with cells `ratio` times smaller than its last."""
+    return float(np.log(ratio) / (1.0 - 1.0 / ratio)) if ratio > 1.0 else 1.0

@@ -31,10 +31,10 @@ QUANTITIES = {
 def stepped_pin(
     *,
     thin_radius: Annotated[PositiveLength, "radius of the thin part"] = 20.0,
-    thick_radius: Annotated[PositiveLength, "radius of the thick part"] = 30.0,
-    fillet_radius: Annotated[PositiveLength, "radius of the shoulder fillet"] = 4.0,
-    thick_length: Annotated[PositiveLength, "half length of the thick part"] = 60.0,
-    length: Annotated[PositiveLength, "half length over all"] = 140.0,
+    thick_radius: Annotated[PositiveLength, "radius of the thick part"] = 32.0,
+    fillet_radius: Annotated[PositiveLength, "radius of the shoulder fillet"] = 7.0,
+    thick_length: Annotated[PositiveLength, "half length of the thick part"] = 30.0,
+    length: Annotated[PositiveLength, "half length over all"] = 100.0,
     tension: Annotated[Stress, "stress on the thin end, along the axis"] = 100.0,
     material: Material,
 ) -> Problem:

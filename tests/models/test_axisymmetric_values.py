@@ -112,7 +112,9 @@ def test_pin_peak_agrees_between_cells() -> None:
     """No closed form: triangles and quadrilaterals meet within the last changes of both."""
     peaks = {}
     for shape in ("quadrilateral", "triangle"):
-        problem = stepped_pin(material=STEEL)
+        problem = stepped_pin(
+            thick_radius=30.0, fillet_radius=4.0, thick_length=60.0, length=140.0, material=STEEL
+        )
         counts = problem.part.divisions(size=None, divisions=1)
         found = [
             peak_stress(

@@ -1,0 +1,213 @@
+"""Multigrid against the direct solution; iterations under refinement; what happens where it fails.
+
+Both solutions stop at a residual of 1e-10 of the load or below. The energy differs by the square of the
+error, the displacement by the error itself; 1e-8 and 1e-7 leave room for the conditioning of the parts.
+"""
+
+from collections.abc import Mapping
+from itertools import pairwise, product
+
+import numpy as np
+import pytest
+from scipy import sparse
+
+from convergence.errors import SolvingError
+from convergence.fem import equations, multigrid
+from convergence.fem.assembly import load_vector, stiffness
+from convergence.fem.material import Material
+from convergence.fem.mesh import Mesh, block_grids, mesh
+from convergence.fem.part import Part
+from convergence.fem.problem import Problem, Support
+from convergence.fem.solution import boundary_nodes
+from convergence.fem.solvers import direct, residual_limit
+from convergence.fem.transfer import counts_up, degree_up
+from convergence.models.l_bracket import l_bracket
+from convergence.models.lug import lug
+from convergence.models.perforated_plate import perforated_plate
+from convergence.models.skew_panel import skew_panel
+from convergence.models.tapered_arm import tapered_arm
+
+STEEL = Material(210000.0, 0.3)
+EVERY_CELL = pytest.mark.parametrize(
+    ("shape", "degree"), list(product(("triangle", "quadrilateral"), (1, 2)))
+)
+PARTS = {
+    "plate": (perforated_plate(material=STEEL), {1: 14, 2: 7}),
+    "lug": (lug(material=STEEL), {1: 8, 2: 4}),
+    "bracket": (l_bracket(material=STEEL), {1: 9, 2: 5}),
+}
+PANEL = skew_panel(material=STEEL)
+# two parallelograms that share an edge, one of them turned: every block's map is affine
+TWO = Part(
+    points={"a": (0, 0), "b": (3, 1), "c": (4, 4), "d": (1, 3), "e": (5, 5), "f": (2, 4)},
+    blocks=(("a", "b", "c", "d"), ("c", "e", "f", "d")),
+)
+Equations = tuple[Mesh, sparse.csr_matrix, np.ndarray, np.ndarray, np.ndarray]
+
+
+def system(problem: Problem, counts: Mapping[int, int], shape: str, degree: int) -> Equations:
+    """Return the mesh, K, f, and the held unknowns with values of a problem."""
+    level = mesh(problem.part, counts, shape=shape, degree=degree)
+    held: dict[int, float] = {}
+    for support in problem.supports:
+        assert support.boundary is not None
+        for component, value in enumerate((support.x, support.y)):
+            if value is not None:
+                numbers = 2 * boundary_nodes(level, support.boundary) + component
+                held |= dict.fromkeys(numbers.tolist(), value)
+    numbers, values = np.array(sorted(held)), np.array([held[n] for n in sorted(held)])
+    return level, stiffness(problem, level), load_vector(problem, level), numbers, values
+
+
+def divided(problem: Problem, divisions: int) -> dict[int, int]:
+    return problem.part.divisions(size=None, divisions=divisions)
+
+
+def assert_agree(matrix: sparse.csr_matrix, found: np.ndarray, expected: np.ndarray) -> None:
+    energies = [u @ (matrix @ u) for u in (found, expected)]
+    assert energies[0] == pytest.approx(energies[1], rel=1e-8)
+    assert np.abs(found - expected).max() <= 1e-7 * np.abs(expected).max()
+
+
+@EVERY_CELL
+@pytest.mark.parametrize("name", PARTS)
+def test_the_solution_is_the_direct_one(name: str, shape: str, degree: int) -> None:
+    problem, divisions = PARTS[name]
+    level, matrix, load, held, values = system(problem, divided(problem, divisions[degree]), shape, degree)
+    assert len(load) > multigrid.LARGEST_COARSEST
+    outcome = multigrid.multigrid(level, matrix, load, held, values)
+    assert outcome.converged and outcome.iterations <= 40
+    assert_agree(matrix, outcome.u, direct(matrix, load, held, values))
+
+
+@EVERY_CELL
+@pytest.mark.parametrize(
+    ("problem", "coarsest"), [(PARTS["plate"][0], 12), (PANEL, 40)], ids=["plate", "panel"]
+)
+def test_iterations_stay_bounded(problem: Problem, coarsest: int, shape: str, degree: int) -> None:
+    """Under halving of the cells; the coarsest mesh has two levels at least."""
+    iterations = []
+    for divisions in (coarsest, 2 * coarsest, 4 * coarsest):
+        outcome = multigrid.multigrid(*system(problem, divided(problem, divisions // degree), shape, degree))
+        assert outcome.converged
+        iterations.append(outcome.iterations)
+    assert max(iterations) <= 40
+    assert all(fine < 1.5 * coarse for coarse, fine in pairwise(iterations))
+
+
+@EVERY_CELL
+def test_cells_need_not_be_even_in_number(shape: str, degree: int) -> None:
+    problem = PARTS["plate"][0]
+    counts = {family: count + 1 - count % 2 for family, count in divided(problem, 27 // degree).items()}
+    level, matrix, load, held, values = system(problem, counts, shape, degree)
+    outcome = multigrid.multigrid(level, matrix, load, held, values)
+    assert outcome.converged and outcome.iterations <= 40
+    assert_agree(matrix, outcome.u, direct(matrix, load, held, values))
+
+
+def test_prescribed_displacements_are_kept() -> None:
+    level, matrix, load, held, _ = system(PANEL, divided(PANEL, 45), "quadrilateral", 1)
+    values = 1e-3 * level.nodes.T.ravel()[held]
+    outcome = multigrid.multigrid(level, matrix, load, held, values)
+    assert outcome.converged and np.array_equal(outcome.u[held], values)
+    assert_agree(matrix, outcome.u, direct(matrix, load, held, values))
+
+
+def test_no_load_is_no_displacement() -> None:
+    level, matrix, load, held, values = system(PANEL, divided(PANEL, 4), "triangle", 1)
+    outcome = multigrid.multigrid(level, matrix, 0.0 * load, held, values)
+    assert outcome.converged and outcome.iterations == 0 and not outcome.u.any()
+
+
+@pytest.mark.parametrize("missing", [1, 10])
+def test_an_unconverged_solution_is_never_used(missing: int, monkeypatch: pytest.MonkeyPatch) -> None:
+    equation = system(PANEL, divided(PANEL, 45), "quadrilateral", 1)
+    most = multigrid.multigrid(*equation).iterations - missing
+    monkeypatch.setattr(multigrid, "MOST_ITERATIONS", most)
+    monkeypatch.setattr(equations, "MOST_DIRECT", 0)
+    outcome = multigrid.multigrid(*equation)
+    assert not outcome.converged and outcome.iterations == most and outcome.residual > multigrid.TOLERANCE
+    assert np.array_equal(equations.solve_equations(*equation), direct(*equation[1:]))
+
+
+def test_many_unknowns_are_solved_by_multigrid(monkeypatch: pytest.MonkeyPatch) -> None:
+    equation = system(PANEL, divided(PANEL, 45), "quadrilateral", 1)
+    few = equations.solve_equations(*equation)
+    assert np.array_equal(few, direct(*equation[1:]))
+    monkeypatch.setattr(equations, "MOST_DIRECT", len(few) - 1)
+    assert np.array_equal(equations.solve_equations(*equation), multigrid.multigrid(*equation).u)
+
+
+@pytest.mark.parametrize("divisions", [20, 60])
+def test_a_piece_that_nothing_holds_is_refused(divisions: int, monkeypatch: pytest.MonkeyPatch) -> None:
+    """Two separate pieces, one of them held: directly on the coarsest level, and by cycles above it."""
+    square = (("a", (0, 0)), ("b", (1, 0)), ("c", (1, 1)), ("d", (0, 1)))
+    points = {f"{name}{piece}": (x + 3 * piece, y) for piece in (0, 1) for name, (x, y) in square}
+    part = Part(
+        points=points,
+        blocks=(("a0", "b0", "c0", "d0"), ("a1", "b1", "c1", "d1")),
+        boundaries={"left": (("d0", "a0"),)},
+    )
+    problem = Problem("pieces", part, {"body": STEEL}, (Support("left", 0.0, 0.0, "left"),), ())
+    level, matrix, load, held, values = system(problem, divided(problem, divisions), "quadrilateral", 1)
+    load[2 * level.vertices["c1"]] = 1.0
+    monkeypatch.setattr(equations, "MOST_DIRECT", 0)
+    assert not multigrid.multigrid(level, matrix, load, held, values).converged
+    with pytest.raises(SolvingError, match=r"singular|leaves a residual"):
+        equations.solve_equations(level, matrix, load, held, values)
+
+
+def test_a_slender_part_is_solved_as_far_as_round_off_allows() -> None:
+    """An aspect of 40: K times the rounding of u exceeds 1e-8 of the load, the solutions still agree."""
+    arm = tapered_arm(depth_root=40.0, depth_tip=20.0, material=STEEL)
+    level, matrix, load, held, values = system(arm, divided(arm, 10), "quadrilateral", 1)
+    outcome = multigrid.multigrid(level, matrix, load, held, values)
+    assert outcome.converged and outcome.residual > 1e-8
+    assert_agree(matrix, outcome.u, direct(matrix, load, held, values))
+
+
+def test_the_residual_accepted() -> None:
+    """1e-8 of the load for a stiff part; what rounding leaves for a soft one, up to 1e-5."""
+    matrix = stiffness(PANEL, mesh(PANEL.part, divided(PANEL, 2), shape="triangle", degree=1))
+    right = np.ones(matrix.shape[0])
+    size = float(np.linalg.norm(right))
+    assert residual_limit(matrix, 0.0 * right, right) == pytest.approx(1e-8 * size)
+    assert residual_limit(matrix, 1e30 * right, right) == pytest.approx(1e-5 * size)
+
+
+@pytest.mark.parametrize(("coarse", "fine"), [(2, 4), (2, 3), (3, 5), (1, 1), (1, 2)])
+def test_linear_fields_pass_between_numbers_of_cells(coarse: int, fine: int) -> None:
+    """Places are linear in an affine block's parameters, so they are carried exactly, to round-off."""
+    counts = [dict.fromkeys(TWO.families.values(), n) for n in (coarse, fine)]
+    low, high = (mesh(TWO, count, shape="quadrilateral", degree=1) for count in counts)
+    np.testing.assert_allclose(counts_up(TWO, *counts) @ low.nodes.T, high.nodes.T, atol=1e-14)
+
+
+@pytest.mark.parametrize(("shape", "degree"), [("triangle", 2), ("quadrilateral", 1), ("quadrilateral", 2)])
+def test_coarse_fields_are_fine_fields_where_the_meshes_are_nested(shape: str, degree: int) -> None:
+    """On straight sides the projected matrix is the coarse mesh's own, to round-off."""
+    counts = [dict.fromkeys(TWO.families.values(), n) for n in (3, 6 // degree)]
+    low, high = (
+        mesh(TWO, count, shape=shape, degree=k) for count, k in zip(counts, (1, degree), strict=True)
+    )
+    up = degree_up(high) if degree == 2 else counts_up(TWO, *counts)
+    both = sparse.kron(up, sparse.identity(2))
+    problem = Problem("two", TWO, {"body": STEEL}, (), ())
+    own, projected = stiffness(problem, low), both.T @ stiffness(problem, high) @ both
+    np.testing.assert_allclose(projected.toarray(), own.toarray(), atol=1e-12 * STEEL.young)
+
+
+@pytest.mark.parametrize("shape", ["triangle", "quadrilateral"])
+def test_linear_fields_pass_from_degree_1_to_degree_2(shape: str) -> None:
+    """A mesh of degree 2 with straight sides has its nodes half-way between its vertices."""
+    level = mesh(TWO, dict.fromkeys(TWO.families.values(), 3), shape=shape, degree=2)
+    up = degree_up(level)
+    np.testing.assert_allclose(up @ level.nodes[:, : up.shape[1]].T, level.nodes.T, atol=1e-14)
+
+
+def test_the_grids_are_those_of_the_mesh() -> None:
+    counts = dict.fromkeys(TWO.families.values(), 3)
+    level = mesh(TWO, counts, shape="quadrilateral", degree=1)
+    for index, ids in enumerate(block_grids(TWO, level.counts)):
+        steps = [np.linspace(0.0, 1.0, n) for n in ids.shape]
+        np.testing.assert_allclose(level.nodes[:, ids], TWO.block(index, *steps), atol=1e-14)
