@@ -1,0 +1,80 @@
+"""Integration along boundaries: against scikit-fem's own facet basis, and where that one gives up."""
+
+import numpy as np
+import pytest
+from skfem import FacetBasis
+
+from convergence import rooms
+from convergence.fem.edges import edge_basis
+from convergence.fem.material import Material
+from convergence.fem.mesh import Mesh, Shape, mesh
+from convergence.fem.part import Part
+from convergence.fem.problem import Pressure, Problem, Support, Traction
+from convergence.fem.solution import solve
+
+STEEL = Material(210000.0, 0.3)
+POINTS = 4
+EVERY_CELL = pytest.mark.parametrize(
+    ("shape", "degree"), [("triangle", 1), ("triangle", 2), ("quadrilateral", 1), ("quadrilateral", 2)]
+)
+
+
+def plate(shape: Shape, degree: int) -> Mesh:
+    part = rooms.find("models", "perforated_plate")(material=STEEL).part
+    return mesh(part, part.divisions(size=None, divisions=3), shape=shape, degree=degree)
+
+
+@EVERY_CELL
+@pytest.mark.parametrize("boundary", ["hole", "side", "symmetry_x"])
+def test_the_same_integrals_as_the_facet_basis(shape: Shape, degree: int, boundary: str) -> None:
+    """The moments of the places, of the normals and of the shapes agree to rounding, edge by edge."""
+    level = plate(shape, degree)
+    ours = edge_basis(level, boundary, POINTS)
+    theirs = FacetBasis(
+        level.skfem, level.skfem.elem(), facets=level.facets[boundary], intorder=2 * POINTS - 1
+    )
+    x = np.asarray(theirs.global_coordinates())
+    scale = level.part.size
+    for power in (0, 1, 2):
+        mine = (ours.places**power * ours.dx).sum(axis=2)
+        other = (x**power * theirs.dx).sum(axis=2)
+        assert np.abs(mine - other).max() < 1e-12 * scale ** (power + 1)
+    normals = (np.asarray(theirs.normals) * theirs.dx).sum(axis=2)
+    assert np.abs((ours.normals * ours.dx).sum(axis=2) - normals).max() < 1e-12 * scale
+    assert ours.shapes.sum(axis=0) == pytest.approx(np.ones(POINTS), rel=1e-14)
+    field = level.nodes[0] ** degree
+    along = np.einsum("ne,nq->eq", field[ours.nodes], ours.shapes)
+    total = float((np.asarray(theirs.interpolate(field)) * theirs.dx).sum())
+    assert float((along * ours.dx).sum()) == pytest.approx(total, rel=1e-12)
+
+
+@EVERY_CELL
+def test_normals_point_outward_and_enclose_the_part(shape: Shape, degree: int) -> None:
+    """Gauss's theorem: the flux of (x, y) through the whole outline is twice the area."""
+    level = plate(shape, degree)
+    flux = 0.0
+    for boundary in level.part.boundaries:
+        edges = edge_basis(level, boundary, POINTS)
+        flux += float(((edges.places * edges.normals).sum(axis=0) * edges.dx).sum())
+    assert flux == pytest.approx(2.0 * level.area, rel=1e-12)
+
+
+def test_small_cells_of_a_large_part_are_loaded() -> None:
+    """Coordinates of 1e7, cells of 1: an inverse map with a fixed tolerance of 1e-12 does not end there."""
+    low, high = 1e7, 1e7 + 8.0
+    part = Part(
+        points={"a": (low, low), "b": (high, low), "c": (high, high - 1.0), "d": (low, high)},
+        blocks=(("a", "b", "c", "d"),),
+        boundaries={"left": (("d", "a"),), "right": (("b", "c"),), "top": (("c", "d"),)},
+    )
+    problem = Problem(
+        "block",
+        part,
+        {"body": STEEL},
+        (Support("left", x=0.0, y=0.0, boundary="left"),),
+        (Traction("right", (2.0, 0.0)), Pressure("top", 1.0)),
+    )
+    level = mesh(part, part.divisions(size=1.0, divisions=None), shape="quadrilateral", degree=1)
+    force = solve(problem, level).reaction("left")
+    # 7 mm of traction 2 to the right; pressure 1 on an edge that falls by 1 over 8: (-1, -8)
+    assert force[:2] == pytest.approx([-(2.0 * 7.0 - 1.0), 8.0], rel=1e-6)
