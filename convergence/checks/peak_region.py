@@ -2,8 +2,10 @@
 
 The largest stress of a region that holds a singular corner (Williams 1952, J. Appl. Mech. 19:526) has no
 limit, even where another place leads on the levels so far: the corner overtakes it on some finer mesh.
+A value that stands and grows on the corner itself is left to the check of singular peaks.
 """
 
+from convergence.checks._corner import growing_corner
 from convergence.checks._ladder import not_applicable
 from convergence.fem.solution import Solution
 from convergence.results import Check, Facts, Ladder
@@ -20,7 +22,7 @@ def peak_region(ladder: Ladder, facts: Facts) -> Check:
         return not_applicable("peak_region", "The model is not known, so its corners are not.")
     spoils = {}
     for name, corners in facts.covered.items():
-        if corners:
+        if corners and growing_corner(ladder, facts, name) is None:
             weakest = min(corners, key=lambda corner: corner.exponent)
             spoils[name] = (
                 f"its region holds the singular corner {weakest.name} at ({weakest.x:.4g}, "

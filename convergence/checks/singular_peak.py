@@ -7,6 +7,7 @@ growth than λ = 0.2 is no singularity but a notch that the coarse levels did no
 
 import numpy as np
 
+from convergence.checks._corner import growing_corner
 from convergence.checks._ladder import not_applicable
 from convergence.fem.corners import singular_corners
 from convergence.fem.recovery import cell_volumes, element_energy
@@ -16,7 +17,6 @@ from convergence.sequences import noise_floor, observed_order
 
 STRESS_KINDS = ("peak_stress", "point_stress", "unknown")
 FASTEST, SLOWEST = -0.8, 0.05
-NEAR = 2.0
 
 
 def record(solution: Solution) -> dict[str, float]:
@@ -64,10 +64,9 @@ def _reason(ladder: Ladder, facts: Facts, name: str) -> str:
     f = ladder.column(name)
     exponent = growth_exponent(ladder.h, f)
     before = growth_exponent(ladder.h[:-1], f[:-1])
-    corner = _corner_at(ladder, facts, name)
+    corner = growing_corner(ladder, facts, name)
     if corner is not None:
-        grows = len(f) < 3 or abs(f[-1]) > abs(f[-2])
-        return _at_corner(corner, corner_exponent(ladder, corner.name)) if grows else ""
+        return _at_corner(corner, corner_exponent(ladder, corner.name))
     if facts.corners is None and np.isfinite(exponent) and np.isfinite(before):
         growth = "log h" if abs(exponent - 1.0) <= SLOWEST else f"h^({exponent:.2f}-1)"
         return (
@@ -97,15 +96,3 @@ def _at_corner(corner: Corner, exponent: float) -> str:
         f"limit: theory λ = {corner.exponent:.3f}, {data}; report the stress at a stated distance, a mean "
         "over a line or a resultant, or model the real radius"
     )
-
-
-def _corner_at(ladder: Ladder, facts: Facts, name: str) -> Corner | None:
-    """Return the corner at the place of a point stress, or within two cells of a peak on the finest level."""
-    if facts.kinds[name] == "point_stress":
-        return next(iter(facts.covered.get(name, ())), None)
-    x, y = ladder.column(f"{name}.x"), ladder.column(f"{name}.y")
-    if not facts.corners or not len(x) or not (np.isfinite(x[-1]) and np.isfinite(y[-1])):
-        return None
-    reach = NEAR * float(ladder.h[-1])
-    near = [c for c in facts.corners if np.hypot(c.x - x[-1], c.y - y[-1]) <= reach]
-    return min(near, key=lambda c: float(np.hypot(c.x - x[-1], c.y - y[-1])), default=None)

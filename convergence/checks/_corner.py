@@ -1,0 +1,25 @@
+"""The singular corner that a stress sits on, and grows at."""
+
+import numpy as np
+
+from convergence.results import Corner, Facts, Ladder
+
+NEAR = 2.0
+
+
+def growing_corner(ladder: Ladder, facts: Facts, name: str) -> Corner | None:
+    """Return the corner where the value stands, if it grows there or the levels are too few to tell.
+
+    A point stress stands on a corner or not; a peak counts within two cells of it on the finest level.
+    """
+    f = ladder.column(name)
+    if len(f) >= 3 and not abs(f[-1]) > abs(f[-2]):
+        return None
+    if facts.kinds.get(name) == "point_stress":
+        return next(iter(facts.covered.get(name, ())), None)
+    x, y = ladder.column(f"{name}.x"), ladder.column(f"{name}.y")
+    if not facts.corners or not len(x) or not (np.isfinite(x[-1]) and np.isfinite(y[-1])):
+        return None
+    distance = {corner: float(np.hypot(corner.x - x[-1], corner.y - y[-1])) for corner in facts.corners}
+    near = [corner for corner in distance if distance[corner] <= NEAR * float(ladder.h[-1])]
+    return min(near, key=lambda corner: distance[corner], default=None)
