@@ -27,6 +27,8 @@ from convergence.models.perforated_plate import perforated_plate
 from convergence.models.skew_panel import skew_panel
 from convergence.models.tapered_arm import tapered_arm
 
+pytestmark = pytest.mark.slow
+
 STEEL = Material(210000.0, 0.3)
 EVERY_CELL = pytest.mark.parametrize(
     ("shape", "degree"), list(product(("triangle", "quadrilateral"), (1, 2)))

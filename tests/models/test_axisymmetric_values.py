@@ -18,6 +18,8 @@ from convergence.models.thick_sphere import thick_sphere
 from convergence.quantities.peak_stress import peak_stress
 from convergence.quantities.stress import stress
 
+pytestmark = pytest.mark.slow
+
 SOFT = Material(1000.0, 0.3)
 STEEL = Material(210000.0, 0.3)
 
