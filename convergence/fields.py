@@ -1,9 +1,12 @@
 """What a level leaves for the figures: its mesh, displacement, stress and error, as plain arrays."""
 
+import io
 from dataclasses import asdict, dataclass
 from pathlib import Path
 
 import numpy as np
+
+from convergence.textfile import write_bytes
 
 
 @dataclass(frozen=True)
@@ -26,9 +29,9 @@ class Fields:
 
     def save(self, path: Path) -> None:
         """Write atomically as .npz."""
-        spare = path.with_suffix(".part.npz")
-        np.savez_compressed(spare, **asdict(self))
-        spare.replace(path)
+        packed = io.BytesIO()
+        np.savez_compressed(packed, **asdict(self))
+        write_bytes(path, packed.getvalue())
 
 
 def load_fields(path: Path) -> Fields:

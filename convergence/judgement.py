@@ -8,6 +8,7 @@ import numpy as np
 from convergence import rooms
 from convergence.checks.linear_range import PEAK
 from convergence.fem.corners import singular_corners
+from convergence.fem.part import Part
 from convergence.intervals import Interval, interval
 from convergence.results import Check, Corner, Facts, Findings, Ladder, Quantity
 from convergence.study import Study
@@ -33,17 +34,16 @@ def facts_of(study: Study) -> Facts:
         degree=study.ladder.degree,
         size=problem.part.size,
         corners=corners,
-        covered={q.name: _covered(q, study, corners) for q in quantities},
+        covered={q.name: _covered(q, problem.part, corners) for q in quantities},
         components={q.name: str(q.arguments.get("component", "")) for q in quantities},
     )
 
 
-def _covered(quantity: Quantity, study: Study, corners: tuple[Corner, ...]) -> tuple[Corner, ...]:
+def _covered(quantity: Quantity, part: Part, corners: tuple[Corner, ...]) -> tuple[Corner, ...]:
     """Return the singular corners within the reach of a quantity."""
     covers = rooms.beside("quantities", quantity.measure_name, "covers")
     if covers is None:
         return ()
-    part = study.problem().part
     return tuple(corner for corner in corners if covers(part, corner.name, quantity.arguments))
 
 

@@ -1,4 +1,4 @@
-"""Text files: read with one clear message for each way to fail, written atomically."""
+"""Files: texts read with one clear message for each way to fail, everything written atomically."""
 
 import difflib
 from pathlib import Path
@@ -30,9 +30,14 @@ def read_text(path: Path, wanted: str) -> str:
 
 
 def write_text(path: Path, text: str) -> None:
+    """Write a UTF-8 text as `write_bytes` does."""
+    write_bytes(path, text.encode("utf-8"))
+
+
+def write_bytes(path: Path, content: bytes) -> None:
     """Write a whole file or nothing: a killed program leaves the old file."""
     spare = path.with_name(f"{path.name}.part")
-    spare.write_text(text, encoding="utf-8", newline="\n")
+    spare.write_bytes(content)
     spare.replace(path)
 
 

@@ -25,11 +25,10 @@ def record(solution: Solution) -> dict[str, float]:
     That is the root of the mean energy density, which grows like h^(λ−1) whatever the component.
     """
     numbers, mesh = {}, solution.mesh
-    volume = cell_volumes(solution)
     for corner in singular_corners(solution.problem):
         cells = np.flatnonzero((mesh.skfem.t == mesh.vertices[corner.name]).any(axis=0))
-        energy = element_energy(solution, cells).sum()
-        numbers[corner.name] = float(np.sqrt(energy / volume[cells].sum()))
+        energy, volume = element_energy(solution, cells).sum(), cell_volumes(solution, cells).sum()
+        numbers[corner.name] = float(np.sqrt(energy / volume))
     return numbers
 
 

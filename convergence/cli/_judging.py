@@ -88,9 +88,8 @@ def _judged_table(path: Path, said: Said) -> Case:
             Fault(f"--kind {name}", f"{path} has no such column", nearest(name, names)) for name in unknown
         )
     facts = Facts(degree=said.degree, dimension=said.dimension or 2, kinds=said.kinds)
-    length = next(iter(units.values()), "")
     findings = judge(ladder, quantities, facts, path.stem)
-    return Case(findings, path.stem, replace(SYSTEMS["consistent"], length=length), "")
+    return Case(findings, path.stem, SYSTEMS["consistent"], "")
 
 
 def _without_records(ladder: Ladder) -> Ladder:

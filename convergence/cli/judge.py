@@ -1,6 +1,5 @@
 """`meshassay judge`: a verdict on tables, studies or the folders of runs, without solving."""
 
-import sys
 from pathlib import Path
 
 import click
@@ -30,7 +29,7 @@ def judge(
     The four options on tables are for bare tables; a study states them itself.
     """
     from convergence.cli import _judging
-    from convergence.cli._folder import report
+    from convergence.cli._report import report
     from convergence.cli._show import show_json, show_table
 
     said = _judging.Said(_judging.kinds_of(kinds), degree, _judging.tolerance_of(tolerance), dimension)
@@ -51,14 +50,5 @@ def judge(
             show_table(case.findings, methods=True)
         if out:
             folder = out if len(cases) == 1 else out / case.name
-            command = "meshassay " + " ".join(sys.argv[1:])
-            page = report(
-                case.findings,
-                folder,
-                units=case.units,
-                study_text=case.study_text,
-                name=case.name,
-                command=command,
-            )
-            click.echo(f"Report: {page}", err=as_json)
+            click.echo(f"Report: {report(case, folder)}", err=as_json)
     return 0 if all(case.findings.all_sound for case in cases) else 1

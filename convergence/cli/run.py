@@ -1,6 +1,5 @@
 """`meshassay run STUDY`: solve the ladder of a study, judge it, write the report."""
 
-import sys
 from dataclasses import replace
 from pathlib import Path
 
@@ -17,9 +16,10 @@ def run(study: Path, out: Path | None, as_json: bool) -> int:
     Each level is kept when it is solved: a run that was stopped goes on where it was. A table study
     has nothing to solve; its table is judged.
     """
-    from convergence.cli._folder import LADDER, default_folder, keep_study, report
+    from convergence.cli._folder import LADDER, default_folder, keep_study
     from convergence.cli._judging import judge_study
     from convergence.cli._progress import follow
+    from convergence.cli._report import report
     from convergence.cli._show import show_json, show_table
     from convergence.intake.ladder_file import read_ladder, write_ladder
     from convergence.study import load
@@ -34,15 +34,7 @@ def run(study: Path, out: Path | None, as_json: bool) -> int:
 
         follow(climb(asked, folder), asked.ladder.levels, asked.ladder.ratio)
     case = judge_study(asked, read_ladder(folder / LADDER), folder)
-    command = "meshassay " + " ".join(sys.argv[1:])
-    page = report(
-        case.findings,
-        folder,
-        units=case.units,
-        study_text=asked.text,
-        name=asked.name,
-        command=command,
-    )
+    page = report(case, folder)
     if as_json:
         show_json([case.findings])
     else:

@@ -56,10 +56,11 @@ def nodal_values(solution: Solution, at_cell_nodes: np.ndarray) -> np.ndarray:
     return values
 
 
-def energy_error(solution: Solution, at_cell_nodes: np.ndarray) -> np.ndarray:
+@lru_cache(maxsize=1)
+def energy_error(solution: Solution) -> np.ndarray:
     """Return the squared energy norm (force × length) of recovered minus element stress, per cell."""
     basis = _fine_basis(solution, 2 * solution.mesh.degree + 2)
-    better = interpolate(basis, at_cell_nodes)
+    better = interpolate(basis, recovered_stress(solution))
     return energy_norm_squared(
         solution, better - direct_stress(solution, basis.X), volumes(solution.problem, basis)
     )
@@ -81,9 +82,9 @@ def element_energy(solution: Solution, cells: np.ndarray) -> np.ndarray:
     return energy_norm_squared(solution, stress, volumes(solution.problem, basis), cells)
 
 
-def cell_volumes(solution: Solution) -> np.ndarray:
-    """Return the volume of each cell."""
-    basis = _fine_basis(solution, 2 * solution.mesh.degree)
+def cell_volumes(solution: Solution, cells: np.ndarray | None = None) -> np.ndarray:
+    """Return the volume of each of the cells, all where None."""
+    basis = _fine_basis(solution, 2 * solution.mesh.degree, cells)
     return np.asarray(volumes(solution.problem, basis).sum(axis=1))
 
 

@@ -47,14 +47,20 @@ def _hoop_strain(solution: Solution, local: np.ndarray, cells: np.ndarray, radia
     if solution.problem.kind != "axisymmetric":
         return np.zeros_like(radial)
     mesh = solution.mesh
-    mapping, element = mesh.skfem.mapping(), mesh.skfem.elem()
-    x = np.broadcast_to(np.asarray(mapping.F(local, tind=cells))[0], radial.shape)
-    u = np.zeros_like(radial)
-    for number, nodes in enumerate(mesh.skfem.dofs.element_dofs[:, cells]):
-        shape = np.asarray(element.gbasis(mapping, local, number, tind=cells)[0])
-        u += solution.displacement[0, nodes][:, None] * shape
+    x = np.broadcast_to(np.asarray(mesh.skfem.mapping().F(local, tind=cells))[0], radial.shape)
+    u = displacement_at(solution, local, cells)[0]
     away = x > 1e-9 * mesh.part.size
     return np.where(away, u / np.where(away, x, 1.0), radial)
+
+
+def displacement_at(solution: Solution, local: np.ndarray, cells: np.ndarray) -> np.ndarray:
+    """Return the displacement (2, cells, points) at local places (2, points) or (2, cells, points)."""
+    mapping, element = solution.mesh.skfem.mapping(), solution.mesh.skfem.elem()
+    total: Any = 0.0
+    for number, nodes in enumerate(solution.mesh.skfem.dofs.element_dofs[:, cells]):
+        shape = np.asarray(element.gbasis(mapping, local, number, tind=cells)[0])
+        total = total + solution.displacement[:, nodes][:, :, None] * shape
+    return np.asarray(total)
 
 
 def displacement_gradient(solution: Solution, local: np.ndarray, cells: np.ndarray) -> np.ndarray:

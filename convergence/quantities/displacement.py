@@ -11,6 +11,7 @@ import numpy as np
 from convergence.dimensions import Length, PartPoint, PointName
 from convergence.fem.location import locate
 from convergence.fem.solution import Solution
+from convergence.fem.stress import displacement_at
 from convergence.quantities._place import place_of
 from convergence.results import Kind
 
@@ -29,11 +30,6 @@ def displacement(
     component: Annotated[Literal["x", "y", "magnitude"], "direction"] = "y",
 ) -> Length:
     """Unsuitable where the point lies outside the part."""
-    mesh = solution.mesh
-    cells, local = locate(mesh, place_of(solution.mesh.part, at))
-    element, mapping = mesh.skfem.elem(), mesh.skfem.mapping()
-    u = np.zeros(2)
-    for number, nodes in enumerate(mesh.skfem.dofs.element_dofs[:, cells[:1]]):
-        value = np.asarray(element.gbasis(mapping, local[:, :1], number, tind=cells[:1])[0])
-        u += solution.displacement[:, nodes[0]] * value.ravel()[0]
+    cells, local = locate(solution.mesh, place_of(solution.mesh.part, at))
+    u = displacement_at(solution, local[:, :1], cells[:1])[:, 0, 0]
     return float(np.hypot(*u) if component == "magnitude" else u["xy".index(component)])

@@ -21,6 +21,7 @@ from convergence.report.sections_method import made_section
 from convergence.report.sections_quantity import quantities_section
 from convergence.report.sections_statement import statement_section
 from convergence.results import Findings, Quantity
+from convergence.textfile import write_bytes, write_text
 
 ROUND_OFF = 1e-7  # an energy-norm error below this share is no error to draw
 
@@ -62,8 +63,10 @@ def write_report(
     )
     _write_figures(folder / "figures", [p for group in by_quantity.values() for p in group] + field_pictures)
     record = json.dumps(records.findings_object(findings), indent=2, ensure_ascii=False, allow_nan=False)
-    _replace(folder / "findings.json", f"{record}\n".encode())
-    return _replace(folder / "report.html", page.encode())
+    write_text(folder / "findings.json", f"{record}\n")
+    path = folder / "report.html"
+    write_text(path, page)
+    return path
 
 
 def _header(title: str, study_name: str, date: str) -> html.Html:
@@ -133,17 +136,9 @@ def _field_parts(
 def _write_figures(folder: Path, pictures: Sequence[Picture]) -> None:
     folder.mkdir(parents=True, exist_ok=True)
     for picture in pictures:
-        _replace(folder / f"{picture.name}.svg", picture.svg.encode())
-        _replace(folder / f"{picture.name}.png", picture.png)
+        write_text(folder / f"{picture.name}.svg", picture.svg)
+        write_bytes(folder / f"{picture.name}.png", picture.png)
     kept = {picture.name for picture in pictures}
     for path in folder.iterdir():
         if path.suffix in (".svg", ".png") and path.stem not in kept:
             path.unlink()
-
-
-def _replace(path: Path, content: bytes) -> Path:
-    """Write beside the file, then put it in its place, so that no reader sees half of it."""
-    spare = path.with_name(f".{path.name}.part")
-    spare.write_bytes(content)
-    spare.replace(path)
-    return path

@@ -35,6 +35,16 @@ def cells_of(problem: Problem, divisions: int, shape: Any, degree: int) -> Mesh:
     return mesh(problem.part, counts, shape=shape, degree=degree)
 
 
+def kinds_of(function: Model) -> list[dict[str, PlaneKind]]:
+    """Return what to say of the kind: both where the model has them, nothing where it has one of its own."""
+    if "kind" not in inspect.signature(function).parameters:
+        return [{}]
+    return [{"kind": "plane stress"}, {"kind": "plane strain"}]
+
+
+IN_EVERY_KIND = [(name, said) for name in rooms.names("models") for said in kinds_of(model_of(name))]
+
+
 def check_signature(function: Model) -> None:
     """Keyword-only, each with a dimension or choices and a phrase; `kind` has a default, `material` none."""
     assert inspect.getdoc(function)
@@ -145,18 +155,11 @@ def test_signature(name: str) -> None:
     assert rooms.shelf("models")[name]
 
 
-@MEMBERS
-@pytest.mark.parametrize("kind", ["plane stress", "plane strain"])
-def test_problem(name: str, kind: PlaneKind) -> None:
+@pytest.mark.parametrize(("name", "said"), IN_EVERY_KIND)
+def test_problem(name: str, said: dict[str, PlaneKind]) -> None:
     """In both kinds where the model has them, else once."""
-    function = model_of(name)
-    if "kind" in inspect.signature(function).parameters:
-        problem = function(material=STEEL, kind=kind)
-        assert problem.kind == kind
-    elif kind == "plane stress":
-        problem = function(material=STEEL)
-    else:
-        return
+    problem = model_of(name)(material=STEEL, **said)
+    assert problem.kind == said.get("kind", problem.kind)
     check_boundaries(problem)
     check_balance(problem)
 
