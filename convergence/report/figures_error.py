@@ -45,7 +45,7 @@ def error_map(field: Fields, units: Units) -> Picture | None:
             rasterized=True,
         )
         bar = figure.colorbar(drawn, ax=axes, extend="min", shrink=0.85, pad=0.02)
-        bar.set_label(f"squared error per volume{bracket(energy)}")
+        bar.set_label(f"error density{bracket(energy)}")
         log_ticks(bar.ax, low, high)
         _plane.outline(axes, field.points, field.boundary, "-")
         _plane.view(axes, field.points)
