@@ -10,7 +10,7 @@ from typing import Annotated, Any, Literal, Union, get_args, get_origin, get_typ
 from convergence.dimensions import Bounds, Dimension, Names, OnPart, Units
 from convergence.errors import Fault, nearest
 
-Form = Literal["number", "whole number", "text", "true or false", "point"]
+Form = Literal["number", "whole number", "text", "true or false", "point", "point of a solid"]
 
 REQUIRED: Any = inspect.Parameter.empty
 _FORMS: dict[Any, Form] = {float: "number", int: "whole number", str: "text", bool: "true or false"}
@@ -48,6 +48,7 @@ class Parameter:
             "text": f"a text that names a {self.names}" if self.names else "a text",
             "true or false": "true or false",
             "point": f"a point [x, y]{unit}",
+            "point of a solid": "[x, y, z] in a solid",
         }
         allowed = " or ".join(words[form] for form in self.forms)
         bounds = f", {self.bounds}" if self.bounds else ""
@@ -119,8 +120,8 @@ def _read(annotation: Any, found: Parameter) -> Parameter:
         return replace(found, choices=found.choices + parts)
     if origin is tuple and parts[-1] is ...:
         return replace(_read(parts[0], found), many=True)
-    if origin is tuple and len(parts) == 2:
-        return replace(found, forms=(*found.forms, "point"))
+    if origin is tuple and len(parts) in (2, 3):
+        return replace(found, forms=(*found.forms, "point" if len(parts) == 2 else "point of a solid"))
     if annotation in _FORMS:
         return replace(found, forms=(*found.forms, _FORMS[annotation]))
     raise TypeError(f"parameter {found.name!r}: a study file cannot give a value of type {annotation}")
@@ -166,8 +167,9 @@ def _finite(value: Any) -> bool:
 
 
 def _fits(value: Any, form: Form) -> bool:
-    if form == "point":
-        return isinstance(value, list) and len(value) == 2 and all(_fits(v, "number") for v in value)
+    if form in ("point", "point of a solid"):
+        size = 2 if form == "point" else 3
+        return isinstance(value, list) and len(value) == size and all(_fits(v, "number") for v in value)
     if form == "number":
         return isinstance(value, int | float) and not isinstance(value, bool)
     if form == "whole number":

@@ -15,7 +15,7 @@ class Dimension:
     """A power product of length and force."""
 
     name: str
-    length: int
+    length: float
     force: int
 
 
@@ -44,9 +44,16 @@ STRESS = Dimension("stress", -2, 1)
 FORCE = Dimension("force", 0, 1)
 MOMENT = Dimension("moment", 1, 1)
 ENERGY = Dimension("energy", 1, 1)
+STRESS_INTENSITY = Dimension("stress intensity", -1.5, 1)
 FORCE_PER_VOLUME = Dimension("force per volume", -3, 1)
+AREA = Dimension("area", 2, 0)
 RATIO = Dimension("ratio", 0, 0)
 ANGLE = Dimension("angle", 0, 0)
+TEMPERATURE = Dimension("temperature", 0, 0)
+EXPANSION = Dimension("expansion", 0, 0)
+
+# units that are the same in every system
+ALIKE = {RATIO: "", ANGLE: "°", TEMPERATURE: "K", EXPANSION: "1/K"}
 
 POSITIVE = Bounds(low=0.0)
 
@@ -57,11 +64,14 @@ PositiveStress = Annotated[float, STRESS, POSITIVE]
 Force = Annotated[float, FORCE]
 Moment = Annotated[float, MOMENT]
 Energy = Annotated[float, ENERGY]
+StressIntensity = Annotated[float, STRESS_INTENSITY]
 ForcePerVolume = Annotated[float, FORCE_PER_VOLUME]
 Ratio = Annotated[float, RATIO]
-PoissonRatio = Annotated[float, RATIO, Bounds(-1.0, 0.5)]
 Degrees = Annotated[float, ANGLE]
-Point = Annotated[tuple[float, float], LENGTH]
+Temperature = Annotated[float, TEMPERATURE]
+Expansion = Annotated[float, EXPANSION]
+Direction = Annotated[tuple[float, float] | tuple[float, float, float], RATIO]
+Point = Annotated[tuple[float, float] | tuple[float, float, float], LENGTH]
 
 
 @dataclass(frozen=True)
@@ -69,7 +79,7 @@ class OnPart:
     """A place that must lie on the part."""
 
 
-PartPoint = Annotated[tuple[float, float], LENGTH, OnPart()]
+PartPoint = Annotated[tuple[float, float] | tuple[float, float, float], LENGTH, OnPart()]
 
 
 @dataclass(frozen=True)
@@ -87,11 +97,12 @@ RegionName = Annotated[str, Names("region")]
 
 @dataclass(frozen=True)
 class Located:
-    """A value and the place where it was found (x, y in the part's coordinates)."""
+    """A value and the place where it was found, in the part's coordinates, as many as it has."""
 
     value: float
     x: float
-    y: float
+    y: float | None = None
+    z: float | None = None
 
 
 @dataclass(frozen=True)
@@ -106,11 +117,13 @@ class Units:
 
     def label(self, dimension: Dimension) -> str:
         """Return the unit of a dimension as it is printed, e.g. "N mm"."""
-        if dimension in (RATIO, ANGLE):
-            return "°" if dimension == ANGLE else ""
-        known = {LENGTH: self.length, STRESS: self.stress, FORCE: self.force}
+        known = {LENGTH: self.length, STRESS: self.stress, FORCE: self.force, **ALIKE}
         if dimension in known:
             return known[dimension]
+        if dimension == STRESS_INTENSITY:
+            return f"{self.stress} √{self.length}" if self.length else ""
+        if dimension.force == 0:
+            return f"{self.length}{dimension.length}" if self.length else ""
         if dimension.length == 1:
             return f"{self.force} {self.length}".strip()
         return f"{self.force}/{self.length}{-dimension.length}" if self.force else ""

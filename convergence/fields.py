@@ -17,6 +17,10 @@ class Fields:
     the nodes along each edge of the mesh; boundary (2, b) nodes of boundary segments; displacement (2, n);
     von_mises (n,) recovered stress at the nodes; error (m,) recovered energy-norm error of each cell,
     squared, per volume. In `cells` those of degree 2 are cut into four, so that gradients show.
+
+    Of a solid, points and displacement are (3, n) and only the surface is kept: cells are its faces,
+    counter-clockwise seen from outside, edges the mesh lines on it, boundary the segments of the part's own
+    sharp edges, error that of the cell behind each face.
     """
 
     points: np.ndarray

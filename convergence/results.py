@@ -1,6 +1,7 @@
 """Level, Ladder, Estimate, Check, Verdict, Findings: what the four steps hand to each other."""
 
 import functools
+import math
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING, Any, Literal
@@ -11,7 +12,18 @@ if TYPE_CHECKING:
     import pandas as pd
 
 VerdictWord = Literal["sound", "refine", "singular", "unproven"]
-Kind = Literal["energy", "displacement", "reaction", "resultant", "point_stress", "peak_stress", "unknown"]
+Kind = Literal[
+    "energy",
+    "displacement",
+    "rotation",
+    "reaction",
+    "resultant",
+    "point_stress",
+    "peak_stress",
+    "intensity",
+    "unknown",
+]
+COST = ("h", "cells", "dofs", "seconds", "memory")
 
 
 @dataclass(frozen=True)
@@ -19,6 +31,8 @@ class Level:
     """One mesh: measured cell size h, its cost, and one number per quantity and record.
 
     A place belonging to a quantity is kept as NAME.x and NAME.y, a check's record as CHECK.NAME.
+    `memory` is the largest resident memory of the process in MB while the level was solved, NaN where
+    it is not known.
     """
 
     h: float
@@ -26,6 +40,7 @@ class Level:
     dofs: int
     seconds: float
     values: Mapping[str, float]
+    memory: float = math.nan
 
 
 @dataclass(frozen=True)
@@ -56,10 +71,7 @@ class Ladder:
         import pandas as pd
 
         return pd.DataFrame(
-            [
-                {"h": lv.h, "cells": lv.cells, "dofs": lv.dofs, "seconds": lv.seconds, **lv.values}
-                for lv in self.levels
-            ]
+            [{**{name: getattr(level, name) for name in COST}, **level.values} for level in self.levels]
         )
 
 
@@ -94,14 +106,43 @@ class Quantity:
 
 @dataclass(frozen=True)
 class Corner:
-    """A singular corner of the model: place, opening in degrees, conditions on its two sides, exponent."""
+    """A singular corner of a plane, or an edge of a solid: opening in degrees, its two sides, exponent.
+
+    `path` are the places along it (one in a plane), `points` the part's own points on it.
+    """
 
     name: str
-    x: float
-    y: float
+    path: tuple[tuple[float, ...], ...]
+    points: tuple[str, ...]
     opening: float
     sides: tuple[str, str]
     exponent: float
+
+    @property
+    def where(self) -> str:
+        """Return "at (x, y)", or "from (x, y, z) to (x, y, z)" for an edge."""
+        ends = [f"({', '.join(f'{x:.4g}' for x in place)})" for place in (self.path[0], self.path[-1])]
+        if len(self.path) == 1:
+            return f"at {ends[0]}"
+        return f"around from {ends[0]}" if ends[0] == ends[1] else f"from {ends[0]} to {ends[1]}"
+
+    def distance(self, place: tuple[float, ...]) -> float:
+        """Return how far a place is from the corner."""
+        corners, at = np.array(self.path), np.array(place)
+        if len(corners) == 1:
+            return float(np.linalg.norm(corners[0] - at))
+        start, along = corners[:-1], np.diff(corners, axis=0)
+        squares = np.maximum((along**2).sum(axis=1), np.finfo(float).tiny)
+        share = np.clip(((at - start) * along).sum(axis=1) / squares, 0.0, 1.0)
+        return float(np.linalg.norm(start + share[:, None] * along - at, axis=1).min())
+
+
+@dataclass(frozen=True)
+class Yield:
+    """A yield strength and where it stands."""
+
+    strength: float
+    source: str = ""
 
 
 @dataclass(frozen=True)
@@ -109,25 +150,29 @@ class Facts:
     """What is known beside the ladder: the model's theory and the limits of linear analysis.
 
     `size` is the largest extent of the part; `corners` is None where the model is not known; `covered`
-    has the singular corners within the reach of each quantity; `components` what a stress is; `intervals`
-    the stated (low, high) per name, NaN where there is none.
+    has the singular corners within the reach of each quantity; `components` what a stress is, `regions` the
+    one it is confined to, "" where none; `yields` the yield strengths by region, of a table under "";
+    `intervals` the stated (low, high) per name, NaN where there is none.
     """
 
     degree: int | None = None
     dimension: int = 2
     size: float | None = None
-    yield_strength: float | None = None
-    yield_source: str = ""
+    yields: Mapping[str, Yield | None] = field(default_factory=dict)
     corners: tuple[Corner, ...] | None = None
     covered: Mapping[str, tuple[Corner, ...]] = field(default_factory=dict)
     kinds: Mapping[str, Kind] = field(default_factory=dict)
     components: Mapping[str, str] = field(default_factory=dict)
+    regions: Mapping[str, str] = field(default_factory=dict)
     intervals: Mapping[str, tuple[float, float]] = field(default_factory=dict)
 
     @property
     def exponent(self) -> float | None:
-        """Return the weakest exponent of the corners, None without a singular corner."""
-        return min((corner.exponent for corner in self.corners or ()), default=None)
+        """Return the weakest exponent of the corners, None without one.
+
+        Points that take a force, of exponent 0 and below, are left out: what they spoil has no order.
+        """
+        return min((c.exponent for c in self.corners or () if c.exponent > 0.0), default=None)
 
 
 @dataclass(frozen=True)
@@ -177,6 +222,7 @@ class Verdict:
     next_cells: float
     next_dofs: float
     next_seconds: float
+    next_memory: float
     coverage: float | None
     reasons: tuple[str, ...]
 

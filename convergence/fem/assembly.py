@@ -1,128 +1,104 @@
-"""Stiffness and load of plane and axisymmetric elasticity: cell blocks in numpy, sums by scipy.sparse.
+"""The stiffness matrix: cell matrices in numpy, summed on a pattern that is known beforehand.
 
-Unknowns are interleaved: component c of scalar node n is 2 n + c.
+K_ab[i, j] = C[i k, j l] ∫ dN_a/dx_k dN_b/dx_l: one batched product of gradients a chunk, then one product
+with the elasticity. Around an axis N/x counts as a further gradient, for the hoop strain.
 """
 
-from typing import Any
+from collections.abc import Iterator
 
 import numpy as np
 from scipy import sparse
-from skfem import Basis
 
-from convergence.fem.edges import edge_basis
+from convergence.fem.facets import facet_bases
+from convergence.fem.geometry import Geometry, geometry
 from convergence.fem.mesh import Mesh
-from convergence.fem.problem import BodyForce, FieldFunction, Load, Pressure, Problem, Traction
+from convergence.fem.pattern import Sum, pattern
+from convergence.fem.problem import ElasticSupport, Problem
+from convergence.fem.strain import strain_forms, strain_gradients, strain_operator, volumes
 
-CHUNK = 20_000
-STIFFNESS_ORDER = {("triangle", 1): 1, ("triangle", 2): 4, ("quadrilateral", 1): 5, ("quadrilateral", 2): 7}
+ENTRIES = 40_000  # of cell matrices at once: they stay in the cache
+# quadrature orders that keep the rate of convergence on curved cells; quadrilaterals have more, so that
+# published sequences of exactly integrated cells are met
+ORDER = {
+    ("line", 1): 1,
+    ("line", 2): 2,
+    ("triangle", 1): 1,
+    ("triangle", 2): 2,
+    ("quadrilateral", 1): 5,
+    ("quadrilateral", 2): 7,
+    ("tetrahedron", 1): 1,
+    ("tetrahedron", 2): 2,
+    ("hexahedron", 1): 3,
+    ("hexahedron", 2): 5,
+    ("wedge", 1): 3,
+    ("wedge", 2): 5,
+}
 HOOP_ORDER = 2  # more where the hoop strain u/x is integrated
-LOAD_POINTS = 10
 
 
-def unknowns(dofs: np.ndarray) -> np.ndarray:
-    """Return the two unknowns of each scalar node in the last axis but one, (n, m) -> (2 n, m)."""
-    return np.stack([2 * dofs, 2 * dofs + 1], axis=1).reshape(2 * dofs.shape[0], *dofs.shape[1:])
-
-
-def strain_operator(gradients: np.ndarray, hoop: np.ndarray | None) -> np.ndarray:
-    """Return B (4, 2 n, ...) from the shape gradients (n, 2, ...): strains xx, yy, zz, 2xy.
-
-    `hoop` (n, ...) are the shapes over the radius of an axisymmetric problem, None in a plane.
-    """
-    n = gradients.shape[0]
-    operator = np.zeros((4, n, 2, *gradients.shape[2:]))
-    operator[0, :, 0] = operator[3, :, 1] = gradients[:, 0]
-    operator[1, :, 1] = operator[3, :, 0] = gradients[:, 1]
-    if hoop is not None:
-        operator[2, :, 0] = hoop
-    return operator.reshape(4, 2 * n, *gradients.shape[2:])
-
-
-def volumes(problem: Problem, basis: Any) -> np.ndarray:
-    """Return the volume that each quadrature point stands for, (cells, points)."""
-    x = np.asarray(basis.global_coordinates())[0]
-    return np.asarray(basis.dx * problem.depth(x))
-
-
-def _hoop(problem: Problem, basis: Any) -> np.ndarray | None:
-    if problem.kind != "axisymmetric":
-        return None
-    x = np.asarray(basis.global_coordinates())[0]
-    return np.array([np.asarray(function[0]) / x for function in basis.basis])
+def stiffness_rule(problem: Problem, mesh: Mesh) -> tuple[np.ndarray, np.ndarray]:
+    """Return the quadrature rule (D, q), (q,) of the stiffness."""
+    return mesh.element.rule(ORDER[mesh.shape, mesh.degree] + HOOP_ORDER * (problem.kind == "axisymmetric"))
 
 
 def stiffness(problem: Problem, mesh: Mesh) -> sparse.csr_matrix:
-    """Return the stiffness matrix K (N·mm/mm² and so on: force over length)."""
-    element = mesh.skfem.elem()
-    blocks, rows, columns = [], [], []
-    size = 2 * mesh.nodes.shape[1]
+    """Return the stiffness matrix of the material (force over length)."""
+    total = Sum(pattern(mesh.cell_nodes, mesh.nodes.shape[1]), mesh.dimension)
     for region, members in mesh.regions.items():
         elasticity = problem.materials[region].elasticity(problem.kind)
-        for start in range(0, len(members), CHUNK):
-            chosen = members[start : start + CHUNK]
-            order = STIFFNESS_ORDER[mesh.shape, mesh.degree] + HOOP_ORDER * (problem.kind == "axisymmetric")
-            basis = Basis(mesh.skfem, element, intorder=order, elements=chosen, disable_doflocs=True)
-            gradients = np.array([function[0].grad for function in basis.basis])
-            b = np.moveaxis(strain_operator(gradients, _hoop(problem, basis)), 2, 0)
-            stressed = np.einsum("st,etnq,eq->esnq", elasticity, b, volumes(problem, basis), optimize=True)
-            m, s, n, q = b.shape
-            left = b.transpose(0, 2, 1, 3).reshape(m, n, s * q)
-            block = left @ stressed.transpose(0, 1, 3, 2).reshape(m, s * q, n)
-            numbers = unknowns(mesh.skfem.dofs.element_dofs[:, chosen]).T
-            blocks.append(block.ravel())
-            rows.append(np.repeat(numbers, n, axis=1).ravel())
-            columns.append(np.tile(numbers, (1, n)).ravel())
-    triplets = (np.concatenate(blocks), (np.concatenate(rows), np.concatenate(columns)))
-    return sparse.coo_matrix(triplets, shape=(size, size)).tocsr()
+        for cells in _chunks(mesh, members):
+            total.add(cells, _cell_matrices(problem, mesh, cells, elasticity))
+    return total.matrix()
 
 
-def load_vector(problem: Problem, mesh: Mesh) -> np.ndarray:
-    """Return the consistent load vector of all loads."""
-    total = np.zeros(2 * mesh.nodes.shape[1])
-    for load in problem.loads:
-        total += _one_load(load, problem, mesh)
-    return total
+def _chunks(mesh: Mesh, members: np.ndarray) -> Iterator[np.ndarray]:
+    size = max(1, ENTRIES // mesh.cell_nodes.shape[0] ** 2)
+    for start in range(0, len(members), size):
+        yield members[start : start + size]
 
 
-def _one_load(load: Load, problem: Problem, mesh: Mesh) -> np.ndarray:
-    if isinstance(load, BodyForce):
-        return _body_load(load, problem, mesh)
-    edges = edge_basis(mesh, load.boundary, LOAD_POINTS)
-    shapes, weights = edges.shapes[:, None, :], edges.dx * problem.depth(edges.places[0])
-    if isinstance(load, Pressure):
-        return _integrate(mesh, edges.nodes, shapes, weights, -load.value * edges.normals)
-    if isinstance(load, Traction):
-        return _integrate(mesh, edges.nodes, shapes, weights, _values(load.value, edges.places))
-    force, arm = np.array(load.force), edges.places - np.array(load.centre)[:, None, None]
-    direction = force / np.hypot(*force)
-    cosine = np.einsum("c,c...->...", direction, arm / np.hypot(*arm))
-    vector = _integrate(mesh, edges.nodes, shapes, weights, -np.clip(cosine, 0.0, None) * edges.normals)
-    resultant = np.array([vector[::2].sum(), vector[1::2].sum()])
-    return np.asarray(vector * (np.hypot(*force) / (resultant @ direction)))
+def _cell_matrices(problem: Problem, mesh: Mesh, cells: np.ndarray, elasticity: np.ndarray) -> np.ndarray:
+    """Return the matrices (m, D k, D k) of cells of one material."""
+    local, weights = stiffness_rule(problem, mesh)
+    at = geometry(mesh, local, cells, weights)
+    if mesh.formulation == "mean dilatation":
+        return _by_operator(problem, mesh, at, cells, elasticity)
+    forms = strain_forms(problem.kind, mesh.dimension)
+    coupled = np.einsum("sik,st,tjl->klij", forms, elasticity, forms)
+    g = strain_gradients(problem, at)  # (k, G, m, q)
+    k, ways, m, q = g.shape
+    left = np.ascontiguousarray(g.transpose(2, 0, 1, 3)).reshape(m, k * ways, q)
+    products = (left * volumes(problem, at)[:, None, :]) @ left.transpose(0, 2, 1)
+    pairs = products.reshape(m, k, ways, k, ways).transpose(0, 1, 3, 2, 4).reshape(-1, ways * ways)
+    d = mesh.dimension
+    blocks = (pairs @ coupled.reshape(ways * ways, d * d)).reshape(m, k, k, d, d)
+    return np.asarray(blocks.transpose(0, 1, 3, 2, 4).reshape(m, k * d, k * d))
 
 
-def _body_load(load: BodyForce, problem: Problem, mesh: Mesh) -> np.ndarray:
-    cells = np.arange(mesh.cells) if load.region is None else mesh.regions[load.region]
-    basis = Basis(mesh.skfem, mesh.skfem.elem(), intorder=2 * mesh.degree + 2, elements=cells)
-    shapes = np.array([np.asarray(function[0]) for function in basis.basis])
-    values = _values(load.value, np.asarray(basis.global_coordinates()))
-    return _integrate(mesh, mesh.skfem.dofs.element_dofs[:, cells], shapes, volumes(problem, basis), values)
-
-
-def _values(value: tuple[float, float] | FieldFunction, places: np.ndarray) -> np.ndarray:
-    """Return a vector or a vector field at places (2, ...)."""
-    if callable(value):
-        return np.asarray(value(places[0], places[1]))
-    return np.asarray(np.multiply.outer(value, np.ones_like(places[0])))
-
-
-def _integrate(
-    mesh: Mesh, dofs: np.ndarray, shapes: np.ndarray, weights: np.ndarray, values: np.ndarray
+def _by_operator(
+    problem: Problem, mesh: Mesh, at: Geometry, cells: np.ndarray, elasticity: np.ndarray
 ) -> np.ndarray:
-    """Return the integrals of values (2, m, points) times the shapes (n, m or 1, points) of dofs (n, m)."""
-    vector = np.zeros(2 * mesh.nodes.shape[1])
-    for nodes, shape in zip(dofs, shapes, strict=True):
-        weighted = (values * (shape * weights)).sum(axis=2)
-        np.add.at(vector, 2 * nodes, weighted[0])
-        np.add.at(vector, 2 * nodes + 1, weighted[1])
-    return vector
+    """Return the matrices by the strain operator B, ∫ B'.D.B."""
+    b = np.moveaxis(strain_operator(problem, mesh, at, cells), 2, 0)
+    stressed = np.einsum("st,etnq,eq->enqs", elasticity, b, volumes(problem, at), optimize=True)
+    m, s, n, q = b.shape
+    left = b.transpose(0, 2, 3, 1).reshape(m, n, q * s)
+    return np.asarray(left @ stressed.reshape(m, n, q * s).transpose(0, 2, 1))
+
+
+def foundation(problem: Problem, mesh: Mesh, support: ElasticSupport) -> sparse.csr_matrix:
+    """Return the stiffness of an elastic foundation."""
+    size = mesh.dimension * mesh.nodes.shape[1]
+    total = sparse.csr_matrix((size, size))
+    for facets in facet_bases(mesh, support.boundary, 2 * mesh.degree + 2):
+        normal = np.einsum("cfq,dfq->cdfq", facets.normals, facets.normals)
+        across = np.eye(mesh.dimension)[:, :, None, None] - normal
+        springs = support.normal * normal + support.tangential * across
+        weights = facets.dx * problem.depth(facets.places[0])
+        shapes = facets.shapes
+        blocks = np.einsum("iq,jq,cdfq,fq->ficjd", shapes, shapes, springs, weights, optimize=True)
+        width = len(facets.nodes) * mesh.dimension
+        on_facets = Sum(pattern(facets.nodes, mesh.nodes.shape[1]), mesh.dimension)
+        on_facets.add(np.arange(facets.nodes.shape[1]), blocks.reshape(-1, width, width))
+        total = total + on_facets.matrix()
+    return total

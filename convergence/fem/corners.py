@@ -1,105 +1,111 @@
-"""The singular corners of a problem: openings, conditions on both sides, exponents.
+"""The singular corners of a problem: openings, materials, conditions on both sides, exponents.
 
-Where no table of corners is at hand, theory alone says which ones are singular (Williams 1952,
-J. Appl. Mech. 19:526). A support that ends on a straight or curved edge is a corner of 180°. Where the exact
-field of the problem is known and stays bounded, as when its own displacements are prescribed, the corner is
-not excited and left out.
+Where no table of corners is at hand, theory alone says which ones are singular: corners of the outline
+(Williams 1952, J. Appl. Mech. 19:526), places where materials meet (Bogy 1971, J. Appl. Mech. 38:377, from
+memory), points that take a force. A support that ends on a straight or curved edge is a corner of 180°. Where
+the exact field of the problem is known and stays bounded, as when its own displacements are prescribed, the
+corner is not excited and left out.
 """
+
+from collections.abc import Iterator
 
 import numpy as np
 
-from convergence.fem.part import EdgeName, Part
+from convergence.fem.chains import chained, edge_name
+from convergence.fem.fans import Fan, Sides
+from convergence.fem.forced_points import forced_points
 from convergence.fem.problem import Problem
-from convergence.fem.williams import weakest_exponent
+from convergence.fem.rod_part import RodPart
+from convergence.fem.sides import Conditions, conditions
+from convergence.fem.sites import Site, sites
 from convergence.results import Corner
 
 REGULAR = 0.999
-STEP = 1e-6
 GROWTH = 1.1
+FAR, NEAR = 1e-3, 1e-6  # of the part's size
+BONDED = ("bonded", "bonded")
 
 
 def singular_corners(problem: Problem) -> tuple[Corner, ...]:
-    """Return the corners whose weakest exponent is below one, weakest first."""
-    part = problem.part
-    found = []
-    for name, edges in _boundary_points(part).items():
-        opening = _opening(part, name)
-        sides = (_condition(problem, edges[0]), _condition(problem, edges[1]))
-        index = part.outline[edges[0]]
-        kappa = problem.materials[_region(part, index)].kappa(problem.kind)
-        exponent = weakest_exponent(opening, sides, kappa=kappa)
-        if exponent is not None and exponent < REGULAR and _excited(problem, name):
-            x, y = part.points[name]
-            found.append(Corner(name, float(x), float(y), opening, sides, exponent))
+    """Return the corners, of a solid the edges, whose weakest exponent is below one, weakest first.
+
+    A point that takes a force has the exponent 0 in a plane, -1 in a solid and on the axis of a ring, the
+    sides "point" and "force" or "support", and in a solid the opening 0. What is left out as not known is
+    in `unexamined_corners`. SolvingError where a problem with a support at a point can move.
+    """
+    if isinstance(problem.part, RodPart):
+        return ()
+    faces, forced = conditions(problem), forced_points(problem)
+    found: list[Corner] = []
+    openings = dict.fromkeys(forced, 0.0)
+    for site in sites(problem.part, problem.materials):
+        if len(site.points) == 1 and site.points[0] in forced:
+            openings[site.points[0]] += site.fan.opening
+        else:
+            found += _singular(problem, faces, site)
+    found = [*chained(found), *(_forced(problem, name, forced[name], openings[name]) for name in forced)]
     return tuple(sorted(found, key=lambda corner: corner.exponent))
 
 
-def _excited(problem: Problem, name: str) -> bool:
-    """Return whether the exact stress, where it is known, grows towards the corner along its bisector."""
+def unexamined_corners(problem: Problem) -> tuple[str, ...]:
+    """Return names of corners of orthotropic materials and of cones on the axis of a ring.
+
+    Other equations hold there. Inside one material, and on its flat sides under one condition, all is
+    regular whatever the material.
+    """
+    if isinstance(problem.part, RodPart):
+        return ()
+    faces, found = conditions(problem), []
+    for site in sites(problem.part, problem.materials):
+        fan, (one, other) = site.fan, _sides(faces, site.fan)
+        flat = fan.closed or (fan.opening == 180.0 and one == other)
+        if not _has_equations(problem, site) and not (flat and fan.materials == 1):
+            found.append(edge_name(site.points))
+    return tuple(found)
+
+
+def _singular(problem: Problem, faces: Conditions, site: Site) -> Iterator[Corner]:
+    """Yield the corner at a site, if it is singular and excited."""
+    fan = site.fan
+    if not _has_equations(problem, site):
+        return
+    sides = _sides(faces, fan)
+    exponent = fan.weakest(sides, problem.kind)
+    if exponent is not None and exponent < REGULAR and _excited(problem, site):
+        path = tuple(tuple(float(x) for x in place) for place in site.path)
+        one, other = sorted(sides)
+        yield Corner(edge_name(site.points), path, site.points, fan.opening, (one, other), exponent)
+
+
+def _has_equations(problem: Problem, site: Site) -> bool:
+    """Return whether the equations of isotropic wedges hold: on the axis of a ring for upright faces only."""
+    if not site.fan.isotropic:
+        return False
+    upright = all(opening % 90.0 == 0.0 for opening, _, _ in site.fan.sectors(problem.kind))
+    return upright or not _on_axis(problem, site.middle)
+
+
+def _on_axis(problem: Problem, place: np.ndarray) -> bool:
+    return problem.kind == "axisymmetric" and abs(place[0]) < NEAR * problem.part.size
+
+
+def _sides(faces: Conditions, fan: Fan) -> Sides:
+    """Return the conditions on the first and the last face of a fan."""
+    return BONDED if fan.closed else (faces.on(fan.wedges[0].start), faces.on(fan.wedges[-1].end))
+
+
+def _excited(problem: Problem, site: Site) -> bool:
+    """Return whether the exact stress, where it is known, grows towards the site along a bisector."""
     if problem.exact is None:
         return True
-    part = problem.part
-    block = next(block for block in part.blocks if name in block)
-    place = block.index(name)
-    ahead, behind = (_unit(_tangent(part, name, block[(place + step) % 4])) for step in (1, -1))
-    inward = ahead + behind
-    x, y = np.array(part.points[name])[:, None] + part.size * inward[:, None] * np.array([1e-3, 1e-6])
-    outer, inner = np.linalg.norm(problem.exact.stress(x, y), axis=0)
+    inward = site.fan.wedges[0].ways.sum(axis=0)
+    step = problem.part.size * inward / np.linalg.norm(inward)
+    places = site.middle[:, None] + step[:, None] * np.array([FAR, NEAR])
+    outer, inner = np.linalg.norm(problem.exact.stress(*places), axis=0)
     return bool(inner > outer * GROWTH)
 
 
-def _unit(vector: np.ndarray) -> np.ndarray:
-    return np.asarray(vector / np.hypot(*vector))
-
-
-def _boundary_points(part: Part) -> dict[str, tuple[EdgeName, EdgeName]]:
-    """Return the two outline edges that meet at each point of the outline, in no order."""
-    meeting: dict[str, list[EdgeName]] = {}
-    for edge in part.outline:
-        for name in edge:
-            meeting.setdefault(name, []).append(edge)
-    return {name: (edges[0], edges[1]) for name, edges in meeting.items() if len(edges) == 2}
-
-
-def _opening(part: Part, name: str) -> float:
-    """Return the angle of material at a point in degrees, from the tangents of the blocks' edges."""
-    total = 0.0
-    for block in part.blocks:
-        if name not in block:
-            continue
-        place = block.index(name)
-        ahead, behind = (_tangent(part, name, block[(place + step) % 4]) for step in (1, -1))
-        total += float(np.degrees(np.arctan2(behind[1], behind[0]) - np.arctan2(ahead[1], ahead[0])) % 360.0)
-    nearest = round(total)
-    return float(nearest) if abs(total - nearest) < 1e-2 else total
-
-
-def _tangent(part: Part, start: str, end: str) -> np.ndarray:
-    points = part.edge(start, end, np.array([0.0, STEP]))
-    return np.asarray(points[:, 1] - points[:, 0])
-
-
-def _condition(problem: Problem, edge: EdgeName) -> str:
-    """Return free, roller or clamped; a held component that is not the normal one counts as clamped."""
-    part = problem.part
-    held = set()
-    for support in problem.supports:
-        if support.boundary is None:
-            continue
-        named = {frozenset(e) for e in part.boundaries[support.boundary]}
-        if frozenset(edge) in named:
-            held |= {c for c, value in (("x", support.x), ("y", support.y)) if value is not None}
-    if not held:
-        return "free"
-    if len(held) == 2:
-        return "clamped"
-    along = part.edge(*edge, np.array([0.0, 0.5, 1.0]))
-    spread = np.ptp(along[0] if held == {"x"} else along[1])
-    return "roller" if spread < 1e-9 * part.size else "clamped"
-
-
-def _region(part: Part, block: int) -> str:
-    for region, members in part.regions.items():
-        if block in members:
-            return region
-    return "body"
+def _forced(problem: Problem, name: str, what: str, opening: float) -> Corner:
+    place = tuple(float(x) for x in problem.part.points[name])
+    exponent = -1.0 if _on_axis(problem, np.array(place)) or len(place) == 3 else 0.0
+    return Corner(name, (place,), (name,), opening, ("point", what), exponent)

@@ -1,7 +1,9 @@
-"""What the figures need of a solved level, as plain arrays; cells of degree 2 are cut into four."""
+"""What the figures need of a solved level, as plain arrays; faces of degree 2 are cut into small ones."""
 
 import numpy as np
 
+from convergence.fem.element import Element, element
+from convergence.fem.facets import SHAPES
 from convergence.fem.mesh import Mesh
 from convergence.fem.recovery import cell_volumes, energy_error, nodal_values, recovered_stress
 from convergence.fem.solution import Solution
@@ -16,45 +18,146 @@ PIECES = {
     "triangle": ((0, 3, 5), (3, 1, 4), (5, 4, 2), (3, 4, 5)),
     "quadrilateral": ((0, 4, 8, 7), (4, 1, 5, 8), (8, 5, 2, 6), (7, 8, 6, 3)),
 }
+SHARP = np.cos(np.radians(30.0))
 
 
 def display(solution: Solution) -> Fields:
-    """Return the fields of a solution."""
+    """Return the fields of a solution: the cells of a plane, the surface of a solid."""
     mesh = solution.mesh
-    recovered = recovered_stress(solution)
-    pieces = _pieces(mesh.shape, mesh.degree, mesh.skfem.elem.doflocs)
-    dofs = mesh.skfem.dofs.element_dofs
-    cells = np.concatenate([dofs[list(piece)] for piece in pieces], axis=1)
+    if mesh.dimension == 1:
+        return _rod(solution)
+    stress = component(nodal_values(solution, recovered_stress(solution)), "von_mises")
+    error = energy_error(solution) / cell_volumes(solution)
+    groups = [(mesh.cell_nodes, np.arange(mesh.cells))] if mesh.dimension == 2 else _surface(mesh)
+    faces: list[np.ndarray] = []
+    owners: list[np.ndarray] = []
+    edges: list[np.ndarray] = []
+    for nodes, owner in groups:
+        kind = element(SHAPES[3, mesh.degree, len(nodes)], mesh.degree)
+        pieces = _pieces(kind)
+        corners = np.concatenate([nodes[list(piece)] for piece in pieces], axis=1)
+        faces.append(corners if len(groups) == 1 or len(corners) == 4 else corners[[0, 1, 2, 2]])
+        owners.append(np.tile(owner, len(pieces)))
+        edges.append(_edges(nodes, kind))
+    cells = np.concatenate(faces, axis=1)
+    lines = np.concatenate(edges, axis=1)
+    boundary = _outline(cells) if mesh.dimension == 2 else _sharp(cells, mesh.nodes)
+    used, cells = np.unique(cells, return_inverse=True)
+    number = np.zeros(mesh.nodes.shape[1], dtype=np.int64)
+    number[used] = np.arange(len(used))
     return Fields(
-        points=mesh.nodes,
-        cells=cells,
-        edges=_edges(mesh),
-        boundary=_boundary(cells),
-        displacement=solution.displacement,
-        von_mises=component(nodal_values(solution, recovered), "von_mises"),
-        error=np.tile(energy_error(solution) / cell_volumes(solution), len(pieces)),
+        points=mesh.nodes[:, used],
+        cells=cells.reshape(-1, len(np.concatenate(owners))),
+        edges=number[lines],
+        boundary=number[boundary],
+        displacement=solution.displacement[:, used],
+        von_mises=stress[used],
+        error=error[np.concatenate(owners)],
     )
 
 
-def _pieces(shape: str, degree: int, doflocs: np.ndarray) -> list[tuple[int, ...]]:
-    """Return the local nodes of each piece of a cell, in scikit-fem's numbering."""
-    corners = len(PIECES[shape][0])
-    if degree == 1:
-        return [tuple(range(corners))]
-    number = [int(np.hypot(*(doflocs - place).T).argmin()) for place in PLACES[shape]]
-    return [tuple(number[node] for node in piece) for piece in PIECES[shape]]
+def _rod(solution: Solution) -> Fields:
+    """Return a rod as a strip, as thick as a round rod of the same section."""
+    mesh = solution.mesh
+    x = mesh.nodes[0]
+    radius = np.sqrt(solution.problem.depth(x) / np.pi)
+    stress = component(nodal_values(solution, recovered_stress(solution)), "von_mises")
+    start, end = mesh.cell_nodes[:2]
+    upper = len(x)
+    cells = np.array([start, end, end + upper, start + upper])
+    u = solution.displacement[0]
+    return Fields(
+        points=np.array([np.tile(x, 2), np.concatenate([-radius, radius])]),
+        cells=cells,
+        edges=_segments(cells),
+        boundary=_outline(cells),
+        displacement=np.array([np.tile(u, 2), np.zeros(2 * upper)]),
+        von_mises=np.tile(stress, 2),
+        error=energy_error(solution) / cell_volumes(solution),
+    )
 
 
-def _edges(mesh: Mesh) -> np.ndarray:
-    """Return the nodes along each edge (2, e), with the one in the middle (3, e) at degree 2."""
-    start, end = mesh.skfem.facets
-    if mesh.degree == 1:
-        return np.array([start, end])
-    return np.array([start, mesh.skfem.dofs.facet_dofs[0], end])
+def _surface(mesh: Mesh) -> list[tuple[np.ndarray, np.ndarray]]:
+    """Return the facets of all boundaries (k, f), by shape, with the cell behind each."""
+    found: dict[int, list[np.ndarray]] = {}
+    for groups in mesh.facets.values():
+        for group in groups:
+            found.setdefault(len(group), []).append(group)
+    keys, cells = _face_keys(mesh)
+    surface = []
+    for same in found.values():
+        nodes = np.concatenate(same, axis=1)
+        corners = element(SHAPES[3, mesh.degree, len(nodes)], 1).corners
+        wanted = _keys(nodes[:corners], mesh.nodes.shape[1])
+        surface.append((nodes, cells[np.searchsorted(keys, wanted)]))
+    return surface
 
 
-def _boundary(cells: np.ndarray) -> np.ndarray:
+def _face_keys(mesh: Mesh) -> tuple[np.ndarray, np.ndarray]:
+    """Return the keys of all faces of cells, sorted, and their cells."""
+    faces = [mesh.cell_nodes[list(face)] for face in mesh.element.faces]
+    keys = np.concatenate([_keys(face, mesh.nodes.shape[1]) for face in faces])
+    order = np.argsort(keys)
+    return keys[order], np.tile(np.arange(mesh.cells), len(faces))[order]
+
+
+def _keys(vertices: np.ndarray, size: int) -> np.ndarray:
+    """Return a number for each face (k, f), by its three smallest vertices."""
+    first, second, third = np.sort(vertices, axis=0)[:3].astype(np.int64)
+    return np.asarray((first * size + second) * size + third)
+
+
+def _pieces(kind: Element) -> list[tuple[int, ...]]:
+    """Return the local nodes of each piece of a face, counter-clockwise."""
+    number = [
+        int(np.hypot(*(kind.nodes - place).T).argmin())
+        for place in PLACES[kind.shape][: kind.corners if kind.degree == 1 else None]
+    ]
+    if kind.degree == 1:
+        return [tuple(number)]
+    return [tuple(number[node] for node in piece) for piece in PIECES[kind.shape]]
+
+
+def _edges(nodes: np.ndarray, kind: Element) -> np.ndarray:
+    """Return the nodes along each edge (2, e), with the middle (3, e) at degree 2, each edge once."""
+    corners = kind.nodes[: kind.corners]
+    rows = []
+    for a in range(kind.corners):
+        b = (a + 1) % kind.corners
+        middle = int(np.hypot(*(kind.nodes - 0.5 * (corners[a] + corners[b])).T).argmin())
+        rows.append(nodes[[a, b] if kind.degree == 1 else [a, middle, b]])
+    edges = np.concatenate(rows, axis=1)
+    return edges[:, _once(edges[[0, -1]])[0]]
+
+
+def _once(segments: np.ndarray) -> tuple[np.ndarray, np.ndarray, np.ndarray]:
+    """Return first place, group of each and size of the groups of equal segments (2, n)."""
+    low, high = np.sort(segments, axis=0).astype(np.int64)
+    _, first, group, count = np.unique(
+        low * (segments.max() + 1) + high, return_index=True, return_inverse=True, return_counts=True
+    )
+    return first, group, count
+
+
+def _segments(cells: np.ndarray) -> np.ndarray:
+    return np.array([cells, np.roll(cells, -1, axis=0)]).reshape(2, -1)
+
+
+def _outline(cells: np.ndarray) -> np.ndarray:
     """Return the segments (2, b) that belong to one cell only."""
-    segments = np.array([cells, np.roll(cells, -1, axis=0)]).reshape(2, -1)
-    _, first, count = np.unique(np.sort(segments, axis=0), axis=1, return_index=True, return_counts=True)
+    segments = _segments(cells)
+    first, _, count = _once(segments)
     return segments[:, first[count == 1]]
+
+
+def _sharp(cells: np.ndarray, points: np.ndarray) -> np.ndarray:
+    """Return the segments (2, b) at which the surface turns by more than 30°."""
+    a, b, c = points[:, cells[:3]].transpose(1, 0, 2)
+    normals = np.cross(b - a, c - a, axis=0)
+    normals = np.tile(normals / np.linalg.norm(normals, axis=0), len(cells))
+    segments = _segments(cells)
+    first, group, _ = _once(segments)
+    sums = [np.bincount(group, row) for row in normals]
+    turned = np.linalg.norm(sums, axis=0) < 2.0 * np.sqrt(0.5 * (1.0 + SHARP))
+    proper = segments[0, first] != segments[1, first]
+    return segments[:, first[turned & proper]]

@@ -16,31 +16,30 @@ NEWTON_STEPS = 20
 INSIDE, SHARED = 1e-6, 1e-8
 
 
-def locate(mesh: Mesh, place: tuple[float, float]) -> tuple[np.ndarray, np.ndarray]:
-    """Return cells (n,) and local coordinates (2, n, 1) that contain a place.
+def locate(mesh: Mesh, place: tuple[float, ...]) -> tuple[np.ndarray, np.ndarray]:
+    """Return cells (n,) and local coordinates (D, n, 1) that contain a place.
 
     Unsuitable where the place lies outside the part.
     """
-    nodes, dofs = mesh.nodes, mesh.skfem.dofs.element_dofs
-    distance = np.hypot(nodes[0] - place[0], nodes[1] - place[1])
+    distance = np.linalg.norm(mesh.nodes - np.array(place)[:, None], axis=0)
     nearest = int(distance.argmin())
     if distance[nearest] < 1e-9 * mesh.part.size:
-        local_nodes, cells = np.nonzero(dofs == nearest)
-        return cells, mesh.skfem.elem.doflocs[local_nodes].T[:, :, None]
+        local_nodes, cells = np.nonzero(mesh.cell_nodes == nearest)
+        return cells, mesh.element.nodes[local_nodes].T[:, :, None]
     cells, local, excess = _search(mesh, np.array(place)[:, None])
     sharing = excess[0] <= excess[0].min() + SHARED
     return cells[0, sharing], local[:, 0, sharing][:, :, None]
 
 
 def locate_many(mesh: Mesh, places: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
-    """Return one cell (n,) and local coordinates (2, n, 1) for each of the places (2, n)."""
+    """Return one cell (n,) and local coordinates (D, n, 1) for each of the places (D, n)."""
     cells, local, excess = _search(mesh, places)
     rows, best = np.arange(len(excess)), excess.argmin(axis=1)
     return cells[rows, best], local[:, rows, best][:, :, None]
 
 
 def _search(mesh: Mesh, places: np.ndarray) -> tuple[np.ndarray, np.ndarray, np.ndarray]:
-    """Return for the cells around each place: numbers (n, k), local places (2, n, k), excess (n, k)."""
+    """Return for the cells around each place: numbers (n, k), local places (D, n, k), excess (n, k)."""
     found = _around(mesh, places, CANDIDATES)
     doubtful = found[2].min(axis=1) > INSIDE
     if not doubtful.any():
@@ -48,48 +47,44 @@ def _search(mesh: Mesh, places: np.ndarray) -> tuple[np.ndarray, np.ndarray, np.
     outside = doubtful.copy()
     outside[doubtful] = ~mesh.part.contains(places[:, doubtful])
     if outside.any():
-        x, y = places[:, outside][:, 0]
-        raise Unsuitable([("at", (float(x), float(y)), "a place on the part")])
+        at = tuple(float(x) for x in places[:, outside][:, 0])
+        raise Unsuitable([("at", at, "a place on the part")])
     return _around(mesh, places, MANY)
 
 
 def _around(mesh: Mesh, places: np.ndarray, count: int) -> tuple[np.ndarray, np.ndarray, np.ndarray]:
-    centres = mesh.skfem.p[:, mesh.skfem.t].mean(axis=1)
+    centres = mesh.nodes[:, mesh.cell_nodes[: mesh.element.corners]].mean(axis=1)
     count = min(count, mesh.cells)
     cells = KDTree(centres.T).query(places.T, k=count)[1].reshape(-1, count)
     local = _invert(mesh, cells.ravel(), np.repeat(places, count, axis=1))
-    return cells, local.reshape(2, -1, count), _excess(local, mesh.shape).reshape(-1, count)
-
-
-def _excess(local: np.ndarray, shape: str) -> np.ndarray:
-    """Return how far local coordinates lie outside the reference cell, 0 inside."""
-    outside = [-local[0], -local[1]]
-    outside += [local[0] + local[1] - 1.0] if shape == "triangle" else [local[0] - 1.0, local[1] - 1.0]
-    return np.asarray(np.maximum(np.max(outside, axis=0), 0.0))
+    return cells, local.reshape(len(places), -1, count), mesh.element.outside(local).reshape(-1, count)
 
 
 def _invert(mesh: Mesh, cells: np.ndarray, places: np.ndarray) -> np.ndarray:
-    """Return local coordinates (2, n) of each place in its cell by Newton; infinite where it fails."""
-    mapping = mesh.skfem.mapping()
-    local = np.full((2, len(cells), 1), 1.0 / 3.0)
+    """Return local coordinates (D, n) of each place in its cell by Newton; infinite where it fails."""
+    kind = mesh.element
+    corners = mesh.nodes[:, mesh.cell_nodes[:, cells]]
+    middle = kind.nodes[: kind.corners].mean(axis=0)
+    local = np.repeat(middle[:, None], len(cells), axis=1)
     for _ in range(NEWTON_STEPS):
-        miss = places[:, :, None] - np.asarray(mapping.F(local, tind=cells))
-        step = np.einsum("ij...,j...->i...", np.asarray(mapping.invDF(local, tind=cells)), miss)
+        miss = places - np.einsum("dnm,nm->dm", corners, kind.shapes(local))
+        jacobian = np.einsum("dnm,nkm->mdk", corners, kind.gradients(local))
+        # the map of a cell far from the place may fold there: any step leads on
+        jacobian[np.linalg.det(jacobian) == 0.0] = np.eye(len(places))
+        step = np.linalg.solve(jacobian, miss.T[:, :, None])[:, :, 0].T
         local = np.clip(local + step, -3.0, 4.0)
         if np.abs(step).max() < 1e-12:
             break
-    lost = np.abs(step[:, :, 0]).max(axis=0) > 1e-8
-    found: np.ndarray = local[:, :, 0]
-    found[:, lost] = np.inf
-    return found
+    local[:, np.abs(step).max(axis=0) > 1e-8] = np.inf
+    return local
 
 
 def line_points(
-    mesh: Mesh, start: tuple[float, float], end: tuple[float, float]
+    mesh: Mesh, start: tuple[float, ...], end: tuple[float, ...]
 ) -> tuple[np.ndarray, np.ndarray]:
-    """Return Gauss points (2, n) and weights (n,) along a straight line, eight per cell size crossed."""
+    """Return Gauss points (D, n) and weights (n,) along a straight line, eight per cell size crossed."""
     a, b = np.array(start), np.array(end)
-    length = float(np.hypot(*(b - a)))
+    length = float(np.linalg.norm(b - a))
     pieces = max(4, int(np.ceil(2.0 * length / mesh.h)))
     at, weight = np.polynomial.legendre.leggauss(4)
     s = ((np.arange(pieces)[:, None] + 0.5 * (at + 1.0)) / pieces).ravel()

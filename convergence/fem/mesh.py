@@ -1,200 +1,187 @@
-"""A level's mesh of a part: scikit-fem's mesh with named boundaries, points and regions.
+"""A level's mesh of a part: nodes, the nodes of each cell, and what boundaries, points and regions own.
 
-Vertices shared by blocks are shared by construction, not by a distance. Meshes of degree 2 are
-isoparametric with every node, also those inside, placed by the block's map.
+Every node, also those inside, lies where the map of its block places it, so curved boundaries are met on
+every level and cells of degree 2 are isoparametric.
 """
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cached_property
-from typing import Any, Literal
+from typing import Literal
 
 import numpy as np
-from skfem import Basis, MeshQuad1, MeshQuad2, MeshTri1, MeshTri2
 
 from convergence.errors import SolvingError
-from convergence.fem.part import EdgeName, Part
+from convergence.fem.calculus import derivatives, determinant
+from convergence.fem.element import Element, Shape, element
+from convergence.fem.grid import Grids, chain_facets, cut
+from convergence.fem.part import Part
+from convergence.fem.problem import AnyPart
+from convergence.fem.rod_part import RodPart
+from convergence.fem.solid_mesh import solid_arrays
+from convergence.fem.solid_part import SolidPart
 
-Shape = Literal["triangle", "quadrilateral"]
+CHUNK = 100_000
+Formulation = Literal["displacement", "mean dilatation"]
 
 
 @dataclass(frozen=True, eq=False)
 class Mesh:
-    """A part cut into cells. `skfem` is scikit-fem's mesh; facets and vertices are its numbers.
+    """A part cut into cells of one shape and degree.
 
-    `counts` holds the cells along each family of the part's edges.
+    nodes (D, n) places; cell_nodes (k, m) node numbers of each cell, vertices first; facets of a boundary
+    in groups of one shape, each (k', f), so turned that their normal points outward; vertices the node of
+    each named point; regions the cells of each region; counts the cells along each family of the part.
     """
 
-    part: Part
+    part: AnyPart
     counts: Mapping[int, int]
-    skfem: Any
     shape: Shape
     degree: int
-    facets: Mapping[str, np.ndarray]
+    nodes: np.ndarray
+    cell_nodes: np.ndarray
+    facets: Mapping[str, tuple[np.ndarray, ...]]
     vertices: Mapping[str, int]
     regions: Mapping[str, np.ndarray]
+    formulation: Formulation = "displacement"
 
     @property
     def cells(self) -> int:
-        return int(self.skfem.t.shape[1])
+        return int(self.cell_nodes.shape[1])
 
     @property
-    def nodes(self) -> np.ndarray:
-        """Return the places (2, n) of all nodes in scikit-fem's numbering of a scalar field."""
-        return np.asarray(self.skfem.doflocs)
+    def dimension(self) -> int:
+        return int(self.nodes.shape[0])
+
+    @property
+    def element(self) -> Element:
+        return element(self.shape, self.degree)
 
     @cached_property
-    def cell_areas(self) -> np.ndarray:
-        """Return the area of each cell, exact for the curved cells themselves."""
-        return np.asarray(Basis(self.skfem, self.skfem.elem(), intorder=2 * self.degree).dx.sum(axis=1))
+    def cell_measures(self) -> np.ndarray:
+        """Return the area or volume of each cell, exact for the curved cells themselves."""
+        local, weights = self.element.rule(max(1, self.dimension * self.degree))
+        return np.concatenate([weights @ part.T for part in self._jacobians(local)])
 
     @property
-    def area(self) -> float:
-        """Return the area of all cells."""
-        return float(self.cell_areas.sum())
+    def measure(self) -> float:
+        """Return the area or volume of all cells."""
+        return float(self.cell_measures.sum())
 
     @cached_property
     def h(self) -> float:
-        """Return the representative cell size (area / cells)^(1/2)."""
-        return float(np.sqrt(self.area / self.cells))
+        """Return the representative cell size (measure / cells)^(1/D)."""
+        return float((self.measure / self.cells) ** (1.0 / self.dimension))
+
+    def _jacobians(self, local: np.ndarray) -> list[np.ndarray]:
+        """Return the signed Jacobians (m, q) at local places, in chunks of cells."""
+        slopes = self.element.gradients(local)
+        found = []
+        for start in range(0, self.cells, CHUNK):
+            corners = self.nodes[:, self.cell_nodes[:, start : start + CHUNK]]
+            found.append(determinant(derivatives(corners, slopes)))
+        return found
+
+    def require_positive(self) -> None:
+        """Check the signed Jacobian at nodes and quadrature points; SolvingError names the worst cell.
+
+        A quadratic cell can be folded between its nodes, which its nodes alone do not show.
+        """
+        places = np.hstack([self.element.nodes.T, self.element.rule(2 * self.degree + 1)[0]])
+        jacobian = np.concatenate(self._jacobians(places))
+        if jacobian.min() <= 0.0:
+            cell = int(np.unravel_index(jacobian.argmin(), jacobian.shape)[0])
+            corners = self.cell_nodes[: self.element.corners, cell]
+            place = ", ".join(f"{x:g}" for x in self.nodes[:, corners].mean(axis=1))
+            raise SolvingError(
+                f"mesh: cell {cell} near ({place}) is inverted; "
+                "more divisions or other proportions of the part"
+            )
 
 
-class _Numbering:
-    """Vertex numbers: named points first, then the inner vertices of edges, then those of blocks."""
-
-    def __init__(self, part: Part, counts: Mapping[int, int]):
-        used = dict.fromkeys(name for block in part.blocks for name in block)
-        self.points = {name: number for number, name in enumerate(used)}
-        self.edges: dict[EdgeName, np.ndarray] = {}
-        self.next = len(self.points)
-        self.part, self.counts = part, counts
-
-    def along(self, start: str, end: str) -> np.ndarray:
-        """Return the vertices of an edge in its direction, ends included."""
-        if (start, end) not in self.edges:
-            inner = self.counts[self.part.families[start, end]] - 1
-            numbers = np.arange(self.next, self.next + inner)
-            self.next += inner
-            chain = np.concatenate([[self.points[start]], numbers, [self.points[end]]])
-            self.edges[start, end], self.edges[end, start] = chain, chain[::-1]
-        return self.edges[start, end]
-
-    def grid(self, index: int) -> np.ndarray:
-        """Return the vertices of a block as a grid, first index from a to b."""
-        a, b, c, d = self.part.blocks[index]
-        south, north, west, east = self.along(a, b), self.along(d, c), self.along(a, d), self.along(b, c)
-        ids = np.empty((len(south), len(west)), dtype=np.int64)
-        ids[:, 0], ids[:, -1], ids[0, :], ids[-1, :] = south, north, west, east
-        shape = (len(south) - 2, len(west) - 2)
-        ids[1:-1, 1:-1] = self.next + np.arange(shape[0] * shape[1]).reshape(shape)
-        self.next += shape[0] * shape[1]
-        return ids
-
-
-def block_grids(part: Part, counts: Mapping[int, int]) -> list[np.ndarray]:
-    """Return the vertices of each block as a grid, numbered as in `mesh`; first index from a to b."""
-    numbering = _Numbering(part, counts)
-    return [numbering.grid(index) for index in range(len(part.blocks))]
-
-
-def _pair_keys(first: np.ndarray, second: np.ndarray) -> np.ndarray:
-    keys: np.ndarray = np.minimum(first, second).astype(np.int64) * 2**31 + np.maximum(first, second)
-    return keys
-
-
-def _cut(ids: np.ndarray, shape: Shape) -> np.ndarray:
-    a, b, c, d = (part.ravel() for part in (ids[:-1, :-1], ids[1:, :-1], ids[1:, 1:], ids[:-1, 1:]))
-    if shape == "quadrilateral":
-        return np.array([a, b, c, d])
-    return np.stack([np.array([a, b, c]), np.array([a, c, d])], axis=2).reshape(3, -1)
-
-
-def _middles(ids: np.ndarray, x: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
-    """Return keys and places of the middle nodes of all segments of a block, diagonals included.
-
-    A diagonal's middle is its own midpoint plus the bulge of the cell, so that it is straight in a
-    straight-sided cell whatever the cell's shape.
-    """
-    keys = [
-        _pair_keys(ids[:-1, :], ids[1:, :]).ravel(),
-        _pair_keys(ids[:, :-1], ids[:, 1:]).ravel(),
-        _pair_keys(ids[:-1, :-1], ids[1:, 1:]).ravel(),
-    ]
-    corners = x[:, ::2, ::2]
-    ends = 0.5 * (corners[:, :-1, :-1] + corners[:, 1:, 1:])
-    others = 0.5 * (corners[:, 1:, :-1] + corners[:, :-1, 1:])
-    diagonals = x[:, 1::2, 1::2] + 0.5 * (ends - others)
-    places = [x[:, 1::2, ::2], x[:, ::2, 1::2], diagonals]
-    return np.concatenate(keys), np.concatenate([p.reshape(2, -1) for p in places], axis=1)
-
-
-def mesh(part: Part, counts: Mapping[int, int], *, shape: Shape, degree: int) -> Mesh:
+def mesh(
+    part: AnyPart,
+    counts: Mapping[int, int],
+    *,
+    shape: Shape,
+    degree: int,
+    formulation: Formulation = "displacement",
+) -> Mesh:
     """Return the mesh of a part with `counts` cells on each family of edges.
 
     Raises SolvingError where a cell is inverted.
     """
-    numbering = _Numbering(part, counts)
-    grids = [numbering.grid(index) for index in range(len(part.blocks))]
-    places = np.empty((2, numbering.next))
-    cells, keys, middles, centres, owner = [], [], [], [], []
-    for index, ids in enumerate(grids):
-        steps = [np.linspace(0.0, 1.0, 2 * n - 1) for n in ids.shape]
-        x = part.block(index, *steps)
-        places[:, ids.ravel()] = x[:, ::2, ::2].reshape(2, -1)
-        cells.append(_cut(ids, shape))
-        owner.append(np.full(cells[-1].shape[1], index))
-        key, middle = _middles(ids, x)
-        keys.append(key)
-        middles.append(middle)
-        centres.append(x[:, 1::2, 1::2].reshape(2, -1))
-    t = np.concatenate(cells, axis=1)
-    linear = MeshTri1(places, t, sort_t=False) if shape == "triangle" else MeshQuad1(places, t)
-    native = linear
-    if degree == 2:
-        native = _quadratic(linear, np.concatenate(keys), np.concatenate(middles, axis=1), np.hstack(centres))
-    _require_positive(native)
-    blocks = np.concatenate(owner)
+    if isinstance(part, SolidPart):
+        arrays = solid_arrays(part, counts, shape, degree)
+        made = Mesh(part, dict(counts), shape, degree, *arrays)
+    elif isinstance(part, RodPart):
+        made = _rod(part, counts, shape, degree)
+    else:
+        made = _plane(part, counts, shape, degree)
+    made.require_positive()
+    return replace(made, formulation=formulation)
+
+
+def _plane(part: Part, counts: Mapping[int, int], shape: Shape, degree: int) -> Mesh:
+    kind = element(shape, degree)
+    grids = Grids(part, counts, degree)
+    cells = [cut(ids, kind) for ids in grids.blocks]
+    owner = np.repeat(np.arange(len(cells)), [block.shape[1] for block in cells])
     regions = part.regions or {"body": tuple(range(len(part.blocks)))}
+    facets = {}
+    for name, edges in part.boundaries.items():
+        outward = [edge if edge in part.outline else edge[::-1] for edge in edges]
+        chains = [chain_facets(grids.along(*edge), degree) for edge in outward]
+        facets[name] = (np.concatenate(chains, axis=1),)
     return Mesh(
         part=part,
         counts=dict(counts),
-        skfem=native,
         shape=shape,
         degree=degree,
-        facets={name: _facets(native, numbering, edges) for name, edges in part.boundaries.items()},
-        vertices=numbering.points,
-        regions={name: np.flatnonzero(np.isin(blocks, members)) for name, members in regions.items()},
+        nodes=grids.places(straight_diagonals=shape == "triangle"),
+        cell_nodes=np.concatenate(cells, axis=1),
+        facets=facets,
+        vertices=grids.points,
+        regions={name: np.flatnonzero(np.isin(owner, members)) for name, members in regions.items()},
     )
 
 
-def _quadratic(linear: Any, keys: np.ndarray, middles: np.ndarray, centres: np.ndarray) -> Any:
-    kind = MeshTri2 if isinstance(linear, MeshTri1) else MeshQuad2
-    native = kind.from_mesh(linear)
-    doflocs = np.array(native.doflocs)
-    keys, first = np.unique(keys, return_index=True)
-    wanted = _pair_keys(*native.facets)
-    doflocs[:, native.dofs.facet_dofs[0]] = middles[:, first[np.searchsorted(keys, wanted)]]
-    if kind is MeshQuad2:
-        doflocs[:, native.dofs.interior_dofs[0]] = centres
-    return kind(doflocs, linear.t, sort_t=False) if kind is MeshTri2 else kind(doflocs, linear.t)
+def _rod(part: RodPart, counts: Mapping[int, int], shape: Shape, degree: int) -> Mesh:
+    steps = [degree * counts[piece] for piece in range(len(part.points) - 1)]
+    inner = [
+        np.linspace(a, b, n + 1)[1:] for a, b, n in zip(part.stations, part.stations[1:], steps, strict=False)
+    ]
+    nodes = np.concatenate([part.stations[:1], *inner])
+    starts = np.concatenate([[0], np.cumsum(steps)])
+    owner = np.repeat(np.arange(len(steps)), np.array(steps) // degree)
+    regions = part.regions or {"body": tuple(range(len(steps)))}
+    return Mesh(
+        part=part,
+        counts=dict(counts),
+        shape=shape,
+        degree=degree,
+        nodes=nodes[None, :],
+        cell_nodes=chain_facets(np.arange(len(nodes)), degree),
+        facets={name: (np.array([[at]]),) for name, at in zip(part.ends, (0, len(nodes) - 1), strict=True)},
+        vertices={name: int(node) for name, node in zip(part.points, starts, strict=True)},
+        regions={name: np.flatnonzero(np.isin(owner, members)) for name, members in regions.items()},
+    )
 
 
-def _facets(native: Any, numbering: _Numbering, edges: tuple[EdgeName, ...]) -> np.ndarray:
-    chains = [numbering.along(*edge) for edge in edges]
-    wanted = np.concatenate([_pair_keys(chain[:-1], chain[1:]) for chain in chains])
-    keys = _pair_keys(*native.facets)
-    order = np.argsort(keys)
-    return np.asarray(order[np.searchsorted(keys[order], wanted)])
-
-
-def _require_positive(native: Any) -> None:
-    """Check the signed Jacobian at the nodes of every cell."""
-    local = native.elem.doflocs.T
-    jacobian = np.asarray(native.mapping().detDF(local))
-    if jacobian.min() <= 0.0:
-        cell = int(np.unravel_index(jacobian.argmin(), jacobian.shape)[0])
-        x, y = native.p[:, native.t[:, cell]].mean(axis=1)
-        raise SolvingError(
-            f"mesh: cell {cell} near ({x:g}, {y:g}) is inverted; "
-            "more divisions or other proportions of the part"
-        )
+def count_nodes(part: AnyPart, counts: Mapping[int, int], degree: int) -> int:
+    """Return the number of nodes of a mesh without making it."""
+    if isinstance(part, RodPart):
+        return 1 + degree * sum(counts.values())
+    plan = part.plan if isinstance(part, SolidPart) else part
+    fine = {family: degree * count for family, count in counts.items()}
+    families = plan.families
+    edges = {frozenset(edge): fine[number] for edge, number in families.items()}
+    inner = [(fine[families[a, b]] - 1) * (fine[families[b, c]] - 1) for a, b, c, _ in plan.blocks]
+    flat = (
+        len({name for block in plan.blocks for name in block})
+        + sum(n - 1 for n in edges.values())
+        + sum(inner)
+    )
+    if isinstance(part, SolidPart):
+        return flat * (1 + sum(fine[family] for family in part.layer_families))
+    return flat

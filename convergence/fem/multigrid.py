@@ -8,24 +8,24 @@ aspect 5 and more cost iterations.
 Vectors keep their held unknowns, at zero. Cycles run in single precision, the gradients in double.
 """
 
-from collections.abc import Callable
 from dataclasses import dataclass
+from functools import partial
 
 import numpy as np
 from scipy import sparse
 from scipy.sparse.linalg import splu
 
+from convergence.fem.gradients import Solve, gradients, multiply
+from convergence.fem.held import Held
 from convergence.fem.mesh import Mesh
 from convergence.fem.solvers import residual_limit
-from convergence.fem.transfer import counts_up, degree_up
+from convergence.fem.transfer import prolongation
 
-TOLERANCE = 1e-10
-MOST_ITERATIONS = 60
-SMOOTHER_DEGREE = 4
-SMOOTHED_RANGE = 40.0
+# smoothers to try, by dimension: their degree and the part of the spectrum they damp (measured)
+SMOOTHERS = {2: ((2, 15.0), (4, 40.0)), 3: ((4, 40.0), (6, 90.0))}
 LARGEST_COARSEST = 3000
 LANCZOS_STEPS = 8
-Solve = Callable[[np.ndarray], np.ndarray]
+Smoother = tuple[int, float]
 
 
 @dataclass(frozen=True, eq=False)
@@ -40,7 +40,7 @@ class Outcome:
 
 @dataclass(frozen=True, eq=False)
 class _Level:
-    """A level in single precision: `up` brings scalar nodal values to it from the next coarser one."""
+    """A level in single precision: `up` brings displacements to it from the next coarser one."""
 
     matrix: sparse.csr_matrix
     held: np.ndarray
@@ -52,80 +52,85 @@ class _Level:
 
     def times(self, x: np.ndarray) -> np.ndarray:
         """Return K x of the free unknowns."""
-        return _multiply(self.matrix, x, self.held)
+        return multiply(self.matrix, x, self.held)
+
+    def coarser(self, x: np.ndarray) -> np.ndarray:
+        """Return forces on the next coarser level."""
+        below = np.asarray(self.down @ x)
+        below[self.held_below] = 0.0
+        return below
+
+    def finer(self, x: np.ndarray) -> np.ndarray:
+        """Return displacements of the next coarser level on this one."""
+        return np.asarray(self.up @ x)
 
 
-def multigrid(
-    mesh: Mesh, matrix: sparse.csr_matrix, load: np.ndarray, held: np.ndarray, values: np.ndarray
-) -> Outcome:
-    """Return u with u[held] = values, as near to K u = f on the free unknowns as 60 iterations bring it."""
-    u = np.zeros(len(load))
-    u[held] = values
-    right = load - matrix @ u
-    right[held] = 0.0
-    size = float(np.linalg.norm(right))
-    if size == 0.0:
-        return Outcome(u, 0, 0.0, True)
-    try:
-        levels, coarsest = _hierarchy(mesh, matrix, held)
-    except RuntimeError:  # SuperLU on a singular matrix
-        return Outcome(u, 0, 1.0, False)
-    change, iterations, reached = _gradients(
-        matrix, right, held, lambda residual: _cycle(levels, coarsest, residual)
-    )
-    rest = right - _multiply(matrix, change, held)
-    residual = float(np.linalg.norm(rest))
-    accepted = reached and residual <= residual_limit(matrix, change, right)
-    return Outcome(u + change, iterations, residual / size, accepted)
+class Multigrid:
+    """The hierarchy below a matrix, made once for any number of right-hand sides."""
+
+    def __init__(self, mesh: Mesh, matrix: sparse.csr_matrix, held: Held):
+        self.matrix, self.held = matrix, held.numbers
+        self.smoothers = SMOOTHERS[mesh.dimension]
+        self.coarsest: Solve | None
+        try:
+            self.levels, self.coarsest = _hierarchy(mesh, matrix, held)
+        except RuntimeError:  # SuperLU on a singular matrix
+            self.coarsest = None
+
+    def solve(self, load: np.ndarray, values: np.ndarray, start: np.ndarray | None = None) -> Outcome:
+        """Return u with u[held] = values, as near to K u = f elsewhere as 60 iterations a smoother bring it.
+
+        The error is measured in the energy norm, against that of the solution or of a first guess.
+        """
+        u = np.zeros(len(load)) if start is None else start.copy()
+        u[self.held] = values
+        forces = self.matrix @ u
+        energy = None if start is None else float(u @ forces)
+        right = np.asarray(load - forces)
+        right[self.held] = 0.0
+        coarsest = self.coarsest
+        if coarsest is None:
+            return Outcome(u, 0, 1.0, False)
+        total = 0
+        for smoother in self.smoothers:
+            cycle = partial(_cycle, self.levels, coarsest, smoother)
+            change, iterations, reached = gradients(self.matrix, right, self.held, energy, cycle)
+            u += change
+            total += iterations
+            if reached:
+                break
+            energy = float(u @ (self.matrix @ u))
+            right = load - self.matrix @ u
+            right[self.held] = 0.0
+        rest = np.asarray(load - self.matrix @ u)
+        size = max(float(np.linalg.norm(load)), float(np.linalg.norm(rest[self.held])))
+        rest[self.held] = 0.0
+        residual = float(np.linalg.norm(rest))
+        accepted = reached and residual <= residual_limit(self.matrix, u, size)
+        return Outcome(u, total, residual / max(size, float(np.finfo(float).tiny)), accepted)
 
 
-def _gradients(
-    matrix: sparse.csr_matrix, right: np.ndarray, held: np.ndarray, precondition: Solve
-) -> tuple[np.ndarray, int, bool]:
-    """Return the solution, the iterations, and whether their residual reached the tolerance."""
-    u, step, rest = np.zeros_like(right), np.zeros_like(right), right.copy()
-    size = norm = float(np.linalg.norm(right))
-    before = np.inf
-    for iteration in range(1, MOST_ITERATIONS + 1):
-        correction = norm * precondition((rest / norm).astype(np.float32)).astype(np.float64)
-        now = float(rest @ correction)
-        step *= now / before
-        step += correction
-        before = now
-        image = _multiply(matrix, step, held)
-        work = float(step @ image)
-        if not work > 0.0:
-            return u, iteration, False
-        length = now / work
-        u += length * step
-        rest -= length * image
-        norm = float(np.linalg.norm(rest))
-        if not norm > TOLERANCE * size:
-            return u, iteration, bool(np.isfinite(norm))
-    return u, MOST_ITERATIONS, False
-
-
-def _cycle(levels: list[_Level], coarsest: Solve, residual: np.ndarray) -> np.ndarray:
+def _cycle(levels: list[_Level], coarsest: Solve, smoother: Smoother, residual: np.ndarray) -> np.ndarray:
     """Return one V-cycle's answer to a residual, from zero."""
     if not levels:
         return coarsest(residual)
     level = levels[0]
-    x = _smooth(level, residual)
-    below = (level.down @ (residual - level.times(x)).reshape(-1, 2)).ravel()
-    below[level.held_below] = 0.0
-    x += (level.up @ _cycle(levels[1:], coarsest, below).reshape(-1, 2)).ravel()
-    x += _smooth(level, residual - level.times(x))
+    x = _smooth(level, residual, smoother)
+    below = level.coarser(residual - level.times(x))
+    x += level.finer(_cycle(levels[1:], coarsest, smoother, below))
+    x += _smooth(level, residual - level.times(x), smoother)
     return x
 
 
-def _smooth(level: _Level, residual: np.ndarray) -> np.ndarray:
-    """Return a Chebyshev polynomial of the residual, for the eigenvalues largest / 40 … largest."""
-    half = 0.5 * level.largest * (1.0 - 1.0 / SMOOTHED_RANGE)
+def _smooth(level: _Level, residual: np.ndarray, smoother: Smoother) -> np.ndarray:
+    """Return a Chebyshev polynomial of the residual, for the eigenvalues largest / range … largest."""
+    degree, damped = smoother
+    half = 0.5 * level.largest * (1.0 - 1.0 / damped)
     centre = level.largest - half
     rho = half / centre
     step = level.inverse_diagonal * residual / centre
     x: np.ndarray = step.copy()
-    for _ in range(SMOOTHER_DEGREE - 1):
+    for _ in range(degree - 1):
         residual = residual - level.times(step)
         following = 1.0 / (2.0 * centre / half - rho)
         step *= following * rho
@@ -135,32 +140,27 @@ def _smooth(level: _Level, residual: np.ndarray) -> np.ndarray:
     return x
 
 
-def _multiply(matrix: sparse.csr_matrix, x: np.ndarray, held: np.ndarray) -> np.ndarray:
-    image = np.asarray(matrix @ x)
-    image[held] = 0.0
-    return image
-
-
-def _hierarchy(mesh: Mesh, matrix: sparse.csr_matrix, held: np.ndarray) -> tuple[list[_Level], Solve]:
+def _hierarchy(mesh: Mesh, matrix: sparse.csr_matrix, held: Held) -> tuple[list[_Level], Solve]:
     """Return the levels from fine to coarse and the direct solution below them.
 
     A coarse unknown is held where it would move a held one of the finer level.
     """
     levels = []
-    degree, counts = mesh.degree, mesh.counts
+    degree, counts, dimension = mesh.degree, mesh.counts, mesh.dimension
+    numbers, frame = held.numbers, held.frame
     while matrix.shape[0] > LARGEST_COARSEST and (degree > 1 or max(counts.values()) > 1):
-        if degree > 1:
-            up, degree = degree_up(mesh), 1
-        else:
-            fewer = {family: -(-count // 2) for family, count in counts.items()}
-            up, counts = counts_up(mesh.part, fewer, counts), fewer
-        both = sparse.kron(up, sparse.identity(2), format="csr")
+        fewer = counts if degree > 1 else {family: -(-count // 2) for family, count in counts.items()}
+        up = prolongation(mesh.part, (fewer, 1), (counts, degree))
+        counts, degree = fewer, 1
+        both = sparse.kron(up, sparse.identity(dimension), format="csr")
+        if frame is not None:
+            both, frame = sparse.csr_matrix(frame.T @ both), None
         marked = np.zeros(matrix.shape[0])
-        marked[held] = 1.0
-        held_below = np.flatnonzero(both.T @ marked)
-        levels.append(_level(matrix, held, up, held_below))
-        matrix, held = (both.T @ (matrix @ both)).tocsr(), held_below
-    return levels, _factored(matrix, held)
+        marked[numbers] = 1.0
+        held_below = np.flatnonzero(abs(both).T @ marked > 1e-12)
+        levels.append(_level(matrix, numbers, both, held_below))
+        matrix, numbers = (both.T @ (matrix @ both)).tocsr(), held_below
+    return levels, _factored(matrix, numbers)
 
 
 def _level(
@@ -184,7 +184,7 @@ def _largest_eigenvalue(matrix: sparse.csr_matrix, inverse: np.ndarray, held: np
     earlier, beside = np.zeros_like(vector), 0.0
     diagonal, off = [], []
     for _ in range(LANCZOS_STEPS):
-        image = root * _multiply(matrix, root * vector, held) - beside * earlier
+        image = root * multiply(matrix, root * vector, held) - beside * earlier
         along = float(image @ vector)
         image -= along * vector
         beside = float(np.linalg.norm(image))

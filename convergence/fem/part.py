@@ -65,6 +65,18 @@ class Part:
     regions: Mapping[str, tuple[int, ...]] = field(default_factory=dict)
     weights: Mapping[EdgeName, float] = field(default_factory=dict)
 
+    @property
+    def dimension(self) -> int:
+        return 2
+
+    def boundary_points(self, boundary: str) -> set[str]:
+        """Return the names of the points on a boundary."""
+        return {name for edge in self.boundaries[boundary] for name in edge}
+
+    def region_points(self, region: str) -> set[str]:
+        """Return the names of the points of a region."""
+        return {name for index in self.regions[region] for name in self.blocks[index]}
+
     def edge(self, start: str, end: str, s: np.ndarray) -> np.ndarray:
         """Return the points (2, n) at the parameters s of the edge from start to end."""
         if (start, end) in self.curves:
@@ -131,6 +143,7 @@ class Part:
         inside: np.ndarray = (turn.sum(axis=1) > np.pi) | (distance <= 1e-5 * self.size)
         return inside
 
+    @cached_property
     def _family_lengths(self) -> dict[int, float]:
         lengths: dict[int, float] = {}
         for edge, number in self.families.items():
@@ -143,16 +156,25 @@ class Part:
         `divisions` counts the cells along the shortest family of edges (or per unit of `weights`);
         `size` is the largest cell edge wanted.
         """
-        lengths = self._family_lengths()
-        shortest = min(lengths.values())
-        weight = {number: length / shortest for number, length in lengths.items()}
-        weight |= {self.families[edge]: value for edge, value in self.weights.items()}
+        weights = self._family_weights()
         if divisions is None:
             if size is None:
                 raise ValueError("either size or divisions")
-            density = max(lengths[n] / weight[n] for n in lengths) / size
-            return {n: max(1, int(np.ceil(weight[n] * density - 1e-9))) for n in lengths}
-        return {n: max(1, round(weight[n] * divisions)) for n in lengths}
+            density = self.coarsest_edge / size
+            return {n: max(1, int(np.ceil(weight * density - 1e-9))) for n, weight in weights.items()}
+        return {n: max(1, round(weight * divisions)) for n, weight in weights.items()}
+
+    def _family_weights(self) -> dict[int, float]:
+        lengths = self._family_lengths
+        shortest = min(lengths.values())
+        weights = {number: length / shortest for number, length in lengths.items()}
+        return weights | {self.families[edge]: value for edge, value in self.weights.items()}
+
+    @property
+    def coarsest_edge(self) -> float:
+        """Return the length of the largest cell edge at one division."""
+        weights = self._family_weights()
+        return max(length / weights[number] for number, length in self._family_lengths.items())
 
 
 def finer(counts: Mapping[int, int], ratio: float, level: int) -> dict[int, int]:

@@ -1,138 +1,134 @@
 """A solved level: displacement, energy, work, reactions and resultants."""
 
-from collections.abc import Mapping
-from dataclasses import dataclass
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, field
 from functools import cached_property
 
 import numpy as np
 from scipy import sparse
 
-from convergence.errors import SolvingError, Unsuitable
-from convergence.fem.assembly import load_vector, stiffness
-from convergence.fem.equations import solve_equations
+from convergence.fem.assembly import foundation, stiffness
+from convergence.fem.equations import Equations
+from convergence.fem.held import Held, held_by
+from convergence.fem.load_vector import load_vector, thermal_load
+from convergence.fem.loads import rigid_motions
 from convergence.fem.mesh import Mesh
-from convergence.fem.problem import Problem, Support
-
-LOOSE = 1e-12
+from convergence.fem.problem import ElasticSupport, Problem
+from convergence.fem.strain import is_heated
 
 
 @dataclass(frozen=True, eq=False)
 class Solution:
-    """The discrete solution. `unknowns` is interleaved; `held` maps each support to its unknowns."""
+    """The discrete solution. `unknowns` is interleaved, D per node.
+
+    `stiffness` is that of the material, `foundations` those of the elastic supports; `load` are the nodal
+    forces of the loads, `thermal` those that a temperature asks for, with their energy when all is held.
+    """
 
     problem: Problem
     mesh: Mesh
     stiffness: sparse.csr_matrix
     load: np.ndarray
     unknowns: np.ndarray
-    held: Mapping[str, np.ndarray]
+    held: Held
+    foundations: Mapping[str, sparse.csr_matrix] = field(default_factory=dict)
+    thermal: np.ndarray | None = None
+    thermal_energy: float = 0.0
 
     @property
     def displacement(self) -> np.ndarray:
-        """Return the displacement (2, nodes)."""
-        return self.unknowns.reshape(-1, 2).T
+        """Return the displacement (D, nodes)."""
+        return self.unknowns.reshape(-1, self.mesh.dimension).T
 
     @cached_property
     def internal(self) -> np.ndarray:
-        """Return the internal nodal forces K u."""
-        return np.asarray(self.stiffness @ self.unknowns)
+        """Return the nodal forces of the material, K u less those of the temperature."""
+        forces = np.asarray(self.stiffness @ self.unknowns)
+        return forces if self.thermal is None else forces - self.thermal
+
+    @cached_property
+    def springs(self) -> np.ndarray:
+        """Return the nodal forces that stretch the elastic supports."""
+        forces = np.zeros_like(self.load)
+        for matrix in self.foundations.values():
+            forces += matrix @ self.unknowns
+        return forces
 
     @property
     def energy(self) -> float:
-        """Return the strain energy ½ u·K u."""
-        return 0.5 * float(self.unknowns @ self.internal)
+        """Return the elastic strain energy of the material."""
+        thermal = 0.0 if self.thermal is None else 0.5 * float(self.thermal @ self.unknowns)
+        return 0.5 * float(self.unknowns @ self.internal) - thermal + self.thermal_energy
+
+    @property
+    def quadratic_energy(self) -> float:
+        """Return ½ a(u, u) of material and elastic supports: it rises to its limit as the mesh is refined.
+
+        Without temperature and elastic supports it is the strain energy.
+        """
+        return 0.5 * float(self.unknowns @ (self.stiffness @ self.unknowns + self.springs))
 
     @property
     def work(self) -> float:
-        """Return the work of loads and prescribed displacements, ½ (f + reactions)·u."""
-        return 0.5 * float(self.unknowns @ (self.load + self.reactions))
+        """Return ½ (f + reactions)·u of loads, temperature and prescribed displacements."""
+        forces = self.load + self.holding
+        return 0.5 * float(self.unknowns @ (forces if self.thermal is None else forces + self.thermal))
 
     @cached_property
+    def holding(self) -> np.ndarray:
+        """Return the nodal forces of the rigid supports, zero elsewhere."""
+        missing = self.held.turned(self.internal + self.springs - self.load)
+        forces = np.zeros_like(missing)
+        forces[self.held.numbers] = missing[self.held.numbers]
+        return self.held.back(forces)
+
+    @property
     def reactions(self) -> np.ndarray:
-        """Return K u − f at the held unknowns, zero elsewhere."""
-        forces = np.zeros_like(self.load)
-        for numbers in self.held.values():
-            forces[numbers] = (self.internal - self.load)[numbers]
-        return forces
+        """Return the nodal forces of all supports on the part."""
+        return np.asarray(self.holding - self.springs)
 
-    def reaction(self, support: str, about: tuple[float, float] = (0.0, 0.0)) -> np.ndarray:
-        """Return force x, force y and moment about a point (counter-clockwise) of a support."""
-        forces = np.zeros_like(self.load)
-        forces[self.held[support]] = self.reactions[self.held[support]]
-        return self.resultant(forces, about)
+    def reaction(self, support: str, about: tuple[float, ...] | None = None) -> np.ndarray:
+        """Return force and moment of a support on the part, as `resultant`."""
+        if support in self.foundations:
+            return self.resultant(-(self.foundations[support] @ self.unknowns), about)
+        turned = self.held.turned(self.holding)
+        forces = np.zeros_like(turned)
+        forces[self.held.by_support[support]] = turned[self.held.by_support[support]]
+        return self.resultant(self.held.back(forces), about)
 
-    def resultant(self, forces: np.ndarray, about: tuple[float, float] = (0.0, 0.0)) -> np.ndarray:
-        """Return force x, force y and moment about a point of interleaved nodal forces.
+    def resultant(self, forces: np.ndarray, about: tuple[float, ...] | None = None) -> np.ndarray:
+        """Return force and moment about a point (the origin) of interleaved nodal forces.
 
-        Around a ring the radial forces cancel: only the force along the axis is left.
+        In a plane Fx, Fy and M counter-clockwise, in a solid Fx, Fy, Fz, Mx, My, Mz, of a rod Fx. Around
+        a ring the radial forces cancel: only the force along the axis is left.
         """
-        x, y = self.mesh.nodes
-        fx, fy = forces[::2], forces[1::2]
-        moment = (x - about[0]) @ fy - (y - about[1]) @ fx
+        nodes = self.mesh.nodes
+        arm = nodes if about is None else nodes - np.array(about)[:, None]
+        total = np.einsum("acn,nc->a", rigid_motions(arm), forces.reshape(-1, len(nodes)))
         if self.problem.kind == "axisymmetric":
-            return np.array([0.0, fy.sum(), 0.0])
-        return np.array([fx.sum(), fy.sum(), moment])
+            return np.array([0.0, total[1], 0.0])
+        return np.asarray(total)
 
 
-def solve(problem: Problem, mesh: Mesh) -> Solution:
-    """Solve a problem on a mesh. SolvingError where it cannot be solved."""
-    held, numbers, values = _held(problem, mesh)
-    _require_no_rigid_motion(problem, mesh, numbers)
-    matrix, load = stiffness(problem, mesh), load_vector(problem, mesh)
-    u = solve_equations(mesh, matrix, load, numbers, values)
-    return Solution(problem, mesh, matrix, load, u, held)
+def solve(problem: Problem, mesh: Mesh, start: np.ndarray | None = None) -> Solution:
+    """Solve a problem on a mesh, from a first guess of the unknowns if given. SolvingError where it fails."""
+    return solve_cases([problem], mesh, [start])[0]
 
 
-def _held(problem: Problem, mesh: Mesh) -> tuple[dict[str, np.ndarray], np.ndarray, np.ndarray]:
-    """Return the unknowns of each support, all of them, and their values; the first support keeps a node."""
-    held: dict[str, np.ndarray] = {}
-    taken = np.zeros(2 * mesh.nodes.shape[1], dtype=bool)
-    values = np.zeros(len(taken))
-    for support in problem.supports:
-        nodes = support_nodes(support, mesh)
-        mine = []
-        for component, value in enumerate((support.x, support.y)):
-            if value is None:
-                continue
-            numbers = 2 * nodes + component
-            x, y = mesh.nodes[:, nodes]
-            wanted = np.asarray(value(x, y) if callable(value) else np.full(len(nodes), value))
-            new = ~taken[numbers]
-            values[numbers[new]] = wanted[new]
-            taken[numbers] = True
-            mine.append(numbers[new])
-        if not mine:
-            raise Unsuitable([(support.name, None, "a support that holds x, y or both")])
-        held[support.name] = np.concatenate(mine)
-    numbers = np.flatnonzero(taken)
-    return held, numbers, values[numbers]
-
-
-def _require_no_rigid_motion(problem: Problem, mesh: Mesh, held: np.ndarray) -> None:
-    """Check that the held unknowns stop every rigid motion: balanced loads hide a loose part.
-
-    In a plane these are both shifts and the turn; a ring can only move along its axis.
-    """
-    x, y = (mesh.nodes - mesh.nodes.mean(axis=1, keepdims=True)) / mesh.part.size
-    ones, none = np.ones_like(x), np.zeros_like(x)
-    ways = {"move along x": [ones, none], "move along y": [none, ones], "turn": [-y, x]}
-    if problem.kind == "axisymmetric":
-        ways = {"move along y": [none, ones]}
-    motions = np.array(list(ways.values())).transpose(0, 2, 1).reshape(len(ways), -1)[:, held]
-    stopped, modes = np.linalg.eigh(motions @ motions.T)
-    if stopped[0] <= LOOSE * max(stopped[-1], 1.0):
-        way = list(ways)[int(np.abs(modes[:, 0]).argmax())]
-        raise SolvingError(f"the supports do not hold the part: it can still {way}; hold it there")
-
-
-def support_nodes(support: Support, mesh: Mesh) -> np.ndarray:
-    """Return the scalar nodes a support acts on."""
-    if support.point is not None:
-        return np.array([mesh.vertices[support.point]])
-    assert support.boundary is not None
-    return boundary_nodes(mesh, support.boundary)
-
-
-def boundary_nodes(mesh: Mesh, boundary: str) -> np.ndarray:
-    """Return the scalar nodes on a named boundary."""
-    return np.asarray(mesh.skfem.dofs.get_facet_dofs(mesh.facets[boundary]).all())
+def solve_cases(
+    problems: Sequence[Problem], mesh: Mesh, starts: Sequence[np.ndarray | None] | None = None
+) -> list[Solution]:
+    """Solve problems that differ in their loads and prescribed values only, with one factorization."""
+    first = problems[0]
+    matrix = stiffness(first, mesh)
+    springs = {s.name: foundation(first, mesh, s) for s in first.supports if isinstance(s, ElasticSupport)}
+    equations: Equations | None = None
+    solutions = []
+    for problem, start in zip(problems, starts or [None] * len(problems), strict=True):
+        held = held_by(problem, mesh)
+        equations = equations or Equations(mesh, sum(springs.values(), start=matrix), held)
+        load = load_vector(problem, mesh)
+        thermal, energy = thermal_load(problem, mesh) if is_heated(problem) else (None, 0.0)
+        u = equations.solve(load if thermal is None else load + thermal, held.values, start)
+        solutions.append(Solution(problem, mesh, matrix, load, u, held, springs, thermal, energy))
+    return solutions

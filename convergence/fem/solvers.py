@@ -16,41 +16,53 @@ RESIDUAL_LIMIT = 1e-8
 ROUND_OFF_LIMIT = 1e-5
 
 
-def residual_limit(matrix: Any, u: np.ndarray, right: np.ndarray) -> float:
-    """Return the largest residual that is accepted of K u = right.
+def residual_limit(matrix: Any, u: np.ndarray, scale: float) -> float:
+    """Return the largest residual that is accepted of K u = f, whose right-hand side has size `scale`.
 
     It is 1e-8 of the right-hand side. Slender parts of many cells cannot reach that: K times the rounding
     of u alone leaves more (Higham, Accuracy and Stability, sect. 7.1). That much is accepted up to 1e-5.
     """
-    scale = float(np.linalg.norm(right))
     round_off = 10.0 * np.finfo(float).eps * float(np.linalg.norm(matrix.diagonal() * u))
     return max(RESIDUAL_LIMIT * scale, min(round_off, ROUND_OFF_LIMIT * scale), float(np.finfo(float).tiny))
 
 
-def direct(matrix: sparse.csr_matrix, load: np.ndarray, held: np.ndarray, values: np.ndarray) -> np.ndarray:
-    """Return u with u[held] = values. SolvingError where the supports leave the part loose.
+class Factorization:
+    """The factorized equations of the free unknowns. SolvingError where the supports leave the part loose."""
 
-    A solution whose residual exceeds `residual_limit` is refused: it is never used.
-    """
-    free = np.ones(len(load), dtype=bool)
-    free[held] = False
-    u = np.zeros(len(load))
-    u[held] = values
-    rows = matrix[free]
-    right = load[free] - rows @ u
-    reduced = rows[:, free].tocsc()
-    try:
-        factor = splu(
-            reduced, permc_spec="MMD_AT_PLUS_A", diag_pivot_thresh=0.0, options={"SymmetricMode": True}
-        )
-    except RuntimeError as error:
-        raise SolvingError("the supports do not hold the part: the stiffness matrix is singular") from error
-    u[free] = factor.solve(right)
-    u[free] += factor.solve(right - reduced @ u[free])
-    residual = np.linalg.norm(reduced @ u[free] - right)
-    if not np.isfinite(u).all() or residual > residual_limit(reduced, u[free], right):
-        raise SolvingError(
-            f"the solution leaves a residual of {residual:.1e} (load {np.linalg.norm(right):.1e}); "
-            "the supports may not hold the part, or the cells are badly shaped"
-        )
-    return u
+    def __init__(self, matrix: sparse.csr_matrix, held: np.ndarray):
+        self.free = np.ones(matrix.shape[0], dtype=bool)
+        self.free[held] = False
+        self.held = held
+        self.rows = matrix[self.free]
+        self.reduced = self.rows[:, self.free].tocsc()
+        try:
+            self.factor = splu(
+                self.reduced,
+                permc_spec="MMD_AT_PLUS_A",
+                diag_pivot_thresh=0.0,
+                options={"SymmetricMode": True},
+            )
+        except RuntimeError as error:
+            message = "the supports do not hold the part: the stiffness matrix is singular"
+            raise SolvingError(message) from error
+
+    def solve(self, load: np.ndarray, values: np.ndarray) -> np.ndarray:
+        """Return u with u[held] = values.
+
+        A solution whose residual exceeds `residual_limit` is refused with SolvingError: it is never used.
+        """
+        u = np.zeros(len(load))
+        u[self.held] = values
+        right = load[self.free] - self.rows @ u
+        part = self.factor.solve(right)
+        part += self.factor.solve(right - self.reduced @ part)
+        residual = np.linalg.norm(self.reduced @ part - right)
+        if not np.isfinite(part).all() or residual > residual_limit(
+            self.reduced, part, float(np.linalg.norm(right))
+        ):
+            raise SolvingError(
+                f"the solution leaves a residual of {residual:.1e} (load {np.linalg.norm(right):.1e}); "
+                "the supports may not hold the part, or the cells are badly shaped"
+            )
+        u[self.free] = part
+        return u

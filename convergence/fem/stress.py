@@ -1,92 +1,113 @@
-"""Stress of a solution: xx, yy, zz, xy inside cells as the elements give it, and its invariants."""
+"""Stress of a solution inside cells as the elements give it, and its invariants.
 
-from typing import Any, Literal
+Stresses have the components of `strain`: xx, yy, zz, xy in a plane, yz and zx behind them in a solid.
+"""
+
+from typing import Literal
 
 import numpy as np
 
+from convergence.fem.geometry import Geometry, geometry, interpolate
 from convergence.fem.solution import Solution
+from convergence.fem.strain import HOOP, ON_AXIS, is_heated, strain_operator, thermal_strain, unknowns
 
-Component = Literal["xx", "yy", "zz", "xy", "von_mises", "first_principal", "third_principal"]
-COMPONENTS = ("xx", "yy", "zz", "xy")
+Component = Literal["xx", "yy", "zz", "xy", "yz", "zx", "von_mises", "first_principal", "third_principal"]
+COMPONENTS = ("xx", "yy", "zz", "xy", "yz", "zx")
 
 
 def component(stress: np.ndarray, name: Component) -> np.ndarray:
-    """Return a component, principal or von Mises stress of stresses (4, ...) xx, yy, zz, xy.
+    """Return a component, principal or von Mises stress of stresses (1, 4 or 6, ...).
 
-    The principal stresses are the largest and smallest of the three, the one out of plane included.
+    The principal stresses are the largest and smallest of the three, the one out of plane included. A
+    component that the stress does not have is zero.
     """
-    xx, yy, zz, xy = stress
     if name in COMPONENTS:
-        return np.asarray(stress[COMPONENTS.index(name)])
+        row = COMPONENTS.index(name)
+        return np.asarray(stress[row]) if row < len(stress) else np.zeros_like(stress[0])
+    if len(stress) == 1:
+        if name == "von_mises":
+            return np.asarray(np.abs(stress[0]))
+        return np.asarray(np.clip(stress[0], *((0.0, None) if name == "first_principal" else (None, 0.0))))
+    xx, yy, zz, *shear = stress
     if name == "von_mises":
         squares = (xx - yy) ** 2 + (yy - zz) ** 2 + (zz - xx) ** 2
-        return np.asarray(np.sqrt(0.5 * squares + 3.0 * xy**2))
-    middle, radius = 0.5 * (xx + yy), np.hypot(0.5 * (xx - yy), xy)
-    if name == "first_principal":
-        return np.asarray(np.maximum(middle + radius, zz))
-    return np.asarray(np.minimum(middle - radius, zz))
+        return np.asarray(np.sqrt(0.5 * squares + 3.0 * sum(part**2 for part in shear)))
+    last = name == "first_principal"
+    if len(stress) == 6:
+        return np.asarray(_principal(stress)[..., -1 if last else 0])
+    middle, radius = 0.5 * (xx + yy), np.hypot(0.5 * (xx - yy), shear[0])
+    return np.asarray(np.maximum(middle + radius, zz) if last else np.minimum(middle - radius, zz))
+
+
+def _principal(stress: np.ndarray) -> np.ndarray:
+    """Return the principal stresses (..., 3), rising."""
+    xx, yy, zz, xy, yz, zx = stress
+    tensor = np.array([[xx, xy, zx], [xy, yy, yz], [zx, yz, zz]])
+    return np.asarray(np.linalg.eigvalsh(np.moveaxis(tensor, (0, 1), (-2, -1))))
 
 
 def direct_stress(solution: Solution, local: np.ndarray, cells: np.ndarray | None = None) -> np.ndarray:
-    """Return the element stress (4, cells, points) at local places (2, points) or (2, cells, points)."""
-    mesh = solution.mesh
-    chosen = np.arange(mesh.cells) if cells is None else cells
-    gradient = displacement_gradient(solution, local, chosen)
-    hoop = _hoop_strain(solution, local, chosen, gradient[0, 0])
-    strain = np.array([gradient[0, 0], gradient[1, 1], hoop, gradient[0, 1] + gradient[1, 0]])
+    """Return the element stress (components, m, q) at local places (D, q) or (D, m, q) of cells."""
+    chosen = np.arange(solution.mesh.cells) if cells is None else cells
+    return stress_at(solution, geometry(solution.mesh, local, chosen), chosen)
+
+
+def stress_at(solution: Solution, at: Geometry, cells: np.ndarray) -> np.ndarray:
+    """Return the element stress (components, m, q) at points of cells."""
+    strain = strain_at(solution, at, cells)
     stress = np.zeros_like(strain)
-    for region, members in mesh.regions.items():
-        mine = np.isin(chosen, members)
-        elasticity = solution.problem.materials[region].elasticity(solution.problem.kind)
-        stress[:, mine] = np.einsum("st,teq->seq", elasticity, strain[:, mine])
+    problem, regions = solution.problem, solution.mesh.regions
+    for region, members in regions.items():
+        mine = np.arange(len(cells)) if len(regions) == 1 else np.flatnonzero(np.isin(cells, members))
+        elastic = strain[:, mine]
+        if is_heated(problem):
+            elastic = elastic - thermal_strain(problem, region, at.x[:, mine])
+        elasticity = problem.materials[region].elasticity(problem.kind)
+        stress[:, mine] = np.einsum("st,tmq->smq", elasticity, elastic)
     return stress
 
 
-def _hoop_strain(solution: Solution, local: np.ndarray, cells: np.ndarray, radial: np.ndarray) -> np.ndarray:
-    """Return u/x of an axisymmetric problem, du/dx on its axis; zero in a plane."""
-    if solution.problem.kind != "axisymmetric":
-        return np.zeros_like(radial)
-    mesh = solution.mesh
-    x = np.broadcast_to(np.asarray(mesh.skfem.mapping().F(local, tind=cells))[0], radial.shape)
-    u = displacement_at(solution, local, cells)[0]
-    away = x > 1e-9 * mesh.part.size
-    return np.where(away, u / np.where(away, x, 1.0), radial)
+def strain_at(solution: Solution, at: Geometry, cells: np.ndarray) -> np.ndarray:
+    """Return the strain (components, m, q) at points of cells."""
+    if solution.mesh.formulation == "mean dilatation":
+        operator = strain_operator(solution.problem, solution.mesh, at, cells)
+        u = solution.unknowns[unknowns(solution.mesh.cell_nodes[:, cells], solution.mesh.dimension)]
+        return np.asarray(np.einsum("snmq,nm->smq", operator, u, optimize=True))
+    g = gradient_at(solution, at, cells)
+    if len(g) == 1:
+        return np.asarray(g[0])
+    if len(g) == 3:
+        shear = [g[0, 1] + g[1, 0], g[1, 2] + g[2, 1], g[2, 0] + g[0, 2]]
+        return np.array([g[0, 0], g[1, 1], g[2, 2], *shear])
+    strain = np.array([g[0, 0], g[1, 1], np.zeros_like(g[0, 0]), g[0, 1] + g[1, 0]])
+    if solution.problem.kind == "axisymmetric":
+        x = at.x[0]
+        u = interpolate(solution.displacement[:, solution.mesh.cell_nodes[:, cells]], at.shapes)[0]
+        away = x > ON_AXIS * solution.mesh.part.size
+        strain[HOOP] = np.where(away, u / np.where(away, x, 1.0), strain[0])
+    return strain
+
+
+def gradient_at(solution: Solution, at: Geometry, cells: np.ndarray) -> np.ndarray:
+    """Return du_i/dx_j (D, D, m, q) at points of cells."""
+    u = solution.displacement[:, solution.mesh.cell_nodes[:, cells]]
+    return at.gradient(u)
 
 
 def displacement_at(solution: Solution, local: np.ndarray, cells: np.ndarray) -> np.ndarray:
-    """Return the displacement (2, cells, points) at local places (2, points) or (2, cells, points)."""
-    mapping, element = solution.mesh.skfem.mapping(), solution.mesh.skfem.elem()
-    total: Any = 0.0
-    for number, nodes in enumerate(solution.mesh.skfem.dofs.element_dofs[:, cells]):
-        shape = np.asarray(element.gbasis(mapping, local, number, tind=cells)[0])
-        total = total + solution.displacement[:, nodes][:, :, None] * shape
-    return np.asarray(total)
-
-
-def displacement_gradient(solution: Solution, local: np.ndarray, cells: np.ndarray) -> np.ndarray:
-    """Return du_i/dx_j (2, 2, cells, points)."""
-    mapping = solution.mesh.skfem.mapping()
-    element = solution.mesh.skfem.elem()
-    dofs = solution.mesh.skfem.dofs.element_dofs[:, cells]
-    total: Any = 0.0
-    for number in range(dofs.shape[0]):
-        shape_gradient = np.asarray(element.gbasis(mapping, local, number, tind=cells)[0].grad)
-        u = solution.displacement[:, dofs[number]]
-        total = total + u[:, None, :, None] * shape_gradient[None]
-    return np.asarray(total)
+    """Return the displacement (D, m, q) at local places (D, q) or (D, m, q) of cells."""
+    u = solution.displacement[:, solution.mesh.cell_nodes[:, cells]]
+    return interpolate(u, solution.mesh.element.shapes(local))
 
 
 def cell_node_stress(solution: Solution) -> np.ndarray:
-    """Return the element stress at the nodes of each cell (4, nodes of a cell, cells)."""
-    local = solution.mesh.skfem.elem.doflocs.T
-    return np.swapaxes(direct_stress(solution, local), 1, 2)
+    """Return the element stress at the nodes of each cell (components, nodes of a cell, cells)."""
+    return np.swapaxes(direct_stress(solution, solution.mesh.element.nodes.T), 1, 2)
 
 
 def nodal_average(solution: Solution, at_cell_nodes: np.ndarray) -> np.ndarray:
-    """Return the average (4, nodes) of stresses (4, nodes of a cell, cells) over the cells at a node."""
-    dofs = solution.mesh.skfem.dofs.element_dofs
-    count = np.bincount(dofs.ravel(), minlength=solution.mesh.nodes.shape[1])
-    sums = [
-        np.bincount(dofs.ravel(), weights=values.ravel(), minlength=len(count)) for values in at_cell_nodes
-    ]
+    """Return the average (components, nodes) of stresses (components, nodes of a cell, cells) at nodes."""
+    nodes = solution.mesh.cell_nodes.ravel()
+    count = np.bincount(nodes, minlength=solution.mesh.nodes.shape[1])
+    sums = [np.bincount(nodes, weights=values.ravel(), minlength=len(count)) for values in at_cell_nodes]
     return np.array(sums) / count

@@ -31,11 +31,11 @@ def test_fields(shape: str, degree: int) -> None:
     areas = 0.5 * (x * np.roll(y, -1, axis=0) - y * np.roll(x, -1, axis=0)).sum(axis=0)
     assert (areas > 0.0).all(), "counter-clockwise"
     # chords of arcs of 90 / 18 degrees at most cost a²/6 of the ring's area
-    assert areas.sum() == pytest.approx(level.area, rel=np.radians(5.0) ** 2 / 6.0)
+    assert areas.sum() == pytest.approx(level.measure, rel=np.radians(5.0) ** 2 / 6.0)
     assert fields.von_mises.shape == (level.nodes.shape[1],) and (fields.von_mises > 0.0).all()
     # the errors per area and thickness, spread over the pieces, make up the whole error again
     assert fields.error.shape == (pieces * level.cells,)
-    share = np.tile(level.cell_areas, pieces) * 2.0 / pieces
+    share = np.tile(level.cell_measures, pieces) * 2.0 / pieces
     total = energy_error(solution).sum()
     assert fields.error @ share == pytest.approx(total, rel=1e-9)
 

@@ -1,6 +1,8 @@
 """Meshes of whole parts: areas by hand, shared nodes, ladders of any ratio, regions, folded cells."""
 
+from collections.abc import Callable
 from itertools import product
+from typing import Any
 
 import numpy as np
 import pytest
@@ -8,9 +10,10 @@ import pytest
 from convergence import rooms
 from convergence.errors import SolvingError
 from convergence.fem.material import Material
-from convergence.fem.mesh import Mesh, mesh
+from convergence.fem.mesh import Mesh, Shape, mesh
 from convergence.fem.part import Part, finer
 from convergence.fem.problem import Problem
+from convergence.fem.solid_part import SolidPart
 
 STEEL = Material(210000.0, 0.3)
 EVERY_CELL = pytest.mark.parametrize(
@@ -48,39 +51,66 @@ def cut(part: Part, shape: str, degree: int, level: int = 0, ratio: float = 2.0,
 def test_area(model: str, shape: str, degree: int) -> None:
     """Straight parts exactly. Curved: an arc of angle a per cell loses a²/6 of its own share at most."""
     part = problem_of(model).part
-    error = abs(cut(part, shape, degree, level=1).area / AREAS[model] - 1.0)
+    error = abs(cut(part, shape, degree, level=1).measure / AREAS[model] - 1.0)
     arc = np.radians(22.5)  # no model has fewer than four cells on 90 degrees here
     worst = {1: arc**2 / 6.0, 2: arc**4 / 60.0}[degree]
     assert error <= (1e-12 if model in STRAIGHT else worst)
 
 
-@EVERY_CELL
-@pytest.mark.parametrize("model", rooms.names("models"))
-def test_blocks_share_their_nodes(model: str, shape: str, degree: int) -> None:
+def on_every_cell() -> list[tuple[str, Shape, int]]:
+    """Return every model with the cells of its dimension.
+
+    A rod has no blocks, scikit-fem no wedges of degree 2.
+    """
+    shapes: dict[int, tuple[Shape, ...]] = {
+        1: (),
+        2: ("triangle", "quadrilateral"),
+        3: ("tetrahedron", "hexahedron", "wedge"),
+    }
+    return [
+        (model, shape, degree)
+        for model in rooms.names("models")
+        for shape in shapes[problem_of(model).part.dimension]
+        for degree in (1, 2)
+        if (shape, degree) != ("wedge", 2)
+    ]
+
+
+@pytest.mark.parametrize(("model", "shape", "degree"), on_every_cell())
+def test_blocks_share_their_nodes(
+    model: str, shape: str, degree: int, as_skfem: Callable[[Mesh], Any]
+) -> None:
     """No two nodes at one place, every node used, and the free facets are the named boundaries' alone."""
     part = problem_of(model).part
     level = cut(part, shape, degree)
     tree = np.unique(np.round(level.nodes / (1e-7 * part.size)), axis=1)
     assert tree.shape[1] == level.nodes.shape[1]
-    assert len(np.unique(level.skfem.dofs.element_dofs)) == level.nodes.shape[1]
-    free = set(np.flatnonzero(level.skfem.f2t[1] < 0))
-    named = np.concatenate(list(level.facets.values()))
+    native = as_skfem(level)
+    assert sorted(native.numbers) == list(range(level.nodes.shape[1]))
+    assert len(np.unique(native.mesh.dofs.element_dofs)) == level.nodes.shape[1]
+    free = set(np.flatnonzero(native.mesh.f2t[1] < 0))
+    named = np.concatenate([facets for name in level.facets for facets in native.facets(name)])
     assert len(named) == len(set(named)), "no facet has two names"
     assert set(named) <= free
+    if isinstance(part, SolidPart):
+        assert set(named) == free
+        return
     edges = {frozenset(edge) for edge in part.outline}
     if edges == {frozenset(edge) for names in part.boundaries.values() for edge in names}:
         assert set(named) == free
 
 
 @EVERY_CELL
-def test_lengths_of_boundaries(shape: str, degree: int) -> None:
+def test_lengths_of_boundaries(shape: str, degree: int, as_skfem: Callable[[Mesh], Any]) -> None:
     """A boundary's facets are those of its edges: their lengths add up to the edge's, by hand."""
     from skfem import FacetBasis
 
     level = cut(problem_of("l_bracket").part, shape, degree, divisions=4)
+    native = as_skfem(level)
     lengths = {
-        name: float(FacetBasis(level.skfem, level.skfem.elem(), facets=facets, intorder=6).dx.sum())
-        for name, facets in level.facets.items()
+        name: float(FacetBasis(native.mesh, native.mesh.elem(), facets=facets, intorder=6).dx.sum())
+        for name in level.facets
+        for facets in native.facets(name)
     }
     straight = {"top": 80.0, "end": 80.0, "left": 200.0, "bottom": 200.0, "inner": 200.0}
     assert {name: lengths[name] for name in straight} == pytest.approx(straight, rel=1e-12)
@@ -122,20 +152,21 @@ def test_regions_share_the_cells_out(shape: str, degree: int) -> None:
     split = Part(whole.points, whole.blocks, whole.curves, whole.boundaries, parts, whole.weights)
     level = cut(split, shape, degree)
     assert sorted(np.concatenate(list(level.regions.values()))) == list(range(level.cells))
-    assert level.cell_areas[level.regions["one"]].sum() == pytest.approx(
+    assert level.cell_measures[level.regions["one"]].sum() == pytest.approx(
         AREAS["l_domain"] / len(whole.blocks)
     )
     plain = cut(whole, shape, degree)
     assert list(plain.regions) == ["body"] and len(plain.regions["body"]) == plain.cells
 
 
-def test_quadratic_meshes_bend_only_where_the_part_does() -> None:
+def test_quadratic_meshes_bend_only_where_the_part_does(as_skfem: Callable[[Mesh], Any]) -> None:
     """On a straight part every node between vertices is the middle of its facet or cell."""
     for shape in ("triangle", "quadrilateral"):
         level = cut(problem_of("skew_panel").part, shape, 2)
-        native = level.skfem
-        middles = native.p[:, native.facets].mean(axis=1)
-        assert level.nodes[:, native.dofs.facet_dofs[0]] == pytest.approx(middles, abs=1e-9)
+        native = as_skfem(level)
+        middles = native.mesh.p[:, native.mesh.facets].mean(axis=1)
+        between = native.numbers[native.mesh.dofs.facet_dofs[0]]
+        assert level.nodes[:, between] == pytest.approx(middles, abs=1e-9)
 
 
 @EVERY_CELL

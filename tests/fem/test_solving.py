@@ -6,10 +6,11 @@ import numpy as np
 import pytest
 
 from convergence.errors import SolvingError
+from convergence.fem.loads import BearingLoad, BodyForce, Load, Pressure, Traction
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.mesh import Mesh, Shape, mesh
 from convergence.fem.part import Part, arc
-from convergence.fem.problem import BearingLoad, BodyForce, Load, Pressure, Problem, Support, Traction
+from convergence.fem.problem import Problem, Support
 from convergence.fem.solution import Solution, solve
 from convergence.fem.stress import cell_node_stress
 
@@ -119,7 +120,7 @@ def test_the_first_support_keeps_a_shared_node() -> None:
     supports = (*CLAMPED, Support("bottom", y=0.5, boundary="bottom"))
     solution = solve(block(supports=supports), level("quadrilateral", 1))
     assert solution.displacement[1, solution.mesh.vertices["a"]] == 0.0
-    assert not set(solution.held["left"]) & set(solution.held["bottom"])
+    assert not set(solution.held.by_support["left"]) & set(solution.held.by_support["bottom"])
 
 
 def test_energy_rises_on_nested_meshes() -> None:

@@ -1,0 +1,58 @@
+"""A first guess for a level: the displacement of a coarser mesh of the same part, read at the finer nodes.
+
+It is read in the parameters of the part's blocks with the polynomials of the coarser cells, so levels
+need not be nested and the guess is as good as the coarser solution.
+"""
+
+import numpy as np
+
+from convergence.fem.grid import Grids
+from convergence.fem.mesh import Mesh
+from convergence.fem.part import Part
+from convergence.fem.solid_part import SolidPart
+
+
+def first_guess(coarse: Mesh, unknowns: np.ndarray, fine: Mesh) -> np.ndarray | None:
+    """Return the interleaved unknowns of a finer mesh; None for rods and parts with open layers."""
+    part = fine.part
+    values = unknowns.reshape(-1, fine.dimension)
+    if isinstance(part, Part):
+        return _plane(
+            values, Grids(part, coarse.counts, coarse.degree), Grids(part, fine.counts, fine.degree)
+        ).ravel()
+    if not isinstance(part, SolidPart) or part.filled:
+        return None
+    flat = [Grids(part.plan, level.counts, level.degree) for level in (coarse, fine)]
+    layers = values.reshape(-1, flat[0].size, fine.dimension)
+    starts = np.concatenate([[0], np.cumsum([coarse.degree * coarse.counts[f] for f in part.layer_families])])
+    found = [layers[:1]]
+    for start, end, family in zip(starts, starts[1:], part.layer_families, strict=False):
+        steps = fine.degree * fine.counts[family]
+        found.append(_along(steps, coarse.counts[family], coarse.degree, layers[start : end + 1])[1:])
+    through = np.moveaxis(np.concatenate(found), 0, 1)
+    return np.moveaxis(_plane(through, *flat), 1, 0).ravel()
+
+
+def _plane(values: np.ndarray, coarse: Grids, fine: Grids) -> np.ndarray:
+    """Return values (fine nodes, ...) from values (coarse nodes, ...) of a plane part's grids."""
+    result = np.empty((fine.size, *values.shape[1:]))
+    for ids, wanted in zip(coarse.blocks, fine.blocks, strict=True):
+        block = values[ids]
+        for axis in range(2):
+            cells = (ids.shape[axis] - 1) // coarse.degree
+            turned = _along(wanted.shape[axis] - 1, cells, coarse.degree, np.moveaxis(block, axis, 0))
+            block = np.moveaxis(turned, 0, axis)
+        result[wanted.ravel()] = block.reshape(-1, *values.shape[1:])
+    return result
+
+
+def _along(fine: int, coarse: int, degree: int, values: np.ndarray) -> np.ndarray:
+    """Return values (degree coarse + 1, ...) of nodes along an edge, read at fine + 1 equal steps."""
+    scaled = np.arange(fine + 1) * coarse
+    cell = np.minimum(scaled // fine, coarse - 1)
+    s = ((scaled - cell * fine) / fine).reshape(-1, *[1] * (values.ndim - 1))
+    shapes = [1.0 - s, s] if degree == 1 else [(1 - s) * (1 - 2 * s), 4 * s * (1 - s), s * (2 * s - 1)]
+    total = np.zeros((fine + 1, *values.shape[1:]))
+    for number, shape in enumerate(shapes):
+        total += shape * values[degree * cell + number]
+    return total
