@@ -26,12 +26,13 @@ def column(
 def formal_order(kind: Kind, degree: int | None) -> float | None:
     """Return the order of theory for a smooth solution, None where kind or degree is not known.
 
-    Energy and reactions 2p, displacements p + 1, stresses and what is integrated from them p (textbook
-    results); a program that recovers its stresses well can be better.
+    Energy and reactions 2p, displacements p + 1, stresses, what is integrated from them and rotations p
+    (textbook results), stress intensities 1 as the crack itself limits them; a program that recovers its
+    stresses well can be better.
     """
     if degree is None or kind == "unknown":
         return None
-    orders = {"energy": 2 * degree, "reaction": 2 * degree, "displacement": degree + 1}
+    orders = {"energy": 2 * degree, "reaction": 2 * degree, "displacement": degree + 1, "intensity": 1}
     return float(orders.get(kind, degree))
 
 

@@ -5,8 +5,9 @@ from typing import Literal
 import numpy as np
 
 from convergence.dimensions import Point
+from convergence.errors import require
 from convergence.fem.location import locate, locate_many
-from convergence.fem.part import Part
+from convergence.fem.problem import AnyPart
 from convergence.fem.recovery import recovered_at
 from convergence.fem.solution import Solution
 from convergence.fem.stress import direct_stress
@@ -14,36 +15,65 @@ from convergence.fem.stress import direct_stress
 Recovery = Literal["recovered", "direct"]
 
 
-def place_of(part: Part, at: Point | str) -> Point:
+def place_of(part: AnyPart, at: Point | str) -> Point:
     """Return the coordinates of a place."""
     if isinstance(at, str):
-        x, y = part.points[at]
-        return float(x), float(y)
+        return tuple(float(x) for x in part.points[at])  # type: ignore[return-value]
     return at
 
 
-def point_stress(solution: Solution, at: Point | str, recovery: Recovery) -> np.ndarray:
-    """Return the stress (4,) at a place; element stresses are averaged over the cells that meet there."""
-    cells, local = locate(solution.mesh, place_of(solution.mesh.part, at))
+def axis_of(component: str, dimension: int) -> int:
+    """Return the number of a direction; Unsuitable where the part does not have it."""
+    axes = "xyz"[:dimension]
+    require((component in axes, "component", component, f"one of {', '.join(axes)}"))
+    return axes.index(component)
+
+
+def unit(direction: tuple[float, ...], key: str, dimension: int) -> np.ndarray:
+    """Return a direction of length one; Unsuitable where it has none, or not the part's dimension."""
+    vector = np.array(direction)
+    size = float(np.linalg.norm(vector))
+    right = f"[{', '.join('xyz'[:dimension])}], not all 0"
+    require((len(vector) == dimension and size > 0.0, key, direction, right))
+    return np.asarray(vector / size)
+
+
+def stress_in(solution: Solution, cells: np.ndarray, local: np.ndarray, recovery: Recovery) -> np.ndarray:
+    """Return the stress (components, m, q) at local places (D, m, q) of cells."""
     if recovery == "direct":
-        return np.asarray(direct_stress(solution, local, cells)[:, :, 0].mean(axis=1))
-    return np.asarray(recovered_at(solution, cells, local)[:, :, 0].mean(axis=1))
+        return direct_stress(solution, local, cells)
+    return recovered_at(solution, cells, local)
+
+
+def point_stress(solution: Solution, at: Point | str, recovery: Recovery) -> np.ndarray:
+    """Return the stress (components,) at a place; element stress is averaged over the cells meeting there."""
+    cells, local = locate(solution.mesh, place_of(solution.mesh.part, at))
+    return np.asarray(stress_in(solution, cells, local, recovery)[:, :, 0].mean(axis=1))
 
 
 def line_stress(solution: Solution, places: np.ndarray, recovery: Recovery) -> np.ndarray:
-    """Return the stress (4, n) at the places (2, n)."""
+    """Return the stress (components, n) at the places (D, n)."""
     cells, local = locate_many(solution.mesh, places)
-    if recovery == "direct":
-        return direct_stress(solution, local, cells)[:, :, 0]
-    return recovered_at(solution, cells, local)[:, :, 0]
+    return stress_in(solution, cells, local, recovery)[:, :, 0]
+
+
+def tensor(stress: np.ndarray) -> np.ndarray:
+    """Return stresses (4 or 6, ...) as symmetric tensors (3, 3, ...)."""
+    xx, yy, zz, xy, yz, zx = [*stress, *(np.zeros_like(stress[0]) for _ in range(6 - len(stress)))]
+    return np.array([[xx, xy, zx], [xy, yy, yz], [zx, yz, zz]])
+
+
+def components(stress: np.ndarray) -> np.ndarray:
+    """Return tensors (3, 3, ...) as stresses (6, ...)."""
+    return np.array([stress[i, j] for i, j in ((0, 0), (1, 1), (2, 2), (0, 1), (1, 2), (2, 0))])
 
 
 def stress_order(degree: int, shape: str, recovery: Recovery) -> float:
     """Return p for element stress, p + 1 for recovered stress (Zienkiewicz & Zhu 1992).
 
-    Quadratic triangles have no sampling points of order p + 1, so their recovered stress is of order p
-    too, though many times more accurate (measured; vertices inside may do better).
+    Quadratic triangles, tetrahedra and wedges have no sampling points of order p + 1, so their recovered
+    stress is of order p too, though many times more accurate (measured; vertices inside may do better).
     """
-    if recovery == "direct" or (shape == "triangle" and degree == 2):
+    if recovery == "direct" or (shape in ("triangle", "tetrahedron", "wedge") and degree == 2):
         return float(degree)
     return float(degree + 1)

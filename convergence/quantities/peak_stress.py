@@ -20,13 +20,14 @@ from convergence.dimensions import (
     RegionName,
 )
 from convergence.errors import require
-from convergence.fem.part import Part
+from convergence.fem.held import boundary_nodes
+from convergence.fem.problem import AnyPart
 from convergence.fem.recovery import recovered_stress
-from convergence.fem.solution import Solution, boundary_nodes
+from convergence.fem.solution import Solution
 from convergence.fem.stress import Component, cell_node_stress
 from convergence.fem.stress import component as component_of
 from convergence.quantities._place import Recovery, place_of, stress_order
-from convergence.results import Kind
+from convergence.results import Corner, Kind
 
 KIND: Kind = "peak_stress"
 
@@ -36,20 +37,16 @@ def formal_order(degree: int, shape: str, arguments: Mapping[str, Any]) -> float
     return min(2.0, stress_order(degree, shape, arguments.get("recovery", "recovered")))
 
 
-def covers(part: Part, point: str, arguments: Mapping[str, Any]) -> bool:
-    """Return whether a point of the part can be the place of the peak."""
+def covers(part: AnyPart, corner: Corner, arguments: Mapping[str, Any]) -> bool:
+    """Return whether a corner of the part can be the place of the peak."""
     boundary, region = arguments.get("boundary"), arguments.get("region")
-    if boundary is not None and not any(point in edge for edge in part.boundaries[boundary]):
+    if boundary is not None and not part.boundary_points(boundary) & set(corner.points):
         return False
-    if (
-        region is not None
-        and region in part.regions
-        and not any(point in part.blocks[index] for index in part.regions[region])
-    ):
+    inside = region is None or region not in part.regions or part.region_points(region) & set(corner.points)
+    if not inside:
         return False
     if arguments.get("near") is not None:
-        distance = np.subtract(part.points[point], place_of(part, arguments["near"]))
-        return bool(np.hypot(*distance) <= arguments["radius"] * (1.0 + 1e-9))
+        return bool(corner.distance(place_of(part, arguments["near"])) <= arguments["radius"] * (1.0 + 1e-9))
     return True
 
 
@@ -68,15 +65,15 @@ def peak_stress(
         ((near is None) == (radius is None), "radius", radius, "`near` and `radius` together, or neither")
     )
     mesh = solution.mesh
-    dofs = mesh.skfem.dofs.element_dofs
+    dofs = mesh.cell_nodes
     allowed = np.ones(dofs.shape, dtype=bool)
     if region is not None:
         allowed &= np.isin(np.arange(mesh.cells), mesh.regions[region])[None, :]
     if boundary is not None:
         allowed &= np.isin(dofs, boundary_nodes(mesh, boundary))
     if near is not None and radius is not None:
-        x, y = place_of(mesh.part, near)
-        distance = np.hypot(mesh.nodes[0] - x, mesh.nodes[1] - y)
+        place = np.array(place_of(mesh.part, near))
+        distance = np.linalg.norm(mesh.nodes - place[:, None], axis=0)
         allowed &= (distance <= radius * (1.0 + 1e-9))[dofs]
     require(
         (bool(allowed.any()), "radius", radius, "a region, boundary and radius that hold at least one node")
@@ -85,5 +82,4 @@ def peak_stress(
     values = component_of(at_nodes, component)
     sign = -1.0 if component == "third_principal" else 1.0
     best = np.unravel_index(np.where(allowed, sign * values, -np.inf).argmax(), values.shape)
-    place = mesh.nodes[:, dofs[best]]
-    return Located(float(values[best]), float(place[0]), float(place[1]))
+    return Located(float(values[best]), *(float(x) for x in mesh.nodes[:, dofs[best]]))

@@ -10,6 +10,7 @@ from typing import Annotated, Any, Literal
 
 from convergence.dimensions import Force, SupportName
 from convergence.fem.solution import Solution
+from convergence.quantities._place import axis_of
 from convergence.results import Kind
 
 KIND: Kind = "reaction"
@@ -24,7 +25,7 @@ def reaction_force(
     solution: Solution,
     *,
     support: Annotated[SupportName, "support that gives the reaction"],
-    component: Annotated[Literal["x", "y"], "direction"] = "y",
+    component: Annotated[Literal["x", "y", "z"], "direction"] = "y",
 ) -> Force:
     """Force of the support on the part."""
-    return float(solution.reaction(support)["xy".index(component)])
+    return float(solution.reaction(support)[axis_of(component, solution.mesh.dimension)])

@@ -8,15 +8,13 @@ only p on the boundary of triangle meshes and between the vertices of quadratic 
 from collections.abc import Mapping
 from typing import Annotated, Any
 
-import numpy as np
-
 from convergence.dimensions import STRESS, Located, PartPoint, PointName
-from convergence.fem.part import Part
+from convergence.fem.problem import AnyPart
 from convergence.fem.solution import Solution
 from convergence.fem.stress import Component
 from convergence.fem.stress import component as component_of
 from convergence.quantities._place import Recovery, place_of, point_stress, stress_order
-from convergence.results import Kind
+from convergence.results import Corner, Kind
 
 KIND: Kind = "point_stress"
 
@@ -26,10 +24,9 @@ def formal_order(degree: int, shape: str, arguments: Mapping[str, Any]) -> float
     return stress_order(degree, shape, arguments.get("recovery", "recovered"))
 
 
-def covers(part: Part, point: str, arguments: Mapping[str, Any]) -> bool:
-    """Return whether the stress is read at this point of the part."""
-    distance = np.subtract(part.points[point], place_of(part, arguments["at"]))
-    return bool(np.hypot(*distance) <= 1e-9 * part.size)
+def covers(part: AnyPart, corner: Corner, arguments: Mapping[str, Any]) -> bool:
+    """Return whether the stress is read on this corner of the part."""
+    return corner.distance(place_of(part, arguments["at"])) <= 1e-9 * part.size
 
 
 def stress(

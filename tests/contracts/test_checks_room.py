@@ -16,7 +16,7 @@ from convergence.fem.material import Material
 from convergence.fem.mesh import mesh
 from convergence.fem.part import finer
 from convergence.fem.solution import Solution, solve
-from convergence.results import Check, Facts, Ladder, Level, VerdictWord
+from convergence.results import Check, Facts, Ladder, Level, VerdictWord, Yield
 
 
 def name_of(module: ModuleType) -> str:
@@ -74,7 +74,10 @@ def check_record(module: ModuleType) -> None:
 def check_result(module: ModuleType) -> None:
     """A Check under the member's own name, whose finding is one line of whole sentences."""
     member, ladder = getattr(module, name_of(module)), recorded_ladder(module)
-    for facts in (Facts(), Facts(degree=1, corners=(), yield_strength=200.0, kinds={"f": "peak_stress"})):
+    for facts in (
+        Facts(),
+        Facts(degree=1, corners=(), yields={"": Yield(200.0)}, kinds={"f": "peak_stress"}),
+    ):
         for given in (ladder, replace(ladder, levels=ladder.levels[:1]), TABLE, EMPTY):
             check = member(given, facts)
             assert isinstance(check, Check) and check.name == name_of(module)

@@ -101,6 +101,16 @@ def test_the_room_is_complete() -> None:
         "peak_stress",
         "section_force",
         "mean_stress",
+        "section_moment",
+        "cut_force",
+        "cut_moment",
+        "linearised_stress",
+        "hot_spot_stress",
+        "stress_intensity",
+        "rotation",
+        "region_stress",
+        "work_of_load",
+        "potential_energy",
     } <= set(MEMBERS)
 
 

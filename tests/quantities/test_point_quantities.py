@@ -1,13 +1,17 @@
 """Displacement and stress at a point: values and orders on exact fields, and the awkward places."""
 
 from collections.abc import Callable
+from typing import Any
 
 import numpy as np
 import pytest
 
 from convergence.errors import Unsuitable
+from convergence.fem.part import Part
+from convergence.quantities import stress as module
 from convergence.quantities.displacement import displacement
-from convergence.quantities.stress import covers, stress
+from convergence.quantities.stress import stress
+from convergence.results import Corner
 
 pytestmark = pytest.mark.slow
 
@@ -141,9 +145,11 @@ def test_the_patch_is_exact_everywhere(element: tuple[str, int], ladder_of: Call
                 assert (found.x, found.y) == place
 
 
-def test_direct_stress_on_an_edge_is_the_mean_of_its_two_cells(ladder_of: Callable) -> None:
+def test_direct_stress_on_an_edge_is_the_mean_of_its_two_cells(
+    ladder_of: Callable, as_skfem: Callable
+) -> None:
     (solution, *_) = ladder_of("thick_cylinder", "quadrilateral", 1, 2, 4)
-    mesh = solution.mesh.skfem
+    mesh = as_skfem(solution.mesh).mesh
     facet = int(np.flatnonzero(mesh.f2t[1] >= 0)[0])
     ends = mesh.p[:, mesh.facets[:, facet]]
     middle, along = ends.mean(axis=1), ends[:, 1] - ends[:, 0]
@@ -181,6 +187,11 @@ def test_a_place_outside_the_part_is_refused_on_every_mesh(
 
 def test_covers_says_whether_the_stress_is_read_at_a_point(ladder_of: Callable) -> None:
     part = ladder_of("thick_cylinder", "triangle", 1, 2, 4)[0].problem.part
+
+    def covers(part: Part, point: str, arguments: dict[str, Any]) -> bool:
+        corner = Corner(point, (part.points[point],), (point,), 90.0, ("clamped", "free"), 0.7583)
+        return bool(module.covers(part, corner, arguments))
+
     assert covers(part, "bore_x", {"at": "bore_x"}) and covers(part, "bore_x", {"at": (30.0, 0.0)})
     assert not covers(part, "bore_y", {"at": "bore_x"})
     assert not covers(part, "bore_x", {"at": (30.1, 0.0)})
