@@ -15,12 +15,15 @@ STUDIES = Path(__file__).parents[1] / "studies"
 EXPECTED = {
     "accumulator": {},
     "arm": {"root_peak": "singular"},
+    "arm_head": {},
     "base_plate": {},
     "bracket_filleted": {},
     "bracket_sharp": {"corner_stress": "singular"},
     "brake_disc": {},
+    "cracked_web": {"tip_stress": "singular"},
     "cutout": {"corner_stress": "singular"},
     "cylinder": {"wall_force": "refine"},
+    "cylinder_liner": {},
     "hinge_pin": {},
     "lug": {"base_corner": "singular"},
     "patch": {},
@@ -28,6 +31,9 @@ EXPECTED = {
     "roller_plate": {"weld_toe": "singular"},
     "side_panel": {},
     "test_beam": {},
+    "tie_bar": {},
+    "tie_rod": {},
+    "transition_joint": {"corner_stress": "singular"},
 }
 
 
@@ -56,7 +62,7 @@ def test_study(name: str, tmp_path: Path) -> None:
         assert verdict.low <= exact <= verdict.high
 
 
-# Lamé; Kirsch; Timoshenko & Goodier arts. 21 and 32; equilibrium of the loads
+# Lamé; Kirsch; Timoshenko & Goodier arts. 21, 29, 32 and 33 (Golovin); equilibrium of the loads
 EXACT = {
     "arm": {"mast_reaction": 6.0 * 120.0 * 12.0},
     "base_plate": {"hole_stress": 180.0, "hole_stress_direct": 180.0},
@@ -65,5 +71,14 @@ EXACT = {
     "cylinder": {"bore_hoop_stress": 54.6, "wall_force": 21.0 * 30.0},
     "lug": {"net_section_force": 25000.0 * 0.9396926207859084},
     "patch": {"inner_stress": 300.0},
+    "tie_bar": {"neck_force": 18000.0},
+    "tie_rod": {"pull_on_head": -(40000.0 + 7.7e-5 * 600.0 * 2400.0), "stress_at_eye": 40000.0 / 300.0},
+    "arm_head": {
+        "inner_stress": 51.979100717,
+        "outer_stress": -31.187460430,
+        "energy": 619.654405403,
+        "opening": 0.12393088,
+    },
+    "cylinder_liner": {"liner_hoop": 29.510926408, "barrel_hoop": 47.439474},
     "test_beam": {"root_stress": -6000.0 * 480.0 * 60.0 / (10.0 * 120.0**3 / 12.0)},
 }

@@ -5,6 +5,7 @@ import numpy as np
 from convergence.results import Corner, Facts, Ladder
 
 NEAR = 2.0
+STRESS_KINDS = ("peak_stress", "point_stress", "unknown")
 
 
 def growing_corner(ladder: Ladder, facts: Facts, name: str) -> Corner | None:
@@ -17,9 +18,10 @@ def growing_corner(ladder: Ladder, facts: Facts, name: str) -> Corner | None:
         return None
     if facts.kinds.get(name) == "point_stress":
         return next(iter(facts.covered.get(name, ())), None)
-    x, y = ladder.column(f"{name}.x"), ladder.column(f"{name}.y")
-    if not facts.corners or not len(x) or not (np.isfinite(x[-1]) and np.isfinite(y[-1])):
+    columns = [ladder.column(f"{name}.{axis}") for axis in "xyz"]
+    place = tuple(float(column[-1]) for column in columns if len(column) and np.isfinite(column[-1]))
+    if not facts.corners or not place:
         return None
-    distance = {corner: float(np.hypot(corner.x - x[-1], corner.y - y[-1])) for corner in facts.corners}
+    distance = {corner: corner.distance(place) for corner in facts.corners}
     near = [corner for corner in distance if distance[corner] <= NEAR * float(ladder.h[-1])]
     return min(near, key=lambda corner: distance[corner], default=None)

@@ -1,5 +1,7 @@
 """Reading a check's records from a ladder."""
 
+import math
+
 import numpy as np
 
 from convergence.results import Check, Ladder
@@ -32,6 +34,12 @@ def largest_share(
     finding = f"{says.format(worst=f'{worst:.1e}')} (allowed {limit:.0e})."
     passed = worst <= limit
     return Check(check, passed, finding, {} if passed else {"": failure}, values=per_level(columns))
+
+
+def place_words(ladder: Ladder, name: str) -> str:
+    """Return the place NAME.x, NAME.y and, in a solid, NAME.z on the finest level as "(x, y)"."""
+    places = [float(ladder.column(f"{name}.{axis}")[-1]) for axis in "xyz"]
+    return f"({', '.join(f'{x:.4g}' for x in places if not math.isnan(x))})"
 
 
 def per_level(columns: dict[str, np.ndarray]) -> dict[str, tuple[float, ...]]:

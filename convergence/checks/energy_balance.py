@@ -15,8 +15,8 @@ LIMIT = 1e-8
 
 def record(solution: Solution) -> dict[str, float]:
     """Return the difference as a share of the energy."""
-    difference = abs(solution.energy - solution.work)
-    return {"difference": difference / max(abs(solution.energy), float(np.finfo(float).tiny))}
+    energy = solution.quadratic_energy
+    return {"difference": abs(energy - solution.work) / max(abs(energy), float(np.finfo(float).tiny))}
 
 
 def energy_balance(ladder: Ladder, facts: Facts) -> Check:

@@ -23,21 +23,20 @@ AGREE = 2.0
 def record(solution: Solution) -> dict[str, float]:
     """Return η, relative and absolute, the exact one where known, the energy, whether the identity holds."""
     squared = float(energy_error(solution).sum())
-    total = 2.0 * solution.energy + squared
-    loaded, moved = bool(np.any(solution.load)), bool(np.any(solution.unknowns[_held(solution)]))
+    total = 2.0 * solution.quadratic_energy + squared
+    loaded, moved = (
+        bool(np.any(solution.load)) or solution.thermal is not None,
+        bool(np.any(solution.held.values)),
+    )
     numbers = {
         "estimated": float(np.sqrt(squared / total)) if total > 0.0 else 0.0,
         "absolute": float(np.sqrt(squared)),
-        "energy": solution.energy,
+        "energy": solution.quadratic_energy,
         "identity": float(not (loaded and moved)),
     }
     if solution.problem.exact is not None:
         numbers["exact"] = float(np.sqrt(exact_energy_error(solution).sum() / total)) if total > 0.0 else 0.0
     return numbers
-
-
-def _held(solution: Solution) -> np.ndarray:
-    return np.concatenate(list(solution.held.values()))
 
 
 def energy_norm(ladder: Ladder, facts: Facts) -> Check:

@@ -17,28 +17,33 @@ LIMIT = 1e-6
 def record(solution: Solution) -> dict[str, float]:
     """Return out-of-balance force and moment, as shares of the load and of load × half the part's size."""
     nodes = solution.mesh.nodes
-    middle = nodes.mean(axis=1)
-    about = (float(middle[0]), float(middle[1]))
+    dimension = solution.mesh.dimension
+    about = tuple(nodes.mean(axis=1).tolist())
     applied = solution.resultant(solution.load, about)
     reactions = solution.resultant(solution.reactions, about)
     forces = solution.load if np.any(solution.load) else solution.reactions
-    scale = max(float(np.hypot(*forces.reshape(-1, 2).T).sum()), float(np.finfo(float).tiny))
+    if solution.thermal is not None:
+        forces = np.concatenate([forces, solution.thermal])
+    size = np.linalg.norm(forces.reshape(-1, dimension), axis=1).sum()
+    scale = max(float(size), float(np.finfo(float).tiny))
     missing = applied + reactions
+    sums = {"load": applied, "reaction": reactions}
     return {
-        "force": float(np.hypot(missing[0], missing[1])) / scale,
-        "moment": abs(float(missing[2])) / (scale * 0.5 * solution.mesh.part.size),
-        "load_x": float(applied[0]),
-        "load_y": float(applied[1]),
-        "reaction_x": float(reactions[0]),
-        "reaction_y": float(reactions[1]),
+        "force": float(np.linalg.norm(missing[:dimension])) / scale,
+        "moment": float(np.linalg.norm(missing[dimension:])) / (scale * 0.5 * solution.mesh.part.size),
+        **{
+            f"{what}_{axis}": float(total[number])
+            for what, total in sums.items()
+            for number, axis in enumerate("xyz"[:dimension])
+        },
     }
 
 
 def equilibrium(ladder: Ladder, facts: Facts) -> Check:
     """Pass where force and moment balance on every level."""
-    columns = recorded(
-        ladder, "equilibrium", "force", "moment", "load_x", "load_y", "reaction_x", "reaction_y"
-    )
+    sums = (f"{what}_{axis}" for what in ("load", "reaction") for axis in "xyz")
+    known = [name for name in sums if np.isfinite(ladder.column(f"equilibrium.{name}")).any()]
+    columns = recorded(ladder, "equilibrium", "force", "moment", *known)
     if columns is None:
         return not_applicable("equilibrium", "The ladder has no loads and reactions.")
     worst = float(np.nanmax([columns["force"], columns["moment"]]))

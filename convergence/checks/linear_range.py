@@ -1,44 +1,60 @@
 """Whether a linear analysis may speak: peak stress below yield, displacement and rotation small.
 
-The upper end of the peak's interval counts, not its value. Small-displacement theory: largest displacement
-up to 1 % of the part's size and largest rotation up to 0.1 rad, where cos differs from one by 0.5 %
-(common practice).
+The upper end of the peak's interval counts, not its value, and in each region its own yield strength.
+Small-displacement theory: largest displacement up to 1 % of the part's size and largest rotation up to
+0.1 rad, where cos differs from one by 0.5 % (common practice).
 """
 
 import numpy as np
 
 from convergence.checks._ladder import not_applicable, per_level, recorded
-from convergence.fem.recovery import nodal_values, recovered_stress
+from convergence.fem.geometry import geometry
+from convergence.fem.recovery import recovered_stress
 from convergence.fem.solution import Solution
-from convergence.fem.stress import component, displacement_gradient
-from convergence.results import Check, Facts, Ladder
+from convergence.fem.stress import component, gradient_at
+from convergence.results import Check, Facts, Ladder, Yield
 
 DISPLACEMENT_LIMIT, ROTATION_LIMIT = 0.01, 0.1
-PEAK = "linear_range.peak_von_mises"
+BEFORE, AFTER = "linear_range.", ".peak_von_mises"
 
 
 def record(solution: Solution) -> dict[str, float]:
-    """Return the peak von Mises stress, the largest displacement over the size, and the largest rotation."""
-    stress = component(nodal_values(solution, recovered_stress(solution)), "von_mises")
-    hot = int(stress.argmax())
-    middle = solution.mesh.skfem.elem.doflocs[: solution.mesh.skfem.t.shape[0]].mean(axis=0)[:, None]
-    gradient = displacement_gradient(solution, middle, np.arange(solution.mesh.cells))
-    rotation = 0.5 * np.abs(gradient[1, 0] - gradient[0, 1])
-    x, y = solution.mesh.nodes[:, hot]
-    return {
-        "peak_von_mises": float(stress[hot]),
-        "peak_von_mises.x": float(x),
-        "peak_von_mises.y": float(y),
-        "displacement": float(np.hypot(*solution.displacement).max()) / solution.mesh.part.size,
+    """Return the peak von Mises stress of each region, the largest displacement over the size, rotation."""
+    mesh = solution.mesh
+    stress = component(recovered_stress(solution), "von_mises")
+    numbers: dict[str, float] = {}
+    for region, cells in mesh.regions.items():
+        own = stress[:, cells]
+        node, cell = np.unravel_index(own.argmax(), own.shape)
+        place = mesh.nodes[:, mesh.cell_nodes[node, cells[cell]]].tolist()
+        name = f"{region}{AFTER}"
+        numbers[name] = float(own[node, cell])
+        numbers |= {f"{name}.{axis}": x for axis, x in zip("xyz", place, strict=False)}
+    kind = mesh.element
+    middle = kind.nodes[: kind.corners].mean(axis=0)[:, None]
+    gradient = gradient_at(solution, geometry(mesh, middle), np.arange(mesh.cells))
+    rotation = 0.5 * np.abs(gradient - gradient.swapaxes(0, 1))
+    return numbers | {
+        "displacement": float(np.linalg.norm(solution.displacement, axis=0).max()) / mesh.part.size,
         "rotation": float(rotation.max()),
+    }
+
+
+def own_peaks(ladder: Ladder) -> dict[str, str]:
+    """Return column -> region of the peaks that `record` has left in a ladder."""
+    columns = ladder.levels[-1].values if ladder.levels else ()
+    return {
+        name: name.removeprefix(BEFORE).removesuffix(AFTER)
+        for name in columns
+        if name.startswith(BEFORE) and name.endswith(AFTER)
     }
 
 
 def linear_range(ladder: Ladder, facts: Facts) -> Check:
     """Pass where stress, displacement and rotation stay in the range of linear theory."""
-    columns = recorded(ladder, "linear_range", "peak_von_mises", "displacement", "rotation")
+    columns = recorded(ladder, "linear_range", "displacement", "rotation")
     stress_peaks = _peaks(ladder, facts)
-    if columns is None and (facts.yield_strength is None or not stress_peaks):
+    if columns is None and not stress_peaks:
         return not_applicable(
             "linear_range", "Neither a yield strength with a peak stress nor displacements are known."
         )
@@ -53,54 +69,68 @@ def linear_range(ladder: Ladder, facts: Facts) -> Check:
             f"largest rotation {columns['rotation'][-1]:.2g} rad (limit 0.1 rad): "
             + ("small-displacement theory holds." if small else "small-displacement theory does not hold.")
         )
-    below, about_yield = _against_yield(stress_peaks, facts)
-    sentences.append(about_yield)
+    shown: list[bool | None] = [passed]
+    for limit, peaks in stress_peaks.items():
+        below, about_yield = _against_yield(limit, peaks)
+        shown.append(below)
+        sentences.append(about_yield)
+    sentences += _unlimited(facts)
     return Check(
         "linear_range",
-        below if passed else False,
+        False if False in shown else None if None in shown else True,
         " ".join(sentences),
         values=per_level(columns) if columns else {},
     )
 
 
-def _peaks(ladder: Ladder, facts: Facts) -> dict[str, tuple[float, float]]:
-    """Return value and upper end of the interval of every von Mises peak, the part's own included.
+def _peaks(ladder: Ladder, facts: Facts) -> dict[Yield, dict[str, tuple[float, float]]]:
+    """Return value and upper end of the interval of every von Mises peak, by the yield strength it must keep.
 
-    A peak that a singular corner can reach has no upper end.
+    A peak that a singular corner can reach has no upper end. A quantity's peak that is not confined to a
+    region counts where the part has one yield strength: the peaks of the regions cover it where not.
     """
-    names = [
-        n
-        for n, kind in facts.kinds.items()
-        if kind == "peak_stress" and facts.components.get(n, "") in ("", "von_mises")
-    ]
-    reached = {name for name in names if facts.covered.get(name)} | ({PEAK} if facts.corners else set())
-    peaks = {}
-    for name in (*names, PEAK) if ladder.levels else ():
+    own = own_peaks(ladder)
+    asked = {
+        name: facts.regions.get(name, "")
+        for name, kind in facts.kinds.items()
+        if kind == "peak_stress" and facts.components.get(name, "") in ("", "von_mises")
+    }
+    reached = {name for name in asked if facts.covered.get(name)} | (set(own) if facts.corners else set())
+    everywhere = set(facts.yields.values())
+    peaks: dict[Yield, dict[str, tuple[float, float]]] = {}
+    for name, region in (asked | own).items() if ladder.levels else ():
+        limit = facts.yields.get(region, next(iter(everywhere)) if len(everywhere) == 1 else None)
         value = float(ladder.column(name)[-1])
         upper = np.nan if name in reached else facts.intervals.get(name, (np.nan, np.nan))[1]
-        if np.isfinite(value):
-            peaks[name] = (value, upper)
+        if limit is not None and np.isfinite(value):
+            whose = region if len(facts.yields) > 1 else "the part"
+            label = f"{whose}'s peak von Mises stress" if name in own else name
+            peaks.setdefault(limit, {})[label] = (value, upper)
     return peaks
 
 
-def _against_yield(peaks: dict[str, tuple[float, float]], facts: Facts) -> tuple[bool | None, str]:
+def _against_yield(limit: Yield, peaks: dict[str, tuple[float, float]]) -> tuple[bool | None, str]:
     """Return whether all peaks stay below yield (None: not shown for some), and a sentence on it."""
-    limit = facts.yield_strength
-    if limit is None:
-        return True, "No yield strength is given, so stresses were not compared with it."
     words = []
-    for name, (value, upper) in peaks.items():
-        label = "the part's peak von Mises stress" if name == PEAK else name
+    for label, (value, upper) in peaks.items():
         if np.isfinite(upper):
             words.append(f"{label} reaches {upper:.5g} at the upper end of its interval")
         else:
             words.append(f"{label} is {value:.5g} on the finest level but has no upper end")
-    source = f" ({facts.yield_source})" if facts.yield_source else ""
-    about = f"Against the yield strength {limit:.5g}{source}: {'; '.join(words)}"
-    if any(max(value, upper) >= limit for value, upper in peaks.values() if np.isfinite(upper)):
+    source = f" ({limit.source})" if limit.source else ""
+    about = f"Against the yield strength {limit.strength:.5g}{source}: {'; '.join(words)}"
+    if any(max(value, upper) >= limit.strength for value, upper in peaks.values() if np.isfinite(upper)):
         return False, f"{about}: not below yield."
-    if any(value >= limit for value, _ in peaks.values()):
+    if any(value >= limit.strength for value, _ in peaks.values()):
         return False, f"{about}: above yield on the finest level, if only next to a corner."
     if any(not np.isfinite(upper) for _, upper in peaks.values()):
         return None, f"{about}: below yield on the finest level, not shown beyond it."
     return True, f"{about}: below yield."
+
+
+def _unlimited(facts: Facts) -> list[str]:
+    """Return a sentence on the regions without a yield strength."""
+    if not any(facts.yields.values()):
+        return ["No yield strength is given, so stresses were not compared with it."]
+    without = [region for region, limit in facts.yields.items() if limit is None]
+    return [f"No yield strength is given for {', '.join(without)}."] if without else []

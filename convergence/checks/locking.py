@@ -1,36 +1,51 @@
-"""Volumetric locking: cells of degree 1 are far too stiff where Poisson's ratio nears 0.5.
+"""Locking: cells of degree 1 that are too stiff, near Poisson's ratio 0.5 or in bending.
 
 Linear cells cannot keep their volume and bend (Hughes 1987, The Finite Element Method, sect. 4.4); they
-still converge, but only once cells are much smaller. In plane stress nothing locks. Limit: 0.49, where the
-displacement of a thick cylinder on its first mesh comes out at half (own computation).
+still converge, but only once cells are much smaller. In plane stress no volume locks, nor with mean
+dilatation. Limit: 0.49, where the displacement of a thick cylinder on its first mesh comes out at half (own
+computation). A stress that varies much inside the cells is bending they cannot follow: with n cells through a
+depth in pure bending the share 1/n² of the energy varies inside them. Limit: 1/16, four cells.
 """
 
+import numpy as np
+
 from convergence.checks._ladder import not_applicable, per_level, recorded
+from convergence.fem.recovery import variation_energy
 from convergence.fem.solution import Solution
 from convergence.results import Check, Facts, Ladder
 
 LIMIT = 0.49
+BENDING = 1.0 / 16.0
+LOCKS = ("plane strain", "axisymmetric", "solid")
 
 
 def record(solution: Solution) -> dict[str, float]:
-    """Return the degree, and the largest Poisson's ratio where it can lock, 0 in plane stress."""
-    problem = solution.problem
-    ratio = max(material.poisson for material in problem.materials.values())
-    locks = problem.kind != "plane stress"
-    return {"poisson": ratio if locks else 0.0, "degree": float(solution.mesh.degree)}
+    """Return degree, largest Poisson's ratio where it can lock, and share of energy that varies in cells."""
+    problem, mesh = solution.problem, solution.mesh
+    ratio = max((m.poisson for m in problem.materials.values() if m.isotropic), default=0.0)
+    locks = problem.kind in LOCKS and mesh.formulation == "displacement"
+    share = 0.0
+    if mesh.degree == 1 and mesh.dimension > 1:
+        share = float(variation_energy(solution).sum()) / max(2.0 * solution.energy, np.finfo(float).tiny)
+    return {"poisson": ratio if locks else 0.0, "degree": float(mesh.degree), "bending": share}
 
 
 def locking(ladder: Ladder, facts: Facts) -> Check:
-    """Pass where degree and Poisson's ratio do not meet."""
-    columns = recorded(ladder, "locking", "poisson", "degree")
+    """Pass where degree 1 meets neither Poisson's ratio near 0.5 nor bending inside the cells."""
+    columns = recorded(ladder, "locking", "poisson", "degree", "bending")
     if columns is None:
         return not_applicable("locking", "Degree and material of the ladder are not known.")
-    ratio, degree = float(columns["poisson"][-1]), int(columns["degree"][-1])
-    passed = degree > 1 or ratio < LIMIT
-    finding = (
-        "Cells and material do not lock."
-        if passed
-        else f"Cells of degree 1 lock at Poisson's ratio {ratio:.5g}: values are too stiff until the cells "
-        "are very small; use degree 2."
-    )
-    return Check("locking", passed, finding, values=per_level(columns))
+    ratio, degree, share = (float(columns[name][-1]) for name in ("poisson", "degree", "bending"))
+    wrong = []
+    if degree == 1 and ratio >= LIMIT:
+        wrong.append(
+            f"Cells of degree 1 lock at Poisson's ratio {ratio:.5g}: values are too stiff until the cells "
+            "are very small; use degree 2, or quadrilaterals or hexahedra with mean dilatation."
+        )
+    if degree == 1 and share > BENDING:
+        wrong.append(
+            f"On the finest level {100 * share:.2g} % of the energy is stress that varies inside the cells "
+            f"(limit {100 * BENDING:.2g} %): cells of degree 1 are too stiff in bending; use degree 2."
+        )
+    finding = " ".join(wrong) or "Cells and material do not lock."
+    return Check("locking", not wrong, finding, values=per_level(columns))

@@ -5,7 +5,7 @@ limit, even where another place leads on the levels so far: the corner overtakes
 A value that stands and grows on the corner itself is left to the check of singular peaks.
 """
 
-from convergence.checks._corner import growing_corner
+from convergence.checks._corner import STRESS_KINDS, growing_corner
 from convergence.checks._ladder import not_applicable
 from convergence.fem.solution import Solution
 from convergence.results import Check, Facts, Ladder
@@ -22,12 +22,12 @@ def peak_region(ladder: Ladder, facts: Facts) -> Check:
         return not_applicable("peak_region", "The model is not known, so its corners are not.")
     spoils = {}
     for name, corners in facts.covered.items():
-        if corners and growing_corner(ladder, facts, name) is None:
+        if corners and facts.kinds.get(name) in STRESS_KINDS and growing_corner(ladder, facts, name) is None:
             weakest = min(corners, key=lambda corner: corner.exponent)
             spoils[name] = (
-                f"its region holds the singular corner {weakest.name} at ({weakest.x:.4g}, "
-                f"{weakest.y:.4g}), theory λ = {weakest.exponent:.3f}, whose stress passes every value "
-                "on finer meshes; leave the corner out by `boundary`, or by `near` and `radius`"
+                f"its region holds the singular corner {weakest.name} {weakest.where}, theory "
+                f"λ = {weakest.exponent:.3f}, whose stress passes every value on finer meshes; leave the "
+                "corner out by `boundary`, or by `near` and `radius`"
             )
     if not spoils:
         return Check("peak_region", True, "No stress is asked for where the model has a singular corner.")

@@ -7,15 +7,17 @@ growth than λ = 0.2 is no singularity but a notch that the coarse levels did no
 
 import numpy as np
 
-from convergence.checks._corner import growing_corner
+from convergence.checks._corner import STRESS_KINDS, growing_corner
 from convergence.checks._ladder import not_applicable
 from convergence.fem.corners import singular_corners
+from convergence.fem.mesh import Mesh
 from convergence.fem.recovery import cell_volumes, element_energy
+from convergence.fem.solid_mesh import edge_nodes
+from convergence.fem.solid_part import SolidPart
 from convergence.fem.solution import Solution
 from convergence.results import Check, Corner, Facts, Ladder
 from convergence.sequences import noise_floor, observed_order
 
-STRESS_KINDS = ("peak_stress", "point_stress", "unknown")
 FASTEST, SLOWEST = -0.8, 0.05
 
 
@@ -26,10 +28,18 @@ def record(solution: Solution) -> dict[str, float]:
     """
     numbers, mesh = {}, solution.mesh
     for corner in singular_corners(solution.problem):
-        cells = np.flatnonzero((mesh.skfem.t == mesh.vertices[corner.name]).any(axis=0))
+        nodes = _nodes(mesh, corner)
+        cells = np.flatnonzero(np.isin(mesh.cell_nodes, nodes).any(axis=0))
         energy, volume = element_energy(solution, cells).sum(), cell_volumes(solution, cells).sum()
         numbers[corner.name] = float(np.sqrt(energy / volume))
     return numbers
+
+
+def _nodes(mesh: Mesh, corner: Corner) -> np.ndarray:
+    """Return the nodes at a corner or along an edge."""
+    if isinstance(mesh.part, SolidPart) and len(corner.points) > 1:
+        return edge_nodes(mesh.part, mesh.counts, mesh.degree, corner.points)
+    return np.array([mesh.vertices[name] for name in corner.points])
 
 
 def singular_peak(ladder: Ladder, facts: Facts) -> Check:
@@ -91,7 +101,7 @@ def _at_corner(corner: Corner, exponent: float) -> str:
     )
     return (
         f"the value sits on the {corner.sides[0]}-{corner.sides[1]} corner {corner.name} of "
-        f"{corner.opening:.4g}° at ({corner.x:.4g}, {corner.y:.4g}), where stress grows like h^(λ-1) without "
+        f"{corner.opening:.4g}° {corner.where}, where stress grows like h^(λ-1) without "
         f"limit: theory λ = {corner.exponent:.3f}, {data}; report the stress at a stated distance, a mean "
         "over a line or a resultant, or model the real radius"
     )

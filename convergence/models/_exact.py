@@ -4,8 +4,9 @@ from collections.abc import Iterable
 
 import numpy as np
 
+from convergence.fem.loads import FieldFunction
 from convergence.fem.part import EdgeName, Part
-from convergence.fem.problem import Exact, FieldFunction
+from convergence.fem.problem import Exact
 
 GAUSS_POINTS = 40
 

@@ -5,6 +5,7 @@ from collections.abc import Mapping
 import numpy as np
 
 from convergence.fem.part import Curve, EdgeName, Part, arc, graded
+from convergence.models._grading import away_from
 
 ARC_CELLS = 2.0
 STEEP = 4.0
@@ -33,10 +34,11 @@ def _points(w: float, height: float, d: float, length: float, r: float) -> dict[
     }
 
 
-def l_shape(w: float, height: float, d: float, length: float, r: float) -> Part:
+def l_shape(w: float, height: float, d: float, length: float, r: float, grading: float = 1.0) -> Part:
     """Return an L with an upright leg of width w, an arm of depth d and an inner corner of radius r.
 
-    The outer corner is the origin. Without a fillet arm_upper and post_right fall on inner_corner.
+    The outer corner is the origin. Without a fillet arm_upper and post_right fall on inner_corner, and
+    cells grow away from it by `grading`.
     """
     points = _points(w, height, d, length, r)
     arm, post = ("arm_upper", "post_right") if r else ("inner_corner", "inner_corner")
@@ -45,19 +47,20 @@ def l_shape(w: float, height: float, d: float, length: float, r: float) -> Part:
         if r
         else (("centre", "arm_middle", "inner_corner", "post_middle"),)
     )
+    blocks = (
+        ("outer_corner", "bottom_middle", "centre", "left_middle"),
+        ("centre", "bottom_middle", "bottom", "arm_middle"),
+        ("centre", "post_middle", "left", "left_middle"),
+        *inner,
+        ("arm_middle", "bottom", "end_lower", "tip"),
+        ("arm_middle", "tip", "end_upper", arm),
+        ("top_left", "left", "post_middle", "top_middle"),
+        ("top_right", "top_middle", "post_middle", post),
+    )
     return Part(
         points=points,
-        blocks=(
-            ("outer_corner", "bottom_middle", "centre", "left_middle"),
-            ("centre", "bottom_middle", "bottom", "arm_middle"),
-            ("centre", "post_middle", "left", "left_middle"),
-            *inner,
-            ("arm_middle", "bottom", "end_lower", "tip"),
-            ("arm_middle", "tip", "end_upper", arm),
-            ("top_left", "left", "post_middle", "top_middle"),
-            ("top_right", "top_middle", "post_middle", post),
-        ),
-        curves=_curves(points, w, d, r) if r else {},
+        blocks=blocks,
+        curves=_curves(points, w, d, r) if r else away_from("inner_corner", points, blocks, grading),
         boundaries={
             "top": (("top_right", "top_middle"), ("top_middle", "top_left")),
             "end": (("end_lower", "tip"), ("tip", "end_upper")),

@@ -1,6 +1,7 @@
 """Supports that several models have: two symmetry planes, and edges held at an exact displacement."""
 
-from convergence.fem.problem import FieldFunction, Support
+from convergence.fem.loads import FieldFunction
+from convergence.fem.problem import Support
 
 SYMMETRY = (
     Support("symmetry_x", x=0.0, boundary="symmetry_x"),

@@ -9,9 +9,10 @@ import numpy as np
 
 from convergence.dimensions import PositiveLength, Stress
 from convergence.errors import require
+from convergence.fem.loads import Pressure
 from convergence.fem.material import Material
 from convergence.fem.part import Part
-from convergence.fem.problem import Exact, Pressure, Problem, Support
+from convergence.fem.problem import Exact, Problem, Support
 
 QUANTITIES = {
     "bore_hoop_stress": {"measure": "stress", "at": "bore", "component": "zz", "relative_tolerance": 0.02},

@@ -9,9 +9,10 @@ import numpy as np
 
 from convergence.dimensions import PositiveLength, Stress
 from convergence.errors import require
+from convergence.fem.loads import Pressure
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.part import Part, ellipse, graded
-from convergence.fem.problem import Pressure, Problem
+from convergence.fem.problem import Problem
 from convergence.models._supports import SYMMETRY
 
 QUANTITIES = {

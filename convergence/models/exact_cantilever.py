@@ -10,9 +10,10 @@ from typing import Annotated
 import numpy as np
 
 from convergence.dimensions import Force, PositiveLength
+from convergence.fem.loads import Traction
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.part import Part
-from convergence.fem.problem import Exact, Problem, Traction
+from convergence.fem.problem import Exact, Problem
 from convergence.models._exact import traction_of
 from convergence.models._supports import exact_support
 

@@ -8,8 +8,10 @@ from typing import Annotated
 
 from convergence.dimensions import LENGTH, Bounds, PositiveLength, Stress
 from convergence.errors import require
+from convergence.fem.loads import Traction
 from convergence.fem.material import Material, PlaneKind
-from convergence.fem.problem import Problem, Support, Traction
+from convergence.fem.problem import Problem, Support
+from convergence.models._grading import Grading
 from convergence.models._l_shape import l_shape
 
 QUANTITIES = {
@@ -36,21 +38,29 @@ def l_bracket(
     ] = 20.0,
     thickness: Annotated[PositiveLength, "thickness"] = 12.0,
     end_shear: Annotated[Stress, "shear traction on the arm's end, positive upward"] = -10.0,
+    grading: Grading = 1.0,
     kind: PlaneKind = "plane stress",
     material: Material,
 ) -> Problem:
     """The outer corner is the origin. With a fillet, inner_corner is the middle of its arc.
 
-    The fillet has at least two cells per division on each half of its arc.
+    The fillet has at least two cells per division on each half of its arc. `grading` makes the cells at a
+    sharp inner corner smaller.
     """
     width, height = post_width + fillet_radius, arm_depth + fillet_radius
     require(
         (post_height > height, "post_height", post_height, f"more than arm_depth + fillet_radius {height:g}"),
         (arm_length > width, "arm_length", arm_length, f"more than post_width + fillet_radius {width:g}"),
+        (
+            fillet_radius == 0.0 or grading == 1.0,
+            "grading",
+            grading,
+            "1 with a fillet, where cells follow its radius",
+        ),
     )
     return Problem(
         title="L-shaped bracket, filleted" if fillet_radius else "L-shaped bracket, sharp",
-        part=l_shape(post_width, post_height, arm_depth, arm_length, fillet_radius),
+        part=l_shape(post_width, post_height, arm_depth, arm_length, fillet_radius, grading),
         materials={"body": material},
         supports=(Support("top", x=0.0, y=0.0, boundary="top"),),
         loads=(Traction("end", (0.0, end_shear)),),

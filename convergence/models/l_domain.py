@@ -9,10 +9,12 @@ from typing import Annotated, Literal
 import numpy as np
 
 from convergence.dimensions import PositiveLength, Stress
+from convergence.fem.loads import Traction
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.part import Part
-from convergence.fem.problem import Exact, Problem, Support, Traction
+from convergence.fem.problem import Exact, Problem, Support
 from convergence.models._exact import energy_of, traction_of
+from convergence.models._grading import Grading, away_from
 from convergence.models._supports import exact_support
 
 Mode = Literal["I", "II"]
@@ -39,15 +41,17 @@ def l_domain(
     thickness: Annotated[PositiveLength, "thickness"] = 10.0,
     stress: Annotated[Stress, "strength of the field at the distance `leg` from the corner"] = 20.0,
     mode: Annotated[Mode, "symmetric (I) or skew (II) about the bisector"] = "I",
+    grading: Grading = 1.0,
     kind: PlaneKind = "plane strain",
     material: Material,
 ) -> Problem:
     """The inner corner is the origin, the quadrant below and left of it is missing.
 
     A stress s means the amplitude A = s leg^(1 - lambda) of the source. The two point supports take out
-    the rigid motion, far from the corner, and carry no force.
+    the rigid motion, far from the corner, and carry no force. `grading` makes the corner's
+    cells smaller.
     """
-    part = _part(leg)
+    part = _part(leg, grading)
     exact = _singular_field(leg, stress, mode, kind, material)
     edges = [edge for name in NORMALS for edge in part.boundaries[name]]
     return Problem(
@@ -65,23 +69,26 @@ def l_domain(
     )
 
 
-def _part(leg: float) -> Part:
+def _part(leg: float, grading: float) -> Part:
+    points = {
+        "inner_corner": (0.0, 0.0),
+        "free_bottom": (0.0, -leg),
+        "lower_right": (leg, -leg),
+        "right": (leg, 0.0),
+        "upper_right": (leg, leg),
+        "top": (0.0, leg),
+        "upper_left": (-leg, leg),
+        "free_left": (-leg, 0.0),
+    }
+    blocks = (
+        ("inner_corner", "free_bottom", "lower_right", "right"),
+        ("inner_corner", "right", "upper_right", "top"),
+        ("inner_corner", "top", "upper_left", "free_left"),
+    )
     return Part(
-        points={
-            "inner_corner": (0.0, 0.0),
-            "free_bottom": (0.0, -leg),
-            "lower_right": (leg, -leg),
-            "right": (leg, 0.0),
-            "upper_right": (leg, leg),
-            "top": (0.0, leg),
-            "upper_left": (-leg, leg),
-            "free_left": (-leg, 0.0),
-        },
-        blocks=(
-            ("inner_corner", "free_bottom", "lower_right", "right"),
-            ("inner_corner", "right", "upper_right", "top"),
-            ("inner_corner", "top", "upper_left", "free_left"),
-        ),
+        points=points,
+        blocks=blocks,
+        curves=away_from("inner_corner", points, blocks, grading),
         boundaries={
             "free": (("free_left", "inner_corner"), ("inner_corner", "free_bottom")),
             "bottom": (("free_bottom", "lower_right"),),

@@ -12,9 +12,10 @@ import numpy as np
 
 from convergence.dimensions import Degrees, Force, PositiveLength
 from convergence.errors import require
+from convergence.fem.loads import BearingLoad
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.part import Curve, EdgeName, Part, arc, graded
-from convergence.fem.problem import BearingLoad, Problem, Support
+from convergence.fem.problem import Problem, Support
 
 QUANTITIES = {
     "hole_stress": {

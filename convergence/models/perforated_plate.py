@@ -10,9 +10,10 @@ import numpy as np
 
 from convergence.dimensions import PositiveLength, Stress
 from convergence.errors import require
+from convergence.fem.loads import Traction
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.part import Part, arc, graded
-from convergence.fem.problem import Exact, Problem, Traction
+from convergence.fem.problem import Exact, Problem
 from convergence.models._exact import energy_of, traction_of
 from convergence.models._supports import SYMMETRY
 

@@ -8,9 +8,10 @@ from typing import Annotated
 
 from convergence.dimensions import PositiveLength, Stress
 from convergence.errors import require
+from convergence.fem.loads import Pressure
 from convergence.fem.material import Material
 from convergence.fem.part import Part, arc, ellipse
-from convergence.fem.problem import Pressure, Problem, Support
+from convergence.fem.problem import Problem, Support
 
 QUANTITIES = {
     "hoop_stress": {"measure": "stress", "at": "inner_middle", "component": "zz", "relative_tolerance": 0.02},

@@ -9,9 +9,10 @@ import numpy as np
 
 from convergence.dimensions import PositiveLength, PositiveStress
 from convergence.errors import require
+from convergence.fem.loads import BodyForce
 from convergence.fem.material import Material
 from convergence.fem.part import Part, arc
-from convergence.fem.problem import BodyForce, Exact, Problem
+from convergence.fem.problem import Exact, Problem
 from convergence.models._supports import SYMMETRY
 
 QUANTITIES = {

@@ -6,9 +6,11 @@ Cook 1974, J. Struct. Div. ASCE 100:1851, known as Cook's membrane. The upper cl
 from typing import Annotated
 
 from convergence.dimensions import Length, PositiveLength, Stress
+from convergence.fem.loads import Traction
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.part import Part
-from convergence.fem.problem import Problem, Support, Traction
+from convergence.fem.problem import Problem, Support
+from convergence.models._grading import Grading, away_from
 
 QUANTITIES = {
     "deflection": {"measure": "displacement", "at": "tip", "component": "y", "relative_tolerance": 0.01},
@@ -30,24 +32,29 @@ def skew_panel(
     rise: Annotated[Length, "height of the loaded side's lower corner above the clamped one's"] = 440.0,
     thickness: Annotated[PositiveLength, "thickness"] = 10.0,
     shear: Annotated[Stress, "shear traction on the loaded side, positive upward"] = 10.0,
+    grading: Grading = 1.0,
     kind: PlaneKind = "plane stress",
     material: Material,
 ) -> Problem:
     """The lower clamped corner is the origin. As many cells along the panel as across it.
 
-    Points tip, lower and upper are the middles of their sides: nodes where the divisions are even.
+    Points tip, lower and upper are the middles of their sides: nodes where the divisions are even, upper only
+    without grading. `grading` makes the cells at the upper clamped corner smaller.
     """
+    points = {
+        "root_lower": (0.0, 0.0),
+        "tip_lower": (length, rise),
+        "tip_upper": (length, rise + depth_tip),
+        "root_upper": (0.0, depth_root),
+        "tip": (length, rise + 0.5 * depth_tip),
+        "lower": (0.5 * length, 0.5 * rise),
+        "upper": (0.5 * length, 0.5 * (depth_root + rise + depth_tip)),
+    }
+    blocks = (("tip_lower", "tip_upper", "root_upper", "root_lower"),)
     part = Part(
-        points={
-            "root_lower": (0.0, 0.0),
-            "tip_lower": (length, rise),
-            "tip_upper": (length, rise + depth_tip),
-            "root_upper": (0.0, depth_root),
-            "tip": (length, rise + 0.5 * depth_tip),
-            "lower": (0.5 * length, 0.5 * rise),
-            "upper": (0.5 * length, 0.5 * (depth_root + rise + depth_tip)),
-        },
-        blocks=(("tip_lower", "tip_upper", "root_upper", "root_lower"),),
+        points=points,
+        blocks=blocks,
+        curves=away_from("root_upper", points, blocks, grading),
         boundaries={
             "root": (("root_upper", "root_lower"),),
             "lower": (("root_lower", "tip_lower"),),

@@ -7,8 +7,9 @@ from typing import Annotated
 
 from convergence.dimensions import PositiveLength, Stress
 from convergence.errors import require
+from convergence.fem.loads import Traction
 from convergence.fem.material import Material
-from convergence.fem.problem import Problem, Support, Traction
+from convergence.fem.problem import Problem, Support
 from convergence.models._l_shape import l_shape
 
 QUANTITIES = {

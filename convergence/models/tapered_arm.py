@@ -6,9 +6,10 @@ Both clamped corners are singular (Williams 1952, J. Appl. Mech. 19:526): the st
 from typing import Annotated
 
 from convergence.dimensions import ForcePerVolume, PositiveLength, Stress
+from convergence.fem.loads import BodyForce, Traction
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.part import Part
-from convergence.fem.problem import BodyForce, Problem, Support, Traction
+from convergence.fem.problem import Problem, Support
 
 QUANTITIES = {
     "deflection": {"measure": "displacement", "at": "tip", "component": "y", "relative_tolerance": 0.01},

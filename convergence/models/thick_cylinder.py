@@ -5,13 +5,13 @@ Lamé 1852; Timoshenko & Goodier, Theory of Elasticity, 3rd ed., art. 28.
 
 from typing import Annotated
 
-import numpy as np
-
 from convergence.dimensions import PositiveLength, Stress
 from convergence.errors import require
+from convergence.fem.loads import Pressure
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.part import Part, arc
-from convergence.fem.problem import Exact, Pressure, Problem
+from convergence.fem.problem import Exact, Problem
+from convergence.models._lame import quarter_energy, ring
 from convergence.models._supports import SYMMETRY
 
 QUANTITIES = {
@@ -54,6 +54,7 @@ def thick_cylinder(
             "symmetry_y": (("bore_x", "outer_x"),),
         },
     )
+    exact = ring(a, b, (pressure, 0.0), kind, material)
     return Problem(
         title="Thick cylinder under internal pressure",
         part=part,
@@ -62,29 +63,5 @@ def thick_cylinder(
         loads=(Pressure("bore", pressure),),
         kind=kind,
         thickness=length,
-        exact=_lame(a, b, length, pressure, kind, material),
+        exact=Exact(exact.displacement, exact.stress, quarter_energy(exact, a, pressure, length)),
     )
-
-
-def _lame(a: float, b: float, length: float, pressure: float, kind: PlaneKind, material: Material) -> Exact:
-    scale = pressure * a**2 / (b**2 - a**2)
-    nu, out = material.poisson, 1.0 if kind == "plane strain" else 0.0
-
-    def radial(r: np.ndarray) -> np.ndarray:
-        if kind == "plane strain":
-            return (1 + nu) / material.young * scale * ((1 - 2 * nu) * r + b**2 / r)
-        return scale / material.young * ((1 - nu) * r + (1 + nu) * b**2 / r)
-
-    def displacement(x: np.ndarray, y: np.ndarray) -> np.ndarray:
-        r = np.hypot(x, y)
-        return np.array([x * radial(r) / r, y * radial(r) / r])
-
-    def stress(x: np.ndarray, y: np.ndarray) -> np.ndarray:
-        r = np.hypot(x, y)
-        c, s = x / r, y / r
-        rr, tt = scale * (1 - b**2 / r**2), scale * (1 + b**2 / r**2)
-        along = np.full_like(r, out * 2 * nu * scale)
-        return np.array([c * c * rr + s * s * tt, s * s * rr + c * c * tt, along, c * s * (rr - tt)])
-
-    quarter_work = 0.25 * np.pi * a * pressure * float(radial(np.array(a))) * length
-    return Exact(displacement, stress, energy=quarter_work)

@@ -6,12 +6,13 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
-from convergence.checks.linear_range import linear_range, record
+from convergence.checks.linear_range import linear_range, own_peaks, record
+from convergence.fem.mesh import mesh
 from convergence.fem.problem import Support
 from convergence.fem.solution import solve
-from convergence.results import Check, Corner, Facts, Ladder, Level
+from convergence.results import Check, Corner, Facts, Ladder, Level, Yield
 
-CORNER = Corner("heel", 0.0, 0.0, 270.0, ("free", "free"), 0.5445)
+CORNER = Corner("heel", ((0.0, 0.0),), ("heel",), 270.0, ("free", "free"), 0.5445)
 
 
 def ladder(**columns: float) -> Ladder:
@@ -21,7 +22,7 @@ def ladder(**columns: float) -> Ladder:
 
 def small(**columns: float) -> Ladder:
     own = {
-        "linear_range__peak_von_mises": 200.0,
+        "linear_range__body__peak_von_mises": 200.0,
         "linear_range__displacement": 1e-3,
         "linear_range__rotation": 1e-3,
     }
@@ -29,10 +30,9 @@ def small(**columns: float) -> Ladder:
 
 
 def facts(limit: float | None = 355.0, **more: object) -> Facts:
-    stated = {"linear_range.peak_von_mises": (190.0, 210.0), "peak": (280.0, 320.0)}
-    return Facts(
-        yield_strength=limit, yield_source="EN 10025-2", **({"intervals": stated, "corners": ()} | more)
-    )
+    stated = {"linear_range.body.peak_von_mises": (190.0, 210.0), "peak": (280.0, 320.0)}
+    yields = {"body": None if limit is None else Yield(limit, "EN 10025-2")}
+    return Facts(**({"yields": yields, "intervals": stated, "corners": ()} | more))
 
 
 def test_below_yield_with_its_source() -> None:
@@ -97,8 +97,84 @@ def test_limits_of_small_displacements(name: str, value: float, passed: bool) ->
 def test_a_bare_table_with_a_yield_strength() -> None:
     table = ladder(peak=300.0)
     known = {"kinds": {"peak": "peak_stress"}, "corners": None}
-    assert linear_range(table, facts(330.0, **known)).passed is True
-    assert linear_range(table, facts(310.0, **known)).passed is False
+    for limit, passed in ((330.0, True), (310.0, False)):
+        assert linear_range(table, facts(yields={"": Yield(limit)}, **known)).passed is passed
+
+
+BONDED = {
+    "linear_range__bar__peak_von_mises": 200.0,
+    "linear_range__bond__peak_von_mises": 20.0,
+    "linear_range__displacement": 1e-3,
+    "linear_range__rotation": 1e-3,
+}
+
+
+def bonded(bar: float | None, bond: float | None, **more: object) -> Facts:
+    """A bar whose peak reaches 210 on a bond whose peak reaches 21."""
+    stated = {
+        "linear_range.bar.peak_von_mises": (190.0, 210.0),
+        "linear_range.bond.peak_von_mises": (19.0, 21.0),
+        "peak": (190.0, 220.0),
+    }
+    yields = {"bar": bar and Yield(bar, "EN 10025-2"), "bond": bond and Yield(bond, "data sheet")}
+    return Facts(**({"yields": yields, "intervals": stated, "corners": ()} | more))
+
+
+@pytest.mark.parametrize(
+    ("bar", "bond", "passed"),
+    [
+        (355.0, 30.0, True),
+        (205.0, 30.0, False),
+        (355.0, 20.5, False),
+        (355.0, None, True),
+        (None, 20.5, False),
+    ],
+)
+def test_each_region_against_its_own_yield(bar: float | None, bond: float | None, passed: bool) -> None:
+    check = linear_range(ladder(**BONDED), bonded(bar, bond))
+    assert check.passed is passed
+    for name, limit in (("bar", bar), ("bond", bond)):
+        said = f"{name}'s peak von Mises stress reaches" in check.finding
+        assert said is (limit is not None)
+        assert (f"No yield strength is given for {name}." in check.finding) is not said
+
+
+def test_a_peak_asked_for_in_a_part_of_several_yields() -> None:
+    """It reaches 220 and counts only where it is confined to a region, with that region's yield."""
+    asked = {"kinds": {"peak": "peak_stress"}}
+    given = ladder(**BONDED, peak=200.0)
+    assert linear_range(given, bonded(215.0, 30.0, **asked)).passed is True
+    assert linear_range(given, bonded(215.0, 30.0, **asked, regions={"peak": "bar"})).passed is False
+    assert linear_range(given, bonded(225.0, 30.0, **asked, regions={"peak": "bar"})).passed is True
+    assert linear_range(given, bonded(215.0, 215.0, **asked)).passed is True, "two sources are two yields"
+    one = Yield(215.0, "EN 10025-2")
+    assert linear_range(given, bonded(None, None, **asked, yields={"bar": one, "bond": one})).passed is False
+
+
+def test_the_peaks_that_a_ladder_has_of_its_own() -> None:
+    assert own_peaks(ladder(**BONDED, peak=1.0)) == {
+        "linear_range.bar.peak_von_mises": "bar",
+        "linear_range.bond.peak_von_mises": "bond",
+    }
+    assert own_peaks(Ladder((), "t")) == {}
+
+
+def test_the_peaks_of_two_regions(solved: Callable) -> None:
+    """Uniform strain 1e-3 xx, yy and 2xy in two materials: each has the peak of its own stress (Hooke)."""
+    solution = solved("patch_test", "quadrilateral", 2, 1, 1)[0]
+    part, steel = solution.problem.part, solution.problem.materials["body"]
+    regions = {"steel": tuple(range(1, len(part.blocks))), "soft": (0,)}
+    problem = replace(
+        solution.problem,
+        part=replace(part, regions=regions),
+        materials={"steel": steel, "soft": replace(steel, young=21000.0)},
+    )
+    counts = part.divisions(size=None, divisions=1)
+    level = mesh(problem.part, counts, shape="quadrilateral", degree=2)
+    numbers = record(replace(solution, problem=problem, mesh=level))
+    peak = np.sqrt((210000.0 / 0.91 * 1.3e-3) ** 2 + 3.0 * (210000.0 / 2.6 * 1e-3) ** 2)
+    assert numbers["steel.peak_von_mises"] == pytest.approx(peak, rel=1e-9)
+    assert numbers["soft.peak_von_mises"] == pytest.approx(0.1 * peak, rel=1e-9)
 
 
 def test_record_of_a_rotated_part(solved: Callable) -> None:
@@ -132,7 +208,7 @@ def test_the_peak_is_the_largest_von_mises_stress(solved: Callable) -> None:
     solution = solved("patch_test", "triangle", 2, 1, 3)[0]
     xx = 210000.0 / 0.91 * 1.3e-3
     shear = 210000.0 / 2.6 * 1e-3
-    assert record(solution)["peak_von_mises"] == pytest.approx(np.sqrt(xx**2 + 3.0 * shear**2), rel=1e-9)
+    assert record(solution)["body.peak_von_mises"] == pytest.approx(np.sqrt(xx**2 + 3.0 * shear**2), rel=1e-9)
     held = Support("rim", x=0.0, y=0.0, boundary="rim")
     still = solve(replace(solution.problem, supports=(held,), exact=None), solution.mesh)
-    assert record(still)["peak_von_mises"] == 0.0
+    assert record(still)["body.peak_von_mises"] == 0.0

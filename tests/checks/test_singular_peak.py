@@ -191,19 +191,20 @@ def test_growth_where_the_model_is_known_to_have_no_corner() -> None:
 
 
 CORNERS = (
-    Corner("heel", 0.0, 0.0, 270.0, ("free", "free"), 0.5445),
-    Corner("toe", 100.0, 0.0, 90.0, ("clamped", "free"), 0.7583),
+    Corner("heel", ((0.0, 0.0),), ("heel",), 270.0, ("free", "free"), 0.5445),
+    Corner("toe", ((100.0, 0.0),), ("toe",), 90.0, ("clamped", "free"), 0.7583),
 )
 
 
 def test_peak_region() -> None:
     """A region that holds a corner is refused at once, named by its weakest corner."""
     ladder = table((10.0, 11.0, 11.2))
-    facts = Facts(corners=CORNERS, covered={"f": (CORNERS[1], CORNERS[0]), "g": ()})
+    kinds = {"f": "peak_stress", "g": "peak_stress"}
+    facts = Facts(kinds=kinds, corners=CORNERS, covered={"f": (CORNERS[1], CORNERS[0]), "g": ()})
     check = peak_region(ladder, facts)
     assert check.passed is False and list(check.spoils) == ["f"] and check.leads_to == "unproven"
     assert "heel at (0, 0), theory λ = 0.544" in check.spoils["f"]
-    assert peak_region(ladder, Facts(corners=CORNERS, covered={"f": (), "g": ()})).passed is True
+    assert peak_region(ladder, replace(facts, covered={"f": (), "g": ()})).passed is True
     assert peak_region(ladder, Facts()).passed is None
     quantity = Quantity("f", "peak_stress", relative=0.5)
     verdict = judge(ladder, (quantity,), facts, "t").verdicts["f"]

@@ -3,6 +3,7 @@
 import inspect
 from collections.abc import Callable, Mapping
 from dataclasses import replace
+from itertools import product
 from typing import Any, get_type_hints
 
 import numpy as np
@@ -10,19 +11,27 @@ import pytest
 
 from convergence import bind, rooms
 from convergence.dimensions import SYSTEMS, Located
-from convergence.errors import SolvingError
-from convergence.fem.material import Material, PlaneKind
-from convergence.fem.mesh import Mesh, mesh
+from convergence.errors import SolvingError, Unsuitable
+from convergence.fem.facets import facet_bases
+from convergence.fem.loads import BodyForce, PointForce, TemperatureRise, Traction
+from convergence.fem.material import Material, PlaneKind, material_names
+from convergence.fem.mesh import Mesh, Shape, mesh
 from convergence.fem.part import Part
-from convergence.fem.problem import BodyForce, Problem, Traction
+from convergence.fem.problem import Problem
+from convergence.fem.solid_part import SolidPart
 from convergence.fem.solution import solve
 from convergence.models.tapered_arm import tapered_arm
 
 Model = Callable[..., Problem]
 STEEL = Material(210000.0, 0.3)
+SHAPES: dict[int, tuple[Shape, ...]] = {
+    1: ("line",),
+    2: ("triangle", "quadrilateral"),
+    3: ("tetrahedron", "wedge", "hexahedron"),
+}
 TOLERANCES = {"relative_tolerance", "absolute_tolerance"}
 MEMBERS = pytest.mark.parametrize("name", rooms.names("models"))
-NOT_PARAMETERS = {"kind", "material"}
+NOT_PARAMETERS = {"kind"}
 
 
 def model_of(name: str) -> Model:
@@ -46,7 +55,7 @@ IN_EVERY_KIND = [(name, said) for name in rooms.names("models") for said in kind
 
 
 def check_signature(function: Model) -> None:
-    """Keyword-only, each with a dimension or choices and a phrase; `kind` has a default, `material` none."""
+    """Keyword-only, each with a dimension or choices and a phrase; all but `material` have a default."""
     assert inspect.getdoc(function)
     given = inspect.signature(function).parameters
     assert all(parameter.kind is parameter.KEYWORD_ONLY for parameter in given.values())
@@ -54,8 +63,9 @@ def check_signature(function: Model) -> None:
     assert hints["return"] is Problem
     assert hints.get("kind", PlaneKind) == PlaneKind
     assert hints["material"] is Material
-    assert given["material"].default is inspect.Parameter.empty
-    for parameter in bind.parameters(function, given=["material"]):
+    bare = [name for name in material_names(function) if given[name].default is inspect.Parameter.empty]
+    assert bare == ["material"]
+    for parameter in bind.parameters(function, given=material_names(function)):
         assert parameter.default is not bind.REQUIRED, parameter.name
         assert parameter.dimension is not None or parameter.choices, parameter.name
         assert parameter.doc or parameter.name == "kind", parameter.name
@@ -65,23 +75,35 @@ def check_files_can_set_it(function: Model) -> None:
     """The defaults, written into a study file, are accepted and give the same problem."""
     table = {
         parameter.name: parameter.default
-        for parameter in bind.parameters(function, given=["material"])
+        for parameter in bind.parameters(function, given=material_names(function))
         if parameter.name not in NOT_PARAMETERS
     }
-    arguments, faults = bind.bind(function, table, where=str, units=SYSTEMS["mm, N, MPa"], given=["material"])
+    given = material_names(function)
+    arguments, faults = bind.bind(function, table, where=str, units=SYSTEMS["mm, N, MPa"], given=given)
     assert not faults
     assert function(material=STEEL, **arguments).part.points == function(material=STEEL).part.points
 
 
 def check_boundaries(problem: Problem) -> None:
     """Named boundaries cover the outline, each edge once; supports and loads use known names."""
-    named = [frozenset(edge) for edges in problem.part.boundaries.values() for edge in edges]
-    assert len(named) == len(set(named))
-    assert set(named) == {frozenset(edge) for edge in problem.part.outline}
+    part = problem.part
+    if isinstance(part, Part):
+        named = [frozenset(edge) for edges in part.boundaries.values() for edge in edges]
+        assert len(named) == len(set(named))
+        assert set(named) == {frozenset(edge) for edge in part.outline}
+    if isinstance(part, SolidPart):
+        faces = [face for some in part.boundaries.values() for face in some]
+        assert len(faces) == len(set(faces))
+        assert set(faces) == part.faces
     for support in problem.supports:
         assert (support.boundary in problem.part.boundaries) != (support.point in problem.part.points)
     for load in problem.loads:
-        assert isinstance(load, BodyForce) or load.boundary in problem.part.boundaries
+        if isinstance(load, BodyForce | TemperatureRise):
+            assert load.region is None or load.region in problem.part.regions
+        elif isinstance(load, PointForce):
+            assert load.point in problem.part.points
+        else:
+            assert load.boundary in problem.part.boundaries
     assert set(problem.materials) == set(problem.part.regions or {"body": ()})
     assert 0 < len(problem.title) < 50
 
@@ -95,41 +117,57 @@ def outline_area(part: Part, steps: Callable[[tuple[str, str]], int]) -> float:
     return total
 
 
+def enclosed(level: Mesh) -> float:
+    """Return the measure inside all boundaries, the flux of the place through them over the dimension."""
+    flux = 0.0
+    for boundary in level.part.boundaries:
+        for facets in facet_bases(level, boundary, 9):
+            flux += float(((facets.places * facets.normals).sum(axis=0) * facets.dx).sum())
+    return flux / level.dimension
+
+
 def check_meshes(problem: Problem) -> None:
     """Every level is free of inverted cells (or `mesh` raises) and fills the part.
+
+    Its boundaries enclose what its cells fill (Gauss's theorem), to round-off on cells of any kind.
 
     Straight cells fill the polygon of their own boundary vertices; the area under parabolas is off by
     less than a tenth of what the chords lose (theory: (angle of the segment)²/80, segments below 90°).
     """
     part = problem.part
+    for shape, degree in product(SHAPES[part.dimension], (1, 2)):
+        level = cells_of(problem, 1, shape, degree)
+        assert enclosed(level) == pytest.approx(level.measure, rel=1e-12)
+    if not isinstance(part, Part):
+        return
     for divisions in (1, 2, 3):
         counts = part.divisions(size=None, divisions=divisions)
         polygon = outline_area(part, lambda edge, c=counts: c[part.families[edge]])  # type: ignore[misc]
         true = outline_area(part, lambda edge: 2000)
         for shape in ("triangle", "quadrilateral"):
-            straight = cells_of(problem, divisions, shape, 1).area
-            curved = cells_of(problem, divisions, shape, 2).area
+            straight = cells_of(problem, divisions, shape, 1).measure
+            curved = cells_of(problem, divisions, shape, 2).measure
             assert straight == pytest.approx(polygon, rel=1e-12)
             assert abs(curved - true) < 0.1 * abs(polygon - true) + 1e-6 * true
 
 
 def check_balance(problem: Problem) -> None:
     """Reactions balance loads in force and moment to 1e-9, on every kind of cell."""
-    for shape in ("triangle", "quadrilateral"):
-        for degree in (1, 2):
-            solution = solve(problem, cells_of(problem, 1, shape, degree))
-            left = solution.resultant(solution.load + solution.reactions)
-            scale = np.abs(solution.load).sum() + np.abs(solution.reactions).sum()
-            assert scale > 0
-            assert np.abs(left[:2]).max() < 1e-9 * scale
-            assert abs(left[2]) < 1e-9 * scale * problem.part.size
-            assert solution.energy > 0
+    dimension = problem.part.dimension
+    for shape, degree in product(SHAPES[dimension], (1, 2)):
+        solution = solve(problem, cells_of(problem, 1, shape, degree))
+        left = solution.resultant(solution.load + solution.reactions)
+        scale = np.abs(solution.load).sum() + np.abs(solution.reactions).sum()
+        assert scale > 0 and len(left) == {1: 1, 2: 3, 3: 6}[dimension]
+        assert np.abs(left[:dimension]).max() < 1e-9 * scale
+        assert (np.abs(left[dimension:]) < 1e-9 * scale * problem.part.size).all()
+        assert solution.energy > 0
 
 
 def check_quantities(problem: Problem, quantities: Mapping[str, Mapping[str, Any]]) -> None:
     """Each suggestion names a quantity, is accepted by it, has a tolerance and gives a number at a node."""
     assert quantities
-    solution = solve(problem, cells_of(problem, 2, "quadrilateral", 2))
+    solution = solve(problem, cells_of(problem, 2, SHAPES[problem.part.dimension][-1], 2))
     for name, table in quantities.items():
         assert name.isidentifier()
         measure = rooms.find("quantities", table["measure"])
@@ -143,7 +181,8 @@ def check_quantities(problem: Problem, quantities: Mapping[str, Mapping[str, Any
                 assert value in problem.names()[parameter.names], value
                 if parameter.names == "point":
                     place = np.array(problem.part.points[value])[:, None]
-                    assert np.hypot(*(solution.mesh.nodes - place)).min() < 1e-9 * problem.part.size
+                    away = np.linalg.norm(solution.mesh.nodes - place, axis=0)
+                    assert away.min() < 1e-9 * problem.part.size
         found = measure(solution, **arguments)
         assert np.isfinite(found.value if isinstance(found, Located) else found)
 
@@ -231,8 +270,10 @@ def test_bad_quantities_fail() -> None:
     problem = tapered_arm(material=STEEL)
     good = {"measure": "displacement", "at": "tip", "relative_tolerance": 0.01}
     check_quantities(problem, {"deflection": good})
-    for change in ({"at": "nowhere"}, {"component": "z"}, {"measure": "strain_energy"}):
+    for change in ({"at": "nowhere"}, {"component": "w"}, {"measure": "strain_energy"}):
         with pytest.raises(AssertionError):
             check_quantities(problem, {"deflection": {**good, **change}})
+    with pytest.raises(Unsuitable, match="component 'z': one of x, y"):
+        check_quantities(problem, {"deflection": {**good, "component": "z"}})
     with pytest.raises(AssertionError):
         check_quantities(problem, {"deflection": {"measure": "strain_energy"}})

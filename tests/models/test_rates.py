@@ -25,6 +25,7 @@ pytestmark = pytest.mark.slow
 
 Climb = Callable[..., list[Solution]]
 SHAPES: tuple[Shape, ...] = ("triangle", "quadrilateral")
+SHAPES_OF: dict[int, tuple[Shape, ...]] = {1: ("line",), 2: SHAPES, 3: ("tetrahedron", "wedge", "hexahedron")}
 STEEL = Material(210000.0, 0.3)
 EXACT_EVERYWHERE = "patch_test"
 SINGULAR = "l_domain"
@@ -43,9 +44,10 @@ def has_kinds(name: str) -> bool:
 
 SMOOTH = [name for name in with_exact() if name not in (EXACT_EVERYWHERE, SINGULAR)]
 SMOOTH_KINDS = [
-    (name, kind)
+    (name, kind, shape)
     for name in SMOOTH
     for kind in (("plane stress", "plane strain") if has_kinds(name) else (None,))
+    for shape in SHAPES_OF[rooms.find("models", name)(material=STEEL).part.dimension]
 ]
 BOTH_KINDS = pytest.mark.parametrize("kind", ["plane stress", "plane strain"])
 BOTH_SHAPES = pytest.mark.parametrize("shape", SHAPES)
@@ -94,14 +96,13 @@ def test_patch_test_is_exact(
     largest = 1e-3 * 1.5 * 240.0
     for solution in climb(problem, shape, degree, 1, 2):
         # rounding: 1e-16 times a condition number below 1e4
-        assert displacement_error(solution) < 1e-12 * largest * np.sqrt(solution.mesh.area)
+        assert displacement_error(solution) < 1e-12 * largest * np.sqrt(solution.mesh.measure)
         assert exact_energy_error(solution).sum() < 1e-20 * exact_energy(problem)
         assert solution.energy == pytest.approx(exact_energy(problem), rel=1e-12)
 
 
 @BOTH_DEGREES
-@BOTH_SHAPES
-@pytest.mark.parametrize(("name", "kind"), SMOOTH_KINDS)
+@pytest.mark.parametrize(("name", "kind", "shape"), SMOOTH_KINDS)
 def test_smooth_rates(
     climb: Climb, displacement_error: Any, name: str, kind: PlaneKind | None, shape: Shape, degree: int
 ) -> None:
@@ -110,8 +111,8 @@ def test_smooth_rates(
     norms = [float(np.sqrt(exact_energy_error(solution).sum())) for solution in solutions]
     assert last_order(solutions, norms) == pytest.approx(degree, abs=NEXT_POWER)
     found = last_order(solutions, [displacement_error(solution) for solution in solutions])
-    # quadratic triangles come from above: their h^4 part is large on the coarse meshes
-    assert degree + 1 - NEXT_POWER < found < degree + 1 + 3 * NEXT_POWER
+    # from above: bending moves a slender part as a whole, by h^(2k), which is large on the coarse meshes
+    assert degree + 1 - NEXT_POWER < found < 2 * degree + 3 * NEXT_POWER
     exact = exact_energy(problem)
     errors = [exact - solution.energy for solution in solutions]
     if prescribed(problem):
