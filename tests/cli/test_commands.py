@@ -11,7 +11,7 @@ from click.testing import CliRunner
 
 from convergence import __version__, rooms
 from convergence.cli import main
-from convergence.cli._progress import remaining
+from convergence.cli._progress import ahead
 from convergence.results import Level
 
 REFUSED = ("pandas", "matplotlib", "skfem", "scipy", "numpy", "rich")
@@ -169,7 +169,10 @@ def test_every_command_says_what_it_does() -> None:
 
 
 def test_time_that_remains() -> None:
-    # two levels to come, each 4^1.2 times the one before
-    level = Level(1.0, 1, 1, 10.0, {})
-    assert remaining([level], 3, 4.0) == pytest.approx(10.0 * (4**1.2 + 4**2.4), rel=1e-12)
-    assert remaining([level], 1, 4.0) == 0.0
+    # 1e-6 n^1.2 seconds, 50 MB and 2 kB an unknown: 5.28 s and 83.66 s (1.48 min), 850 MB and 8050 MB
+    solved = [Level(1.0, 1, n, 1e-6 * n**1.2, {}, 50.0 + 2e-3 * n) for n in (4_000, 40_000)]
+    assert (
+        ahead(solved, [4_000, 40_000, 400_000, 4_000_000])
+        == ", about 1.5 min remaining, up to 8.0 GB of memory"
+    )
+    assert ahead(solved, [4_000, 40_000, 400_000]) == ", about 5.3 s remaining, up to 850 MB of memory"

@@ -116,7 +116,7 @@ def test_what_goes_wrong_while_solving(
     code: int,
     message: str,
 ) -> None:
-    def fails(study: object, folder: Path) -> Iterator[Level]:
+    def fails(study: object, folder: Path, budget: object) -> Iterator[Level]:
         yield Level(1.0, 1, 8, 0.0, {})
         raise error
 
