@@ -41,7 +41,8 @@ table.words tbody th { min-width: 8rem; max-width: 20rem; overflow-wrap: anywher
 table.words td:last-child { min-width: 15rem; }
 table.methods thead th { white-space: nowrap; }
 table.methods td:last-child, table.methods th:last-child { text-align: left; }
-table.statement td { white-space: nowrap; }
+table.matrix td, table.matrix th { text-align: left; }
+table.matrix td, table.statement td { white-space: nowrap; }
 table.statement tbody th { min-width: 8rem; max-width: 22rem; overflow-wrap: anywhere; }
 .verdict { display: inline-block; padding: 0 .55rem; border: 2px solid; border-radius: 3px; font-size: .82rem;
   font-weight: 700; letter-spacing: .03em; vertical-align: .1em; }

@@ -1,16 +1,17 @@
-"""Drawing a plane mesh: view, triangles, edges, outline; the same view and scale for every level."""
+"""Drawing on the plane of the page: frame and panel, edges, outline and colours."""
 
 import math
 from typing import TYPE_CHECKING
 
 import numpy as np
 
-from convergence.fields import Fields
-
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
+    from matplotlib.cm import ScalarMappable
+    from matplotlib.colors import Normalize
 
 PAGE_WIDTH = 9.4
+INK_OF_EDGES, INK_OF_OUTLINE = "#27425c", "#444444"
 CLOSEST_EDGES = 2.5  # points on the page; closer ones print as a black patch
 
 
@@ -48,45 +49,65 @@ def triangles(cells: np.ndarray) -> np.ndarray:
     return np.hstack((cells[[0, 1, 2]], cells[[0, 2, 3]])).T
 
 
-def edge_length(fields: Fields, width: float) -> float:
+def edge_length(points: np.ndarray, edges: np.ndarray, width: float) -> float:
     """Return the median length of an edge in points on a panel of that width in inches."""
-    ends = fields.points[:, fields.edges[[0, -1]]]
+    ends = points[:2, edges[[0, -1]]]
     length = float(np.median(np.hypot(*(ends[:, 0] - ends[:, 1]))))
-    return length * 72 * width / max(float(np.ptp(fields.points[0])), 1e-300)
+    return length * 72 * width / max(float(np.ptp(points[0])), 1e-300)
 
 
-def too_dense(fields: Fields, width: float) -> bool:
+def too_dense(points: np.ndarray, edges: np.ndarray, width: float) -> bool:
     """Tell whether the edges cannot be told apart on a panel of that width."""
-    return edge_length(fields, width) < CLOSEST_EDGES
+    return edge_length(points, edges, width) < CLOSEST_EDGES
 
 
-def edges(axes: "Axes", fields: Fields, width: float) -> None:
-    """Draw every edge, thinner where cells are small; `width` of the panel in inches."""
+def thickness(points: np.ndarray, edges: np.ndarray, width: float) -> float:
+    """Return how thick the edges are drawn: thinner where cells are small."""
+    return float(np.clip(0.1 * edge_length(points, edges, width), 0.15, 0.6))
+
+
+def edges(axes: "Axes", points: np.ndarray, lines: np.ndarray, thick: float) -> None:
+    """Draw every edge (2 or 3, e)."""
     from matplotlib.collections import LineCollection
 
-    lines = LineCollection(list(fields.points[:, fields.edges].transpose(2, 1, 0)), colors="#27425c")
-    lines.set_linewidth(float(np.clip(0.1 * edge_length(fields, width), 0.15, 0.6)))
-    lines.set_snap(False)
-    lines.set_rasterized(fields.edges.shape[1] > 3000)
-    axes.add_collection(lines)
+    drawn = LineCollection(list(points[:, lines].transpose(2, 1, 0)), colors=INK_OF_EDGES)
+    drawn.set_linewidth(thick)
+    drawn.set_snap(False)
+    drawn.set_rasterized(lines.shape[1] > 3000)
+    axes.add_collection(drawn)
 
 
-def tint(axes: "Axes", fields: Fields) -> None:
-    """Draw the outline and fill it evenly, for a mesh that would print as a black patch."""
+def tint(axes: "Axes", points: np.ndarray, cells: np.ndarray) -> None:
+    """Fill a plane mesh evenly, where its edges would print as a black patch."""
+    from matplotlib.colors import Normalize
+
+    nodal(axes, points, cells, np.zeros_like(points[0]), "Greys", Normalize(-1.0, 3.0))
+
+
+def nodal(
+    axes: "Axes", points: np.ndarray, cells: np.ndarray, values: np.ndarray, cmap: str, norm: "Normalize"
+) -> "ScalarMappable":
+    """Draw values at the nodes as colours, linear in each triangle."""
     from matplotlib.tri import Triangulation
 
-    x, y = fields.points
-    grid = Triangulation(x, y, triangles(fields.cells))
-    axes.tripcolor(
-        grid, np.zeros_like(x), shading="gouraud", cmap="Greys", vmin=-1.0, vmax=3.0, rasterized=True
-    )
-    outline(axes, fields.points, fields.boundary, "-")
+    grid = Triangulation(points[0], points[1], triangles(cells))
+    return axes.tripcolor(grid, values, shading="gouraud", cmap=cmap, norm=norm, rasterized=True)
 
 
-def outline(axes: "Axes", points: np.ndarray, boundary: np.ndarray, line: str) -> None:
+def cellwise(
+    axes: "Axes", points: np.ndarray, cells: np.ndarray, values: np.ndarray, cmap: str, norm: "Normalize"
+) -> "ScalarMappable":
+    """Draw one value a cell as colours, with no seams between the cells."""
+    flat = triangles(cells)
+    shade = np.repeat(np.tile(values, len(flat) // len(values)), 3)
+    split = np.arange(flat.size).reshape(-1, 3).T
+    return nodal(axes, points[:, flat.ravel()], split, shade, cmap, norm)
+
+
+def outline(axes: "Axes", points: np.ndarray, boundary: np.ndarray, line: str, ink: str) -> None:
     """Draw the boundary segments; they are chained, so that dashes run on from one to the next."""
     for chain in _chains(boundary):
-        axes.plot(*points[:, chain], line, color="#444444", linewidth=0.8, zorder=2)
+        axes.plot(*points[:, chain], line, color=ink, linewidth=0.8, zorder=2)
 
 
 def _chains(boundary: np.ndarray) -> list[list[int]]:

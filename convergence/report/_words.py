@@ -1,8 +1,10 @@
 """What a finding says in words: value, interval, tolerance, order, next step, and one sentence."""
 
 import math
+from collections.abc import Mapping
 
 from convergence import numbers
+from convergence.envelope import SEVERITY, Envelope, worst_first
 from convergence.results import Findings, Ladder, Quantity, Verdict
 
 NOT_CALIBRATED = "its coverage has not been calibrated"
@@ -132,7 +134,7 @@ def _end(verdict: Verdict, length: str) -> str:
     start = "Refine" if verdict.word == "refine" else "It is unproven"
     if not math.isfinite(verdict.next_h):
         return f"{start}."
-    cost = numbers.cost(verdict.next_cells, verdict.next_dofs, verdict.next_seconds)
+    cost = numbers.cost(verdict.next_cells, verdict.next_dofs, verdict.next_seconds, verdict.next_memory)
     step = next_step(verdict, length) + cost
     return f"{start}: {step} would do." if verdict.word == "refine" else f"{start}; next: {step}."
 
@@ -150,3 +152,28 @@ def overall(findings: Findings) -> str:
     open_ones = ", ".join(f"{name} ({word})" for name, word in words.items() if word != "sound")
     verb = "is" if sound == 1 else "are"
     return f"{sound} of {total} quantities {verb} sound. Not settled: {open_ones}."
+
+
+def span_text(largest: Envelope) -> str:
+    """Return "low to high" of the largest absolute value, rounded outward, or "none"."""
+    if math.isnan(largest.high):
+        return numbers.NONE
+    half = 0.5 * (largest.high - largest.low)
+    low, high = numbers.outward(largest.low, largest.high, abs(largest.value), half)
+    return f"{low} to {high}"
+
+
+def overall_cases(cases: Mapping[str, Findings]) -> str:
+    """Return the conclusion on all cases together, the worst one first."""
+    sound = sum(findings.all_sound for findings in cases.values())
+    if sound == len(cases):
+        few = {1: "The one case is", 2: "Both cases are"}
+        every = few.get(sound, f"All {sound} cases are")
+        return f"{every} sound: every interval lies inside the tolerance."
+    left = [
+        f"{case} ({', '.join(sorted(words, key=SEVERITY.index, reverse=True))})"
+        for case in worst_first(cases)
+        if (words := {verdict.word for verdict in cases[case].verdicts.values()} - {"sound"})
+    ]
+    verb = "is" if sound == 1 else "are"
+    return f"{sound} of {len(cases)} cases {verb} sound. Not settled: {', '.join(left)}."

@@ -7,7 +7,7 @@ from pathlib import Path
 
 from convergence.dimensions import Units
 from convergence.fields import Fields
-from convergence.report import html, records, sections_fields
+from convergence.report import _scene, html, records, sections_fields
 from convergence.report._picture import Picture
 from convergence.report.figures_error import error_map, norm_figure
 from convergence.report.figures_growth import growth_figure
@@ -45,6 +45,9 @@ def write_report(
     """
     by_quantity = _quantity_pictures(findings, findings.ladder.h_unit)
     field_parts, field_pictures = _field_parts(findings, fields, units)
+    facts = {"study": study_name, "command": command, "date": date, "ladder": findings.ladder.source}
+    if findings.ladder.fingerprint:
+        facts["fingerprint"] = findings.ladder.fingerprint
     sections = [
         ("statement", "Statement", statement_section(findings, findings.ladder.h_unit)),
         ("quantities", "Quantities", quantities_section(findings, by_quantity, findings.ladder.h_unit)),
@@ -52,13 +55,13 @@ def write_report(
         *field_parts,
         ("interval", "Interval", made_section(findings)),
         ("caution", "Caution", caution_section()),
-        ("trace", "Traceability", trace_section(findings, study_text, study_name, command, date)),
+        ("trace", "Traceability", trace_section(facts, study_text)),
     ]
     title = findings.title or study_name
     page = html.page(
         title,
         [(anchor, name) for anchor, name, _ in sections],
-        _header(title, study_name, date),
+        html.header(title, f"Discretization error of {study_name}. {date}"),
         *(part for _, _, part in sections),
     )
     _write_figures(folder / "figures", [p for group in by_quantity.values() for p in group] + field_pictures)
@@ -67,13 +70,6 @@ def write_report(
     path = folder / "report.html"
     write_text(path, page)
     return path
-
-
-def _header(title: str, study_name: str, date: str) -> html.Html:
-    about = f"Discretization error of {study_name}. {date}"
-    return html.element(
-        "header", {}, html.element("h1", {}, html.text(title)), html.paragraph(about, "about")
-    )
 
 
 def stems(names: Sequence[str]) -> dict[str, str]:
@@ -120,13 +116,14 @@ def _field_parts(
     exact = findings.ladder.column("energy_norm.estimated")[-1] < ROUND_OFF
     errors = [] if exact else [norm_figure(findings.ladder, findings.facts, findings.ladder.h_unit)]
     if fields:
-        meshes = mesh_figure(fields, findings.ladder, findings.ladder.h_unit)
-        stress = stress_figure(fields[-1], findings, units.stress)
+        turned = _scene.turn(fields[-1])
+        meshes = mesh_figure(fields, turned, findings.ladder, findings.ladder.h_unit)
+        stress = stress_figure(fields[-1], turned, findings, units.stress)
         parts.append(("meshes", "Meshes", sections_fields.meshes_section(meshes)))
         parts.append(("stress", "Stress", sections_fields.stress_section(findings, stress)))
         pictures += [meshes, stress]
         if not exact:
-            errors.insert(0, error_map(fields[-1], units))
+            errors.insert(0, error_map(fields[-1], turned, units))
     drawn = [picture for picture in errors if picture is not None]
     if drawn:
         parts.append(("error", "Error", sections_fields.error_section(drawn)))

@@ -7,7 +7,7 @@ import numpy as np
 
 from convergence.dimensions import Units
 from convergence.fields import Fields
-from convergence.report import _plane
+from convergence.report import _plane, _scene
 from convergence.report._axes import bracket, cell_size_axis, log_ticks
 from convergence.report._picture import INK, RED, Picture, draw
 from convergence.report._slopes import slope_words, slopes
@@ -17,42 +17,38 @@ if TYPE_CHECKING:
     from matplotlib.figure import Figure
 
 
-def error_map(field: Fields, units: Units) -> Picture | None:
-    """Return the map of the squared energy-norm error per volume, None where it is zero everywhere."""
+def error_map(field: Fields, turned: np.ndarray, units: Units) -> Picture | None:
+    """Return the map of the squared energy-norm error per volume, None where it is zero everywhere.
+
+    `turned` is the rotation (D, D) to the page.
+    """
     from matplotlib.colors import LogNorm
-    from matplotlib.tri import Triangulation
 
     known = field.error[np.isfinite(field.error) & (field.error > 0)]
     if not known.size:
         return None
     high = float(known.max())
     low = float(np.clip(np.quantile(known, 0.02), high * 1e-9, high * 0.1))
-    width, height = _plane.panel(_plane.shape_of(field.points))
-    flat = _plane.triangles(field.cells)
-    x, y = field.points[:, flat.ravel()]
-    split = Triangulation(x, y, np.arange(flat.size).reshape(-1, 3))
-    shade = np.repeat(np.tile(field.error, len(flat) // len(field.error)), 3)
+    points = turned @ field.points
+    page = _scene.on_page(turned, [points])
+    width, height = _plane.panel(_plane.shape_of(page))
     energy = f"{units.force} {units.length}/{units.length}³" if units.length and units.force else ""
 
     def paint(figure: "Figure") -> None:
         axes = figure.add_subplot()
-        drawn = axes.tripcolor(
-            split,
-            np.clip(np.nan_to_num(shade), low, high),
-            shading="gouraud",
-            cmap="cividis",
-            norm=LogNorm(low, high),
-            rasterized=True,
-        )
+        part = _scene.scene(field, points, width)
+        shade = np.clip(np.nan_to_num(field.error), low, high)
+        drawn = _scene.cellwise(axes, part, shade, "cividis", LogNorm(low, high))
         bar = figure.colorbar(drawn, ax=axes, extend="min", shrink=0.85, pad=0.02)
         bar.set_label(f"error density{bracket(energy)}")
         log_ticks(bar.ax, low, high)
-        _plane.outline(axes, field.points, field.boundary, "-")
-        _plane.view(axes, field.points)
+        _scene.outline(axes, part, _scene.ink_on_colours(part))
+        _scene.frame(axes, turned, page)
 
+    where = "in the cells at the surface of" if len(turned) == 3 else "on"
     caption = (
-        "Squared energy-norm error per volume on the finest mesh, from the recovered stress, logarithmic"
-        " colours: bright cells are where refinement pays."
+        f"Squared energy-norm error per volume {where} the finest mesh, from the recovered stress,"
+        " logarithmic colours: bright cells are where refinement pays."
     )
     alt = "Map of the estimated energy-norm error density on the finest mesh"
     return draw("error-map", (max(width + 1.5, 4.5), max(height + 0.3, 2.6)), alt, caption, paint)

@@ -3,9 +3,11 @@
 from collections.abc import Sequence
 from typing import TYPE_CHECKING
 
+import numpy as np
+
 from convergence import numbers
 from convergence.fields import Fields
-from convergence.report import _plane
+from convergence.report import _plane, _scene
 from convergence.report._picture import Picture, draw
 from convergence.results import Ladder
 
@@ -13,31 +15,34 @@ if TYPE_CHECKING:
     from matplotlib.figure import Figure
 
 
-def mesh_figure(fields: Sequence[Fields], ladder: Ladder, length: str) -> Picture:
-    """Return one panel a level; `fields` belong to the finest levels of the ladder, in its order."""
-    shape = _plane.shape_of(fields[-1].points)
+def mesh_figure(fields: Sequence[Fields], turned: np.ndarray, ladder: Ladder, length: str) -> Picture:
+    """Return one panel a level; `fields` belong to the finest levels of the ladder, in its order.
+
+    `turned` is the rotation (D, D) to the page.
+    """
+    pages = [turned @ field.points for field in fields]
+    whole = _scene.on_page(turned, pages)
+    shape = _plane.shape_of(whole)
     columns = min(len(fields), 1 if shape > 3.5 else 2 if shape > 1.8 else 3 if shape > 0.6 else 5)
     rows = -(-len(fields) // columns)
     width, height = _plane.panel(shape, (_plane.PAGE_WIDTH - 0.4) / columns, 3.4)
     levels = ladder.levels[-len(fields) :]
     first = len(ladder.levels) - len(levels) + 1
+    dense = [_plane.too_dense(page, field.edges, width) for page, field in zip(pages, fields, strict=True)]
 
     def paint(figure: "Figure") -> None:
-        for number, (level, field) in enumerate(zip(levels, fields, strict=True), start=first):
-            axes = figure.add_subplot(rows, columns, number - first + 1)
-            if _plane.too_dense(field, width):
-                _plane.tint(axes, field)
-            else:
-                _plane.edges(axes, field, width)
-            _plane.view(axes, *(other.points for other in fields))
-            size = f"h = {numbers.compact(level.h, 3)} {length}".strip()
+        for place, (level, field, page) in enumerate(zip(levels, fields, pages, strict=True)):
+            axes = figure.add_subplot(rows, columns, place + 1)
+            _scene.mesh(axes, _scene.scene(field, page, width), width)
+            _scene.frame(axes, turned, whole)
+            h = f"h = {numbers.compact(level.h, 3)} {length}".strip()
             between = ", " if width > 2.4 else "\n"
-            axes.set_title(f"level {number}: {numbers.count(level.cells)} cells{between}{size}")
+            axes.set_title(f"level {first + place}: {numbers.count(level.cells)} cells{between}{h}")
 
     caption = "Same view and scale."
-    dense = [str(n) for n, field in enumerate(fields, start=first) if _plane.too_dense(field, width)]
-    if dense:
-        caption += f" Of level {' and '.join(dense)} the outline only: its cells are too small to print."
+    if any(dense):
+        unprinted = " and ".join(str(n) for n, much in enumerate(dense, start=first) if much)
+        caption += f" Of level {unprinted} the outline only: its cells are too small to print."
     alt = f"Meshes of {numbers.several(len(fields), 'level')} from coarse to fine in the same view and scale"
-    page = (max(width, 1.9) * columns + 0.4, rows * (height + 0.35) + 0.1)
-    return draw("meshes", page, alt, caption, paint)
+    size = (max(width, 1.9) * columns + 0.4, rows * (height + 0.35) + 0.1)
+    return draw("meshes", size, alt, caption, paint)

@@ -2,141 +2,82 @@
 
 import math
 from collections.abc import Sequence
-from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
 import numpy as np
 
 from convergence import numbers
 from convergence.fields import Fields
-from convergence.report import _plane
-from convergence.report._axes import bracket, middle
+from convergence.report import _plane, _scene
+from convergence.report._axes import bracket
+from convergence.report._marks import Deformed, Peak, hatch, mark, peaks, top
 from convergence.report._picture import Picture, draw
 from convergence.results import Corner, Findings
 
 if TYPE_CHECKING:
-    from matplotlib.axes import Axes
     from matplotlib.figure import Figure
 
-DISC = 0.03  # radius of the hatched disc over the size of the part
 
+def stress_figure(field: Fields, turned: np.ndarray, findings: Findings, stress: str) -> Picture:
+    """Return the figure for the finest mesh, turned to the page by a rotation (D, D).
 
-@dataclass(frozen=True)
-class Peak:
-    """Where quantities have their peak on the finest mesh."""
+    The colours end at the largest stress outside the discs.
+    """
+    from matplotlib.colors import Normalize
 
-    names: str
-    x: float
-    y: float
-
-
-def peaks(findings: Findings) -> list[Peak]:
-    """Return the places that the finest level keeps as NAME.x and NAME.y, one for equal places."""
-    values = findings.ladder.levels[-1].values
-    found: dict[tuple[float, float], list[str]] = {}
-    for quantity in findings.quantities:
-        place = values.get(f"{quantity.name}.x", math.nan), values.get(f"{quantity.name}.y", math.nan)
-        if all(math.isfinite(part) for part in place):
-            found.setdefault(place, []).append(quantity.name)
-    return [Peak(", ".join(names), *place) for place, names in found.items()]
-
-
-def stress_figure(field: Fields, findings: Findings, stress: str) -> Picture:
-    """Return the figure for the finest mesh; the colours end at the largest stress outside the discs."""
-    from matplotlib.tri import Triangulation
-
-    corners, marks = findings.facts.corners or (), peaks(findings)
+    corners, marks = findings.facts.corners or (), peaks(findings, len(field.points))
     factor = deformation_factor(field)
-    moved = field.points + factor * field.displacement
-    top = _top(field, corners)
-    width, height = _plane.panel(_plane.shape_of(moved))
+    still, moved = turned @ field.points, turned @ (field.points + factor * field.displacement)
+    page = _scene.on_page(turned, [still, moved])
+    shown, end = field.von_mises[np.unique(field.cells)], top(field, corners)
+    width, height = _plane.panel(_plane.shape_of(page))
 
     def paint(figure: "Figure") -> None:
         axes = figure.add_subplot()
-        drawn = axes.tripcolor(
-            Triangulation(moved[0], moved[1], _plane.triangles(field.cells)),
-            field.von_mises,
-            shading="gouraud",
-            cmap="viridis",
-            vmin=min(0.0, float(field.von_mises.min())),
-            vmax=top,
-            rasterized=True,
-        )
-        over = "max" if float(field.von_mises.max()) > top else "neither"
+        part = Deformed(_scene.scene(field, moved, width), turned, factor)
+        norm = Normalize(min(0.0, float(shown.min())), end)
+        drawn = _scene.nodal(axes, part.drawn, field.von_mises, "viridis", norm)
+        over = "max" if float(shown.max()) > end else "neither"
         bar = figure.colorbar(drawn, ax=axes, extend=over, shrink=0.85, pad=0.02)
         bar.set_label(f"von Mises stress{bracket(stress)}")
-        _plane.outline(axes, field.points, field.boundary, "--")
-        _hatch(axes, field, factor, corners)
-        _mark(axes, field, factor, marks)
-        _plane.view(axes, field.points, moved)
+        if part.drawn.seen:
+            _scene.outline(axes, part.drawn, _scene.ink_on_colours(part.drawn))
+        _scene.ghost(axes, _scene.scene(field, still, width))
+        hatch(axes, part, corners)
+        mark(axes, part, marks)
+        _scene.frame(axes, turned, page)
 
-    page = (max(width + 1.5, 4.5), max(height + 0.4 + 0.2 * len(marks), 2.6))
-    hatched = numbers.several(len(corners), "singular corner")
-    alt = f"Von Mises stress on the deformed part, finest mesh; {hatched} hatched"
-    return draw("stress", page, alt, _caption(factor, bool(corners), marks), paint)
+    size = (max(width + 1.5, 4.5), max(height + 0.4 + 0.2 * len(marks), 2.6))
+    place, how = _singular(corners)
+    singular = numbers.several(len(corners), f"singular {place}")
+    alt = f"Von Mises stress on the deformed part, finest mesh; {singular} {how}"
+    return draw("stress", size, alt, _caption(len(turned) == 3, factor, corners, marks), paint)
 
 
 def deformation_factor(field: Fields) -> float:
     """Return the round factor that shows the largest displacement as about a twentieth of the part."""
-    largest = float(np.hypot(*field.displacement).max())
+    largest = float(np.linalg.norm(field.displacement, axis=0).max())
     if largest == 0 or not math.isfinite(largest):
         return 1.0
     return max(1.0, _plane.round_factor(0.06 * _plane.size_of(field.points) / largest))
 
 
-def _near(field: Fields, place: Corner | Peak) -> np.ndarray:
-    return np.asarray(np.hypot(field.points[0] - place.x, field.points[1] - place.y))
+def _singular(corners: Sequence[Corner]) -> tuple[str, str]:
+    """Return what the singular places are, and how they are drawn."""
+    edges = any(len(corner.path) > 1 for corner in corners)
+    return ("edge", "banded") if edges else ("corner", "hatched")
 
 
-def _top(field: Fields, corners: Sequence[Corner]) -> float:
-    outside = np.ones(field.points.shape[1], dtype=bool)
-    for corner in corners:
-        outside &= _near(field, corner) > DISC * _plane.size_of(field.points)
-    top = float(field.von_mises[outside].max()) if outside.any() else 0.0
-    return top if top > 0 else max(float(field.von_mises.max()), 1e-300)
-
-
-def _moved(field: Fields, factor: float, place: Corner | Peak) -> tuple[float, float]:
-    shift = factor * field.displacement[:, int(np.argmin(_near(field, place)))]
-    return place.x + float(shift[0]), place.y + float(shift[1])
-
-
-def _hatch(axes: "Axes", field: Fields, factor: float, corners: Sequence[Corner]) -> None:
-    from matplotlib.patches import Circle
-
-    radius = DISC * _plane.size_of(field.points)
-    for corner in corners:
-        place = _moved(field, factor, corner)
-        disc = Circle(place, radius, facecolor="#ffffff66", edgecolor="black", hatch="//////", zorder=5)
-        axes.add_patch(disc)
-
-
-def _mark(axes: "Axes", field: Fields, factor: float, marks: Sequence[Peak]) -> None:
-    symbols = "^svDPX*p"
-    for number, mark in enumerate(marks):
-        x, y = _moved(field, factor, mark)
-        axes.plot(
-            x,
-            y,
-            symbols[number % len(symbols)],
-            markersize=7,
-            markerfacecolor="#ffffff99",
-            markeredgecolor="black",
-            linestyle="none",
-            label=f"place of {middle(mark.names)}",
-            zorder=6,
-        )
-    if marks:
-        axes.figure.legend(loc="outside lower left", ncols=1)
-
-
-def _caption(factor: float, hatched: bool, marks: Sequence[Peak]) -> str:
+def _caption(solid: bool, factor: float, corners: Sequence[Corner], marks: Sequence[Peak]) -> str:
     times = numbers.at_step(factor, factor)
     scale = "at true scale" if factor == 1.0 else f"deformation drawn {times} times as large"
-    caption = f"Recovered von Mises stress on the finest mesh, {scale}; dashed: the undeformed outline."
-    if hatched:
+    where = "surface of the finest mesh" if solid else "finest mesh"
+    caption = f"Recovered von Mises stress on the {where}, {scale}; dashed: the undeformed outline."
+    if corners:
+        place, how = _singular(corners)
+        around = "tubes around them" if place == "edge" else "the discs"
         caption += (
-            " Hatched: singular corners, where stress has no limit; the colours end at the largest"
-            " stress outside the discs."
+            f" {how.capitalize()}: singular {place}s, where stress has no limit; the colours end at the"
+            f" largest stress outside {around}."
         )
     return caption + (" Marks: places of peak quantities on this mesh." if marks else "")

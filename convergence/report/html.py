@@ -38,6 +38,11 @@ def bullets(items: Sequence[str]) -> Html:
     return element("ul", {}, *(element("li", {}, text(item)) for item in items)) if items else Html("")
 
 
+def header(title: str, about: str) -> Html:
+    """Return the top of the page."""
+    return element("header", {}, element("h1", {}, text(title)), paragraph(about, "about"))
+
+
 def section(anchor: str, title: str, *children: Html) -> Html:
     """Return a main section of the page."""
     return element("section", {"id": anchor}, element("h2", {}, text(title)), join(*children))

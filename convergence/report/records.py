@@ -2,11 +2,13 @@
 
 import math
 import platform
+from collections.abc import Mapping
 from dataclasses import asdict
 from importlib import metadata
 from typing import Any
 
 from convergence import __version__
+from convergence.envelope import envelope
 from convergence.results import Check, Estimate, Findings, Level, Quantity, Verdict
 
 PACKAGES = ("numpy", "scipy", "scikit-fem")
@@ -53,6 +55,26 @@ def judge_object(findings: Findings) -> dict[str, Any]:
     }
 
 
+def cases_object(cases: Mapping[str, Findings]) -> dict[str, Any]:
+    """Return the objects of all load cases and the envelope of every quantity."""
+    quantities = next(iter(cases.values())).quantities
+    largest = {quantity.name: envelope(cases, quantity.name) for quantity in quantities}
+    return {
+        "all_sound": all(findings.all_sound for findings in cases.values()),
+        "cases": {name: judge_object(findings) for name, findings in cases.items()},
+        "envelope": {
+            name: {
+                "verdict": found.word,
+                "case": found.case,
+                "value": _number(found.value),
+                "low": _number(found.low),
+                "high": _number(found.high),
+            }
+            for name, found in largest.items()
+        },
+    }
+
+
 def _more(quantity: Quantity, verdict: Verdict) -> dict[str, Any]:
     """Return what findings.json says of a quantity beyond `judge_object`."""
     return {
@@ -68,6 +90,7 @@ def _more(quantity: Quantity, verdict: Verdict) -> dict[str, Any]:
         "next_cells": _number(verdict.next_cells),
         "next_dofs": _number(verdict.next_dofs),
         "next_seconds": _number(verdict.next_seconds),
+        "next_memory": _number(verdict.next_memory),
     }
 
 
@@ -77,6 +100,7 @@ def _level(level: Level) -> dict[str, Any]:
         "cells": int(level.cells),
         "dofs": int(level.dofs),
         "seconds": _number(level.seconds),
+        "memory": _number(level.memory),
         "values": {name: _number(value) for name, value in level.values.items()},
     }
 
@@ -99,8 +123,7 @@ def _facts(findings: Findings) -> dict[str, Any]:
         "degree": facts.degree,
         "dimension": facts.dimension,
         "size": _number(facts.size),
-        "yield_strength": _number(facts.yield_strength),
-        "yield_source": facts.yield_source,
+        "yields": {region: found and asdict(found) for region, found in facts.yields.items()},
         "exponent": _number(facts.exponent),
         "corners": corners,
     }

@@ -1,8 +1,9 @@
 """The end of the document: caution, and what it takes to get the same numbers again."""
 
+from collections.abc import Mapping
+
 from convergence.report import html, records
 from convergence.report.html import Html, text
-from convergence.results import Findings
 
 CAUTION = (
     "The discretization error is one part of the uncertainty of a result. It says how far the numbers are"
@@ -18,13 +19,9 @@ def caution_section() -> Html:
     return html.section("caution", "Caution", html.bullets(CAUTION))
 
 
-def trace_section(findings: Findings, study_text: str, study_name: str, command: str, date: str) -> Html:
-    """Return command, date, versions and the study itself."""
-    facts = {"study": study_name, "command": command, "date": date, "ladder": findings.ladder.source}
-    if findings.ladder.fingerprint:
-        facts["fingerprint"] = findings.ladder.fingerprint
-    facts.update(records.versions())
-    rows = [[text(name), text(value)] for name, value in facts.items()]
+def trace_section(facts: Mapping[str, str], study_text: str) -> Html:
+    """Return facts such as command and date, the versions and the study itself."""
+    rows = [[text(name), text(value)] for name, value in {**facts, **records.versions()}.items()]
     study = html.element("pre", {"tabindex": "0"}, text(study_text))
     return html.section(
         "trace",

@@ -33,7 +33,7 @@ def _corners(findings: Findings) -> Html:
     rows = [
         [
             text(corner.name),
-            text(f"{numbers.significant(corner.x, 4)}, {numbers.significant(corner.y, 4)}"),
+            text(corner.where),
             text(f"{numbers.significant(corner.opening, 4)}°"),
             text(" and ".join(corner.sides)),
             text(numbers.significant(corner.exponent, 4)),

@@ -1,11 +1,14 @@
 """The tables of verdicts and of methods as plain strings; the command line decides how they look."""
 
 import math
+from collections.abc import Mapping
 
+from convergence.envelope import envelope, worst_first
 from convergence.numbers import order, percent, significant
 from convergence.report import _words
 from convergence.results import Findings
 
+CASE_COLUMNS = ("quantity", "case", "verdict", "value", "next step")
 METHOD_COLUMNS = ("method", "order", "limit", "half-width", "of the value")
 COLUMNS = ("quantity", "value", "unit", "interval", "verdict", "order / theory", "next step")
 
@@ -26,6 +29,20 @@ def summary_rows(findings: Findings) -> list[tuple[str, ...]]:
                 _words.next_step(verdict),
             )
         )
+    return rows
+
+
+def case_rows(cases: Mapping[str, Findings]) -> list[tuple[str, ...]]:
+    """Return one row a quantity and case, worst case first, then one of its largest absolute value."""
+    rows: list[tuple[str, ...]] = []
+    for quantity in next(iter(cases.values())).quantities:
+        for case in worst_first(cases):
+            verdict = cases[case].verdicts[quantity.name]
+            value = _words.with_unit(_words.value_text(verdict), quantity.unit)
+            rows.append((quantity.name, case, verdict.word, value, _words.next_step(verdict)))
+        found = envelope(cases, quantity.name)
+        span = _words.with_unit(_words.span_text(found), quantity.unit)
+        rows.append((quantity.name, f"largest: {found.case}", found.word, span, ""))
     return rows
 
 

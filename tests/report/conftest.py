@@ -21,6 +21,10 @@ from convergence.results import (
 )
 
 NAN = math.nan
+Map = Callable[[np.ndarray, np.ndarray, np.ndarray], tuple[np.ndarray, ...]]
+
+# corners of a hexahedron's faces, counter-clockwise from outside; corner i, j, k is number 4 i + 2 j + k
+SIDES = ((0, 1, 3, 2), (4, 6, 7, 5), (0, 4, 5, 1), (2, 3, 7, 6), (0, 2, 6, 4), (1, 5, 7, 3))
 
 
 def make_verdict(word: str = "sound", **changes: object) -> Verdict:
@@ -29,7 +33,7 @@ def make_verdict(word: str = "sound", **changes: object) -> Verdict:
         "word": word, "value": 312.437, "limit": 313.9, "low": 310.441, "high": 314.433,
         "uncertainty": 1.996, "tolerance": 0.02 * 312.437, "behaviour": "monotone",
         "observed_order": 1.94, "formal_order": 2.0, "expected_order": 2.0, "next_h": NAN,
-        "next_cells": NAN, "next_dofs": NAN, "next_seconds": NAN, "coverage": None,
+        "next_cells": NAN, "next_dofs": NAN, "next_seconds": NAN, "next_memory": NAN, "coverage": None,
         "reasons": ("The last three changes fall with the order of theory.",),
     }  # fmt: skip
     return Verdict(**{**facts, **changes})  # type: ignore[arg-type]
@@ -125,12 +129,79 @@ def make_findings() -> Findings:
         Check("linear_range", False, "Peak stress of 314 is above yield of 300.", {"": "theory ends here"}),
         Check("solver_residual", None, "No matrix is known for a table."),
     )
-    corner = Corner("inner corner", 60.0, 60.0, 270.0, ("free", "free"), 0.5445)
+    corner = Corner("inner corner", ((60.0, 60.0),), ("inner",), 270.0, ("free", "free"), 0.5445)
     return Findings(
         "Bracket of the quayside davit", make_ladder(columns, h), quantities,
         Facts(degree=2, size=120.0, corners=(corner,)), {names[0]: estimate, names[1]: estimate}, checks,
         dict(zip(names, verdicts, strict=True)),
     )  # fmt: skip
+
+
+def surface(counts: tuple[int, int, int], place: Map) -> Fields:
+    """The surface of a grid of hexahedra over the unit cube, mapped by `place`; equal places are joined.
+
+    Sharp edges are those between faces more than 30 degrees apart. The stress is 1 everywhere.
+    """
+    lines = [np.linspace(0.0, 1.0, count + 1) for count in counts]
+    grid = np.array(place(*(part.ravel() for part in np.meshgrid(*lines, indexing="ij"))))
+    _, first, joined = np.unique(np.round(grid, 6), axis=1, return_index=True, return_inverse=True)
+    number = joined.reshape([count + 1 for count in counts])
+    i, j, k = (part.ravel() for part in np.indices(counts))
+    cells = np.array([number[i + a, j + b, k + c] for a in (0, 1) for b in (0, 1) for c in (0, 1)])
+    faces = np.hstack([cells[list(side)] for side in SIDES])
+    _, once, times = np.unique(np.sort(faces, axis=0), axis=1, return_index=True, return_counts=True)
+    faces = faces[:, np.sort(once[times == 1])]
+    points = grid[:, first]
+    edges, sharp = lines_of(points, faces)
+    return Fields(
+        points=points, cells=faces, edges=edges, boundary=edges[:, sharp],
+        displacement=np.zeros_like(points), von_mises=np.ones(points.shape[1]),
+        error=np.ones(faces.shape[1]),
+    )  # fmt: skip
+
+
+def lines_of(points: np.ndarray, faces: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
+    """The edges of the faces, each once, and which of them are sharp."""
+    a, b = points[:, faces[2]] - points[:, faces[0]], points[:, faces[3]] - points[:, faces[1]]
+    normals = np.cross(a, b, axis=0)
+    normals /= np.linalg.norm(normals, axis=0)
+    pairs = np.sort(np.hstack([faces[[k, (k + 1) % 4]] for k in range(4)]), axis=0)
+    order = np.lexsort(pairs)
+    pairs, face = pairs[:, order], (order % faces.shape[1])
+    assert (pairs[:, ::2] == pairs[:, 1::2]).all(), "a closed surface has two faces at every edge"
+    along = (normals[:, face[::2]] * normals[:, face[1::2]]).sum(axis=0)
+    return pairs[:, ::2], along < math.cos(math.radians(30.0))
+
+
+def cube(divisions: int) -> Fields:
+    return surface((divisions,) * 3, lambda x, y, z: (x, y, z))
+
+
+def drilled(divisions: int) -> Fields:
+    """A block of 40 by 40 by 20 with a hole of radius 10 along z."""
+
+    def place(s: np.ndarray, t: np.ndarray, u: np.ndarray) -> tuple[np.ndarray, ...]:
+        turn = -2 * math.pi * s
+        x, y = np.cos(turn), np.sin(turn)
+        square = 20.0 / np.maximum(abs(x), abs(y))
+        r = 10.0 + t * (square - 10.0)
+        return r * x, r * y, 20.0 * u
+
+    return surface((8 * divisions, 2 * divisions, 2 * divisions), place)
+
+
+def angle(divisions: int) -> Fields:
+    """A plate 4 thick and 30 wide, bent by 90 degrees about z: a leg of 40, a bend, another leg of 40."""
+
+    def place(s: np.ndarray, t: np.ndarray, u: np.ndarray) -> tuple[np.ndarray, ...]:
+        along, depth = 3 * s, 4.0 * t
+        turn = np.clip(along - 1, 0, 1) * math.pi / 2
+        r = 8.0 - depth
+        x = 40 * np.minimum(along, 1) + r * np.sin(turn)
+        y = 8.0 - r * np.cos(turn) + 40 * np.maximum(along - 2, 0)
+        return x, y, 30.0 * u
+
+    return surface((9 * divisions, divisions, 6 * divisions), place)
 
 
 @pytest.fixture(scope="session")
@@ -156,3 +227,18 @@ def verdict_of() -> Callable[..., Verdict]:
 @pytest.fixture(scope="session")
 def ladder_of() -> Callable[..., Ladder]:
     return make_ladder
+
+
+@pytest.fixture(scope="session", name="cube")
+def cube_of() -> Callable[[int], Fields]:
+    return cube
+
+
+@pytest.fixture(scope="session", name="drilled")
+def drilled_of() -> Callable[[int], Fields]:
+    return drilled
+
+
+@pytest.fixture(scope="session", name="angle")
+def angle_of() -> Callable[[int], Fields]:
+    return angle

@@ -11,10 +11,11 @@ import pytest
 from convergence.fields import Fields
 from convergence.report import _plane
 from convergence.report._axes import middle
+from convergence.report._marks import peaks
 from convergence.report.figures_error import error_map, norm_figure
 from convergence.report.figures_growth import growth_figure
 from convergence.report.figures_order import error_figure
-from convergence.report.figures_stress import deformation_factor, peaks
+from convergence.report.figures_stress import deformation_factor
 from convergence.report.figures_value import value_figure
 from convergence.results import Facts, Findings, Ladder, Quantity, Verdict
 
@@ -94,7 +95,7 @@ def test_energy_norm_only_where_recorded(findings: Findings, ladder_of: Callable
 
 def test_error_map_of_an_exact_solution_is_left_out(fields: list[Fields], units: object) -> None:
     empty = replace(fields[0], error=np.zeros_like(fields[0].error))
-    assert error_map(empty, units) is None  # type: ignore[arg-type]
+    assert error_map(empty, np.eye(2), units) is None  # type: ignore[arg-type]
 
 
 def test_deformation_is_shown_but_never_shrunk(fields: list[Fields]) -> None:
@@ -125,14 +126,14 @@ def test_quadrilaterals_are_split_without_loss(fields: list[Fields]) -> None:
 
 
 def test_peaks_at_one_place_share_a_mark(findings: Findings) -> None:
-    assert [(peak.names, peak.x) for peak in peaks(findings)] == [
-        ("fillet_stress", 62.0),
-        ("corner_stress", 60.0),
+    assert [(peak.names, peak.place) for peak in peaks(findings, 2)] == [
+        ("fillet_stress", (62.0, 60.0)),
+        ("corner_stress", (60.0, 60.0)),
     ]
     level = findings.ladder.levels[-1]
     moved = replace(level, values={**level.values, "fillet_stress.x": 60.0})
     together = replace(findings, ladder=replace(findings.ladder, levels=(moved,)))
-    assert [peak.names for peak in peaks(together)] == ["fillet_stress, corner_stress"]
+    assert [peak.names for peak in peaks(together, 2)] == ["fillet_stress, corner_stress"]
 
 
 def test_long_names_are_shortened_in_the_middle() -> None:
