@@ -7,7 +7,7 @@ READY := $(VENV)/ready
 export OPENBLAS_NUM_THREADS ?= 1
 
 .DEFAULT_GOAL := help
-.PHONY: help demo test check figures calibrate clean
+.PHONY: help demo test check figures calibrate bench clean
 
 help: ## show this help
 	@awk -F ':.*## ' '/^[a-z]+:.*## / {printf "  make %-10s %s\n", $$1, $$2}' $(MAKEFILE_LIST)
@@ -44,6 +44,10 @@ figures: $(READY) ## redraw the README's pictures from two studies: the lug and 
 
 calibrate: $(READY) ## measure how often each estimate covers the exact value: figures/coverage.md
 	$(BIN)/python -m convergence.calibration
+
+bench: $(READY) ## measure speed and memory against NGSolve: figures/performance.md (alone on the machine)
+	$(BIN)/python -m pip install --quiet --editable ".[bench]"
+	$(BIN)/python -m convergence.bench
 
 clean: ## remove what the targets made, the environment too
 	rm -rf $(VENV) out build *.egg-info .pytest_cache .mypy_cache .ruff_cache .hypothesis
