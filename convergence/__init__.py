@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
     from convergence.climbing import climb
+    from convergence.forecast import Budget
     from convergence.intake.ladder_file import read_ladder
     from convergence.intake.table import read_table
     from convergence.judgement import judge
@@ -19,6 +20,7 @@ if TYPE_CHECKING:
 __version__ = "0.1.0"
 
 __all__ = [
+    "Budget",
     "Findings",
     "Ladder",
     "Study",
@@ -36,6 +38,7 @@ _HOMES = {
     "read_table": "intake.table",
     "judge": "judgement",
     "write_report": "report.document",
+    "Budget": "forecast",
     "Findings": "results",
     "Ladder": "results",
     "Study": "study",

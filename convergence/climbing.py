@@ -1,25 +1,29 @@
 """A study climbed level by level: solve, measure, record, save; what was saved is not solved again."""
 
 import time
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
+from dataclasses import replace
 from itertools import pairwise
 from pathlib import Path
 from typing import Any
 
-from convergence import rooms
+from convergence import numbers, rooms
 from convergence.dimensions import Located
 from convergence.errors import Fault, InputError, SolvingError, Unsuitable
 from convergence.fem.display import display
-from convergence.fem.mesh import mesh
+from convergence.fem.mesh import count_nodes, mesh
 from convergence.fem.part import finer
 from convergence.fem.problem import Problem
-from convergence.fem.solution import Solution, solve
+from convergence.fem.solution import Solution, solve_cases
+from convergence.forecast import Budget, shortage
 from convergence.intake.ladder_file import read_ladder, write_ladder
 from convergence.ladder_spec import LadderSpec
+from convergence.memory import allowed_memory, peak_memory, reset_peak
 from convergence.results import Ladder, Level
 from convergence.study import Study
 
 LADDER = "ladder.csv"
+NO_LIMIT = Budget()
 
 
 def level_file(folder: Path, number: int) -> Path:
@@ -27,23 +31,62 @@ def level_file(folder: Path, number: int) -> Path:
     return folder / "levels" / f"level-{number}.npz"
 
 
-def climb(study: Study, folder: Path) -> Iterator[Level]:
+def climb(study: Study, folder: Path, budget: Budget = NO_LIMIT) -> Iterator[Level]:
     """Yield the levels from coarse to fine, each one saved in the folder before it is yielded.
 
     Levels that the folder already has for the same study are yielded as they are. A ladder of another
     study, a damaged or a longer one is kept under another name. SolvingError names the level that failed.
+
+    The cases of a study are solved together, level by level, each into the folder of its name; the
+    levels of the first one are yielded. A level that only some cases have is solved for the others.
+
+    A level that is foretold not to fit the budget or the memory of the machine is not begun, and one
+    that runs out of memory is given up: the ladder ends before it with a remark. A first level raises.
     """
     assert study.ladder is not None
-    problem = study.problem()
-    meshes = plan(study.ladder, problem)
-    levels = _saved(study, folder, study.ladder.levels)
-    yield from levels
-    (folder / "levels").mkdir(parents=True, exist_ok=True)
-    for number in range(len(levels), study.ladder.levels):
-        level = _level(study, problem, meshes[number], level_file(folder, number), number)
-        levels.append(level)
-        _save(study, levels, folder)
-        yield level
+    cases = study.cases or {"": study}
+    common = study.problem()
+    meshes = plan(study.ladder, common)
+    problems = {name: replace(case.problem(), part=common.part) for name, case in cases.items()}
+    saved = {name: _saved(case, folder / name, study.ladder.levels) for name, case in cases.items()}
+    first = next(iter(saved.values()))
+    remarks: tuple[str, ...] = ()
+    begun, sizes = time.perf_counter(), unknowns(study)
+    for number, counts in enumerate(meshes):
+        missing = {name: problem for name, problem in problems.items() if len(saved[name]) == number}
+        if missing:
+            within = replace(budget, memory=min(budget.memory, allowed_memory()))
+            why = shortage(first[:number], sizes[number], within, time.perf_counter() - begun)
+            try:
+                solved = {} if why else _level(cases, missing, counts, folder, number)
+            except MemoryError:
+                why = "memory ran out"
+            if why:
+                remarks = _ended(number, sizes[number], why)
+                break
+            for name, level in solved.items():
+                saved[name].append(level)
+                _save(cases[name], saved[name], folder / name)
+        yield first[number]
+    for name, case in cases.items():
+        ended = len(saved[name]) < study.ladder.levels
+        _save(case, saved[name], folder / name, remarks if ended else ())
+
+
+def _ended(number: int, dofs: int, why: str) -> tuple[str, ...]:
+    """Return the remark on a ladder that ends before a level; SolvingError where it has no other."""
+    what = f"level {number + 1} ({numbers.count(dofs)} unknowns) is not solved: {why}"
+    if number == 0:
+        raise SolvingError(f"{what}; ask for a coarser first level")
+    return (f"{what}; the levels before it are judged",)
+
+
+def unknowns(study: Study) -> list[int]:
+    """Return the number of unknowns of every level the study asks for."""
+    assert study.ladder is not None
+    problem, degree = study.problem(), study.ladder.degree
+    part = problem.part
+    return [part.dimension * count_nodes(part, counts, degree) for counts in plan(study.ladder, problem)]
 
 
 def plan(spec: LadderSpec, problem: Problem) -> list[dict[int, int]]:
@@ -52,13 +95,13 @@ def plan(spec: LadderSpec, problem: Problem) -> list[dict[int, int]]:
     counts = [finer(coarsest, spec.ratio, number) for number in range(spec.levels)]
     for number, (coarse, fine) in enumerate(pairwise(counts)):
         if coarse == fine:
-            what = f"levels {number} and {number + 1} have the same mesh"
+            what = f"levels {number + 1} and {number + 2} have the same mesh"
             raise InputError([Fault("[ladder]", what, "take a larger ratio or more divisions", spec.ratio)])
     return counts
 
 
-def _save(study: Study, levels: list[Level], folder: Path) -> None:
-    ladder = Ladder(tuple(levels), study.file.name, study.fingerprint, h_unit=study.units.length)
+def _save(study: Study, levels: list[Level], folder: Path, remarks: tuple[str, ...] = ()) -> None:
+    ladder = Ladder(tuple(levels), study.file.name, study.fingerprint, remarks, h_unit=study.units.length)
     write_ladder(ladder, folder / LADDER)
 
 
@@ -83,19 +126,40 @@ def _saved(study: Study, folder: Path, wanted: int) -> list[Level]:
     return levels
 
 
-def _level(study: Study, problem: Problem, counts: dict[int, int], fields: Path, number: int) -> Level:
-    assert study.ladder is not None
+def _level(
+    cases: Mapping[str, Study],
+    problems: Mapping[str, Problem],
+    counts: dict[int, int],
+    folder: Path,
+    number: int,
+) -> dict[str, Level]:
+    """Solve one level of problems that differ in their loads only; save their fields.
+
+    Seconds and memory are those of all these problems together.
+    """
+    spec = next(iter(cases.values())).ladder
+    assert spec is not None and spec.shape is not None
+    reset_peak()
     start = time.perf_counter()
+    values = {}
     try:
-        meshed = mesh(problem.part, counts, shape=study.ladder.shape, degree=study.ladder.degree)
-        solution = solve(problem, meshed)
-        values = {**_measured(study, solution), **_records(solution)}
-        display(solution).save(fields)
+        meshed = mesh(
+            next(iter(problems.values())).part,
+            counts,
+            shape=spec.shape,
+            degree=spec.degree,
+            formulation=spec.formulation,
+        )
+        solutions = solve_cases(list(problems.values()), meshed)
+        for name, solution in zip(problems, solutions, strict=True):
+            values[name] = {**_measured(cases[name], solution), **_records(solution)}
+            fields = level_file(folder / name, number)
+            fields.parent.mkdir(parents=True, exist_ok=True)
+            display(solution).save(fields)
     except SolvingError as error:
-        raise SolvingError(f"level {number}: {error}") from error
-    except MemoryError as error:
-        raise SolvingError(f"level {number}: out of memory; the levels before it are kept") from error
-    return Level(meshed.h, meshed.cells, len(solution.load), time.perf_counter() - start, values)
+        raise SolvingError(f"level {number + 1}: {error}") from error
+    dofs, seconds, memory = meshed.nodes.size, time.perf_counter() - start, peak_memory()
+    return {name: Level(meshed.h, meshed.cells, dofs, seconds, v, memory) for name, v in values.items()}
 
 
 def _measured(study: Study, solution: Solution) -> dict[str, float]:
@@ -117,7 +181,9 @@ def _measured(study: Study, solution: Solution) -> dict[str, float]:
 
 def _numbers(name: str, measured: Any) -> dict[str, float]:
     if isinstance(measured, Located):
-        return {name: measured.value, f"{name}.x": measured.x, f"{name}.y": measured.y}
+        places = {"x": measured.x, "y": measured.y, "z": measured.z}
+        found = {f"{name}.{axis}": place for axis, place in places.items() if place is not None}
+        return {name: measured.value, **found}
     return {name: float(measured)}
 
 

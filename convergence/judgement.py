@@ -6,11 +6,12 @@ from dataclasses import replace
 import numpy as np
 
 from convergence import rooms
-from convergence.checks.linear_range import PEAK
+from convergence.checks.linear_range import own_peaks
 from convergence.fem.corners import singular_corners
-from convergence.fem.part import Part
+from convergence.fem.material import Material
+from convergence.fem.problem import AnyPart
 from convergence.intervals import Interval, interval
-from convergence.results import Check, Corner, Facts, Findings, Ladder, Quantity
+from convergence.results import Check, Corner, Facts, Findings, Ladder, Quantity, Yield
 from convergence.study import Study
 from convergence.verdicts import verdict
 
@@ -20,13 +21,9 @@ BALANCES = ("equilibrium.force", "energy_balance.difference", "solver_residual.r
 def facts_of(study: Study) -> Facts:
     """Return what theory and the study say beside the numbers."""
     quantities = study.quantities
-    facts = Facts(
-        dimension=study.dimension,
-        yield_strength=study.material.yield_strength,
-        yield_source=study.material.yield_source,
-    )
+    facts = Facts(dimension=study.dimension)
     if study.ladder is None:
-        return facts
+        return replace(facts, yields={"": _yield(study.materials["material"])})
     problem = study.problem()
     corners = singular_corners(problem)
     return replace(
@@ -36,26 +33,32 @@ def facts_of(study: Study) -> Facts:
         corners=corners,
         covered={q.name: _covered(q, problem.part, corners) for q in quantities},
         components={q.name: str(q.arguments.get("component", "")) for q in quantities},
+        regions={q.name: str(q.arguments.get("region") or "") for q in quantities},
+        yields={region: _yield(material) for region, material in problem.materials.items()},
     )
 
 
-def _covered(quantity: Quantity, part: Part, corners: tuple[Corner, ...]) -> tuple[Corner, ...]:
+def _yield(material: Material) -> Yield | None:
+    strength = material.yield_strength
+    return None if strength is None else Yield(strength, material.yield_source)
+
+
+def _covered(quantity: Quantity, part: AnyPart, corners: tuple[Corner, ...]) -> tuple[Corner, ...]:
     """Return the singular corners within the reach of a quantity."""
     covers = rooms.beside("quantities", quantity.measure_name, "covers")
     if covers is None:
         return ()
-    return tuple(corner for corner in corners if covers(part, corner.name, quantity.arguments))
+    return tuple(corner for corner in corners if covers(part, corner, quantity.arguments))
 
 
 def judge(ladder: Ladder, quantities: tuple[Quantity, ...], facts: Facts, title: str) -> Findings:
     """Return estimates, checks and a verdict for every quantity of a ladder."""
     intervals = {q.name: _interval(ladder, q.name, q.formal_order) for q in quantities}
-    stated = {name: (found.low, found.high) for name, found in intervals.items()}
-    peak = _interval(ladder, PEAK, None)
+    peaks = {name: _interval(ladder, name, None) for name in own_peaks(ladder)}
     facts = replace(
         facts,
         kinds={q.name: q.kind for q in quantities},
-        intervals={**stated, PEAK: (peak.low, peak.high)},
+        intervals={name: (found.low, found.high) for name, found in (intervals | peaks).items()},
     )
     checks = tuple(rooms.find("checks", name)(ladder, facts) for name in rooms.names("checks"))
     return Findings(

@@ -84,7 +84,10 @@ def _misplaced(
         if isinstance(value, str) and value not in names.get(parameter.names, (value,)):
             what = f"the model has no such {parameter.names}"
             faults.append(Fault(place(parameter.name), what, nearest(value, names[parameter.names]), value))
-        placed = parameter.on_part and isinstance(value, tuple)
-        if placed and not problem.part.contains(np.array(value)[:, None])[0]:
-            faults.append(Fault(place(parameter.name), "outside the part", "a place on the part", value))
+        if isinstance(value, tuple) and "point" in parameter.forms:
+            if len(value) != problem.part.dimension:
+                right = f"[{', '.join('xyz'[: problem.part.dimension])}]"
+                faults.append(Fault(place(parameter.name), "a point of another dimension", right, value))
+            elif parameter.on_part and not problem.part.contains(np.array(value)[:, None])[0]:
+                faults.append(Fault(place(parameter.name), "outside the part", "a place on the part", value))
     return faults

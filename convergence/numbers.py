@@ -9,6 +9,9 @@ from decimal import ROUND_CEILING, ROUND_FLOOR, ROUND_HALF_EVEN, Decimal
 
 NONE = "none"
 MOST_DIGITS = 17  # tells any two doubles apart
+Scale = tuple[tuple[float, str], ...]
+TIME: Scale = ((3600.0, "h"), (60.0, "min"), (1.0, "s"))  # in seconds
+MEMORY: Scale = ((1e6, "TB"), (1e3, "GB"), (1.0, "MB"))  # in MB
 
 
 def _decimal(value: float) -> Decimal:
@@ -177,8 +180,28 @@ def count(number: float) -> str:
     return f"{number:,.0f}"
 
 
-def cost(cells: float, dofs: float, seconds: float) -> str:
+def amount(value: float, scale: Scale) -> str:
+    """Return a positive amount to two digits in the largest unit that fits: 2345 MB is 2.3 GB."""
+    size, unit = _unit(value, scale)
+    return f"{significant(value / size, 2)} {unit}"
+
+
+def amounts(value: float, limit: float, scale: Scale) -> tuple[str, str]:
+    """Return an amount and its limit; in one unit and so that the texts compare as the numbers, if near."""
+    if value > 10.0 * limit:
+        return amount(value, scale), amount(limit, scale)
+    size, unit = _unit(value, scale)
+    shown, accepted = both_sides(value / size, limit / size, 2)
+    return f"{shown} {unit}", f"{accepted} {unit}"
+
+
+def _unit(value: float, scale: Scale) -> tuple[float, str]:
+    return next((step for step in scale if value >= step[0]), scale[-1])
+
+
+def cost(cells: float, dofs: float, seconds: float, memory: float) -> str:
     """Return what is known of the cost of a mesh, in brackets after a blank; "" where nothing is."""
     parts = [f"{count(n)} {what}" for n, what in ((cells, "cells"), (dofs, "unknowns")) if n > 0]
-    parts += [f"about {significant(seconds, 2)} s"] if seconds > 0 else []
+    parts += [f"about {amount(seconds, TIME)}"] if seconds > 0 else []
+    parts += [f"about {amount(memory, MEMORY)} of memory"] if memory > 0 else []
     return f" ({', '.join(parts)})" if parts else ""

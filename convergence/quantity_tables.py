@@ -1,15 +1,22 @@
 """What every [quantities.NAME] table of a study has: a name and the accepted error."""
 
+import re
 from collections.abc import Callable
 from dataclasses import dataclass
-from typing import Annotated
+from typing import Annotated, Literal
 
 from convergence.bind import bind, parameters
 from convergence.dimensions import RATIO, Bounds, Units
 from convergence.errors import Fault
 from convergence.tomlfile import TomlFile
 
-RESERVED = ("h", "cells", "nodes", "dofs", "seconds")
+Thing = Literal["quantity", "case"]
+EXAMPLES = {"quantity": "peak_stress", "case": "side_pull"}
+KEEPERS = {"quantity": "ladder", "case": "folder of a run"}
+RESERVED = {
+    "quantity": ("h", "cells", "nodes", "dofs", "seconds", "memory"),
+    "case": ("levels", "figures"),
+}
 ASSUMED_TOLERANCE = 0.05
 
 Tolerance = Annotated[float, RATIO, Bounds(low=0.0)]
@@ -38,13 +45,14 @@ def tolerances(
 TOLERANCE_KEYS = tuple(parameter.name for parameter in parameters(tolerances))
 
 
-def name_fault(name: str, where: str) -> Fault | None:
-    """Return what is wrong with a quantity's name."""
-    right = "use letters, digits, _ and -, such as peak_stress"
-    if not name.strip() or "." in name or name != name.strip():
-        return Fault(where, "not a name for a quantity", right, name)
-    if name.lower() in RESERVED:
-        return Fault(where, "a name the ladder keeps for itself", right, name)
+def name_fault(name: str, where: str, thing: Thing) -> Fault | None:
+    """Return what is wrong with the name of a quantity or a case, which is also that of a folder."""
+    right = f"use letters, digits, _ and -, such as {EXAMPLES[thing]}"
+    plain = thing == "quantity" or re.fullmatch(r"[\w-]+", name)
+    if not name.strip() or "." in name or name != name.strip() or not plain:
+        return Fault(where, f"not a name for a {thing}", right, name)
+    if name.lower() in RESERVED[thing]:
+        return Fault(where, f"a name the {KEEPERS[thing]} keeps for itself", right, name)
     return None
 
 

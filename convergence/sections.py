@@ -6,7 +6,7 @@ from typing import Any, TypeVar
 from convergence.bind import bind
 from convergence.dimensions import Units
 from convergence.errors import Fault, InputError, Unsuitable
-from convergence.quantity_tables import name_fault
+from convergence.quantity_tables import Thing, name_fault
 from convergence.tomlfile import TomlFile
 
 T = TypeVar("T")
@@ -41,27 +41,26 @@ class Sections:
         self,
         function: Callable[..., Any],
         table: Mapping[str, Any],
-        section: str,
-        *,
+        *section: str,
         given: Iterable[str] = (),
         also: Iterable[str] = (),
     ) -> dict[str, Any] | None:
         """Return the arguments of a table, None where it has faults."""
 
         def where(key: str) -> str:
-            return self.file.where(section, key if key in table else "")
+            return self.file.where(*section, key if key in table else "")
 
         arguments, faults = bind(function, table, where=where, units=self.units, given=given, also=also)
         self.faults += faults
         return None if faults else arguments
 
-    def called(self, function: Callable[..., T], arguments: Mapping[str, Any], section: str) -> T | None:
+    def called(self, function: Callable[..., T], arguments: Mapping[str, Any], *section: str) -> T | None:
         """Return what the function makes of its arguments, None where it refuses them."""
         try:
             return function(**arguments)
         except Unsuitable as error:
             for key, found, right in error.problems:
-                self.fault((section, key), f"unsuitable {key}", right, found)
+                self.fault((*section, key), f"unsuitable {key}", right, found)
         except InputError as error:
             self.faults += error.faults
         return None
@@ -71,16 +70,16 @@ class Sections:
         arguments = self.bound(function, self.table(section), section)
         return None if arguments is None else self.called(function, arguments, section)
 
-    def quantity_names(self) -> list[str]:
-        """Return the names of the [quantities.NAME] tables that can be read."""
+    def named(self, section: str, thing: Thing) -> list[str]:
+        """Return the names of the [SECTION.NAME] tables that can be read."""
         good = []
-        for name, table in self.table("quantities").items():
-            keys = ("quantities", name)
-            fault = name_fault(name, self.file.where(*keys))
+        for name, table in self.table(section).items():
+            keys = (section, name)
+            fault = name_fault(name, self.file.where(*keys), thing)
             if fault:
                 self.faults.append(fault)
             elif not isinstance(table, dict):
-                self.fault(keys, "not a table", f"write [quantities.{name}] and its keys below", table)
+                self.fault(keys, "not a table", f"write [{section}.{name}] and its keys below", table)
             else:
                 good.append(name)
         return good

@@ -1,27 +1,26 @@
 """A study file, read and checked: what is to be solved or which table is to be judged, and what counts."""
 
-import hashlib
-import json
 from collections.abc import Mapping
-from dataclasses import asdict, dataclass, replace
+from dataclasses import dataclass, field, replace
 from pathlib import Path
 from typing import Annotated, Any
 
-from convergence import __version__, rooms
+from convergence import rooms
 from convergence.bind import bind
+from convergence.cases import own_loads
 from convergence.columns import bare_quantities, read_column
 from convergence.dimensions import SYSTEMS, Units
-from convergence.errors import Fault, InputError, listing, nearest
-from convergence.fem.material import Material, material
+from convergence.errors import Fault, InputError, nearest
+from convergence.fem.material import Material
 from convergence.fem.problem import Problem
 from convergence.intake.table import table
-from convergence.ladder_spec import LadderSpec, ladder
-from convergence.measured import read_measured
+from convergence.ladder_spec import LadderSpec
+from convergence.model_study import digest, material_tables, read_materials, read_model
 from convergence.results import Ladder, Quantity
 from convergence.sections import Sections
 from convergence.tomlfile import read_toml
 
-SECTIONS = ("model", "table", "ladder", "material", "quantities")
+SECTIONS = ("model", "cases", "table", "ladder", "quantities")
 DEFAULT_SYSTEM = "mm, N, MPa"
 
 
@@ -30,7 +29,9 @@ class Study:
     """What a study file says. Either `model`, `arguments` and `ladder`, or `table`, is there.
 
     `table` is the ladder of the table, its columns under the names of the quantities; `table_file` is
-    where it stands. `fingerprint` changes with everything that changes a number of a level.
+    where it stands. `materials` are under the names of their tables. `fingerprint` changes with everything
+    that changes a number of a level. `cases` are studies of their own that differ in their loads only: then
+    they are what is solved and judged.
     """
 
     file: Path
@@ -39,7 +40,7 @@ class Study:
     unit_system: str
     units: Units
     quantities: tuple[Quantity, ...]
-    material: Material
+    materials: Mapping[str, Material]
     text: str
     fingerprint: str
     model: str = ""
@@ -48,21 +49,32 @@ class Study:
     table: Ladder | None = None
     table_file: Path | None = None
     dimension: int = 2
+    cases: Mapping[str, "Study"] = field(default_factory=dict)
 
     def problem(self) -> Problem:
         """Return the problem of a model study."""
         if self.arguments is None:
             raise InputError([Fault(str(self.file), "a table study has nothing to solve", "give [model]")])
-        problem: Problem = rooms.find("models", self.model)(**self.arguments, material=self.material)
+        problem: Problem = rooms.find("models", self.model)(**self.arguments, **self.materials)
         return problem
+
+    def own_loads(self) -> dict[str, str]:
+        """Return what each case has of its own, in words."""
+        function = rooms.find("models", self.model)
+        return {
+            name: own_loads(function, self.arguments or {}, case.arguments or {}, self.units)
+            for name, case in self.cases.items()
+        }
 
 
 def load(path: Path, *, name: str = "") -> Study:
     """Read a study; `InputError` has every fault of the file. The name is the file's where none is given."""
     sections = Sections(read_toml(path), SYSTEMS[DEFAULT_SYSTEM])
     data = sections.file.data
-    said = {key: value for key, value in data.items() if key not in SECTIONS}
-    arguments, faults = bind(head, said, where=sections.file.where, units=sections.units, also=SECTIONS)
+    needed = material_tables(sections)
+    tables = (*SECTIONS, *needed)
+    said = {key: value for key, value in data.items() if key not in tables}
+    arguments, faults = bind(head, said, where=sections.file.where, units=sections.units, also=tables)
     title, system = sections.keep(head(**arguments), faults)
     if system in SYSTEMS:
         sections.units = SYSTEMS[system]
@@ -75,7 +87,7 @@ def load(path: Path, *, name: str = "") -> Study:
         unit_system=system,
         units=sections.units,
         quantities=(),
-        material=_material(sections),
+        materials=read_materials(sections, needed),
         text=sections.file.text,
         fingerprint="",
     )
@@ -98,64 +110,34 @@ def head(
     return title, units
 
 
-def _material(sections: Sections) -> Material:
-    found = sections.read(material, "material") or material()
-    if found.yield_strength is not None and not found.yield_source.strip():
-        right = 'add yield_source = "where the value stands"'
-        sections.fault(("material", "yield_strength"), "a yield strength without its source", right)
-    return found
-
-
 def _model_study(sections: Sections, blank: Study) -> Study:
-    spec = sections.read(ladder, "ladder") or ladder()
-    model, arguments, problem = _model(sections, blank.material)
-    asked = sections.quantity_names()
-    if not sections.file.data.get("quantities"):
-        sections.fault((), "no quantity of interest", "add [quantities.NAME] with measure = ...")
-    found = [
-        sections.keep(*read_measured(sections.file, name, spec.degree, spec.shape, blank.units, problem))
-        for name in asked
-    ]
-    kept = [item for item in found if item]
-    parts = {
-        "version": __version__,
-        "units": blank.unit_system,
-        "model": [model, arguments],
-        "elastic": [blank.material.young, blank.material.poisson],
-        "ladder": {**asdict(spec), "levels": None},
-        "quantities": {item.quantity.name: [item.measure, item.arguments] for item in kept},
-    }
-    return replace(
+    found = read_model(sections, blank.materials, blank.unit_system)
+    study = replace(
         blank,
-        model=model,
-        arguments=arguments,
-        ladder=spec,
-        quantities=tuple(item.quantity for item in kept),
-        fingerprint=_digest(parts),
+        model=found.model,
+        arguments=found.arguments,
+        ladder=found.ladder,
+        quantities=found.quantities,
+        dimension=found.dimension,
+        fingerprint=found.fingerprint(found.arguments),
     )
-
-
-def _model(sections: Sections, of: Material) -> tuple[str, dict[str, Any], Problem | None]:
-    """Return the model, its arguments and its problem (None where it cannot be built)."""
-    said, members = sections.table("model"), rooms.names("models")
-    model = said.get("name")
-    if model not in members:
-        missing = model is None
-        what = "the key 'name' is missing" if missing else "unknown model"
-        right = f"add name = one of {listing(members)}" if missing else nearest(str(model), members)
-        sections.fault(("model", "name"), what, right, model)
-        return "", {}, None
-    function = rooms.find("models", model)
-    arguments = sections.bound(function, said, "model", given=("material",), also=("name",))
-    if arguments is None:
-        return model, {}, None
-    problem: Problem | None = sections.called(function, {**arguments, "material": of}, "model")
-    return model, arguments, problem
+    cases = {
+        name: replace(
+            study,
+            name=f"{blank.name}/{name}",
+            title=f"{blank.title}: {name}",
+            arguments=arguments,
+            fingerprint=found.fingerprint(arguments),
+        )
+        for name, arguments in found.cases.items()
+    }
+    return replace(study, cases=cases)
 
 
 def _table_study(sections: Sections, blank: Study) -> Study:
-    if "ladder" in sections.file.data:
-        sections.fault(("ladder",), "a table study has no ladder of its own", "remove [ladder]")
+    for section, what in (("ladder", "ladder of its own"), ("cases", "load cases")):
+        if section in sections.file.data:
+            sections.fault((section,), f"a table study has no {what}", f"remove [{section}]")
     arguments = sections.bound(table, sections.table("table"), "table")
     if arguments is None:
         return blank
@@ -164,7 +146,7 @@ def _table_study(sections: Sections, blank: Study) -> Study:
     if read is None:
         return blank
     found, units = read
-    asked = sections.quantity_names()
+    asked = sections.named("quantities", "quantity")
     pairs = [
         sections.keep((q, source), faults)
         for q, source, faults in (read_column(sections.file, name, blank.units, units) for name in asked)
@@ -180,7 +162,7 @@ def _table_study(sections: Sections, blank: Study) -> Study:
         table=_renamed(found, sources),
         table_file=path,
         dimension=arguments["dimension"],
-        fingerprint=_digest({"table": path.read_text(encoding="utf-8-sig"), "columns": sources}),
+        fingerprint=digest({"table": path.read_text(encoding="utf-8-sig"), "columns": sources}),
     )
 
 
@@ -193,14 +175,10 @@ def _beside(study: Path, file: str) -> Path:
 
 def _renamed(found: Ladder, sources: Mapping[str, str]) -> Ladder:
     """Return the ladder with the columns under the names of the quantities, and their places."""
-    columns = {name + end: source + end for name, source in sources.items() for end in ("", ".x", ".y")}
+    columns = {name + end: source + end for name, source in sources.items() for end in ("", ".x", ".y", ".z")}
     levels = tuple(
         replace(lv, values={new: lv.values[old] for new, old in columns.items() if old in lv.values})
         for lv in found.levels
     )
     fine = {new: found.resolution[old] for new, old in columns.items() if old in found.resolution}
     return replace(found, levels=levels, resolution=fine)
-
-
-def _digest(parts: Mapping[str, Any]) -> str:
-    return hashlib.sha256(json.dumps(parts, sort_keys=True).encode()).hexdigest()[:16]

@@ -8,7 +8,7 @@ from typing import Any
 from convergence import rooms
 from convergence.bind import REQUIRED, Parameter, parameters
 from convergence.dimensions import SYSTEMS
-from convergence.fem.material import material
+from convergence.fem.material import material, material_names
 from convergence.ladder_spec import ladder
 
 UNITS = "mm, N, MPa"
@@ -18,6 +18,7 @@ WIDTH = 30
 def study_template(model: str) -> str:
     """Return the text of a study file; `InputError` where there is no such model."""
     function = rooms.find("models", model)
+    materials = material_names(function)
     about = rooms.shelf("models")[model]
     wanted: Mapping[str, Mapping[str, Any]] = rooms.beside("models", model, "QUANTITIES") or {}
     lines = [
@@ -26,8 +27,8 @@ def study_template(model: str) -> str:
         "",
         f"title = {_toml(about.rstrip('.'))}",
         _line(f"units = {_toml(UNITS)}", f"one of: {'; '.join(SYSTEMS)}"),
-        *_section("model", function, given=["material"], first={"name": model}),
-        *_section("material", material),
+        *_section("model", function, given=materials, first={"name": model}),
+        *(line for name in materials for line in _section(name, material)),
         *_section("ladder", ladder, first={"divisions": 2}),
         "",
         "# A quantity is sound when its interval lies inside the tolerance.",

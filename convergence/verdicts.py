@@ -4,11 +4,10 @@ import math
 from collections.abc import Mapping
 from dataclasses import dataclass
 
-import numpy as np
-
 from convergence import numbers
+from convergence.forecast import STEEPEST_MEMORY, STEEPEST_TIME, grown
 from convergence.intervals import LEAST_ORDER, Interval
-from convergence.results import Facts, Ladder, Level, Quantity, Verdict, VerdictWord
+from convergence.results import Facts, Ladder, Quantity, Verdict, VerdictWord
 
 MOST_ORDER = 4.0
 AFFORDABLE_DOFS = 5e7
@@ -24,6 +23,7 @@ class Next:
     cells: float = math.nan
     dofs: float = math.nan
     seconds: float = math.nan
+    memory: float = math.nan
 
 
 def verdict(
@@ -51,6 +51,7 @@ def verdict(
         next_cells=ahead.cells,
         next_dofs=ahead.dofs,
         next_seconds=ahead.seconds,
+        next_memory=ahead.memory,
         coverage=None,
         reasons=tuple(_reasons(quantity, found, spoiled, tolerance, expected, ahead, word)),
     )
@@ -97,22 +98,14 @@ def _next_mesh(
     finest = ladder.levels[-1]
     h = finest.h * max((tolerance / found.half_width) ** (1.0 / order), OUT_OF_REACH)
     growth = (finest.h / h) ** facts.dimension
+    counts = list((finest.h / ladder.h) ** facts.dimension)
     return Next(
         h,
         finest.cells * growth,
         finest.dofs * growth,
-        finest.seconds * growth ** _cost_exponent(ladder.levels),
+        grown(counts, [level.seconds for level in ladder.levels], growth, steepest=STEEPEST_TIME),
+        grown(counts, [level.memory for level in ladder.levels], growth, steepest=STEEPEST_MEMORY),
     )
-
-
-def _cost_exponent(levels: tuple[Level, ...]) -> float:
-    """Return how seconds grow with unknowns, from the last two levels, between 1 and 2."""
-    if len(levels) < 2:
-        return 1.5
-    coarse, fine = levels[-2], levels[-1]
-    if min(coarse.seconds, fine.seconds, coarse.dofs) <= 0.0 or fine.dofs <= coarse.dofs:
-        return 1.5
-    return float(np.clip(np.log(fine.seconds / coarse.seconds) / np.log(fine.dofs / coarse.dofs), 1.0, 2.0))
 
 
 def _reasons(
@@ -182,7 +175,7 @@ def _about_tolerance(
         accepted_text += " The value is zero within its interval: give an absolute_tolerance."
     lines = [accepted_text]
     if word == "refine" and math.isfinite(ahead.h):
-        cost = numbers.cost(ahead.cells, ahead.dofs, ahead.seconds)
+        cost = numbers.cost(ahead.cells, ahead.dofs, ahead.seconds, ahead.memory)
         lines.append(f"A cell size of about {ahead.h:.3g}{cost} would do, if the order holds.")
         if ahead.dofs > AFFORDABLE_DOFS:
             lines.append(

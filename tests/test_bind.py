@@ -7,18 +7,19 @@ import pytest
 from convergence.bind import REQUIRED, bind, parameters
 from convergence.dimensions import (
     LENGTH,
+    RATIO,
     SYSTEMS,
     BoundaryName,
     Bounds,
     Point,
     PointName,
-    PoissonRatio,
     PositiveLength,
     Ratio,
     Stress,
 )
 
 MILLIMETRES = SYSTEMS["mm, N, MPa"]
+A_POINT = "a point [x, y] [mm] or [x, y, z] in a solid"
 
 
 def part(
@@ -28,7 +29,7 @@ def part(
     thickness: PositiveLength,
     shape: Literal["triangle", "quadrilateral"] = "triangle",
     degree: Literal[1, 2] = 2,
-    poisson: PoissonRatio = 0.3,
+    poisson: Annotated[float, RATIO, Bounds(-1.0, 0.5)] = 0.3,
     levels: Annotated[int, Bounds(1, 12, closed=True)] = 5,
     ratio: Ratio = 2.0,
     pressure: Stress | None = None,
@@ -56,11 +57,12 @@ def test_a_signature_is_read() -> None:
     assert found["width"].wanted(MILLIMETRES) == "a number [mm], 0 < value"
     assert found["thickness"].default is REQUIRED
     assert found["pressure"].optional and found["pressure"].default is None
-    assert found["at"].forms == ("point", "text") and found["at"].names == "point"
+    assert found["at"].forms == ("point", "point of a solid", "text") and found["at"].names == "point"
     assert found["at"].doc == "where"
-    assert found["at"].wanted(MILLIMETRES) == "a point [x, y] [mm] or a text that names a point"
+    wanted = "a point [x, y] [mm] or [x, y, z] in a solid or a text that names a point"
+    assert found["at"].wanted(MILLIMETRES) == wanted
     assert found["shape"].wanted(MILLIMETRES) == 'one of "triangle", "quadrilateral"'
-    assert found["points"].many and found["points"].forms == ("point",)
+    assert found["points"].many and found["points"].forms == ("point", "point of a solid")
     assert found["boundary"].names == "boundary"
 
 
@@ -93,12 +95,13 @@ def test_good_values_become_arguments() -> None:
     part(None, **arguments)
 
 
-def test_a_point_is_two_numbers() -> None:
+def test_a_point_is_two_numbers_or_three() -> None:
     assert bound(thickness=1.0, at=[1, 2])[0]["at"] == (1.0, 2.0)
-    for wrong in ([1], [1, 2, 3], ["a", 2], [True, 2], 1.0):
+    assert bound(thickness=1.0, at=[1, 2, 3])[0]["at"] == (1.0, 2.0, 3.0)
+    for wrong in ([1], [1, 2, 3, 4], ["a", 2], ["a", 2, 3], [True, 2], 1.0):
         assert bound(thickness=1.0, at=wrong)[1] == [
-            f"f.toml:1: at: not a point or a text, got {wrong!r}; "
-            "give a point [x, y] [mm] or a text that names a point"
+            f"f.toml:1: at: not a point or a point of a solid or a text, got {wrong!r}; "
+            "give a point [x, y] [mm] or [x, y, z] in a solid or a text that names a point"
         ]
 
 
@@ -120,12 +123,16 @@ def test_a_point_is_two_numbers() -> None:
         ("degree", True, "not one of the choices, got True; give one of 1, 2"),
         ("boundary", 3, "not a text, got 3; give a text that names a boundary"),
         ("smooth", 1, "not true or false, got 1; give true or false"),
-        ("points", [[1, 2], [3]], "not a point, got [[1, 2], [3]]; give a list, each a point [x, y] [mm]"),
-        ("points", 3, "not a list, got 3; give a list, each a point [x, y] [mm]"),
+        (
+            "points",
+            [[1, 2], [3]],
+            f"not a point or a point of a solid, got [[1, 2], [3]]; give a list, each {A_POINT}",
+        ),
+        ("points", 3, f"not a list, got 3; give a list, each {A_POINT}"),
         (
             "points",
             [[1, float("inf")]],
-            "not a finite number, got [[1, inf]]; give a list, each a point [x, y] [mm]",
+            f"not a finite number, got [[1, inf]]; give a list, each {A_POINT}",
         ),
         ("widht", 3, "unknown key; did you mean 'width'?"),
     ],

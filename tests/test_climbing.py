@@ -1,5 +1,6 @@
-"""Climbing: saved level by level, continued after a kill with the same numbers, no level solved twice."""
+"""Climbing: saved level by level, continued after a kill, ended before what is too much; nothing twice."""
 
+import time
 from collections.abc import Callable
 from itertools import pairwise
 from pathlib import Path
@@ -8,11 +9,13 @@ import numpy as np
 import pytest
 
 from convergence import climbing
-from convergence.climbing import LADDER, climb, level_file, plan
+from convergence.climbing import LADDER, climb, level_file, plan, unknowns
 from convergence.errors import InputError, SolvingError
 from convergence.fields import load_fields
+from convergence.forecast import Budget
 from convergence.intake.ladder_file import read_ladder
 from convergence.ladder_spec import ladder as ladder_spec
+from convergence.memory import peak_memory
 from convergence.results import Ladder, Level
 from convergence.rooms import names
 from convergence.study import Study, load
@@ -53,7 +56,7 @@ def study(folder: Path, **changes: object) -> Study:
 
 
 def numbers(ladder: Ladder) -> list[tuple]:
-    """Everything of the levels but the seconds."""
+    """Everything of the levels but seconds and memory."""
     return [(level.h, level.cells, level.dofs, dict(level.values)) for level in ladder.levels]
 
 
@@ -61,13 +64,13 @@ def numbers(ladder: Ladder) -> list[tuple]:
 def solved(monkeypatch: pytest.MonkeyPatch) -> list[int]:
     """The cells of every mesh that is solved."""
     seen: list[int] = []
-    original = climbing.solve
+    original = climbing.solve_cases
 
-    def counting(problem: object, meshed: object) -> object:
+    def counting(problems: object, meshed: object) -> object:
         seen.append(meshed.cells)
-        return original(problem, meshed)
+        return original(problems, meshed)
 
-    monkeypatch.setattr(climbing, "solve", counting)
+    monkeypatch.setattr(climbing, "solve_cases", counting)
     return seen
 
 
@@ -175,28 +178,111 @@ def test_a_damaged_ladder_is_put_aside(tmp_path: Path, folder: Path) -> None:
     assert (folder / "ladder-damaged.csv").read_text() == text[: len(text) // 2]
 
 
-@pytest.mark.parametrize(
-    ("raised", "told"),
-    [
-        (SolvingError("the cells are badly shaped"), "level 2: the cells are badly shaped"),
-        (MemoryError(), "level 2: out of memory; the levels before it are kept"),
-    ],
-)
+def fail(monkeypatch: pytest.MonkeyPatch, cells: int, error: Exception) -> None:
+    """Let the solution of the mesh with so many cells raise."""
+    original: Callable = climbing.solve_cases
+
+    def failing(problems: object, meshed: object) -> object:
+        if meshed.cells == cells:
+            raise error
+        return original(problems, meshed)
+
+    monkeypatch.setattr(climbing, "solve_cases", failing)
+
+
 def test_a_level_that_fails_is_named_and_the_others_are_kept(
-    raised: Exception, told: str, tmp_path: Path, folder: Path, monkeypatch: pytest.MonkeyPatch
+    tmp_path: Path, folder: Path, monkeypatch: pytest.MonkeyPatch
 ) -> None:
-    original: Callable = climbing.solve
-
-    def failing(problem: object, meshed: object) -> object:
-        if meshed.cells == 288:
-            raise raised
-        return original(problem, meshed)
-
-    monkeypatch.setattr(climbing, "solve", failing)
+    fail(monkeypatch, 288, SolvingError("the cells are badly shaped"))
     with pytest.raises(SolvingError) as caught:
         list(climb(study(tmp_path), folder))
-    assert str(caught.value) == told
+    assert str(caught.value) == "level 3: the cells are badly shaped"
     assert len(read_ladder(folder / LADDER).levels) == 2
+
+
+def test_a_level_that_runs_out_of_memory_ends_the_ladder(
+    tmp_path: Path, folder: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    with monkeypatch.context() as patch:
+        fail(patch, 288, MemoryError())
+        assert len(list(climb(study(tmp_path), folder))) == 2
+    ladder = read_ladder(folder / LADDER)
+    # 8 × 36 cells have 9 × 37 nodes of two unknowns
+    told = "level 3 (666 unknowns) is not solved: memory ran out; the levels before it are judged"
+    assert ladder.remarks == (told,) and len(ladder.levels) == 2
+    assert len(list(climb(study(tmp_path), folder))) == 4, "the same command goes on"
+    assert read_ladder(folder / LADDER).remarks == ()
+
+
+def test_a_first_level_without_memory_is_an_error(
+    tmp_path: Path, folder: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    fail(monkeypatch, 18, MemoryError())
+    with pytest.raises(SolvingError) as caught:
+        list(climb(study(tmp_path), folder))
+    told = "level 1 (60 unknowns) is not solved: memory ran out; ask for a coarser first level"
+    assert str(caught.value) == told
+
+
+@pytest.mark.parametrize("shape", ["triangle", "quadrilateral"])
+@pytest.mark.parametrize("degree", [1, 2])
+def test_unknowns_are_known_before_the_mesh(shape: str, degree: int, tmp_path: Path, folder: Path) -> None:
+    asked = study(tmp_path, shape=shape, degree=degree, levels=3)
+    assert unknowns(asked) == [level.dofs for level in climb(asked, folder)]
+
+
+def test_a_level_above_the_budget_is_not_begun(
+    tmp_path: Path, folder: Path, solved: list[int], monkeypatch: pytest.MonkeyPatch
+) -> None:
+    """With 1 MB an unknown, level 4 of 2482 unknowns does not fit 1000 MB."""
+    monkeypatch.setattr(climbing, "peak_memory", lambda: float(unknowns_solved(solved)))
+    asked = study(tmp_path)
+    assert len(list(climb(asked, folder, Budget(memory=1000.0)))) == 3
+    (told,) = read_ladder(folder / LADDER).remarks
+    assert told == (
+        "level 4 (2,482 unknowns) is not solved: it would need about 2.5 GB of memory where 1 GB are "
+        "available; the levels before it are judged"
+    )
+    assert solved == [18, 72, 288]
+    list(climb(asked, folder, Budget(memory=1000.0)))
+    assert solved == [18, 72, 288] and read_ladder(folder / LADDER).remarks == (told,)
+    list(climb(study(tmp_path, levels=3), folder))
+    assert read_ladder(folder / LADDER).remarks == (), "three levels are all that is asked for"
+    list(climb(asked, folder, Budget(memory=3000.0)))
+    assert solved == [18, 72, 288, 1152] and read_ladder(folder / LADDER).remarks == ()
+
+
+def unknowns_solved(solved: list[int]) -> int:
+    return {18: 60, 72: 190, 288: 666, 1152: 2482}[solved[-1]]
+
+
+def test_the_memory_left_on_the_machine_is_a_budget(
+    tmp_path: Path, folder: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    monkeypatch.setattr(climbing, "allowed_memory", lambda: 10.0)
+    with pytest.raises(SolvingError, match=r"level 1 .* of memory where 10 MB are available; ask for"):
+        list(climb(study(tmp_path), folder))
+    assert not (folder / LADDER).exists()
+
+
+def test_time_that_is_spent_is_not_there_any_more(tmp_path: Path, folder: Path) -> None:
+    """A caller that takes half a second between levels has used up 0.4 s."""
+    steps = climb(study(tmp_path), folder, Budget(seconds=0.4))
+    next(steps)
+    time.sleep(0.5)
+    assert list(steps) == []
+    assert "where 0 s are left" in read_ladder(folder / LADDER).remarks[0]
+
+
+@pytest.mark.skipif(not Path("/proc/self/clear_refs").exists(), reason="no peak of a level on this system")
+def test_a_level_has_its_own_memory(tmp_path: Path, folder: Path) -> None:
+    """What was held before the climb and freed since is not counted."""
+    block = np.ones(60_000_000)
+    held = peak_memory()
+    assert held > block.nbytes / 1e6
+    del block
+    levels = list(climb(study(tmp_path), folder))
+    assert all(10.0 < level.memory < held - 200.0 for level in levels)
 
 
 def test_a_region_without_a_node_names_the_quantity(tmp_path: Path, folder: Path) -> None:
@@ -219,7 +305,7 @@ def test_two_levels_of_the_same_mesh_are_refused(tmp_path: Path, folder: Path) -
     with pytest.raises(InputError) as caught:
         plan(ladder_spec(divisions=1, ratio=1.05, levels=3), problem)
     assert str(caught.value) == (
-        "[ladder]: levels 0 and 1 have the same mesh, got 1.05; take a larger ratio or more divisions"
+        "[ladder]: levels 1 and 2 have the same mesh, got 1.05; take a larger ratio or more divisions"
     )
     (tmp_path / "barrel.toml").write_text(study(tmp_path).text.replace("ratio = 2.0", "ratio = 1.02"))
     with pytest.raises(InputError, match="have the same mesh"):

@@ -122,11 +122,14 @@ def test_facts_of_the_studies(file: Path) -> None:
     """What theory says beforehand: a stress is covered only by corners within its own reach."""
     study = load(file)
     facts = facts_of(study)
-    assert facts.dimension == 2
-    assert facts.yield_strength == study.material.yield_strength
+    strengths = {region: found and found.strength for region, found in facts.yields.items()}
     if study.table is not None:
+        assert facts.dimension == 2 and strengths == {"": study.materials["material"].yield_strength}
         assert facts.corners is None and facts.degree is None and facts.covered == {}
         return
+    problem = study.problem()
+    assert facts.dimension == problem.part.dimension
+    assert strengths == {region: material.yield_strength for region, material in problem.materials.items()}
     assert facts.corners is not None and facts.size is not None
     assert facts.degree == study.ladder.degree
     assert set(facts.covered) == set(facts.components) == {q.name for q in study.quantities}
@@ -155,7 +158,7 @@ def test_judging_solves_nothing(tmp_path: Path, monkeypatch: pytest.MonkeyPatch)
         raise AssertionError("solved while judging")
 
     monkeypatch.setattr(solution_module, "stiffness", refuse)
-    monkeypatch.setattr(solution_module, "solve_equations", refuse)
+    monkeypatch.setattr(solution_module, "Equations", refuse)
     findings = judge(ladder, study.quantities, facts_of(study), study.title)
     assert findings.all_sound, "a linear field is exact on every mesh"
     assert all(check.passed is not False for check in findings.checks)

@@ -135,3 +135,33 @@ def test_words_and_counts() -> None:
     assert numbers.count(math.nan) == "none"
     assert numbers.several(1, "level") == "1 level"
     assert numbers.several(0, "level") == "0 levels"
+
+
+@pytest.mark.parametrize(
+    ("value", "text"),
+    [
+        (0.0, "0 MB"),
+        (0.52, "0.52 MB"),
+        (80.4, "80 MB"),
+        (999.0, "1000 MB"),
+        (2345.0, "2.3 GB"),
+        (4.1e6, "4.1 TB"),
+    ],
+)
+def test_an_amount_of_memory(value: float, text: str) -> None:
+    assert numbers.amount(value, numbers.MEMORY) == text
+
+
+def test_an_amount_beside_its_limit() -> None:
+    assert numbers.amounts(100.0, 61.0, numbers.TIME) == ("1.7 min", "1 min")
+    assert numbers.amounts(6004.0, 6000.0, numbers.MEMORY) == ("6.004 GB", "6 GB")
+    assert numbers.amounts(30_000.0, 100.0, numbers.MEMORY) == ("30 GB", "100 MB")
+    assert numbers.amounts(7200.0, 0.0, numbers.TIME) == ("2.0 h", "0 s")
+
+
+def test_the_cost_of_a_mesh_says_what_is_known() -> None:
+    assert numbers.cost(10.0, 20.0, 90.0, 2e3) == (
+        " (10 cells, 20 unknowns, about 1.5 min, about 2.0 GB of memory)"
+    )
+    nan = float("nan")
+    assert numbers.cost(10.0, 0.0, nan, nan) == " (10 cells)" and numbers.cost(nan, nan, nan, nan) == ""

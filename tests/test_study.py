@@ -33,7 +33,7 @@ def test_a_model_study(tmp_path: Path) -> None:
     assert study.arguments["outer_radius"] == 45.0
     assert study.ladder is not None
     assert (study.ladder.size, study.ladder.divisions, study.ladder.levels) == (None, 3, 4)
-    assert study.material.yield_source == "EN 10025-2" and study.material.poisson == 0.3
+    assert set(study.materials) == {"material"} and study.materials["material"].poisson == 0.3
     hoop, growth = study.quantities
     assert (hoop.name, hoop.kind, hoop.unit) == ("hoop", "point_stress", "MPa")
     # recovered stress of degree 1: order 2; displacement: order 2
@@ -50,7 +50,7 @@ def test_defaults_follow_the_units(tmp_path: Path) -> None:
     assert study.arguments is not None and study.ladder is not None
     # 45 mm and 210000 MPa, each converted by a power of ten: exact to one unit in the last place
     assert study.arguments["outer_radius"] == pytest.approx(0.045, rel=1e-15)
-    assert study.material.young == pytest.approx(2.1e11, rel=1e-15)
+    assert study.materials["material"].young == pytest.approx(2.1e11, rel=1e-15)
     assert study.quantities[0].unit == "N m" and study.ladder.divisions == 2
 
 
@@ -70,6 +70,9 @@ def test_the_fingerprint_changes_with_the_numbers_only(tmp_path: Path) -> None:
         for old, new in (
             ("inner_radius = 25", "inner_radius = 24"),
             ("young = 200000.0", "young = 210000.0"),
+            ("young = 200000.0", "young = 200000.0\npoisson = 0.29"),
+            ("young = 200000.0", "young = 200000.0\nexpansion = 1.1e-5"),
+            ("young = 200000.0", "young = 200000.0\nexpansion_z = 1.1e-5"),
             ("divisions = 3", "divisions = 4"),
             ("divisions = 3", "size = 3.0"),
             ("degree = 1", "degree = 2"),

@@ -8,20 +8,22 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+from convergence import numbers
 from convergence.intervals import Interval, interval
 from convergence.results import Corner, Facts, Ladder, Level, Quantity, Verdict
 from convergence.verdicts import accepted, expected_order, verdict
 
 H = np.array([16.0, 8.0, 4.0, 2.0, 1.0])
 NAN = math.nan
-CORNER = Corner("heel", 0.0, 0.0, 270.0, ("free", "free"), 0.5445)
+CORNER = Corner("heel", ((0.0, 0.0),), ("heel",), 270.0, ("free", "free"), 0.5445)
 
 
 def ladder_of(h: np.ndarray, f: np.ndarray) -> Ladder:
     levels = []
     for size, value in zip(h, f, strict=True):
         cells = max(1, int(1e4 / size**2))
-        levels.append(Level(float(size), cells, 2 * cells, 1e-4 * (2 * cells) ** 1.2, {"f": float(value)}))
+        seconds, memory = 1e-4 * (2 * cells) ** 1.2, 50.0 + 0.01 * cells
+        levels.append(Level(float(size), cells, 2 * cells, seconds, {"f": float(value)}, memory))
     return Ladder(tuple(levels), "t")
 
 
@@ -179,6 +181,9 @@ def test_the_named_size_would_do(order: float, accept: float) -> None:
     growth = said.next_h**-2
     assert said.next_cells == pytest.approx(1e4 * growth) and said.next_dofs == pytest.approx(2e4 * growth)
     assert said.next_seconds == pytest.approx(1e-4 * 2e4**1.2 * growth**1.2, rel=0.01)
+    # the part that does not grow is not scaled
+    assert said.next_memory == pytest.approx(50.0 + 100.0 * growth, rel=0.01)
+    assert f"about {numbers.amount(said.next_memory, numbers.MEMORY)} of memory" in " ".join(said.reasons)
 
 
 def test_an_accidentally_high_order_does_not_promise_much() -> None:

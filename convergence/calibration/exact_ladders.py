@@ -10,7 +10,7 @@ from convergence import rooms
 from convergence.dimensions import Located
 from convergence.fem.material import material
 from convergence.fem.mesh import mesh
-from convergence.fem.part import finer
+from convergence.fem.part import Part, finer
 from convergence.fem.problem import Problem
 from convergence.fem.solution import Solution, solve
 from convergence.fem.stress import component as component_of
@@ -92,7 +92,7 @@ def _measured(solution: Solution, probe: _Probe) -> float:
 def _probes(problem: Problem) -> Iterator[_Probe]:
     """Yield energy, displacements and stresses at the named points and inside every block."""
     exact, part = problem.exact, problem.part
-    assert exact is not None
+    assert exact is not None and isinstance(part, Part)
     if exact.energy is not None:
         yield _Probe("strain_energy", {}, exact.energy)
     middle = np.array([0.4])

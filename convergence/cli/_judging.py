@@ -29,27 +29,70 @@ class Said:
 
 
 @dataclass(frozen=True)
-class Case:
+class Judged:
     """A judged ladder and what its report needs."""
 
     findings: Findings
     name: str
     units: Units
     study_text: str
-    folder: Path | None = None
+
+    @property
+    def all_sound(self) -> bool:
+        return self.findings.all_sound
 
 
-def judge_study(study: Study, ladder: Ladder, folder: Path | None) -> Case:
-    """Judge the ladder of a study, which stands in the folder where there is one."""
+@dataclass(frozen=True)
+class JudgedCases:
+    """The judged load cases of a study; `loads` says what each has of its own."""
+
+    title: str
+    name: str
+    study_text: str
+    cases: Mapping[str, Judged]
+    loads: Mapping[str, str]
+
+    @property
+    def all_sound(self) -> bool:
+        return all(case.all_sound for case in self.cases.values())
+
+    @property
+    def findings(self) -> dict[str, Findings]:
+        """Return the findings of every case."""
+        return {name: case.findings for name, case in self.cases.items()}
+
+
+def judge_saved(study: Study, folder: Path) -> Judged | JudgedCases:
+    """Judge the ladder of a study in the folder of its run, or those of all its cases."""
+    if not study.cases:
+        return _judged_ladder(study, folder)
+    cases, faults = {}, []
+    for name, case in study.cases.items():
+        try:
+            cases[name] = _judged_ladder(case, folder / name)
+        except InputError as error:
+            faults += error.faults
+    if faults:
+        raise InputError(faults)
+    return JudgedCases(study.title, study.name, study.text, cases, study.own_loads())
+
+
+def _judged_ladder(study: Study, folder: Path) -> Judged:
+    path = folder / LADDER
+    if not path.is_file():
+        raise InputError([Fault(str(path), "nothing solved yet", f"meshassay run {study.file}")])
+    ladder = replace(same_study(study, read_ladder(path), path), source=str(path))
+    return _judged(study, ladder)
+
+
+def _judged(study: Study, ladder: Ladder) -> Judged:
     from convergence.judgement import facts_of, judge
 
-    if folder:
-        ladder = replace(ladder, source=str(folder / LADDER))
     findings = judge(ladder, study.quantities, facts_of(study), study.title)
-    return Case(findings, study.name, study.units, study.text, folder)
+    return Judged(findings, study.name, study.units, study.text)
 
 
-def judge_path(path: Path, said: Said) -> Case:
+def judge_path(path: Path, said: Said) -> Judged | JudgedCases:
     """Judge a table, a study or the folder of a run; nothing is solved."""
     if path.is_dir():
         study = load(path / STUDY, name=path.resolve().name)
@@ -60,19 +103,16 @@ def judge_path(path: Path, said: Said) -> Case:
     return _judged_table(path, said)
 
 
-def _judged_study(study: Study, folder: Path, said: Said) -> Case:
+def _judged_study(study: Study, folder: Path, said: Said) -> Judged | JudgedCases:
     if said.anything:
         what = "--kind, --degree, --tolerance and --dimension are for bare tables"
         raise InputError([Fault(str(study.file), what, "write them in the study")])
     if study.table:
-        return judge_study(study, study.table, None)
-    path = folder / LADDER
-    if not path.is_file():
-        raise InputError([Fault(str(path), "nothing solved yet", f"meshassay run {study.file}")])
-    return judge_study(study, same_study(study, read_ladder(path), path), folder)
+        return _judged(study, study.table)
+    return judge_saved(study, folder)
 
 
-def _judged_table(path: Path, said: Said) -> Case:
+def _judged_table(path: Path, said: Said) -> Judged:
     from convergence.judgement import judge
 
     if is_ladder_file(path):
@@ -89,7 +129,7 @@ def _judged_table(path: Path, said: Said) -> Case:
         )
     facts = Facts(degree=said.degree, dimension=said.dimension or 2, kinds=said.kinds)
     findings = judge(ladder, quantities, facts, path.stem)
-    return Case(findings, path.stem, SYSTEMS["consistent"], "")
+    return Judged(findings, path.stem, SYSTEMS["consistent"], "")
 
 
 def _without_records(ladder: Ladder) -> Ladder:

@@ -1,19 +1,23 @@
-"""Progress of a run on the terminal: each level as it is solved, and the time that is left."""
+"""Progress of a run on the terminal: each level as it is solved, and what is foretold of those to come."""
 
 from collections.abc import Iterable, Sequence
 from contextlib import AbstractContextManager, nullcontext
 
+from convergence import numbers
+from convergence.forecast import forecast
 from convergence.results import Level
 
-SOLVE_EXPONENT = 1.2
 
+def follow(levels: Iterable[Level], unknowns: Sequence[int]) -> None:
+    """Draw levels until there are no more; say on a terminal how far it is, elsewhere nothing.
 
-def follow(levels: Iterable[Level], total: int, ratio: float, dimension: int = 2) -> None:
-    """Draw levels until there are no more; say on a terminal how far it is, elsewhere nothing."""
+    `unknowns` has the number of unknowns of every level that was asked for.
+    """
     from rich.console import Console
 
     screen = Console(stderr=True, highlight=False)
-    status = screen.status(f"level 1 of {total}") if screen.is_terminal else None
+    total = len(unknowns)
+    status = screen.status(f"level 1 of {total}{ahead([], unknowns)}") if screen.is_terminal else None
     holding: AbstractContextManager[object] = status or nullcontext()
     solved: list[Level] = []
     with holding:
@@ -21,13 +25,20 @@ def follow(levels: Iterable[Level], total: int, ratio: float, dimension: int = 2
             solved.append(level)
             if not status:
                 continue
-            screen.print(f"level {len(solved)} of {total}: {level.dofs:,} unknowns, {level.seconds:.1f} s")
+            used = f"{level.seconds:.1f} s" + memory_text(",", level.memory)
+            screen.print(f"level {len(solved)} of {total}: {level.dofs:,} unknowns, {used}")
             if len(solved) < total:
-                left = remaining(solved, total, ratio**dimension)
-                status.update(f"level {len(solved) + 1} of {total}, about {left:.0f} s remaining")
+                status.update(f"level {len(solved) + 1} of {total}{ahead(solved, unknowns)}")
 
 
-def remaining(solved: Sequence[Level], total: int, growth: float) -> float:
-    """Return the seconds of the levels to come, where the cost grows as unknowns^1.2."""
-    factor = float(growth**SOLVE_EXPONENT)
-    return sum(solved[-1].seconds * factor**step for step in range(1, total - len(solved) + 1))
+def ahead(solved: Sequence[Level], unknowns: Sequence[int]) -> str:
+    """Return what the levels to come are expected to take: the time of all, the memory of the largest."""
+    expected = [forecast(solved, dofs) for dofs in unknowns[len(solved) :]]
+    seconds = sum(each.seconds for each in expected)
+    left = f", about {numbers.amount(seconds, numbers.TIME)} remaining"
+    return left + memory_text(", up to", max(each.memory for each in expected))
+
+
+def memory_text(before: str, megabytes: float) -> str:
+    """Return words and an amount such as 1.5 GB, "" where it is not known."""
+    return f"{before} {numbers.amount(megabytes, numbers.MEMORY)} of memory" if megabytes > 0.0 else ""

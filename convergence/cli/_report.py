@@ -1,28 +1,51 @@
-"""The report of a judged case, in a folder."""
+"""The reports of what was judged, in a folder."""
 
 import sys
 from datetime import date
 from pathlib import Path
 from typing import Any
 
-from convergence.cli._judging import Case
+from convergence.cli._judging import Judged, JudgedCases
 
 
-def report(case: Case, folder: Path) -> Path:
-    """Write the report into the folder; return its page."""
-    from convergence.report.document import write_report
-
+def report(judged: Judged | JudgedCases, folder: Path) -> Path:
+    """Write the report into the folder, those of cases into theirs within it; return the page."""
     folder.mkdir(parents=True, exist_ok=True)
-    return write_report(
-        case.findings,
+    if isinstance(judged, Judged):
+        return _report(judged, folder)
+    from convergence.report.cases_page import write_cases
+
+    for name, case in judged.cases.items():
+        report(case, folder / name)
+    return write_cases(
+        judged.findings,
         folder,
-        fields=_fields(folder, len(case.findings.ladder.levels)),
-        units=case.units,
-        study_text=case.study_text,
-        study_name=case.name,
-        command="meshassay " + " ".join(sys.argv[1:]),
+        title=judged.title,
+        loads=judged.loads,
+        study_text=judged.study_text,
+        study_name=judged.name,
+        command=_command(),
         date=date.today().isoformat(),
     )
+
+
+def _report(judged: Judged, folder: Path) -> Path:
+    from convergence.report.document import write_report
+
+    return write_report(
+        judged.findings,
+        folder,
+        fields=_fields(folder, len(judged.findings.ladder.levels)),
+        units=judged.units,
+        study_text=judged.study_text,
+        study_name=judged.name,
+        command=_command(),
+        date=date.today().isoformat(),
+    )
+
+
+def _command() -> str:
+    return "meshassay " + " ".join(sys.argv[1:])
 
 
 def _fields(folder: Path, levels: int) -> list[Any]:

@@ -24,31 +24,31 @@ def judge(
     tolerance: str | None,
     dimension: int | None,
 ) -> int:
-    """Judge INPUTS: a table (.csv), a study (.toml) or the folder of a run.
+    """Judge INPUTS: a table (.csv), a study (.toml) or the folder of a run, all its cases if it has some.
 
     The four options on tables are for bare tables; a study states them itself.
     """
     from convergence.cli import _judging
     from convergence.cli._report import report
-    from convergence.cli._show import show_json, show_table
+    from convergence.cli._show import show, show_json
 
     said = _judging.Said(_judging.kinds_of(kinds), degree, _judging.tolerance_of(tolerance), dimension)
-    cases: list[_judging.Case] = []
+    judged: list[_judging.Judged | _judging.JudgedCases] = []
     faults: list[Fault] = []
     for path in inputs:
         try:
-            cases.append(_judging.judge_path(path, said))
+            judged.append(_judging.judge_path(path, said))
         except InputError as error:
             faults += error.faults
     if faults:
         raise InputError(faults)
     if as_json:
-        show_json([case.findings for case in cases])
-    for number, case in enumerate(cases):
+        show_json(judged)
+    for number, one in enumerate(judged):
         if not as_json:
             click.echo("\n" * (number > 0), nl=False)
-            show_table(case.findings, methods=True)
+            show(one, methods=True)
         if out:
-            folder = out if len(cases) == 1 else out / case.name
-            click.echo(f"Report: {report(case, folder)}", err=as_json)
-    return 0 if all(case.findings.all_sound for case in cases) else 1
+            folder = out if len(judged) == 1 else out / one.name
+            click.echo(f"Report: {report(one, folder)}", err=as_json)
+    return 0 if all(one.all_sound for one in judged) else 1

@@ -9,35 +9,45 @@ import click
 @click.command()
 @click.argument("study", type=click.Path(path_type=Path))
 @click.option("--out", type=click.Path(path_type=Path), help="Folder of this run (default: out/STUDY).")
+@click.option(
+    "--budget",
+    "budgets",
+    multiple=True,
+    help="Memory (10GB) or time (5min) this run may use; give it twice for both. A level that would need"
+    " more is not solved, those before it are judged.",
+)
 @click.option("--json", "as_json", is_flag=True, help="Print the findings as JSON.")
-def run(study: Path, out: Path | None, as_json: bool) -> int:
+def run(study: Path, out: Path | None, budgets: tuple[str, ...], as_json: bool) -> int:
     """Solve STUDY level by level, judge it and write the report.
 
     Each level is kept when it is solved: a run that was stopped goes on where it was. A table study
-    has nothing to solve; its table is judged.
+    has nothing to solve; its table is judged. A level that would not fit in memory is not begun. The load
+    cases of a study are solved together; each has a report of its own in the folder of its name.
     """
+    from convergence.cli._budget import budget_of
     from convergence.cli._folder import LADDER, default_folder, keep_study
-    from convergence.cli._judging import judge_study
+    from convergence.cli._judging import judge_saved
     from convergence.cli._progress import follow
     from convergence.cli._report import report
-    from convergence.cli._show import show_json, show_table
-    from convergence.intake.ladder_file import read_ladder, write_ladder
+    from convergence.cli._show import show, show_json
+    from convergence.intake.ladder_file import write_ladder
     from convergence.study import load
 
+    budget = budget_of(budgets)
     asked = load(study)
     folder = out or default_folder(asked.name)
     keep_study(asked, folder)
     if asked.table:
         write_ladder(replace(asked.table, fingerprint=asked.fingerprint), folder / LADDER)
     elif asked.ladder:
-        from convergence.climbing import climb
+        from convergence.climbing import climb, unknowns
 
-        follow(climb(asked, folder), asked.ladder.levels, asked.ladder.ratio)
-    case = judge_study(asked, read_ladder(folder / LADDER), folder)
-    page = report(case, folder)
+        follow(climb(asked, folder, budget), unknowns(asked))
+    judged = judge_saved(asked, folder)
+    page = report(judged, folder)
     if as_json:
-        show_json([case.findings])
+        show_json([judged])
     else:
-        show_table(case.findings)
+        show(judged)
     click.echo(f"Report: {page}", err=as_json)
-    return 0 if case.findings.all_sound else 1
+    return 0 if judged.all_sound else 1

@@ -2,20 +2,20 @@
 
 A CSV whose first lines, after #, state the fingerprint of the study, the number of levels, the
 source, the resolution of the values and the remarks; its last line is "# end". An empty cell means
-that a level has no such value.
+that a level has no such value. Ladders of earlier versions have no column of memory.
 """
 
 import csv
 import io
 import json
+import math
 import re
 from pathlib import Path
 
 from convergence.errors import Fault, InputError
-from convergence.results import Ladder, Level
+from convergence.results import COST, Ladder, Level
 from convergence.textfile import read_text, write_text
 
-COST = ("h", "cells", "dofs", "seconds")
 _FIRST = re.compile(r"# meshassay ladder, fingerprint (\S*), levels (\d+)")
 _END = "# end\n"
 _REPAIR = "remove it and run the study again"
@@ -45,7 +45,9 @@ def write_ladder(ladder: Ladder, path: Path) -> None:
     writer.writerow([*COST, *names])
     for level in ladder.levels:
         values = [repr(float(level.values[name])) if name in level.values else "" for name in names]
-        writer.writerow([repr(float(level.h)), level.cells, level.dofs, repr(float(level.seconds)), *values])
+        memory = "" if math.isnan(level.memory) else repr(float(level.memory))
+        cost = [repr(float(level.h)), level.cells, level.dofs, repr(float(level.seconds)), memory]
+        writer.writerow([*cost, *values])
     text.write(_END)
     write_text(path, text.getvalue())
 
@@ -81,9 +83,11 @@ def read_ladder(path: Path) -> Ladder:
 
 
 def _level(header: list[str], row: list[str]) -> Level:
-    if tuple(header[: len(COST)]) != COST:
+    if tuple(header[: len(COST) - 1]) != COST[:-1]:
         raise ValueError("the header is not a ladder's")
     cells = dict(zip(header, row, strict=True))
-    h, count, dofs, seconds = (cells.pop(name) for name in COST)
+    h, count, dofs, seconds, memory = (cells.pop(name, "") for name in COST)
     values = {name: float(cell) for name, cell in cells.items() if cell}
-    return Level(float(h), int(count), int(dofs), float(seconds), values)
+    return Level(
+        float(h), int(count), int(dofs), float(seconds), values, float(memory) if memory else math.nan
+    )

@@ -1,8 +1,8 @@
 """A bare table: one row a mesh, one column of sizes, every other numeric column a quantity.
 
 The column of sizes is h (cell size), or cells, nodes or dofs; from a count N the size is
-h = (1/N)^(1/dimension), a relative size: only ratios of h matter. Columns `cells`, `dofs` and
-`seconds` beside it are the cost of each level.
+h = (1/N)^(1/dimension), a relative size: only ratios of h matter. Columns `cells`, `dofs`, `seconds` and
+`memory` (in MB) beside it are the cost of each level.
 """
 
 import csv
@@ -18,7 +18,7 @@ from convergence.textfile import read_text
 
 COUNTS = ("cells", "nodes", "dofs")
 SIZES = ("h", *COUNTS)
-NO_QUANTITIES = (*SIZES, "seconds")
+NO_QUANTITIES = (*SIZES, "seconds", "memory")
 
 
 @dataclass(frozen=True)
@@ -44,7 +44,7 @@ def read_table(path: Path, *, size: str | None = None, dimension: int = 2) -> tu
 
     Lines that start with # and empty lines are skipped. An empty cell or "nan" means that a level has
     no value. Equal sizes with different values are kept: what they mean is for the judgement to say.
-    Counts and seconds that the table does not give are 0 and NaN.
+    Counts that the table does not give are 0, seconds and memory NaN.
     """
     header, rows = _rows(read_text(path, "a table (.csv)"), path)
     columns, units = _columns(header, rows, path)
@@ -170,6 +170,7 @@ def _levels(columns: dict[str, list[str]], by: str, quantities: list[str], dimen
                 dofs=int(cost.get("dofs", 0)),
                 seconds=cost.get("seconds", math.nan),
                 values={name: values[name] for name in quantities},
+                memory=cost.get("memory", math.nan),
             )
         )
     return sorted(levels, key=lambda level: -level.h)

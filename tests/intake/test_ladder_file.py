@@ -13,7 +13,7 @@ from convergence.results import Ladder, Level
 
 LADDER = Ladder(
     levels=(
-        Level(0.1 + 0.2, 12, 70, 1e-3, {"peak": 1 / 3, "peak.x": -0.0, "a,b": 5e-324}),
+        Level(0.1 + 0.2, 12, 70, 1e-3, {"peak": 1 / 3, "peak.x": -0.0, "a,b": 5e-324}, 81.1),
         Level(0.1, 48, 240, 0.25, {"peak": 2 / 3, "peak.x": 1e300, "only here": 1.0}),
     ),
     source="studies/lug.toml",
@@ -37,6 +37,16 @@ def test_what_is_not_a_number_comes_back(tmp_path: Path) -> None:
     write_ladder(Ladder((Level(1.0, 0, 0, math.nan, {"u": math.nan, "v": math.inf}),), "t.csv"), path)
     level = read_ladder(path).levels[0]
     assert math.isnan(level.seconds) and math.isnan(level.values["u"]) and level.values["v"] == math.inf
+
+
+def test_a_ladder_of_an_earlier_version_has_no_memory(tmp_path: Path) -> None:
+    path = tmp_path / "ladder.csv"
+    path.write_text(
+        "# meshassay ladder, fingerprint f, levels 1\n"
+        '# {"source": "s", "h_unit": "mm", "resolution": {}, "remarks": []}\n'
+        "h,cells,dofs,seconds,u\n0.5,4,18,0.25,7.5\n# end\n"
+    )
+    assert read_ladder(path) == Ladder((Level(0.5, 4, 18, 0.25, {"u": 7.5}),), "s", "f", h_unit="mm")
 
 
 @settings(deadline=None)

@@ -73,11 +73,14 @@ def test_sizes_follow_from_counts(tmp_path: Path, name: str, dimension: int) -> 
 
 
 def test_h_goes_before_counts_and_costs_are_no_quantities(tmp_path: Path) -> None:
-    ladder, _ = read_table(write(tmp_path, "cells,h,dofs,seconds,u\n10,1.0,30,0.5,7\n40,0.5,100,2,8\n"))
+    ladder, _ = read_table(
+        write(tmp_path, "cells,h,dofs,seconds,Memory,u\n10,1,30,.5,90,7\n40,.5,100,2,,8\n")
+    )
     assert [(lv.h, lv.cells, lv.dofs, lv.seconds) for lv in ladder.levels] == [
         (1, 10, 30, 0.5),
         (0.5, 40, 100, 2),
     ]
+    assert ladder.levels[0].memory == 90.0 and math.isnan(ladder.levels[1].memory)
     assert [set(level.values) for level in ladder.levels] == [{"u"}, {"u"}]
 
 
