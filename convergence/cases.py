@@ -33,18 +33,23 @@ def read_cases(
     return {name: case for name, case in found.items() if case is not None}
 
 
-def own_loads(
-    function: Callable[..., Problem], usual: Mapping[str, Any], case: Mapping[str, Any], units: Units
-) -> str:
-    """Return what a case has of its own, e.g. "tip_shear = -3 MPa", beside the usual arguments of the model."""
-    own = []
+def loads_of(
+    function: Callable[..., Problem],
+    usual: Mapping[str, Any],
+    cases: Mapping[str, Mapping[str, Any]],
+    units: Units,
+) -> dict[str, str]:
+    """Return the arguments of every case that are not the same in all, e.g. "tip_shear = -3 MPa"."""
+    own: dict[str, list[str]] = {name: [] for name in cases}
     for parameter in parameters(function, material_names(function)):
-        value = case[parameter.name]
-        if value != usual[parameter.name]:
+        values = {name: case[parameter.name] for name, case in cases.items()}
+        if all(value == usual[parameter.name] for value in values.values()):
+            continue
+        unit = units.label(parameter.dimension) if parameter.dimension else ""
+        for name, value in values.items():
             shown = f"{value:.12g}" if isinstance(value, float) else str(value)
-            unit = units.label(parameter.dimension) if parameter.dimension else ""
-            own.append(f"{parameter.name} = {shown} {unit}".rstrip())
-    return ", ".join(own) or "as in [model]"
+            own[name].append(f"{parameter.name} = {shown} {unit}".rstrip())
+    return {name: ", ".join(loads) or "as in [model]" for name, loads in own.items()}
 
 
 def _is_first(sections: Sections, name: str) -> bool:

@@ -7,11 +7,14 @@ from itertools import pairwise
 from pathlib import Path
 from typing import Any
 
+import numpy as np
+
 from convergence import numbers, rooms
 from convergence.dimensions import Located
 from convergence.errors import Fault, InputError, SolvingError, Unsuitable
-from convergence.fem.display import display
-from convergence.fem.mesh import count_nodes, mesh
+from convergence.fem.display import display, faces
+from convergence.fem.first_guess import first_guess
+from convergence.fem.mesh import Mesh, count_nodes, mesh
 from convergence.fem.part import finer
 from convergence.fem.problem import Problem
 from convergence.fem.solution import Solution, solve_cases
@@ -24,6 +27,7 @@ from convergence.study import Study
 
 LADDER = "ladder.csv"
 NO_LIMIT = Budget()
+MOST_FACES = 150_000  # more cannot be told apart in a picture; such levels leave no fields
 
 
 def level_file(folder: Path, number: int) -> Path:
@@ -67,6 +71,7 @@ def climb(study: Study, folder: Path, budget: Budget = NO_LIMIT) -> Iterator[Lev
             for name, level in solved.items():
                 saved[name].append(level)
                 _save(cases[name], saved[name], folder / name)
+                _unknowns_file(folder / name, number - 1).unlink(missing_ok=True)
         yield first[number]
     for name, case in cases.items():
         ended = len(saved[name]) < study.ladder.levels
@@ -150,16 +155,36 @@ def _level(
             degree=spec.degree,
             formulation=spec.formulation,
         )
-        solutions = solve_cases(list(problems.values()), meshed)
+        guesses = [_guess(folder / name, number - 1, spec, meshed) for name in problems]
+        solutions = solve_cases(list(problems.values()), meshed, guesses)
         for name, solution in zip(problems, solutions, strict=True):
             values[name] = {**_measured(cases[name], solution), **_records(solution)}
-            fields = level_file(folder / name, number)
-            fields.parent.mkdir(parents=True, exist_ok=True)
-            display(solution).save(fields)
+            (folder / name / "levels").mkdir(parents=True, exist_ok=True)
+            if number == 0 or faces(meshed) <= MOST_FACES:
+                display(solution).save(level_file(folder / name, number))
+            np.save(_unknowns_file(folder / name, number), solution.unknowns)
     except SolvingError as error:
         raise SolvingError(f"level {number + 1}: {error}") from error
     dofs, seconds, memory = meshed.nodes.size, time.perf_counter() - start, peak_memory()
     return {name: Level(meshed.h, meshed.cells, dofs, seconds, v, memory) for name, v in values.items()}
+
+
+def _unknowns_file(folder: Path, number: int) -> Path:
+    """Return where the solution of the finest level so far is kept, for a first guess of the next."""
+    return folder / "levels" / f"solution-{number}.npy"
+
+
+def _guess(folder: Path, number: int, spec: LadderSpec, meshed: Mesh) -> np.ndarray | None:
+    """Return a first guess from the solution of a coarser level, None where there is none of its size."""
+    path = _unknowns_file(folder, number)
+    if number < 0 or not path.exists():
+        return None
+    part = meshed.part
+    coarsest = part.divisions(size=spec.size, divisions=spec.divisions)
+    counts, unknowns = finer(coarsest, spec.ratio, number), np.load(path)
+    if len(unknowns) != part.dimension * count_nodes(part, counts, spec.degree):
+        return None
+    return first_guess(counts, unknowns, meshed)
 
 
 def _measured(study: Study, solution: Solution) -> dict[str, float]:

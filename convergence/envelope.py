@@ -46,6 +46,11 @@ def worst_first(cases: Mapping[str, Findings]) -> list[str]:
     return sorted(cases, key=badness)
 
 
+def worst_case(cases: Mapping[str, Findings], name: str) -> str:
+    """Return the case with the worst verdict on a quantity, the first in the study of several."""
+    return max(cases, key=lambda case: SEVERITY.index(cases[case].verdicts[name].word))
+
+
 def _size(value: float) -> float:
     return -1.0 if math.isnan(value) else abs(value)
 

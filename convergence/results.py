@@ -124,7 +124,7 @@ class Corner:
         ends = [f"({', '.join(f'{x:.4g}' for x in place)})" for place in (self.path[0], self.path[-1])]
         if len(self.path) == 1:
             return f"at {ends[0]}"
-        return f"around from {ends[0]}" if ends[0] == ends[1] else f"from {ends[0]} to {ends[1]}"
+        return f"all around through {ends[0]}" if ends[0] == ends[1] else f"from {ends[0]} to {ends[1]}"
 
     def distance(self, place: tuple[float, ...]) -> float:
         """Return how far a place is from the corner."""

@@ -7,7 +7,7 @@ from typing import Annotated, Any
 
 from convergence import rooms
 from convergence.bind import bind
-from convergence.cases import own_loads
+from convergence.cases import loads_of
 from convergence.columns import bare_quantities, read_column
 from convergence.dimensions import SYSTEMS, Units
 from convergence.errors import Fault, InputError, nearest
@@ -58,13 +58,10 @@ class Study:
         problem: Problem = rooms.find("models", self.model)(**self.arguments, **self.materials)
         return problem
 
-    def own_loads(self) -> dict[str, str]:
-        """Return what each case has of its own, in words."""
-        function = rooms.find("models", self.model)
-        return {
-            name: own_loads(function, self.arguments or {}, case.arguments or {}, self.units)
-            for name, case in self.cases.items()
-        }
+    def loads(self) -> dict[str, str]:
+        """Return what the cases differ in, in words for each of them."""
+        arguments = {name: case.arguments or {} for name, case in self.cases.items()}
+        return loads_of(rooms.find("models", self.model), self.arguments or {}, arguments, self.units)
 
 
 def load(path: Path, *, name: str = "") -> Study:

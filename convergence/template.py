@@ -7,12 +7,13 @@ from typing import Any
 
 from convergence import rooms
 from convergence.bind import REQUIRED, Parameter, parameters
-from convergence.dimensions import SYSTEMS
+from convergence.dimensions import FORCE, MOMENT, STRESS, SYSTEMS
 from convergence.fem.material import material, material_names
 from convergence.ladder_spec import ladder
 
 UNITS = "mm, N, MPa"
 WIDTH = 30
+LOADS = (FORCE, STRESS, MOMENT)
 
 
 def study_template(model: str) -> str:
@@ -28,6 +29,7 @@ def study_template(model: str) -> str:
         f"title = {_toml(about.rstrip('.'))}",
         _line(f"units = {_toml(UNITS)}", f"one of: {'; '.join(SYSTEMS)}"),
         *_section("model", function, given=materials, first={"name": model}),
+        *_cases(parameters(function, materials)),
         *(line for name in materials for line in _section(name, material)),
         *_section("ladder", ladder, first={"divisions": 2}),
         "",
@@ -49,6 +51,19 @@ def _section(
     for key, value in (first or {}).items():
         lines.append(_line(f"{key} = {_toml(value)}", _about(found.pop(key)) if key in found else ""))
     return lines + [_parameter(parameter) for parameter in found.values()]
+
+
+def _cases(known: Iterable[Parameter]) -> list[str]:
+    """Return a load case that is commented out, nothing where the model has no load that could be halved."""
+    load = next((each for each in known if each.dimension in LOADS and each.default), None)
+    if load is None:
+        return []
+    return [
+        "",
+        "# Load cases: each says what differs from [model], loads only. They are solved together.",
+        "# [cases.half_load]",
+        f"# {load.name} = {_toml(0.5 * load.default)}",
+    ]
 
 
 def _parameter(parameter: Parameter) -> str:

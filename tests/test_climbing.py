@@ -66,9 +66,9 @@ def solved(monkeypatch: pytest.MonkeyPatch) -> list[int]:
     seen: list[int] = []
     original = climbing.solve_cases
 
-    def counting(problems: object, meshed: object) -> object:
+    def counting(problems: object, meshed: object, starts: object) -> object:
         seen.append(meshed.cells)
-        return original(problems, meshed)
+        return original(problems, meshed, starts)
 
     monkeypatch.setattr(climbing, "solve_cases", counting)
     return seen
@@ -182,10 +182,10 @@ def fail(monkeypatch: pytest.MonkeyPatch, cells: int, error: Exception) -> None:
     """Let the solution of the mesh with so many cells raise."""
     original: Callable = climbing.solve_cases
 
-    def failing(problems: object, meshed: object) -> object:
+    def failing(problems: object, meshed: object, starts: object) -> object:
         if meshed.cells == cells:
             raise error
-        return original(problems, meshed)
+        return original(problems, meshed, starts)
 
     monkeypatch.setattr(climbing, "solve_cases", failing)
 

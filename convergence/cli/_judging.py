@@ -44,7 +44,7 @@ class Judged:
 
 @dataclass(frozen=True)
 class JudgedCases:
-    """The judged load cases of a study; `loads` says what each has of its own."""
+    """The judged load cases of a study; `loads` says what they differ in."""
 
     title: str
     name: str
@@ -66,7 +66,8 @@ def judge_saved(study: Study, folder: Path) -> Judged | JudgedCases:
     """Judge the ladder of a study in the folder of its run, or those of all its cases."""
     if not study.cases:
         return _judged_ladder(study, folder)
-    cases, faults = {}, []
+    cases: dict[str, Judged] = {}
+    faults: list[Fault] = []
     for name, case in study.cases.items():
         try:
             cases[name] = _judged_ladder(case, folder / name)
@@ -74,7 +75,7 @@ def judge_saved(study: Study, folder: Path) -> Judged | JudgedCases:
             faults += error.faults
     if faults:
         raise InputError(faults)
-    return JudgedCases(study.title, study.name, study.text, cases, study.own_loads())
+    return JudgedCases(study.title, study.name, study.text, cases, study.loads())
 
 
 def _judged_ladder(study: Study, folder: Path) -> Judged:
@@ -95,12 +96,22 @@ def _judged(study: Study, ladder: Ladder) -> Judged:
 def judge_path(path: Path, said: Said) -> Judged | JudgedCases:
     """Judge a table, a study or the folder of a run; nothing is solved."""
     if path.is_dir():
-        study = load(path / STUDY, name=path.resolve().name)
-        return _judged_study(study, path, said)
+        return _judged_study(_study_of(path), path, said)
     if path.suffix.lower() == ".toml":
         study = load(path)
         return _judged_study(study, default_folder(study.name), said)
     return _judged_table(path, said)
+
+
+def _study_of(folder: Path) -> Study:
+    """Return the study of a run's folder, or the case of the folder that one of its cases has."""
+    full = folder.resolve()
+    whole = full.parent / STUDY
+    if whole.is_file() and not (folder / STUDY).is_file():
+        cases = load(whole, name=full.parent.name).cases
+        if full.name in cases:
+            return cases[full.name]
+    return load(folder / STUDY, name=full.name)
 
 
 def _judged_study(study: Study, folder: Path, said: Said) -> Judged | JudgedCases:

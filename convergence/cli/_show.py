@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 import click
 
 from convergence.cli._judging import Judged, JudgedCases
-from convergence.results import Findings
+from convergence.results import Findings, Verdict
 
 if TYPE_CHECKING:
     from rich.console import Console
@@ -37,29 +37,48 @@ def show(judged: Judged | JudgedCases, *, methods: bool = False) -> None:
 
 
 def show_cases(judged: JudgedCases) -> None:
-    """Print every quantity in every case and the largest value of all; each step that is left to do."""
+    """Print every quantity in every case and the largest value of all; why the worst one is not sound."""
     from rich.table import Table
     from rich.text import Text
 
-    from convergence.report._words import overall_cases
+    from convergence.envelope import worst_case
+    from convergence.report._words import next_step, overall_cases
     from convergence.report.terminal import CASE_COLUMNS, case_rows
 
-    screen = _screen()
+    screen, cases = _screen(), judged.findings
     table = Table(box=None, pad_edge=False, header_style="bold")
-    for column in CASE_COLUMNS:
+    for column in ("quantity", *CASE_COLUMNS):
         table.add_column(column, overflow="fold")
-    for quantity, case, word, value, step in case_rows(judged.findings):
-        table.add_row(Text(quantity), Text(case), Text(word, COLOURS[word]), Text(value), Text(step))
+    quantities = next(iter(cases.values())).quantities
+    for quantity in quantities:
+        for number, (case, word, value) in enumerate(case_rows(cases, quantity.name)):
+            name = "" if number else quantity.name
+            table.add_row(Text(name), Text(case), Text(word, COLOURS[word]), Text(value))
     screen.print(Text(judged.title, "bold"))
     screen.print(table)
-    screen.print(Text(overall_cases(judged.findings)))
-    remarks = dict.fromkeys(
-        line
-        for findings in judged.findings.values()
-        for line in (*(f"Remark: {remark}." for remark in findings.ladder.remarks), *assumptions(findings))
-    )
-    for line in remarks:
+    for quantity in quantities:
+        worst = worst_case(cases, quantity.name)
+        verdict = cases[worst].verdicts[quantity.name]
+        _show_reasons(screen, f"{quantity.name}, {worst}", verdict, next_step(verdict))
+    screen.print(Text(overall_cases(cases)))
+    lines = [line for findings in cases.values() for line in _remarks(findings)]
+    for line in dict.fromkeys(lines):
         screen.print(Text(line))
+
+
+def _show_reasons(screen: "Console", what: str, verdict: Verdict, step: str) -> None:
+    """Print why something is not sound and what to do, nothing where it is."""
+    from rich.padding import Padding
+    from rich.text import Text
+
+    if verdict.word != "sound":
+        screen.print(Text(f"{what}: {verdict.word}; next: {step}"))
+        screen.print(Padding(Text("\n".join(verdict.reasons)), (0, 0, 0, 2)))
+
+
+def _remarks(findings: Findings) -> list[str]:
+    """Return the remarks on the ladder, and where a tolerance was not given."""
+    return [*(f"Remark: {remark}." for remark in findings.ladder.remarks), *assumptions(findings)]
 
 
 def _screen() -> "Console":
@@ -75,7 +94,6 @@ def show_table(findings: Findings, *, methods: bool = False) -> None:
 
     `methods` adds what each method says of each quantity.
     """
-    from rich.padding import Padding
     from rich.table import Table
     from rich.text import Text
 
@@ -93,14 +111,12 @@ def show_table(findings: Findings, *, methods: bool = False) -> None:
     screen.print(Text(findings.title, "bold"))
     screen.print(table)
     for row in rows:
-        verdict_of = findings.verdicts[row["quantity"]]
-        if verdict_of.word != "sound":
-            screen.print(Text(f"{row['quantity']}: {row['verdict']}; next: {row['next step']}"))
-            screen.print(Padding(Text("\n".join(verdict_of.reasons)), (0, 0, 0, 2)))
+        name = row["quantity"]
+        _show_reasons(screen, name, findings.verdicts[name], row["next step"])
     if methods:
         for row in rows:
             _show_methods(screen, findings, row["quantity"])
-    for line in (*(f"Remark: {remark}." for remark in findings.ladder.remarks), *assumptions(findings)):
+    for line in _remarks(findings):
         screen.print(Text(line))
 
 

@@ -36,7 +36,11 @@ def commands() -> None:
 
 
 def main() -> None:
-    """Run a command and exit with its code; nothing but a message reaches the user."""
+    """Run a command and exit with its code; nothing but a message reaches the user.
+
+    Threads of the matrix library only get in the way of our own, so there is one unless the user says more.
+    """
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     sys.exit(outcome(sys.argv[1:]))
 
 

@@ -1,4 +1,4 @@
-"""What two problems have in common besides their loads: then one stiffness and its factorization serve both."""
+"""What two problems have in common besides their loads: one factorization then serves both."""
 
 from typing import Any
 

@@ -29,17 +29,17 @@ def display(solution: Solution) -> Fields:
     stress = component(nodal_values(solution, recovered_stress(solution)), "von_mises")
     error = energy_error(solution) / cell_volumes(solution)
     groups = [(mesh.cell_nodes, np.arange(mesh.cells))] if mesh.dimension == 2 else _surface(mesh)
-    faces: list[np.ndarray] = []
+    drawn: list[np.ndarray] = []
     owners: list[np.ndarray] = []
     edges: list[np.ndarray] = []
     for nodes, owner in groups:
         kind = element(SHAPES[3, mesh.degree, len(nodes)], mesh.degree)
         pieces = _pieces(kind)
         corners = np.concatenate([nodes[list(piece)] for piece in pieces], axis=1)
-        faces.append(corners if len(groups) == 1 or len(corners) == 4 else corners[[0, 1, 2, 2]])
+        drawn.append(corners if len(groups) == 1 or len(corners) == 4 else corners[[0, 1, 2, 2]])
         owners.append(np.tile(owner, len(pieces)))
         edges.append(_edges(nodes, kind))
-    cells = np.concatenate(faces, axis=1)
+    cells = np.concatenate(drawn, axis=1)
     lines = np.concatenate(edges, axis=1)
     boundary = _outline(cells) if mesh.dimension == 2 else _sharp(cells, mesh.nodes)
     used, cells = np.unique(cells, return_inverse=True)
@@ -54,6 +54,14 @@ def display(solution: Solution) -> Fields:
         von_mises=stress[used],
         error=error[np.concatenate(owners)],
     )
+
+
+def faces(mesh: Mesh) -> int:
+    """Return how many faces the fields of a mesh have."""
+    pieces = 4 if mesh.degree == 2 else 1
+    if mesh.dimension < 3:
+        return mesh.cells * pieces
+    return pieces * sum(int(group.shape[1]) for groups in mesh.facets.values() for group in groups)
 
 
 def _rod(solution: Solution) -> Fields:

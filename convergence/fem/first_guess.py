@@ -4,6 +4,8 @@ It is read in the parameters of the part's blocks with the polynomials of the co
 need not be nested and the guess is as good as the coarser solution.
 """
 
+from collections.abc import Mapping
+
 import numpy as np
 
 from convergence.fem.grid import Grids
@@ -12,25 +14,26 @@ from convergence.fem.part import Part
 from convergence.fem.solid_part import SolidPart
 
 
-def first_guess(coarse: Mesh, unknowns: np.ndarray, fine: Mesh) -> np.ndarray | None:
-    """Return the interleaved unknowns of a finer mesh; None for rods and parts with open layers."""
-    part = fine.part
+def first_guess(counts: Mapping[int, int], unknowns: np.ndarray, fine: Mesh) -> np.ndarray | None:
+    """Return the interleaved unknowns of a mesh from those of a mesh of other counts and the same degree.
+
+    None for rods and parts with open layers.
+    """
+    part, degree = fine.part, fine.degree
     values = unknowns.reshape(-1, fine.dimension)
     if isinstance(part, Part):
-        return _plane(
-            values, Grids(part, coarse.counts, coarse.degree), Grids(part, fine.counts, fine.degree)
-        ).ravel()
+        return _plane(values, Grids(part, counts, degree), Grids(part, fine.counts, degree)).ravel()
     if not isinstance(part, SolidPart) or part.filled:
         return None
-    flat = [Grids(part.plan, level.counts, level.degree) for level in (coarse, fine)]
-    layers = values.reshape(-1, flat[0].size, fine.dimension)
-    starts = np.concatenate([[0], np.cumsum([coarse.degree * coarse.counts[f] for f in part.layer_families])])
+    before, after = (Grids(part.plan, cells, degree) for cells in (counts, fine.counts))
+    layers = values.reshape(-1, before.size, fine.dimension)
+    starts = np.concatenate([[0], np.cumsum([degree * counts[family] for family in part.layer_families])])
     found = [layers[:1]]
     for start, end, family in zip(starts, starts[1:], part.layer_families, strict=False):
-        steps = fine.degree * fine.counts[family]
-        found.append(_along(steps, coarse.counts[family], coarse.degree, layers[start : end + 1])[1:])
+        steps = degree * fine.counts[family]
+        found.append(_along(steps, counts[family], degree, layers[start : end + 1])[1:])
     through = np.moveaxis(np.concatenate(found), 0, 1)
-    return np.moveaxis(_plane(through, *flat), 1, 0).ravel()
+    return np.moveaxis(_plane(through, before, after), 1, 0).ravel()
 
 
 def _plane(values: np.ndarray, coarse: Grids, fine: Grids) -> np.ndarray:

@@ -1,4 +1,4 @@
-"""Parametric plane parts: `name(*, lengths, loads, kind, material) -> Problem`.
+"""Parametric parts: `name(*, lengths, loads, kind, material) -> Problem`.
 
 Every parameter is a keyword annotated with a type of dimensions.py and one phrase; defaults are in mm,
 N, MPa. `material` has no default; `kind` and further materials have one. Conflicts between parameters

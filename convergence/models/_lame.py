@@ -1,4 +1,4 @@
-"""The plane field of a ring under pressure at its bore and on its outside (Lamé 1852).
+"""Quarter of a ring, and its plane field under pressure at its bore and on its outside (Lamé 1852).
 
 Timoshenko & Goodier, Theory of Elasticity, 3rd ed., art. 28: stresses q ∓ c/r², displacement m q r + n c/r.
 """
@@ -6,7 +6,26 @@ Timoshenko & Goodier, Theory of Elasticity, 3rd ed., art. 28: stresses q ∓ c/r
 import numpy as np
 
 from convergence.fem.material import Material, PlaneKind
+from convergence.fem.part import Part, arc
 from convergence.fem.problem import Exact
+
+
+def quarter_ring(a: float, b: float) -> Part:
+    """Return the quarter between the radii a and b, from the x axis to the y axis."""
+    return Part(
+        points={"bore_x": (a, 0.0), "outer_x": (b, 0.0), "outer_y": (0.0, b), "bore_y": (0.0, a)},
+        blocks=(("bore_x", "outer_x", "outer_y", "bore_y"),),
+        curves={
+            ("bore_x", "bore_y"): arc((0.0, 0.0), a, 0.0, 90.0),
+            ("outer_x", "outer_y"): arc((0.0, 0.0), b, 0.0, 90.0),
+        },
+        boundaries={
+            "bore": (("bore_x", "bore_y"),),
+            "outer": (("outer_x", "outer_y"),),
+            "symmetry_x": (("bore_y", "outer_y"),),
+            "symmetry_y": (("bore_x", "outer_x"),),
+        },
+    )
 
 
 def compliances(kind: PlaneKind, material: Material) -> tuple[float, float]:

@@ -5,14 +5,12 @@ The elliptic membrane LE1 of "The Standard NAFEMS Benchmarks" (TNSB, Rev. 3, 199
 
 from typing import Annotated
 
-import numpy as np
-
 from convergence.dimensions import PositiveLength, Stress
 from convergence.errors import require
 from convergence.fem.loads import Pressure
 from convergence.fem.material import Material, PlaneKind
-from convergence.fem.part import Part, ellipse, graded
 from convergence.fem.problem import Problem
+from convergence.models._elliptic_plan import elliptic_plan
 from convergence.models._supports import SYMMETRY
 
 QUANTITIES = {
@@ -47,44 +45,10 @@ def elliptic_panel(
     )
     return Problem(
         title="Elliptic panel in tension",
-        part=_part((opening_half_x, opening_half_y), (outer_half_x, outer_half_y)),
+        part=elliptic_plan((opening_half_x, opening_half_y), (outer_half_x, outer_half_y)),
         materials={"body": material},
         supports=SYMMETRY,
         loads=(Pressure("outer", -tension),),
         kind=kind,
         thickness=thickness,
-    )
-
-
-def _part(opening: tuple[float, float], outer: tuple[float, float]) -> Part:
-    middle = np.sqrt(0.5)
-    points = {
-        "opening_x": (opening[0], 0.0),
-        "outer_x": (outer[0], 0.0),
-        "outer_middle": (middle * outer[0], middle * outer[1]),
-        "opening_middle": (middle * opening[0], middle * opening[1]),
-        "opening_y": (0.0, opening[1]),
-        "outer_y": (0.0, outer[1]),
-    }
-    ratio = sum(outer) / sum(opening)
-    spokes = (("opening_x", "outer_x"), ("opening_middle", "outer_middle"), ("opening_y", "outer_y"))
-    return Part(
-        points=points,
-        blocks=(
-            ("opening_x", "outer_x", "outer_middle", "opening_middle"),
-            ("opening_y", "opening_middle", "outer_middle", "outer_y"),
-        ),
-        curves={
-            ("opening_x", "opening_middle"): ellipse(*opening, 0.0, 45.0),
-            ("opening_middle", "opening_y"): ellipse(*opening, 45.0, 90.0),
-            ("outer_x", "outer_middle"): ellipse(*outer, 0.0, 45.0),
-            ("outer_middle", "outer_y"): ellipse(*outer, 45.0, 90.0),
-            **{(a, b): graded(points[a], points[b], ratio) for a, b in spokes},
-        },
-        boundaries={
-            "opening": (("opening_x", "opening_middle"), ("opening_middle", "opening_y")),
-            "outer": (("outer_x", "outer_middle"), ("outer_middle", "outer_y")),
-            "symmetry_x": (("outer_y", "opening_y"),),
-            "symmetry_y": (("opening_x", "outer_x"),),
-        },
     )

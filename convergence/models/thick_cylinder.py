@@ -9,9 +9,8 @@ from convergence.dimensions import PositiveLength, Stress
 from convergence.errors import require
 from convergence.fem.loads import Pressure
 from convergence.fem.material import Material, PlaneKind
-from convergence.fem.part import Part, arc
 from convergence.fem.problem import Exact, Problem
-from convergence.models._lame import quarter_energy, ring
+from convergence.models._lame import quarter_energy, quarter_ring, ring
 from convergence.models._supports import SYMMETRY
 
 QUANTITIES = {
@@ -40,24 +39,10 @@ def thick_cylinder(
         )
     )
     a, b = inner_radius, outer_radius
-    part = Part(
-        points={"bore_x": (a, 0.0), "outer_x": (b, 0.0), "outer_y": (0.0, b), "bore_y": (0.0, a)},
-        blocks=(("bore_x", "outer_x", "outer_y", "bore_y"),),
-        curves={
-            ("bore_x", "bore_y"): arc((0.0, 0.0), a, 0.0, 90.0),
-            ("outer_x", "outer_y"): arc((0.0, 0.0), b, 0.0, 90.0),
-        },
-        boundaries={
-            "bore": (("bore_x", "bore_y"),),
-            "outer": (("outer_x", "outer_y"),),
-            "symmetry_x": (("bore_y", "outer_y"),),
-            "symmetry_y": (("bore_x", "outer_x"),),
-        },
-    )
     exact = ring(a, b, (pressure, 0.0), kind, material)
     return Problem(
         title="Thick cylinder under internal pressure",
-        part=part,
+        part=quarter_ring(a, b),
         materials={"body": material},
         supports=SYMMETRY,
         loads=(Pressure("bore", pressure),),

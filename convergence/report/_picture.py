@@ -81,8 +81,18 @@ def draw(
         figure = Figure(figsize=size)
         FigureCanvasAgg(figure)
         paint(figure)
+        _lay_out(figure)
         vector, pixels = io.StringIO(), io.BytesIO()
         figure.savefig(vector, format="svg", dpi=DOTS_PER_INCH, metadata={"Date": None, "Creator": None})
         figure.savefig(pixels, format="png", dpi=DOTS_PER_INCH, metadata={"Software": None})
     svg = vector.getvalue().replace("'DejaVu Sans'", "'DejaVu Sans', Verdana, sans-serif")
     return Picture(name, alt, caption, svg, pixels.getvalue(), size[0])
+
+
+def _lay_out(figure: "Figure") -> None:
+    """Place axes, titles and legends: the first pass moves the axes, so the titles need a second."""
+    engine = figure.get_layout_engine()
+    if engine is not None:
+        for _ in range(2):
+            engine.execute(figure)
+        figure.set_layout_engine("none")

@@ -9,6 +9,7 @@ from convergence.envelope import Envelope, envelope, worst_first
 from convergence.report import _words, html, records
 from convergence.report.html import Html, text
 from convergence.report.sections_closing import caution_section, trace_section
+from convergence.report.sections_statement import never_covered
 from convergence.results import Findings, Quantity
 from convergence.textfile import write_text
 
@@ -36,8 +37,7 @@ def write_cases(
 ) -> Path:
     """Write report.html and findings.json of all cases; return the path of the page.
 
-    The report of a case stands in the folder of its name beside them; `loads` says what each case has of
-    its own.
+    The report of a case stands in the folder of its name beside them; `loads` says what they differ in.
     """
     quantities = next(iter(cases.values())).quantities
     largest = {quantity.name: envelope(cases, quantity.name) for quantity in quantities}
@@ -65,21 +65,38 @@ def write_cases(
 
 def _statement(cases: Mapping[str, Findings], quantities: tuple[Quantity, ...]) -> Html:
     order = worst_first(cases)
-    rows = [[text(q.name), *(_cell(case, cases[case], q) for case in order)] for q in quantities]
+    rows = [
+        [text(q.name), text(q.unit), *(_cell(case, cases[case], q) for case in order)] for q in quantities
+    ]
     return html.section(
         "statement",
         "Statement",
         html.paragraph(_words.overall_cases(cases), "overall"),
-        html.table("Every quantity in every case", ("quantity", *order), rows, "matrix"),
+        html.table("Every quantity in every case", ("quantity", "unit", *order), rows, "matrix"),
         html.paragraph(NOTE, "tiny"),
+        html.element("h3", {}, text("Not covered")),
+        html.bullets(_not_covered({case: cases[case] for case in order})),
     )
+
+
+def _not_covered(cases: Mapping[str, Findings]) -> list[str]:
+    """Return what no case covers, the checks that failed in some and the remarks on the ladders."""
+    items = dict.fromkeys(item for findings in cases.values() for item in never_covered(findings))
+    failed: dict[str, list[str]] = {}
+    for case, findings in cases.items():
+        for check in findings.checks:
+            if check.passed is False:
+                failed.setdefault(_words.plain(check.name), []).append(case)
+    checks = [f"Failed check, {name}: see {', '.join(where)}." for name, where in failed.items()]
+    remarks = dict.fromkeys(_words.sentence(r) for one in cases.values() for r in one.ladder.remarks)
+    return [*items, *checks, *remarks]
 
 
 def _cell(case: str, findings: Findings, quantity: Quantity) -> Html:
     verdict = findings.verdicts[quantity.name]
-    value = _words.with_unit(_words.value_text(verdict), quantity.unit)
-    link = html.element("a", {"href": _page(case, _words.anchor(findings, quantity))}, text(value))
-    return Html(f"{html.badge(verdict.word)} {link}")
+    address = _page(case, _words.anchor(findings, quantity))
+    value = html.element("a", {"href": address}, text(_words.value_text(verdict)))
+    return html.join(html.element("div", {}, html.badge(verdict.word)), html.element("div", {}, value))
 
 
 def _largest(

@@ -39,8 +39,8 @@ def write_report(
 ) -> Path:
     """Write report.html, findings.json and figures/ into the folder; return the path of the page.
 
-    `fields` belong to the finest levels in the order of the ladder; none for a table. Each file is
-    replaced as a whole, the page last; figures of an earlier run that are not drawn any more go.
+    `fields` belong to the coarsest levels, all that can be drawn, in the ladder's order; none for a table.
+    Each file is replaced as a whole, the page last; figures of an earlier run that are not drawn any more go.
     The same input gives the same bytes.
     """
     by_quantity = _quantity_pictures(findings, findings.ladder.h_unit)
@@ -117,17 +117,25 @@ def _field_parts(
     errors = [] if exact else [norm_figure(findings.ladder, findings.facts, findings.ladder.h_unit)]
     if fields:
         turned = _scene.turn(fields[-1])
+        drawn_mesh = _mesh_name(len(fields), len(findings.ladder.levels))
         meshes = mesh_figure(fields, turned, findings.ladder, findings.ladder.h_unit)
-        stress = stress_figure(fields[-1], turned, findings, units.stress)
+        stress = stress_figure(fields[-1], turned, findings, units.stress, drawn_mesh)
         parts.append(("meshes", "Meshes", sections_fields.meshes_section(meshes)))
         parts.append(("stress", "Stress", sections_fields.stress_section(findings, stress)))
         pictures += [meshes, stress]
         if not exact:
-            errors.insert(0, error_map(fields[-1], turned, units))
+            errors.insert(0, error_map(fields[-1], turned, units, drawn_mesh))
     drawn = [picture for picture in errors if picture is not None]
     if drawn:
         parts.append(("error", "Error", sections_fields.error_section(drawn)))
     return parts, pictures + drawn
+
+
+def _mesh_name(drawn: int, levels: int) -> str:
+    """Return what the mesh of the pictures is called."""
+    if drawn >= levels:
+        return "the finest mesh"
+    return f"level {drawn} of {levels}, the finest that can be drawn"
 
 
 def _write_figures(folder: Path, pictures: Sequence[Picture]) -> None:

@@ -17,10 +17,12 @@ if TYPE_CHECKING:
     from matplotlib.figure import Figure
 
 
-def error_map(field: Fields, turned: np.ndarray, units: Units) -> Picture | None:
+def error_map(
+    field: Fields, turned: np.ndarray, units: Units, mesh: str = "the finest mesh"
+) -> Picture | None:
     """Return the map of the squared energy-norm error per volume, None where it is zero everywhere.
 
-    `turned` is the rotation (D, D) to the page.
+    `turned` is the rotation (D, D) to the page, `mesh` what the mesh is called.
     """
     from matplotlib.colors import LogNorm
 
@@ -47,10 +49,10 @@ def error_map(field: Fields, turned: np.ndarray, units: Units) -> Picture | None
 
     where = "in the cells at the surface of" if len(turned) == 3 else "on"
     caption = (
-        f"Squared energy-norm error per volume {where} the finest mesh, from the recovered stress,"
+        f"Squared energy-norm error per volume {where} {mesh}, from the recovered stress,"
         " logarithmic colours: bright cells are where refinement pays."
     )
-    alt = "Map of the estimated energy-norm error density on the finest mesh"
+    alt = f"Map of the estimated energy-norm error density on {mesh}"
     return draw("error-map", (max(width + 1.5, 4.5), max(height + 0.3, 2.6)), alt, caption, paint)
 
 

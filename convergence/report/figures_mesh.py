@@ -16,7 +16,7 @@ if TYPE_CHECKING:
 
 
 def mesh_figure(fields: Sequence[Fields], turned: np.ndarray, ladder: Ladder, length: str) -> Picture:
-    """Return one panel a level; `fields` belong to the finest levels of the ladder, in its order.
+    """Return one panel a level; `fields` belong to the coarsest levels of the ladder, in its order.
 
     `turned` is the rotation (D, D) to the page.
     """
@@ -26,8 +26,7 @@ def mesh_figure(fields: Sequence[Fields], turned: np.ndarray, ladder: Ladder, le
     columns = min(len(fields), 1 if shape > 3.5 else 2 if shape > 1.8 else 3 if shape > 0.6 else 5)
     rows = -(-len(fields) // columns)
     width, height = _plane.panel(shape, (_plane.PAGE_WIDTH - 0.4) / columns, 3.4)
-    levels = ladder.levels[-len(fields) :]
-    first = len(ladder.levels) - len(levels) + 1
+    levels = ladder.levels[: len(fields)]
     dense = [_plane.too_dense(page, field.edges, width) for page, field in zip(pages, fields, strict=True)]
 
     def paint(figure: "Figure") -> None:
@@ -37,12 +36,14 @@ def mesh_figure(fields: Sequence[Fields], turned: np.ndarray, ladder: Ladder, le
             _scene.frame(axes, turned, whole)
             h = f"h = {numbers.compact(level.h, 3)} {length}".strip()
             between = ", " if width > 2.4 else "\n"
-            axes.set_title(f"level {first + place}: {numbers.count(level.cells)} cells{between}{h}")
+            axes.set_title(f"level {place + 1}: {numbers.count(level.cells)} cells{between}{h}")
 
     caption = "Same view and scale."
     if any(dense):
-        unprinted = " and ".join(str(n) for n, much in enumerate(dense, start=first) if much)
+        unprinted = " and ".join(str(n) for n, much in enumerate(dense, start=1) if much)
         caption += f" Of level {unprinted} the outline only: its cells are too small to print."
+    if len(levels) < len(ladder.levels):
+        caption += f" The levels from {len(levels) + 1} on are too fine to be drawn."
     alt = f"Meshes of {numbers.several(len(fields), 'level')} from coarse to fine in the same view and scale"
     size = (max(width, 1.9) * columns + 0.4, rows * (height + 0.35) + 0.1)
     return draw("meshes", size, alt, caption, paint)

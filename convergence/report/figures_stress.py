@@ -17,9 +17,13 @@ from convergence.results import Corner, Findings
 if TYPE_CHECKING:
     from matplotlib.figure import Figure
 
+FINEST = "the finest mesh"
 
-def stress_figure(field: Fields, turned: np.ndarray, findings: Findings, stress: str) -> Picture:
-    """Return the figure for the finest mesh, turned to the page by a rotation (D, D).
+
+def stress_figure(
+    field: Fields, turned: np.ndarray, findings: Findings, stress: str, mesh: str = FINEST
+) -> Picture:
+    """Return the figure for a mesh, called `mesh`, turned to the page by a rotation (D, D).
 
     The colours end at the largest stress outside the discs.
     """
@@ -50,8 +54,8 @@ def stress_figure(field: Fields, turned: np.ndarray, findings: Findings, stress:
     size = (max(width + 1.5, 4.5), max(height + 0.4 + 0.2 * len(marks), 2.6))
     place, how = _singular(corners)
     singular = numbers.several(len(corners), f"singular {place}")
-    alt = f"Von Mises stress on the deformed part, finest mesh; {singular} {how}"
-    return draw("stress", size, alt, _caption(len(turned) == 3, factor, corners, marks), paint)
+    alt = f"Von Mises stress on the deformed part, {mesh}; {singular} {how}"
+    return draw("stress", size, alt, _caption(len(turned) == 3, factor, corners, marks, mesh), paint)
 
 
 def deformation_factor(field: Fields) -> float:
@@ -68,11 +72,11 @@ def _singular(corners: Sequence[Corner]) -> tuple[str, str]:
     return ("edge", "banded") if edges else ("corner", "hatched")
 
 
-def _caption(solid: bool, factor: float, corners: Sequence[Corner], marks: Sequence[Peak]) -> str:
+def _caption(solid: bool, factor: float, corners: Sequence[Corner], marks: Sequence[Peak], mesh: str) -> str:
     times = numbers.at_step(factor, factor)
     scale = "at true scale" if factor == 1.0 else f"deformation drawn {times} times as large"
-    where = "surface of the finest mesh" if solid else "finest mesh"
-    caption = f"Recovered von Mises stress on the {where}, {scale}; dashed: the undeformed outline."
+    where = f"the surface of {mesh}" if solid else mesh
+    caption = f"Recovered von Mises stress on {where}, {scale}; dashed: the undeformed outline."
     if corners:
         place, how = _singular(corners)
         around = "tubes around them" if place == "edge" else "the discs"
@@ -80,4 +84,4 @@ def _caption(solid: bool, factor: float, corners: Sequence[Corner], marks: Seque
             f" {how.capitalize()}: singular {place}s, where stress has no limit; the colours end at the"
             f" largest stress outside {around}."
         )
-    return caption + (" Marks: places of peak quantities on this mesh." if marks else "")
+    return caption + (" Marks: places of peak quantities on the finest mesh." if marks else "")

@@ -38,6 +38,19 @@ def _row(findings: Findings, quantity: Quantity) -> list[Html]:
 
 def _not_covered(findings: Findings) -> list[str]:
     """Return what a reader might take for granted and must not."""
+    failed = [check for check in findings.checks if check.passed is False]
+    items = [
+        f"Failed check, {_words.plain(check.name)}: {_words.sentence(check.finding)}" for check in failed
+    ]
+    idle = [_words.plain(check.name) for check in findings.checks if check.passed is None]
+    if idle:
+        items.append(f"Checks that can make no statement here: {', '.join(idle)}.")
+    remarks = [_words.sentence(remark) for remark in findings.ladder.remarks]
+    return [*never_covered(findings), *items, *remarks]
+
+
+def never_covered(findings: Findings) -> list[str]:
+    """Return what is not covered whatever the numbers are."""
     items = [
         "Everything but the discretization error: the idealisation, loads, supports, material data and"
         " code checks are the analyst's."
@@ -45,13 +58,6 @@ def _not_covered(findings: Findings) -> list[str]:
     assumed = [quantity.name for quantity in findings.quantities if quantity.assumed_tolerance]
     if assumed:
         items.append(f"No tolerance was given for {', '.join(assumed)}: a common one was assumed.")
-    failed = [check for check in findings.checks if check.passed is False]
-    items += [
-        f"Failed check, {_words.plain(check.name)}: {_words.sentence(check.finding)}" for check in failed
-    ]
-    idle = [_words.plain(check.name) for check in findings.checks if check.passed is None]
-    if idle:
-        items.append(f"Checks that can make no statement here: {', '.join(idle)}.")
     if any(verdict.coverage is None for verdict in findings.verdicts.values()):
         items.append("How often such an interval holds the answer: its coverage has not been calibrated.")
-    return [*items, *(_words.sentence(remark) for remark in findings.ladder.remarks)]
+    return items

@@ -8,7 +8,7 @@ from convergence.numbers import order, percent, significant
 from convergence.report import _words
 from convergence.results import Findings
 
-CASE_COLUMNS = ("quantity", "case", "verdict", "value", "next step")
+CASE_COLUMNS = ("case", "verdict", "value")
 METHOD_COLUMNS = ("method", "order", "limit", "half-width", "of the value")
 COLUMNS = ("quantity", "value", "unit", "interval", "verdict", "order / theory", "next step")
 
@@ -32,18 +32,16 @@ def summary_rows(findings: Findings) -> list[tuple[str, ...]]:
     return rows
 
 
-def case_rows(cases: Mapping[str, Findings]) -> list[tuple[str, ...]]:
-    """Return one row a quantity and case, worst case first, then one of its largest absolute value."""
+def case_rows(cases: Mapping[str, Findings], name: str) -> list[tuple[str, ...]]:
+    """Return one row a case, the worst first, then one of the largest absolute value, as `CASE_COLUMNS`."""
+    (unit,) = {quantity.unit for quantity in next(iter(cases.values())).quantities if quantity.name == name}
     rows: list[tuple[str, ...]] = []
-    for quantity in next(iter(cases.values())).quantities:
-        for case in worst_first(cases):
-            verdict = cases[case].verdicts[quantity.name]
-            value = _words.with_unit(_words.value_text(verdict), quantity.unit)
-            rows.append((quantity.name, case, verdict.word, value, _words.next_step(verdict)))
-        found = envelope(cases, quantity.name)
-        span = _words.with_unit(_words.span_text(found), quantity.unit)
-        rows.append((quantity.name, f"largest: {found.case}", found.word, span, ""))
-    return rows
+    for case in worst_first(cases):
+        verdict = cases[case].verdicts[name]
+        rows.append((case, verdict.word, _words.with_unit(_words.value_text(verdict), unit)))
+    found = envelope(cases, name)
+    span = _words.with_unit(_words.span_text(found), unit)
+    return [*rows, (f"largest: {found.case}", found.word, span)]
 
 
 def method_rows(findings: Findings, name: str) -> list[tuple[str, ...]]:

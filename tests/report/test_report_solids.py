@@ -81,7 +81,8 @@ def test_all_levels_of_a_solid_are_drawn(findings: Findings, units: Units, drill
     levels = [drilled(1), drilled(2), drilled(16)]
     picture = mesh_figure(levels, VIEW, findings.ladder, "mm")
     assert picture.svg.count(">x</text>") == 3
-    assert "Of level 5 the outline only" in picture.caption
+    assert "Of level 3 the outline only" in picture.caption
+    assert "The levels from 4 on are too fine to be drawn." in picture.caption
     drawn = error_map(levels[1], VIEW, units)
     assert drawn is not None and "error density" in drawn.svg
     assert "cells at the surface" in drawn.caption

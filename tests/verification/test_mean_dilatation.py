@@ -18,7 +18,6 @@ from convergence.models.thick_cylinder import thick_cylinder
 from convergence.quantities.displacement import displacement
 
 NEARLY = 0.49999
-NEXT_POWER = 0.1
 # by Poisson's ratio the radial displacement of the bore: closed form, and as printed
 BORE = {
     0.0: (0.00375, None),
@@ -86,16 +85,18 @@ def test_rates(
     degree: int,
     poisson: float,
 ) -> None:
-    """A tenth of a power is left to the next one where sixteen cells span the wall."""
-    solutions = ladder(cylinder(part, poisson), degree, "mean dilatation", 4)
-    assert last_order([displacement_error(s) for s in solutions]) > degree + 1 - NEXT_POWER
-    assert last_order([energy_norm(s) for s in solutions]) == pytest.approx(degree, abs=NEXT_POWER)
+    """A tenth of a power is left to the next one with sixteen cells in the wall, two tenths with eight."""
+    levels, room = (3, 0.2) if part == "solid" else (4, 0.1)
+    solutions = ladder(cylinder(part, poisson), degree, "mean dilatation", levels)
+    assert last_order([displacement_error(s) for s in solutions]) > degree + 1 - room
+    assert last_order([energy_norm(s) for s in solutions]) == pytest.approx(degree, abs=room)
 
 
+@pytest.mark.slow
 @PARTS
 @DEGREES
 def test_plain_cells_lock(cylinder: Any, energy_norm: Any, part: str, degree: int) -> None:
-    """Eight cells through the wall: the plain ones miss more than half of the answer at 0.49999.
+    """Eight cells through the wall, four in a solid: plain ones miss more than half of the answer at 0.49999.
 
     The error of a stable method is bounded whatever Poisson's ratio; the incompressible limit of the problem
     itself changes it by less than half.
@@ -104,7 +105,7 @@ def test_plain_cells_lock(cylinder: Any, energy_norm: Any, part: str, degree: in
     for poisson in (0.3, NEARLY):
         problem = cylinder(part, poisson)
         for formulation in ("displacement", "mean dilatation"):
-            finest = ladder(problem, degree, formulation, 3)[-1]
+            finest = ladder(problem, degree, formulation, 2 if part == "solid" else 3)[-1]
             relative[poisson, formulation] = energy_norm(finest) / np.sqrt(2.0 * problem.exact.energy)
     assert relative[NEARLY, "mean dilatation"] < 1.5 * relative[0.3, "mean dilatation"] < 0.25
     assert relative[0.3, "displacement"] < 0.25

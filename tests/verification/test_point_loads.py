@@ -1,7 +1,7 @@
 """Loads on half-planes and discs: stress away from a point force converges, displacement and energy do not.
 
-Timoshenko & Goodier, Theory of Elasticity, 3rd ed., art. 36 (point force, Flamant), 37 (strip), 41 (disc). Units:
-E = 1, force 1, depth 1.
+Timoshenko & Goodier, Theory of Elasticity, 3rd ed., art. 36 (point force, Flamant), 37 (strip), 41 (disc),
+from memory. Units: E = 1, force 1, depth 1.
 """
 
 from typing import Any
@@ -22,7 +22,7 @@ SHAPES = pytest.mark.parametrize("shape", ["triangle", "quadrilateral"])
 
 
 def half_plane(load: Load) -> Problem:
-    """Return the right half of a block under a load on its top at x = 0, finest there; "below" is at depth 1."""
+    """Return the right half of a block under a load on its top at x = 0; the point "below" is at depth 1."""
     points = {
         "top": (0.0, 0.0), "edge": (1.0, 0.0), "right": (SIDE, 0.0),
         "below": (0.0, -1.0), "inner": (1.0, -1.0), "side": (SIDE, -1.0),
@@ -57,7 +57,7 @@ def half_plane(load: Load) -> Problem:
 
 
 def disc() -> Problem:
-    """Return a quarter of a disc of diameter 1 between two unit forces at the ends of its diameter along y."""
+    """Return a quarter of a disc of diameter 1 between two unit forces along y."""
     r, near, half = 0.5, 0.25, 0.5 * float(np.sqrt(0.5))
     points = {
         "centre": (0.0, 0.0), "x": (near, 0.0), "xy": (0.2, 0.2), "y": (0.0, near),
@@ -76,6 +76,7 @@ def disc() -> Problem:
     return Problem("Disc", part, {"body": MATERIAL}, supports, (PointForce("top", (0.0, -0.5)),))
 
 
+@pytest.mark.slow
 @SHAPES
 @pytest.mark.parametrize("degree", [1, 2])
 def test_energy_and_displacement_of_a_point_force_have_no_limit(climb: Any, shape: str, degree: int) -> None:
@@ -83,13 +84,12 @@ def test_energy_and_displacement_of_a_point_force_have_no_limit(climb: Any, shap
 
     The field around the force is the same on every mesh but for its scale, so each step adds the same.
     """
-    solutions = climb(half_plane(PointForce("top", (0.0, -0.5))), shape, degree, 1, 5)
+    solutions = climb(half_plane(PointForce("top", (0.0, -0.5))), shape, degree, 1, 6 - degree)
     under = [-solution.displacement[1, solution.mesh.vertices["top"]] for solution in solutions]
     energies = np.array([solution.energy for solution in solutions])
     step = 2.0 * (1.0 - 0.3**2) / np.pi * np.log(2.0)
-    print(np.diff(under) / step, np.diff(energies) / (0.25 * step))
-    assert np.diff(under)[-2:] == pytest.approx(step, rel=0.01)
-    assert np.diff(energies)[-2:] == pytest.approx(0.25 * step, rel=0.01)
+    assert np.diff(under)[-1] == pytest.approx(step, rel=0.01)
+    assert np.diff(energies)[-1] == pytest.approx(0.25 * step, rel=0.01)
     sizes = np.array([solution.mesh.h for solution in solutions])
     assert interval(sizes, energies, formal_order=2.0 * degree).flaw != ""
 
@@ -106,12 +106,11 @@ def test_energy_and_displacement_of_a_point_force_have_no_limit(climb: Any, shap
 def test_stress_below_a_load(climb: Any, load: Load, force: float, wanted: float) -> None:
     """At depth 1: -0.6366 below a unit force, -0.8183 below a strip of half-width 1 under unit pressure.
 
-    The block's sides and base add a smooth field of the size force / SIDE. Its syy and, by equilibrium, the slope
-    of syy with depth vanish on the free surface, so at depth 1 it is below force / SIDE³.
+    The block's sides and base add a smooth field of the size force / SIDE. Its syy and, by equilibrium, the
+    slope of syy with depth vanish on the free surface, so at depth 1 it is of the size force / SIDE³.
     """
-    solutions = climb(half_plane(load), "quadrilateral", 2, 1, 5)
+    solutions = climb(half_plane(load), "quadrilateral", 2, 1, 4)
     found = [stress(s, at="below", component="yy").value for s in solutions]
-    print(found, wanted, force / SIDE**3)
     assert abs(found[-1] - wanted) <= abs(found[-1] - found[-2]) + force / SIDE**3
     assert found[-1] == pytest.approx(wanted, rel=2e-3)
 
@@ -122,6 +121,5 @@ def test_disc_in_diametral_compression(climb: Any, shape: str) -> None:
     solutions = climb(disc(), shape, 2, 2, 4)
     for component, wanted in (("xx", 2.0 / np.pi), ("yy", -6.0 / np.pi)):
         found = [stress(s, at="centre", component=component).value for s in solutions]  # type: ignore[arg-type]
-        print(shape, component, np.array(found) - wanted)
-        assert abs(found[-1] - wanted) <= abs(found[-1] - found[-2])
+        assert abs(found[-1] - wanted) <= np.abs(np.diff(found[-3:])).max()  # they may swing
         assert found[-1] == pytest.approx(wanted, rel=1e-3)
