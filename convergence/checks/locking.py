@@ -3,8 +3,9 @@
 Linear cells cannot keep their volume and bend (Hughes 1987, The Finite Element Method, sect. 4.4); they
 still converge, but only once cells are much smaller. In plane stress no volume locks, nor with mean
 dilatation. Limits: 0.49, where the displacement of a thick cylinder on its first mesh comes out at half, and
-0.49999 for degree 2, where eight quadrilaterals leave 68 % error in the energy norm (own computations). A stress that varies much inside the cells is bending they cannot follow: with n cells through a
-depth in pure bending the share 1/n² of the energy varies inside them. Limit: 1/16, four cells.
+0.49999 for degree 2, where eight quadrilaterals leave 68 % error in the energy norm (own computations). A
+stress that varies much inside the cells is bending they cannot follow: with n cells through a depth in pure
+bending the share 1/n² of the energy varies inside them. Limit: 1/16, four cells.
 """
 
 import numpy as np

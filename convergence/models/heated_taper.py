@@ -33,7 +33,7 @@ def heated_taper(
     *,
     inner_radius: Annotated[PositiveLength, "radius of the sphere inside"] = 100.0,
     outer_radius: Annotated[PositiveLength, "radius of the sphere outside"] = 140.0,
-    bore_radius: Annotated[PositiveLength, "radius of the neck's bore"] = 70.711,
+    bore_radius: Annotated[PositiveLength, "radius of the neck's bore"] = 70.7107,
     neck_radius: Annotated[PositiveLength, "outer radius of the neck"] = 100.0,
     cone_start: Annotated[PositiveLength, "height where the outer sphere goes over into the cone"] = 70.0,
     cone_end: Annotated[PositiveLength, "height where the cone goes over into the neck"] = 139.0,
