@@ -53,7 +53,9 @@ def _covered(quantity: Quantity, part: AnyPart, corners: tuple[Corner, ...]) -> 
 
 def judge(ladder: Ladder, quantities: tuple[Quantity, ...], facts: Facts, title: str) -> Findings:
     """Return estimates, checks and a verdict for every quantity of a ladder."""
-    intervals = {q.name: _interval(ladder, q.name, q.formal_order) for q in quantities}
+    intervals = {
+        q.name: _interval(ladder, q.name, q.formal_order, _scale(ladder, q, facts)) for q in quantities
+    }
     peaks = {name: _interval(ladder, name, None) for name in own_peaks(ladder)}
     facts = replace(
         facts,
@@ -74,10 +76,26 @@ def judge(ladder: Ladder, quantities: tuple[Quantity, ...], facts: Facts, title:
     )
 
 
-def _interval(ladder: Ladder, name: str, formal_order: float | None) -> Interval:
+def _interval(ladder: Ladder, name: str, formal_order: float | None, scale: float = 0.0) -> Interval:
     f = ladder.column(name)
-    resolution = max(ladder.resolution.get(name, 0.0), _solver_noise(ladder) * _largest(f))
+    noise = _solver_noise(ladder) * max(_largest(f), scale)
+    resolution = max(ladder.resolution.get(name, 0.0), noise)
     return interval(ladder.h, f, formal_order=formal_order, resolution=resolution)
+
+
+def _scale(ladder: Ladder, quantity: Quantity, facts: Facts) -> float:
+    """Return what is large for a quantity of this kind: one that is zero by symmetry is noise of that size."""
+    if facts.size is None:
+        return 0.0
+    if quantity.kind == "displacement":
+        return facts.size * _largest(ladder.column("linear_range.displacement"))
+    if quantity.kind in ("point_stress", "peak_stress"):
+        return max((_largest(ladder.column(name)) for name in own_peaks(ladder)), default=0.0)
+    if quantity.kind in ("reaction", "resultant"):
+        forces = (f"equilibrium.{what}_{axis}" for what in ("load", "reaction") for axis in "xyz")
+        arm = facts.size if quantity.measure_name.endswith("moment") else 1.0
+        return arm * max(_largest(ladder.column(name)) for name in forces)
+    return 0.0
 
 
 def _solver_noise(ladder: Ladder) -> float:

@@ -18,7 +18,7 @@ class Equations:
     """K u = f with held unknowns. The hierarchy or factorization is made at the first solution, then kept."""
 
     def __init__(self, mesh: Mesh, matrix: sparse.csr_matrix, held: Held):
-        self.held = held
+        self.held, self.whole = held, matrix
         frame = held.frame
         self.matrix = matrix if frame is None else sparse.csr_matrix(frame.T @ matrix @ frame)
         self._mesh = mesh

@@ -234,3 +234,16 @@ def test_load_cases_share_one_stiffness() -> None:
     assert together[2].unknowns == pytest.approx(
         together[0].unknowns + together[1].unknowns, rel=1e-10, abs=1e-14
     )
+
+
+def test_dependent_cases_need_no_iterations() -> None:
+    """A case that is a sum of those before starts at its solution, so its field is theirs to the last digits."""
+    part = bar()
+    pull, push = Traction("right", (100.0, 0.0)), Traction("right", (0.0, -40.0))
+    level = mesh(part, part.divisions(size=None, divisions=40), shape="quadrilateral", degree=2)
+    assert level.nodes.size > 20_000
+    first, second, both = solve_cases(
+        [problem_of(part, pull), problem_of(part, push), problem_of(part, pull, push)], level
+    )
+    scale = np.abs(both.unknowns).max()
+    assert both.unknowns == pytest.approx(first.unknowns + second.unknowns, abs=1e-11 * scale)
