@@ -49,11 +49,12 @@ def heated_taper(
     """
     a, b = inner_radius, outer_radius
     within = f"less than outer_radius {b:g}"
+    low = max(cone_start, float(np.sqrt(max(a**2 - bore_radius**2, 0.0))))
     require(
         (a < b, "inner_radius", a, within),
         (bore_radius < min(a, neck_radius), "bore_radius", bore_radius, "less than the radii around it"),
         (neck_radius < b, "neck_radius", neck_radius, within),
-        (cone_start < cone_end, "cone_start", cone_start, f"less than cone_end {cone_end:g}"),
+        (cone_end > low, "cone_end", cone_end, f"above cone_start and the bore's lower end, {low:g}"),
         (cone_end < height, "cone_end", cone_end, f"less than height {height:g}"),
         (cone_start < b, "cone_start", cone_start, within),
     )

@@ -8,7 +8,9 @@ from typing import Any
 import numpy as np
 import pytest
 
-from convergence.fem.mesh import Mesh, Shape, mesh
+from convergence.fem.element import Shape
+from convergence.fem.geometry import at_rule, interpolate
+from convergence.fem.mesh import mesh
 from convergence.fem.part import finer
 from convergence.fem.problem import Problem
 from convergence.fem.solution import Solution, solve
@@ -40,15 +42,14 @@ def climb() -> Callable[..., list[Solution]]:
 
 
 @pytest.fixture(scope="session")
-def displacement_error(as_skfem: Callable[[Mesh], Any]) -> Callable[[Solution], float]:
+def displacement_error() -> Callable[[Solution], float]:
     def error(solution: Solution) -> float:
         """Return the L2 norm of the displacement's error."""
-        assert solution.problem.exact is not None
-        native = as_skfem(solution.mesh)
-        basis = native.basis(8)
-        places = np.asarray(basis.global_coordinates())
-        found = np.array([np.asarray(basis.interpolate(u)) for u in solution.displacement[:, native.numbers]])
-        squares = ((solution.problem.exact.displacement(*places) - found) ** 2).sum(axis=0)
-        return float(np.sqrt((squares * basis.dx).sum()))
+        level, exact = solution.mesh, solution.problem.exact
+        assert exact is not None
+        at = at_rule(level, 8)
+        found = interpolate(solution.displacement[:, level.cell_nodes], at.shapes)
+        squares = ((exact.displacement(*at.x) - found) ** 2).sum(axis=0)
+        return float(np.sqrt((squares * at.dx).sum()))
 
     return error

@@ -3,8 +3,9 @@
 Theory for a smooth solution (Strang & Fix 1973, An Analysis of the Finite Element Method, ch. 3):
 displacement h^(k+1) in L2, stress h^k in the energy norm, strain energy h^(2k). With a corner of
 exponent l (Szabo & Babuska 1991, ch. 10): 2 min(k, l) for the energy, min(k, l) + l for the
-displacement. The order seen on the two finest of four meshes is off by what the next power of h leaves:
-a term of relative size c h changes it by c h / ln 2, below 0.1 here once meshes have 500 cells.
+displacement. The order seen on the two finest of four meshes (three of quadratic solids) is off by what
+the next power of h leaves: a term of relative size c h changes it by c h / ln 2, below 0.1 here once meshes
+have 500 cells, and solids eight over the wall.
 """
 
 from collections.abc import Callable
@@ -107,7 +108,7 @@ def test_smooth_rates(
     climb: Climb, displacement_error: Any, name: str, kind: PlaneKind | None, shape: Shape, degree: int
 ) -> None:
     problem = model(name, kind)
-    solutions = climb(problem, shape, degree, 2, 4)
+    solutions = climb(problem, shape, degree, 2, 3 if problem.kind == "solid" and degree == 2 else 4)
     norms = [float(np.sqrt(exact_energy_error(solution).sum())) for solution in solutions]
     assert last_order(solutions, norms) == pytest.approx(degree, abs=NEXT_POWER)
     found = last_order(solutions, [displacement_error(solution) for solution in solutions])
