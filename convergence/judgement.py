@@ -7,7 +7,7 @@ import numpy as np
 
 from convergence import rooms
 from convergence.checks.linear_range import own_peaks
-from convergence.fem.corners import singular_corners
+from convergence.corners.singular_corners import singular_corners
 from convergence.fem.material import Material
 from convergence.fem.problem import AnyPart
 from convergence.intervals import Interval, interval
@@ -84,7 +84,7 @@ def _interval(ladder: Ladder, name: str, formal_order: float | None, scale: floa
 
 
 def _scale(ladder: Ladder, quantity: Quantity, facts: Facts) -> float:
-    """Return what is large for a quantity of this kind: one that is zero by symmetry is noise of that size."""
+    """Return what is large for this kind of quantity: one that is zero by symmetry is noise of that size."""
     if facts.size is None:
         return 0.0
     if quantity.kind == "displacement":

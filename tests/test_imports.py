@@ -28,6 +28,7 @@ FOUNDATIONS = {
 FLOORS = (
     FOUNDATIONS,
     {"fem", "estimators", "intake"},
+    {"corners"},
     {"models", "quantities", "checks"},
     {"measured", "cases"},
     {"model_study"},
@@ -40,7 +41,7 @@ FLOORS = (
     {"__main__"},
 )
 # rooms whose files build on each other in one direction; in all others a member stands alone
-BUILT_UP = {"fem", "report", "calibration", "bench"}
+BUILT_UP = {"fem", "corners", "report", "calibration", "bench"}
 ONLY_IN = {
     "skfem": {"fem", "models", "quantities"},
     "matplotlib": {"report", "bench"},

@@ -9,7 +9,7 @@ import numpy as np
 
 from convergence.checks._corner import STRESS_KINDS, growing_corner
 from convergence.checks._ladder import not_applicable
-from convergence.fem.corners import singular_corners
+from convergence.corners.singular_corners import singular_corners
 from convergence.fem.mesh import Mesh
 from convergence.fem.recovery import cell_volumes, element_energy
 from convergence.fem.solid_mesh import edge_nodes

@@ -8,7 +8,7 @@ import pytest
 
 from convergence.checks.energy_norm import energy_norm
 from convergence.checks.stress_averaging import stress_averaging
-from convergence.fem.corners import singular_corners
+from convergence.corners.singular_corners import singular_corners
 from convergence.fem.problem import Support
 from convergence.fem.solution import solve
 from convergence.results import Facts, Ladder

@@ -9,7 +9,7 @@ import pytest
 
 from convergence.checks.peak_region import peak_region
 from convergence.checks.singular_peak import corner_exponent, growth_exponent, singular_peak
-from convergence.fem.corners import singular_corners
+from convergence.corners.singular_corners import singular_corners
 from convergence.judgement import judge
 from convergence.quantities.displacement import displacement
 from convergence.quantities.peak_stress import peak_stress

@@ -237,7 +237,7 @@ def test_load_cases_share_one_stiffness() -> None:
 
 
 def test_dependent_cases_need_no_iterations() -> None:
-    """A case that is a sum of those before starts at its solution, so its field is theirs to the last digits."""
+    """A case that is a sum of those before starts at its solution: its field is theirs to the last digits."""
     part = bar()
     pull, push = Traction("right", (100.0, 0.0)), Traction("right", (0.0, -40.0))
     level = mesh(part, part.divisions(size=None, divisions=40), shape="quadrilateral", degree=2)

@@ -6,8 +6,8 @@ import numpy as np
 import pytest
 
 from convergence import rooms
+from convergence.corners.singular_corners import singular_corners
 from convergence.errors import Unsuitable
-from convergence.fem.corners import singular_corners
 from convergence.fem.held import boundary_nodes
 from convergence.fem.loads import BearingLoad
 from convergence.fem.material import Material

@@ -6,8 +6,8 @@ from typing import Any
 import numpy as np
 import pytest
 
+from convergence.corners.singular_corners import singular_corners
 from convergence.errors import Unsuitable
-from convergence.fem.corners import singular_corners
 from convergence.fem.material import Material
 from convergence.fem.mesh import Shape, mesh
 from convergence.fem.problem import Problem

@@ -5,8 +5,8 @@ from collections.abc import Callable
 import numpy as np
 import pytest
 
+from convergence.corners.singular_corners import singular_corners
 from convergence.errors import Unsuitable
-from convergence.fem.corners import singular_corners
 from convergence.fem.element import Shape
 from convergence.fem.material import Material
 from convergence.fem.mesh import mesh

@@ -5,8 +5,8 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
-from convergence.fem.corners import singular_corners
-from convergence.fem.forced_points import forced_points
+from convergence.corners.forced_points import forced_points
+from convergence.corners.singular_corners import singular_corners
 from convergence.fem.loads import BodyForce, Load, PointForce, Traction
 from convergence.fem.material import Material
 from convergence.fem.part import Part

@@ -11,13 +11,13 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from convergence.fem.chains import chained, edge_name
-from convergence.fem.fans import Fan, Sides
-from convergence.fem.forced_points import forced_points
+from convergence.corners.chains import chained, edge_name
+from convergence.corners.fans import Fan, Sides
+from convergence.corners.forced_points import forced_points
+from convergence.corners.sides import Conditions, conditions
+from convergence.corners.sites import Site, sites
 from convergence.fem.problem import Problem
 from convergence.fem.rod_part import RodPart
-from convergence.fem.sides import Conditions, conditions
-from convergence.fem.sites import Site, sites
 from convergence.results import Corner
 
 REGULAR = 0.999

@@ -19,8 +19,8 @@ from hypothesis import strategies as st
 from numpy.typing import NDArray
 from scipy.linalg import expm
 
+from convergence.corners.williams import corner_exponents, weakest_exponent
 from convergence.errors import Unsuitable
-from convergence.fem.williams import corner_exponents, weakest_exponent
 
 PRINTED = 5.1e-11  # half a unit of the tenth digit, and rounding
 Complex = NDArray[np.complex128]

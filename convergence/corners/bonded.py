@@ -20,8 +20,8 @@ from typing import Literal
 
 import numpy as np
 
+from convergence.corners.williams import SIDES
 from convergence.errors import require
-from convergence.fem.williams import SIDES
 
 Sector = tuple[float, float, float]  # opening in degrees, shear modulus, kappa
 Mode = Literal["in plane", "antiplane"]

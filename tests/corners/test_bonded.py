@@ -16,9 +16,9 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 from scipy.linalg import expm
 
+from convergence.corners.bonded import Sector, wedge_exponents
+from convergence.corners.williams import corner_exponents
 from convergence.errors import Unsuitable
-from convergence.fem.bonded import Sector, wedge_exponents
-from convergence.fem.williams import corner_exponents
 
 PRINTED = 1e-11  # twelve digits are printed; collocation stops at a few 1e-12
 FREE = ("free", "free")

@@ -13,9 +13,9 @@ from itertools import accumulate, pairwise
 
 import numpy as np
 
-from convergence.fem.bonded import Sector, wedge_exponents
+from convergence.corners.bonded import Sector, wedge_exponents
+from convergence.corners.williams import weakest_exponent
 from convergence.fem.material import Material, ProblemKind
-from convergence.fem.williams import weakest_exponent
 
 WHOLE = 1e-2  # angles this close to a whole number of degrees are one: tangents are differences
 Sides = tuple[str, str]

@@ -9,12 +9,12 @@ import time
 import numpy as np
 import pytest
 
-from convergence.fem.corners import singular_corners, unexamined_corners
+from convergence.corners.singular_corners import singular_corners, unexamined_corners
+from convergence.corners.williams import weakest_exponent
 from convergence.fem.material import Material
 from convergence.fem.part import Part, arc
 from convergence.fem.problem import Problem, Support
 from convergence.fem.solid_part import REVOLVED, SolidPart, Sweep
-from convergence.fem.williams import weakest_exponent
 
 STEEL = Material(210000.0, 0.3)
 FREE_FREE_270 = 0.5444837367825

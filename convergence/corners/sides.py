@@ -4,11 +4,11 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from convergence.fem.fans import Face
+from convergence.corners.fans import Face
+from convergence.corners.sites import face_key
 from convergence.fem.part import Part
 from convergence.fem.problem import AnyPart, Problem, Support
 from convergence.fem.rod_part import RodPart
-from convergence.fem.sites import face_key
 
 FLAT = 1e-9  # of the part's size
 COORDINATES = ("x", "y", "z")

@@ -10,8 +10,8 @@ import numpy as np
 import pytest
 
 from convergence import rooms
-from convergence.fem.bonded import wedge_exponents
-from convergence.fem.corners import singular_corners, unexamined_corners
+from convergence.corners.bonded import wedge_exponents
+from convergence.corners.singular_corners import singular_corners, unexamined_corners
 from convergence.fem.loads import Traction
 from convergence.fem.material import Material
 from convergence.fem.part import Part

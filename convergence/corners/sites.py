@@ -10,7 +10,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from convergence.fem.fans import Face, Fan, Wedge, fans
+from convergence.corners.fans import Face, Fan, Wedge, fans
 from convergence.fem.material import Material
 from convergence.fem.part import EdgeName, Part
 from convergence.fem.problem import AnyPart
