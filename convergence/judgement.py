@@ -7,7 +7,7 @@ import numpy as np
 
 from convergence import rooms
 from convergence.checks.linear_range import own_peaks
-from convergence.corners.singular_corners import singular_corners
+from convergence.corners.singular_corners import singular_corners, unexamined_corners
 from convergence.fem.material import Material
 from convergence.fem.problem import AnyPart
 from convergence.intervals import Interval, interval
@@ -25,13 +25,15 @@ def facts_of(study: Study) -> Facts:
     if study.ladder is None:
         return replace(facts, yields={"": _yield(study.materials["material"])})
     problem = study.problem()
-    corners = singular_corners(problem)
+    corners, unexamined = singular_corners(problem), unexamined_corners(problem)
     return replace(
         facts,
         degree=study.ladder.degree,
         size=problem.part.size,
         corners=corners,
         covered={q.name: _covered(q, problem.part, corners) for q in quantities},
+        unexamined=unexamined,
+        doubtful={q.name: _covered(q, problem.part, unexamined) for q in quantities},
         components={q.name: str(q.arguments.get("component", "")) for q in quantities},
         regions={q.name: str(q.arguments.get("region") or "") for q in quantities},
         yields={region: _yield(material) for region, material in problem.materials.items()},
@@ -44,7 +46,7 @@ def _yield(material: Material) -> Yield | None:
 
 
 def _covered(quantity: Quantity, part: AnyPart, corners: tuple[Corner, ...]) -> tuple[Corner, ...]:
-    """Return the singular corners within the reach of a quantity."""
+    """Return those of some corners that are within the reach of a quantity."""
     covers = rooms.beside("quantities", quantity.measure_name, "covers")
     if covers is None:
         return ()

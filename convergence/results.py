@@ -150,9 +150,10 @@ class Facts:
     """What is known beside the ladder: the model's theory and the limits of linear analysis.
 
     `size` is the largest extent of the part; `corners` is None where the model is not known; `covered`
-    has the singular corners within the reach of each quantity; `components` what a stress is, `regions` the
-    one it is confined to, "" where none; `yields` the yield strengths by region, of a table under "";
-    `intervals` the stated (low, high) per name, NaN where there is none.
+    has the singular corners within the reach of each quantity; `unexamined` and `doubtful` say the same of
+    corners on which theory is silent; `components` what a stress is, `regions` the one it is confined to,
+    "" where none; `yields` the yield strengths by region, of a table under ""; `intervals` the stated
+    (low, high) per name, NaN where there is none.
     """
 
     degree: int | None = None
@@ -161,6 +162,8 @@ class Facts:
     yields: Mapping[str, Yield | None] = field(default_factory=dict)
     corners: tuple[Corner, ...] | None = None
     covered: Mapping[str, tuple[Corner, ...]] = field(default_factory=dict)
+    unexamined: tuple[Corner, ...] = ()
+    doubtful: Mapping[str, tuple[Corner, ...]] = field(default_factory=dict)
     kinds: Mapping[str, Kind] = field(default_factory=dict)
     components: Mapping[str, str] = field(default_factory=dict)
     regions: Mapping[str, str] = field(default_factory=dict)

@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from convergence import numbers
 from convergence.forecast import STEEPEST_MEMORY, STEEPEST_TIME, grown
 from convergence.intervals import LEAST_ORDER, Interval
-from convergence.results import Facts, Ladder, Quantity, Verdict, VerdictWord
+from convergence.results import Corner, Facts, Ladder, Quantity, Verdict, VerdictWord
 
 MOST_ORDER = 4.0
 AFFORDABLE_DOFS = 5e7
@@ -35,6 +35,9 @@ def verdict(
     word = _word(quantity, found, tolerance, spoiled)
     ahead = _next_mesh(found, tolerance, expected, ladder, facts) if word == "refine" else Next()
     stated = word != "singular"
+    reasons = _reasons(quantity, found, spoiled, tolerance, expected, ahead, word)
+    if word in ("sound", "refine"):
+        reasons += _about_unexamined(facts.doubtful.get(quantity.name, ()))
     return Verdict(
         word=word,
         value=found.value,
@@ -53,7 +56,7 @@ def verdict(
         next_seconds=ahead.seconds,
         next_memory=ahead.memory,
         coverage=None,
-        reasons=tuple(_reasons(quantity, found, spoiled, tolerance, expected, ahead, word)),
+        reasons=tuple(reasons),
     )
 
 
@@ -182,6 +185,16 @@ def _about_tolerance(
                 "That is out of reach: use degree 2, a smaller part around the place, or another quantity."
             )
     return lines
+
+
+def _about_unexamined(corners: tuple[Corner, ...]) -> list[str]:
+    if not corners:
+        return []
+    names = ", ".join(corner.name for corner in corners)
+    return [
+        f"Within its reach, not examined: {names}, of a material or shape that the theory of corners used "
+        "here does not cover; were stress singular there, it would pass this value on finer meshes."
+    ]
 
 
 def _capital(text: str) -> str:

@@ -1,4 +1,4 @@
-"""The singular corner that a stress sits on, and grows at."""
+"""The singular corner that a stress sits on, and grows at; corners in words."""
 
 import numpy as np
 
@@ -6,6 +6,19 @@ from convergence.results import Corner, Facts, Ladder
 
 NEAR = 2.0
 STRESS_KINDS = ("peak_stress", "point_stress", "unknown")
+AT_POINT = {"force": "where a force acts", "support": "where a support takes a force"}
+
+
+def described(corner: Corner) -> str:
+    """Return "the free-free corner heel of 270° at (0, 0)", and the like for edges and for points."""
+    shape = "corner" if len(corner.path) == 1 else "edge"
+    one, other = corner.sides
+    if one == "point":
+        return f"the point {corner.name} {corner.where}, {AT_POINT[other]}"
+    if corner.sides == ("bonded", "bonded"):
+        shape = "point" if shape == "corner" else shape
+        return f"the {shape} {corner.name} {corner.where}, where materials meet"
+    return f"the {one}-{other} {shape} {corner.name} of {corner.opening:.4g}° {corner.where}"
 
 
 def growing_corner(ladder: Ladder, facts: Facts, name: str) -> Corner | None:

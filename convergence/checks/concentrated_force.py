@@ -7,7 +7,7 @@ energy. The stress there is left to the checks of peaks. What is read at a dista
 
 from convergence.checks._ladder import not_applicable
 from convergence.fem.solution import Solution
-from convergence.results import Check, Facts, Ladder
+from convergence.results import Check, Corner, Facts, Kind, Ladder
 
 SPOILED = ("displacement", "rotation", "energy")
 
@@ -24,12 +24,20 @@ def concentrated_force(ladder: Ladder, facts: Facts) -> Check:
     spoils = {}
     for name, corners in facts.covered.items():
         if corners and facts.kinds.get(name) in SPOILED:
-            spoils[name] = (
-                f"a force acts on the point {corners[0].name} {corners[0].where}: the value there grows "
-                "without limit as the cells shrink; spread the force over the area it acts on"
-            )
+            spoils[name] = _reason(corners[0], facts.kinds[name])
     if not spoils:
         finding = "No displacement or energy hangs on a force that acts on a point."
         return Check("concentrated_force", True, finding)
     finding = "; ".join(f"{name}: {reason}" for name, reason in spoils.items())
     return Check("concentrated_force", False, finding, spoils, leads_to="singular")
+
+
+def _reason(corner: Corner, kind: Kind) -> str:
+    cause = corner.sides[1]
+    subject = "the energy" if kind == "energy" else f"the {kind} there"
+    instead = "report a deflection elsewhere" if kind == "energy" else "report it at another point"
+    verb = "acts on" if cause == "force" else "takes a force at"
+    return (
+        f"a {cause} {verb} the point {corner.name} {corner.where}: {subject} has no limit, it grows as the "
+        f"cells shrink; {instead}, or spread the {cause} over the area it acts on"
+    )

@@ -44,6 +44,10 @@ def energy_norm(ladder: Ladder, facts: Facts) -> Check:
     columns = recorded(ladder, "energy_norm", "estimated", "absolute", "energy", "identity")
     if columns is None:
         return not_applicable("energy_norm", "The ladder has no stress fields of our own solver.")
+    forced = next((corner for corner in facts.corners or () if corner.exponent <= 0.0), None)
+    if forced is not None:
+        finding = f"A force acts on the point {forced.name}: the energy has no limit, nor has its error."
+        return not_applicable("energy_norm", finding)
     relative = float(columns["estimated"][-1])
     sentences = [
         f"Estimated error in the energy norm on the finest level: {100 * relative:.3g} % (limit 10 %)."

@@ -5,7 +5,7 @@ limit, even where another place leads on the levels so far: the corner overtakes
 A value that stands and grows on the corner itself is left to the check of singular peaks.
 """
 
-from convergence.checks._corner import STRESS_KINDS, growing_corner
+from convergence.checks._corner import STRESS_KINDS, described, growing_corner
 from convergence.checks._ladder import not_applicable
 from convergence.fem.solution import Solution
 from convergence.results import Check, Facts, Ladder
@@ -25,9 +25,9 @@ def peak_region(ladder: Ladder, facts: Facts) -> Check:
         if corners and facts.kinds.get(name) in STRESS_KINDS and growing_corner(ladder, facts, name) is None:
             weakest = min(corners, key=lambda corner: corner.exponent)
             spoils[name] = (
-                f"its region holds the singular corner {weakest.name} {weakest.where}, theory "
-                f"λ = {weakest.exponent:.3f}, whose stress passes every value on finer meshes; leave the "
-                "corner out by `boundary`, or by `near` and `radius`"
+                f"its region holds {described(weakest)}; stress there grows like h^"
+                f"{weakest.exponent - 1.0:.3g} by theory and passes every value on finer meshes; leave it "
+                "out by `boundary`, or by `near` and `radius`"
             )
     if not spoils:
         return Check("peak_region", True, "No stress is asked for where the model has a singular corner.")

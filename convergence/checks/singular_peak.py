@@ -7,7 +7,7 @@ growth than λ = 0.2 is no singularity but a notch that the coarse levels did no
 
 import numpy as np
 
-from convergence.checks._corner import STRESS_KINDS, growing_corner
+from convergence.checks._corner import STRESS_KINDS, described, growing_corner
 from convergence.checks._ladder import not_applicable
 from convergence.corners.singular_corners import singular_corners
 from convergence.fem.mesh import Mesh
@@ -19,6 +19,11 @@ from convergence.results import Check, Corner, Facts, Ladder
 from convergence.sequences import noise_floor, observed_order
 
 FASTEST, SLOWEST = -0.8, 0.05
+REMEDIES = {
+    ("point", "force"): ", or spread the force over the area it acts on",
+    ("point", "support"): ", or spread the support over the area it acts on",
+    ("bonded", "bonded"): "",
+}
 
 
 def record(solution: Solution) -> dict[str, float]:
@@ -94,14 +99,15 @@ def corner_exponent(ladder: Ladder, corner: str) -> float:
 
 
 def _at_corner(corner: Corner, exponent: float) -> str:
-    data = (
-        "the levels do not measure it"
-        if np.isnan(exponent)
-        else f"the cells at the corner give {exponent:.3f}"
-    )
+    growth = f"h^(λ-1) without limit: theory λ = {corner.exponent:.3f}"
+    measured = f"the cells that touch it give {exponent:.3f}"
+    if corner.exponent <= 0.0:
+        growth = f"h^{corner.exponent - 1.0:.0f} without limit by theory"
+        measured = f"like h^{exponent - 1.0:.2f} in the cells that touch it"
+    if not np.isfinite(exponent):
+        measured = "the levels do not measure it"
     return (
-        f"the value sits on the {corner.sides[0]}-{corner.sides[1]} corner {corner.name} of "
-        f"{corner.opening:.4g}° {corner.where}, where stress grows like h^(λ-1) without "
-        f"limit: theory λ = {corner.exponent:.3f}, {data}; report the stress at a stated distance, a mean "
-        "over a line or a resultant, or model the real radius"
+        f"the value sits on {described(corner)}; stress there grows like {growth}, {measured}; report the "
+        "stress at a stated distance, a mean over a line or a resultant"
+        f"{REMEDIES.get(corner.sides, ', or model the real radius')}"
     )

@@ -47,20 +47,20 @@ def singular_corners(problem: Problem) -> tuple[Corner, ...]:
     return tuple(sorted(found, key=lambda corner: corner.exponent))
 
 
-def unexamined_corners(problem: Problem) -> tuple[str, ...]:
-    """Return names of corners of orthotropic materials and of cones on the axis of a ring.
+def unexamined_corners(problem: Problem) -> tuple[Corner, ...]:
+    """Return the corners of orthotropic materials and of cones on the axis of a ring, of exponent NaN.
 
     Other equations hold there. Inside one material, and on its flat sides under one condition, all is
     regular whatever the material.
     """
     if isinstance(problem.part, RodPart):
         return ()
-    faces, found = conditions(problem), []
+    faces, found = conditions(problem), list[Corner]()
     for site in sites(problem.part, problem.materials):
-        fan, (one, other) = site.fan, _sides(faces, site.fan)
-        flat = fan.closed or (fan.opening == 180.0 and one == other)
+        fan, sides = site.fan, _sides(faces, site.fan)
+        flat = fan.closed or (fan.opening == 180.0 and sides[0] == sides[1])
         if not _has_equations(problem, site) and not (flat and fan.materials == 1):
-            found.append(edge_name(site.points))
+            found.append(_corner(site, sides, np.nan))
     return tuple(found)
 
 
@@ -72,9 +72,13 @@ def _singular(problem: Problem, faces: Conditions, site: Site) -> Iterator[Corne
     sides = _sides(faces, fan)
     exponent = fan.weakest(sides, problem.kind)
     if exponent is not None and exponent < REGULAR and _excited(problem, site):
-        path = tuple(tuple(float(x) for x in place) for place in site.path)
-        one, other = sorted(sides)
-        yield Corner(edge_name(site.points), path, site.points, fan.opening, (one, other), exponent)
+        yield _corner(site, sides, exponent)
+
+
+def _corner(site: Site, sides: Sides, exponent: float) -> Corner:
+    path = tuple(tuple(float(x) for x in place) for place in site.path)
+    one, other = sorted(sides)
+    return Corner(edge_name(site.points), path, site.points, site.fan.opening, (one, other), exponent)
 
 
 def _has_equations(problem: Problem, site: Site) -> bool:

@@ -1,5 +1,7 @@
 """Quarter of a block under a rectangular patch of pressure, e.g. the concrete under the davit's base plate.
 
+On an elastic bed (Winkler 1867) it is a base plate on grout.
+
 Far from its sides and its bottom it is a half space: Love 1929, Phil. Trans. R. Soc. A 228:377; Newmark 1935,
 Univ. of Illinois Eng. Exp. Station Circ. 24, for the stress below a corner of the patch (both from memory).
 Under the edge of the patch the stress depends on the direction one comes from: no value belongs there.
@@ -9,12 +11,12 @@ from typing import Annotated, Literal
 
 import numpy as np
 
-from convergence.dimensions import PositiveLength, Stress
+from convergence.dimensions import ForcePerVolume, PositiveLength, Stress
 from convergence.errors import require
 from convergence.fem.loads import Pressure
 from convergence.fem.material import Material
 from convergence.fem.part import Part, graded
-from convergence.fem.problem import Problem, Support
+from convergence.fem.problem import ElasticSupport, Problem, Support
 from convergence.fem.solid_part import Cap, SolidPart
 from convergence.models._supports import SYMMETRY
 
@@ -39,7 +41,7 @@ QUANTITIES = {
     },
     "energy": {"measure": "strain_energy", "relative_tolerance": 0.01},
 }
-Bottom = Literal["clamped", "roller"]
+Bottom = Literal["clamped", "roller", "bedded"]
 
 
 def loaded_block(
@@ -50,29 +52,37 @@ def loaded_block(
     depth: Annotated[PositiveLength, "depth of the block"] = 600.0,
     probe_depth: Annotated[PositiveLength, "depth of the plane `below`, where stress may be read"] = 150.0,
     pressure: Annotated[Stress, "pressure on the patch"] = 4.0,
-    bottom: Annotated[Bottom, "whether the bottom is held in all directions or only along z"] = "roller",
+    bottom: Annotated[Bottom, "held in all directions, only along z, or on an elastic bed"] = "roller",
+    bedding: Annotated[ForcePerVolume, "pressure of the bed per sinking, where bedded"] = 500.0,
     material: Material,
 ) -> Problem:
     """z points up, the middle of the patch is the origin; symmetry on x = 0 and y = 0.
 
     Points centre, patch_x, patch_corner, patch_y, side_x, side_corner, side_y lie on the planes top (z = 0),
-    below and bottom. Cells grow away from the patch.
+    below and bottom. Cells grow away from the patch. The bed resists along z only, in tension too.
     """
     less = f"less than half_width {half_width:g}"
     require(
         (patch_half_x < half_width, "patch_half_x", patch_half_x, less),
         (patch_half_y < half_width, "patch_half_y", patch_half_y, less),
         (probe_depth < depth, "probe_depth", probe_depth, f"less than depth {depth:g}"),
+        (bedding > 0.0, "bedding", bedding, "more than 0"),
     )
-    across = None if bottom == "roller" else 0.0
     return Problem(
         title="Block under a patch of pressure",
         part=_part((patch_half_x, patch_half_y), half_width, depth, probe_depth),
         materials={"body": material},
-        supports=(*SYMMETRY, Support("bottom", x=across, y=across, z=0.0, boundary="bottom")),
+        supports=(*SYMMETRY, _bottom(bottom, bedding)),
         loads=(Pressure("patch", pressure),),
         kind="solid",
     )
+
+
+def _bottom(bottom: Bottom, bedding: float) -> Support | ElasticSupport:
+    if bottom == "bedded":
+        return ElasticSupport("bottom", "bottom", bedding)
+    across = None if bottom == "roller" else 0.0
+    return Support("bottom", x=across, y=across, z=0.0, boundary="bottom")
 
 
 def _part(patch: tuple[float, float], side: float, depth: float, probe: float) -> SolidPart:

@@ -1,12 +1,14 @@
-"""Clamped tapered arm: the davit's jib with its tip load, optional tip tension and own weight.
+"""Clamped tapered arm: the davit's jib with its tip load, optional tip tension, hook and own weight.
 
-Both clamped corners are singular (Williams 1952, J. Appl. Mech. 19:526): the stress there has no limit.
+Both clamped corners are singular (Williams 1952, J. Appl. Mech. 19:526): the stress there has no limit. A
+force on the point of the hook leaves stress, displacement there and strain energy without a limit (Flamant
+1892); at a distance it is as good as one that is spread.
 """
 
 from typing import Annotated
 
-from convergence.dimensions import ForcePerVolume, PositiveLength, Stress
-from convergence.fem.loads import BodyForce, Traction
+from convergence.dimensions import Force, ForcePerVolume, PositiveLength, Stress
+from convergence.fem.loads import BodyForce, Load, PointForce, Traction
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.part import Part
 from convergence.fem.problem import Problem, Support
@@ -31,13 +33,29 @@ def tapered_arm(
     thickness: Annotated[PositiveLength, "thickness"] = 12.0,
     tip_shear: Annotated[Stress, "mean shear traction on the tip, positive upward"] = -6.0,
     tip_tension: Annotated[Stress, "normal traction on the tip, positive outward"] = 0.0,
+    hook_force: Annotated[Force, "force on the point tip_lower, positive upward"] = 0.0,
     weight: Annotated[ForcePerVolume, "weight per volume, downward"] = 0.0,
     kind: PlaneKind = "plane stress",
     material: Material,
 ) -> Problem:
     """The arm lies along y = 0, symmetric about it; the root is clamped over its depth."""
+    loads: tuple[Load, ...] = (Traction("tip", (tip_tension, tip_shear)), BodyForce((0.0, -weight)))
+    if hook_force:
+        loads = (*loads, PointForce("tip_lower", (0.0, hook_force)))
+    return Problem(
+        title="Clamped tapered arm",
+        part=_part(length, depth_root, depth_tip),
+        materials={"body": material},
+        supports=(Support("root", x=0.0, y=0.0, boundary="root"),),
+        loads=loads,
+        kind=kind,
+        thickness=thickness,
+    )
+
+
+def _part(length: float, depth_root: float, depth_tip: float) -> Part:
     root, tip, middle = 0.5 * depth_root, 0.5 * depth_tip, 0.25 * (depth_root + depth_tip)
-    part = Part(
+    return Part(
         points={
             "root": (0.0, 0.0),
             "root_lower": (0.0, -root),
@@ -61,13 +79,4 @@ def tapered_arm(
             "upper": (("tip_upper", "middle_upper"), ("middle_upper", "root_upper")),
             "tip": (("tip_lower", "tip"), ("tip", "tip_upper")),
         },
-    )
-    return Problem(
-        title="Clamped tapered arm",
-        part=part,
-        materials={"body": material},
-        supports=(Support("root", x=0.0, y=0.0, boundary="root"),),
-        loads=(Traction("tip", (tip_tension, tip_shear)), BodyForce((0.0, -weight))),
-        kind=kind,
-        thickness=thickness,
     )

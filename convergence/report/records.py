@@ -126,6 +126,7 @@ def _facts(findings: Findings) -> dict[str, Any]:
         "yields": {region: found and asdict(found) for region, found in facts.yields.items()},
         "exponent": _number(facts.exponent),
         "corners": corners,
+        "unexamined": [corner.name for corner in facts.unexamined],
     }
 
 

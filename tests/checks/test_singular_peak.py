@@ -203,7 +203,9 @@ def test_peak_region() -> None:
     facts = Facts(kinds=kinds, corners=CORNERS, covered={"f": (CORNERS[1], CORNERS[0]), "g": ()})
     check = peak_region(ladder, facts)
     assert check.passed is False and list(check.spoils) == ["f"] and check.leads_to == "unproven"
-    assert "heel at (0, 0), theory λ = 0.544" in check.spoils["f"]
+    assert (
+        "the free-free corner heel of 270° at (0, 0); stress there grows like h^-0.456" in check.spoils["f"]
+    )
     assert peak_region(ladder, replace(facts, covered={"f": (), "g": ()})).passed is True
     assert peak_region(ladder, Facts()).passed is None
     quantity = Quantity("f", "peak_stress", relative=0.5)

@@ -163,7 +163,7 @@ def test_orthotropic_edges_are_named() -> None:
         12000.0, 0.4, young_y=800.0, young_z=500.0, poisson_yz=0.4, poisson_zx=0.02,
         shear_xy=700.0, shear_yz=60.0, shear_zx=700.0,
     )  # fmt: skip
-    named = unexamined_corners(solid(extruded(), toe=wood))
+    named = {edge.name for edge in unexamined_corners(solid(extruded(), toe=wood))}
     assert "d_back-d_front" in named and "b_back-b_front" in named
     assert not any(name.startswith(("o", "f", "g")) for name in named)
 

@@ -9,13 +9,15 @@ import pytest
 
 from convergence import rooms
 from convergence.fem.geometry import at_rule
-from convergence.fem.loads import BodyForce, Pressure, Traction
+from convergence.fem.loads import BodyForce, Pressure, TemperatureRise, Traction
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.mesh import Mesh, mesh
-from convergence.fem.problem import Problem
+from convergence.fem.problem import Problem, Support
 from convergence.fem.strain import volumes
 from convergence.models.l_domain import l_domain
+from convergence.models.lined_cylinder import lined_cylinder
 from convergence.models.perforated_plate import perforated_plate
+from convergence.models.thick_cylinder import thick_cylinder
 
 KINDS: tuple[PlaneKind, ...] = ("plane stress", "plane strain")
 STEEL = Material(210000.0, 0.3)
@@ -39,7 +41,15 @@ def with_exact() -> list[Any]:
     return found
 
 
-CASES = with_exact()
+WARM = Material(210000.0, 0.3, expansion=1.2e-5)
+CASES = [
+    *with_exact(),
+    *(
+        pytest.param(lined_cylinder(warmth=60.0, kind=kind, material=WARM), id=f"warm, {kind}")
+        for kind in KINDS
+    ),
+    *(pytest.param(thick_cylinder(sector=a, material=STEEL), id=f"sector of {a:g}") for a in (40.0, 130.0)),
+]
 
 
 def coarse(problem: Problem) -> Mesh:
@@ -85,8 +95,10 @@ def test_equilibrium_and_hookes_law(problem: Problem) -> None:
     gradient = differences(exact.displacement, x, y, step)
     hoop = exact.displacement(x, y)[0] / x if ring else 0.0 * x
     strain = np.array([gradient[0, 0], gradient[1, 1], hoop, gradient[0, 1] + gradient[1, 0]])
+    rise = sum(load.value for load in problem.loads if isinstance(load, TemperatureRise))  # type: ignore[misc]
+    free = per_cell(problem, coarse(problem), lambda m: np.diag(m.thermal_strain(problem.kind)))
     elasticity = per_cell(problem, coarse(problem), lambda material: material.elasticity(problem.kind))
-    stress = np.einsum("ste,te->se", elasticity, strain)
+    stress = np.einsum("ste,te->se", elasticity, strain - rise * np.einsum("sse->se", free))
     assert np.abs(stress - exact.stress(x, y)).max() < CLOSE * scale
 
 
@@ -113,7 +125,7 @@ def test_boundaries_carry_what_the_problem_says(problem: Problem) -> None:
         traction = np.array([xx * normal[0] + xy * normal[1], xy * normal[0] + yy * normal[1]])
         applied = np.zeros_like(traction)
         for load in problem.loads:
-            if isinstance(load, BodyForce):
+            if isinstance(load, BodyForce | TemperatureRise):
                 continue
             assert isinstance(load, Traction | Pressure)
             if load.boundary == boundary and isinstance(load, Pressure):
@@ -123,12 +135,13 @@ def test_boundaries_carry_what_the_problem_says(problem: Problem) -> None:
                 applied += load.value(x, y)
         scale = np.abs(exact.stress(*inner_places(problem))).max()
         moved, largest = exact.displacement(x, y), np.abs(exact.displacement(*inner_places(problem))).max()
+        supports = [s for s in problem.supports if isinstance(s, Support) and s.boundary == boundary]
+        for _ in [support for support in supports if support.normal is not None]:
+            # the normal is a difference over 1e-5 of the edge: 1e-16 / 1e-5 times a few
+            assert np.abs((moved * normal).sum(axis=0)).max() < 1e-9 * largest
+            applied += normal * ((traction - applied) * normal).sum(axis=0)  # what the support takes
         for component in range(2):
-            held = [
-                value
-                for support in problem.supports
-                if support.boundary == boundary and (value := (support.x, support.y)[component]) is not None
-            ]
+            held = [value for support in supports if (value := (support.x, support.y)[component]) is not None]
             for value in held:
                 wanted = value(x, y) if callable(value) else value
                 assert np.abs(moved[component] - wanted).max() < 1e-12 * largest

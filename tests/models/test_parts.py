@@ -62,6 +62,8 @@ ODD = [
     ("tapered_arm", {"depth_tip": 20.0}),
     ("skew_panel", {"rise": -440.0}),
     ("thick_cylinder", {"inner_radius": 2.0}),
+    ("thick_cylinder", {"sector": 5.0}),
+    ("thick_cylinder", {"sector": 175.0, "inner_radius": 5.0}),
 ]
 
 
@@ -74,6 +76,7 @@ def test_odd_proportions_have_no_inverted_cells(name: str, arguments: Any, shape
 
 CONFLICTS = [
     ("thick_cylinder", {"inner_radius": 50.0}, ["outer_radius"]),
+    ("thick_cylinder", {"sector": 180.0}, ["sector"]),
     ("perforated_plate", {"hole_radius": 40.0}, ["half_width"]),
     ("holed_strip", {"hole_diameter": 61.0, "half_length": 20.0}, ["hole_diameter", "half_length"]),
     ("elliptic_panel", {"outer_half_x": 90.0, "outer_half_y": 90.0}, ["outer_half_x", "outer_half_y"]),

@@ -341,6 +341,7 @@ CONFLICTS: list[tuple[Callable[..., Problem], dict[str, float], list[str]]] = [
     (curved_bar, {"inner_radius": 250.0, "force": 0.0}, ["outer_radius", "force"]),
     (lined_cylinder, {"bond_radius": 60.0}, ["outer_radius"]),
     (lined_cylinder, {"bond_radius": 30.0}, ["bond_radius"]),
+    (lined_cylinder, {"warmth": 9.0, "liner_material": Material(1.0, 0.3, expansion_y=1e-5)}, ["warmth"]),
     (centre_cracked_plate, {"half_crack": 60.0, "half_height": 30.0}, ["half_crack", "half_height"]),
 ]
 

@@ -16,11 +16,15 @@ import numpy as np
 import pytest
 
 from convergence import rooms
+from convergence.fem.loads import TemperatureRise
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.mesh import Shape
-from convergence.fem.problem import Problem
+from convergence.fem.problem import Problem, Support
 from convergence.fem.recovery import exact_energy_error
 from convergence.fem.solution import Solution
+from convergence.models.hollow_cylinder import hollow_cylinder
+from convergence.models.lined_cylinder import lined_cylinder
+from convergence.models.thick_cylinder import thick_cylinder
 
 pytestmark = pytest.mark.slow
 
@@ -50,6 +54,13 @@ SMOOTH_KINDS = [
     for kind in (("plane stress", "plane strain") if has_kinds(name) else (None,))
     for shape in SHAPES_OF[rooms.find("models", name)(material=STEEL).part.dimension]
 ]
+WARM = Material(210000.0, 0.3, expansion=1.2e-5)
+VARIANTS = {  # what the sweep with default values does not reach
+    "sector of 40°": thick_cylinder(sector=40.0, material=STEEL),
+    "solid sector of 40°": hollow_cylinder(sector=40.0, material=STEEL),
+    "warm, plane stress": lined_cylinder(warmth=60.0, kind="plane stress", material=WARM),
+    "warm, plane strain": lined_cylinder(warmth=60.0, kind="plane strain", material=WARM),
+}
 BOTH_KINDS = pytest.mark.parametrize("kind", ["plane stress", "plane strain"])
 BOTH_SHAPES = pytest.mark.parametrize("shape", SHAPES)
 BOTH_DEGREES = pytest.mark.parametrize("degree", [1, 2])
@@ -107,7 +118,20 @@ def test_patch_test_is_exact(
 def test_smooth_rates(
     climb: Climb, displacement_error: Any, name: str, kind: PlaneKind | None, shape: Shape, degree: int
 ) -> None:
-    problem = model(name, kind)
+    check_rates(climb, displacement_error, model(name, kind), shape, degree)
+
+
+@BOTH_DEGREES
+@pytest.mark.parametrize(
+    ("name", "shape"), [(name, s) for name, p in VARIANTS.items() for s in SHAPES_OF[p.part.dimension]]
+)
+def test_smooth_rates_of_variants(
+    climb: Climb, displacement_error: Any, name: str, shape: Shape, degree: int
+) -> None:
+    check_rates(climb, displacement_error, VARIANTS[name], shape, degree)
+
+
+def check_rates(climb: Climb, displacement_error: Any, problem: Problem, shape: Shape, degree: int) -> None:
     solutions = climb(problem, shape, degree, 2, 3 if problem.kind == "solid" and degree == 2 else 4)
     norms = [float(np.sqrt(exact_energy_error(solution).sum())) for solution in solutions]
     assert last_order(solutions, norms) == pytest.approx(degree, abs=NEXT_POWER)
@@ -116,7 +140,7 @@ def test_smooth_rates(
     assert degree + 1 - NEXT_POWER < found < 2 * degree + 3 * NEXT_POWER
     exact = exact_energy(problem)
     errors = [exact - solution.energy for solution in solutions]
-    if prescribed(problem):
+    if two_signs(problem):
         # two parts of opposite sign: the bound O(h^(2k)) holds for the ladder, not from level to level
         mean_order = np.log2(abs(errors[0] / errors[-1])) / (len(errors) - 1)
         assert mean_order > 2 * degree - 2 * NEXT_POWER
@@ -125,9 +149,12 @@ def test_smooth_rates(
         assert last_order(solutions, errors) == pytest.approx(2 * degree, abs=NEXT_POWER)
 
 
-def prescribed(problem: Problem) -> bool:
-    """Return whether displacements other than zero are held; the energy's error then has two signs."""
-    return any(callable(support.x) or callable(support.y) for support in problem.supports)
+def two_signs(problem: Problem) -> bool:
+    """Return whether displacements other than zero are held, or a temperature acts: the energy's error then
+    has two signs."""
+    held = [(s.x, s.y) for s in problem.supports if isinstance(s, Support)]
+    warm = any(load.value for load in problem.loads if isinstance(load, TemperatureRise))
+    return warm or any(callable(x) or callable(y) for x, y in held)
 
 
 @BOTH_DEGREES

@@ -50,5 +50,10 @@ def test_the_full_object_holds_the_rest(findings: Findings) -> None:
     assert record["table"][0]["values"]['<b>pin & "reaction"</b> $x$'] is None
     assert [check["passed"] for check in record["checks"]] == [True, False, None]
     assert record["facts"]["corners"][0]["exponent"] == 0.5445
+    assert record["facts"]["unexamined"] == []
+    (corner,) = findings.facts.corners or ()
+    silent = replace(findings.facts, unexamined=(replace(corner, exponent=float("nan")),))
+    written = json.dumps(findings_object(replace(findings, facts=silent)), allow_nan=False)
+    assert json.loads(written)["facts"]["unexamined"] == ["inner corner"]
     assert {"python", "numpy", "scipy", "scikit-fem"} <= set(record["versions"])
     assert record["all_sound"] is False
