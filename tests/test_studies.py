@@ -108,6 +108,7 @@ EXACT = {
         "bore_growth": 0.0391747706579,
         "energy": 72.46217805074,
     },
+    "cracked_web": {"intensity": 1.187635 * 50.0 * math.sqrt(math.pi * 30.0)},  # own computation, p = 8
     "cylinder_liner": {"liner_hoop": 29.510926408, "barrel_hoop": 47.439474},
     "test_beam": {"root_stress": -6000.0 * 480.0 * 60.0 / (10.0 * 120.0**3 / 12.0)},
 }

@@ -29,6 +29,14 @@ QUANTITIES = {
         "component": "first_principal",
         "relative_tolerance": 0.05,
     },
+    "intensity": {
+        "measure": "stress_intensity",
+        "tip": "tip",
+        "ahead": [1.0, 0.0],
+        "radius": 20.0,
+        "symmetric": True,
+        "relative_tolerance": 0.02,
+    },
     "energy": {"measure": "strain_energy", "relative_tolerance": 0.01},
 }
 
