@@ -46,7 +46,7 @@ calibrate: $(READY) ## measure how often each estimate covers the exact value: f
 	$(BIN)/python -m convergence.calibration
 
 bench: $(READY) ## measure speed and memory against NGSolve: figures/performance.md (alone on the machine)
-	$(BIN)/python -m pip install --quiet --editable ".[bench]"
+	$(BIN)/python -m pip install --quiet --editable ".[bench,fast]"
 	$(BIN)/python -m convergence.bench
 
 clean: ## remove what the targets made, the environment too

@@ -67,8 +67,11 @@ class Native:
         return basis
 
     def _rule(self, order: int) -> dict[str, Any]:
-        """Return scikit-fem's own rule; ours for wedges, whose weights add up to 1/4 there, not 1/2."""
-        if self.level.shape == "wedge":
+        """Return scikit-fem's own rule, ours where that is wrong.
+
+        The weights for wedges add up to 1/4 there, not 1/2; from order 5 on those for tetrahedra miss it.
+        """
+        if self.level.shape in ("wedge", "tetrahedron"):
             return {"quadrature": self.level.element.rule(order)}
         return {"intorder": order}
 

@@ -29,7 +29,7 @@ EXPECTED = {
     "cover_plate": {},
     "cracked_web": {"tip_stress": "singular"},
     "cutout": {"corner_stress": "singular"},
-    "cylinder": {"wall_force": "refine"},
+    "cylinder": {},
     "cylinder_liner": {},
     "cylinder_warm": {},
     "end_fitting": {"cone_corner": "singular"},

@@ -11,12 +11,12 @@ import os
 import subprocess
 import sys
 import time
-from collections.abc import Mapping
+from collections.abc import Callable
 from pathlib import Path
 from typing import Any
 
 from convergence.bench.cases import CASES
-from convergence.bench.page import Pair, write
+from convergence.bench.page import Pair, Solo, write
 from convergence.bench.peers import MISSING
 
 RECOVERED = "triangles"
@@ -55,9 +55,22 @@ def measured(name: str, levels: int, method: str, pairs: int) -> list[Pair]:
     return found
 
 
-def recoveries(levels: int, count: int) -> list[Mapping[str, Any]]:
-    """Return studies with recovery and energy norm on the finest level."""
-    return [child("ours", RECOVERED, str(levels), "recovery") for _ in range(count)]
+def solo(chosen: Callable[[str], int], count: int) -> Solo:
+    """Return what is measured of ours alone, `count` times each; numba's share in turns with and without."""
+    finest = str(chosen(RECOVERED))
+    compiled = []
+    if importlib.util.find_spec("numba") is not None:
+        for name in CASES:
+            levels = str(chosen(name))
+            compiled += [
+                (name, child("ours", name, levels), child("ours", name, levels, "plain"))
+                for _ in range(count)
+            ]
+    return Solo(
+        recoveries=[child("ours", RECOVERED, finest, "recovery", "iteration") for _ in range(count)],
+        runs=[child("runs", finest) for _ in range(count)],
+        compiled=compiled,
+    )
 
 
 def main() -> None:
@@ -69,22 +82,24 @@ def main() -> None:
     chosen = parser.parse_args()
     if importlib.util.find_spec("ngsolve") is None:
         raise SystemExit(MISSING)
+
+    def finest(name: str) -> int:
+        return min(CASES[name].levels, chosen.levels or CASES[name].levels)
+
     load = quiet()
     pairs: list[Pair] = []
     for name, case in CASES.items():
-        finest = min(case.levels, chosen.levels or case.levels)
         methods = ("cholesky", case.peer) if name == RECOVERED else (case.peer,)
         for method in methods:
-            pairs += measured(name, finest, method, chosen.pairs)
-    finest = min(CASES[RECOVERED].levels, chosen.levels or CASES[RECOVERED].levels)
+            pairs += measured(name, finest(name), method, chosen.pairs)
     growth = [
         pair
-        for levels in range(2, finest)
+        for levels in range(2, finest(RECOVERED))
         for method in ("cholesky", "multigrid")
         for pair in measured(RECOVERED, levels, method, 1)
     ]
     chosen.folder.mkdir(exist_ok=True)
-    write(chosen.folder, load, pairs, growth, recoveries(finest, chosen.pairs))
+    write(chosen.folder, load, pairs, growth, solo(finest, chosen.pairs))
 
 
 if __name__ == "__main__":

@@ -15,8 +15,9 @@ HEAD = """# Performance against NGSolve
 Quarter of a plate with a hole, quadratic cells on a curved boundary. Ours is a whole study in a process of
 its own, start-up included: every level meshed, assembled and solved. NGSolve's is assembly and solution of
 the finest level alone, on the same nodes and with {threads} threads; making its mesh is not counted, nor the
-coarser levels that its multigrid needs. Ratios are medians of {pairs} pairs taken in turns, with the smallest
-and largest in brackets.
+coarser levels that its multigrid needs. On tetrahedra that refines by bisection, whose cells are not ours and
+are worse shaped, so its iterations are those of another mesh. Ratios are medians of {pairs} pairs taken in
+turns, with the smallest and largest in brackets.
 
 {machine} {load}
 
@@ -47,13 +48,16 @@ class Pair:
         return ours / peer
 
 
-def write(
-    folder: Path,
-    load: str,
-    pairs: Sequence[Pair],
-    growth: Sequence[Pair],
-    recovered: Sequence[Mapping[str, Any]],
-) -> None:
+@dataclass(frozen=True)
+class Solo:
+    """What is measured of ours alone; `compiled` has the case, a study with numba and one without."""
+
+    recoveries: Sequence[Mapping[str, Any]]
+    runs: Sequence[Mapping[str, Any]]
+    compiled: Sequence[tuple[str, Mapping[str, Any], Mapping[str, Any]]]
+
+
+def write(folder: Path, load: str, pairs: Sequence[Pair], growth: Sequence[Pair], solo: Solo) -> None:
     """Write the page and the plots into a folder; `load` is a sentence on the machine's load."""
     groups: dict[tuple[str, str], list[Pair]] = {}
     for pair in pairs:
@@ -62,7 +66,9 @@ def write(
     machine = f"{platform.machine()}, {os.cpu_count()} processors, Python {platform.python_version()}."
     text = HEAD.format(threads=THREADS, pairs=count, machine=machine, load=load)
     text += _line(COLUMNS) + _line(["---"] * len(COLUMNS))
-    text += "".join(_row(group) for group in groups.values()) + _recovery(recovered)
+    text += "".join(_row(group) for group in groups.values())
+    text += _recovery(solo.recoveries) + _bandwidth(solo.recoveries) + _runs(solo.runs)
+    text += _compiled(solo.compiled)
     text += "\n![Seconds over unknowns](performance-growth.svg)\n\n![Peak memory](performance-memory.svg)\n"
     (folder / "performance.md").write_text(text, encoding="utf-8")
     name = pairs[0].name
@@ -96,6 +102,33 @@ def _recovery(recovered: Sequence[Mapping[str, Any]]) -> str:
         f"\nStress recovery and the energy norm of the error on the finest triangles: {after:.1f} s, "
         f"{ratio:.2f} of the {solving:.1f} s of that level's assembly and solution.\n"
     )
+
+
+def _bandwidth(measured: Sequence[Mapping[str, Any]]) -> str:
+    taken, floor, speed = (median(one[key] for one in measured) for key in ("iteration", "floor", "triad"))
+    return (
+        f"\nOne iteration there takes {1e3 * taken:.0f} ms, {taken / floor:.1f} times the "
+        f"{1e3 * floor:.0f} ms that its matrices need at the {speed:.0f} GB/s of a triad of numpy.\n"
+    )
+
+
+def _runs(runs: Sequence[Mapping[str, Any]]) -> str:
+    whole, solving = (median(one[key] for one in runs) for key in ("run", "solving"))
+    added = median(one["run"] / one["solving"] - 1.0 for one in runs)
+    return (
+        f"\nA whole run to {runs[0]['unknowns']:,} unknowns, with start-up, quantities, checks, figures and "
+        f"files, takes {whole:.1f} s, solving alone {solving:.1f} s: a run adds {added:.2f} of the solving.\n"
+    )
+
+
+def _compiled(compiled: Sequence[tuple[str, Mapping[str, Any], Mapping[str, Any]]]) -> str:
+    if not compiled:
+        return "\nnumba is not installed here: nothing above is compiled.\n"
+    text = "\nWithout numba a study takes, by its own time with it:"
+    for name in dict.fromkeys(name for name, _, _ in compiled):
+        ratios = [plain["lived"] / fast["lived"] for case, fast, plain in compiled if case == name]
+        text += f" {name} {median(ratios):.2f} [{min(ratios):.2f} … {max(ratios):.2f}];"
+    return text.rstrip(";") + ".\n"
 
 
 def _plots(folder: Path, pairs: Sequence[Pair]) -> None:

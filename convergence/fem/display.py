@@ -41,6 +41,7 @@ def display(solution: Solution) -> Fields:
         edges.append(_edges(nodes, kind))
     cells = np.concatenate(drawn, axis=1)
     lines = np.concatenate(edges, axis=1)
+    lines = lines[:, _once(lines[[0, -1]])[0]]
     boundary = _outline(cells) if mesh.dimension == 2 else _sharp(cells, mesh.nodes)
     used, cells = np.unique(cells, return_inverse=True)
     number = np.zeros(mesh.nodes.shape[1], dtype=np.int64)
@@ -127,15 +128,14 @@ def _pieces(kind: Element) -> list[tuple[int, ...]]:
 
 
 def _edges(nodes: np.ndarray, kind: Element) -> np.ndarray:
-    """Return the nodes along each edge (2, e), with the middle (3, e) at degree 2, each edge once."""
+    """Return the nodes along each edge (2, e), with the middle (3, e) at degree 2, of each face."""
     corners = kind.nodes[: kind.corners]
     rows = []
     for a in range(kind.corners):
         b = (a + 1) % kind.corners
         middle = int(np.hypot(*(kind.nodes - 0.5 * (corners[a] + corners[b])).T).argmin())
         rows.append(nodes[[a, b] if kind.degree == 1 else [a, middle, b]])
-    edges = np.concatenate(rows, axis=1)
-    return edges[:, _once(edges[[0, -1]])[0]]
+    return np.concatenate(rows, axis=1)
 
 
 def _once(segments: np.ndarray) -> tuple[np.ndarray, np.ndarray, np.ndarray]:

@@ -162,5 +162,7 @@ def _rule(shape: Shape, order: int) -> tuple[np.ndarray, np.ndarray]:
         (flat, weights), (along, steps) = _rule("triangle", order), _rule("line", order)
         places = np.vstack([np.repeat(flat, len(steps), axis=1), np.tile(along, len(weights))])
         return places, np.repeat(weights, len(steps)) * np.tile(steps, len(weights))
-    places, weights = get_quadrature(NATIVE[shape, 1], order)
+    # scikit-fem's rules of these orders for tetrahedra are exact to one order less than their name (measured)
+    claimed = order + 1 if shape == "tetrahedron" and order >= 5 else order
+    places, weights = get_quadrature(NATIVE[shape, 1], claimed)
     return np.asarray(places), np.asarray(weights)

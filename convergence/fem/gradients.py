@@ -7,7 +7,8 @@ error to the degree that the preconditioner M is the inverse of K.
 from collections.abc import Callable
 
 import numpy as np
-from scipy import sparse
+
+from convergence.fem.products import Matrix
 
 TOLERANCE = 1e-10
 MOST_ITERATIONS = 60
@@ -15,7 +16,7 @@ Solve = Callable[[np.ndarray], np.ndarray]
 
 
 def gradients(
-    matrix: sparse.csr_matrix,
+    matrix: Matrix,
     right: np.ndarray,
     held: np.ndarray,
     energy: float | None,
@@ -49,7 +50,7 @@ def gradients(
     raise AssertionError("the last iteration returns")
 
 
-def multiply(matrix: sparse.csr_matrix, x: np.ndarray, held: np.ndarray) -> np.ndarray:
+def multiply(matrix: Matrix, x: np.ndarray, held: np.ndarray) -> np.ndarray:
     """Return K x with zeros at the held unknowns."""
     image = np.asarray(matrix @ x)
     image[held] = 0.0

@@ -1,29 +1,35 @@
 """Conjugate gradients for K u = f, preconditioned by geometric multigrid over the part's blocks.
 
 V(1,1) cycles with Chebyshev smoothing (Saad, Iterative Methods for Sparse Linear Systems, 2nd ed., alg. 12.1
-and 13.2; Adams et al. 2003, J. Comput. Phys. 188:593) on the levels degree 2, degree 1, and then half the
-cells along every edge. Coarse matrices are projected, P' K P, so no coarse mesh is needed. Cells of
-aspect 5 and more cost iterations.
+and 13.2; Adams et al. 2003, J. Comput. Phys. 188:593). A grid of degree 2 is one of twice the steps, and each
+coarser level has half the steps, along all edges or along those in which cells are short (`coarsening`).
+Coarse matrices are projected, P' K P, so no coarse mesh is needed. Where coarser grids stop to help, or few
+unknowns are left, the rest is solved directly.
 
 Vectors keep their held unknowns, at zero. Cycles run in single precision, the gradients in double.
 """
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 from functools import partial
 
 import numpy as np
 from scipy import sparse
-from scipy.sparse.linalg import splu
 
+from convergence.errors import SolvingError
+from convergence.fem.coarsening import coarser, family_lengths
 from convergence.fem.gradients import Solve, gradients, multiply
 from convergence.fem.held import Held
 from convergence.fem.mesh import Mesh
-from convergence.fem.solvers import residual_limit
+from convergence.fem.products import Matrix, NodeRows, in_single, is_compiled
+from convergence.fem.solvers import ROUND_OFF_LIMIT, factorized
 from convergence.fem.transfer import prolongation
 
-# smoothers to try, by dimension: their degree and the part of the spectrum they damp (measured)
-SMOOTHERS = {2: ((2, 15.0), (4, 40.0)), 3: ((4, 40.0), (6, 90.0))}
+# smoothers to try, by dimension: their degree and the part of the spectrum they damp (measured); the last
+# serve cells drawn out in different directions, up to an aspect of 100
+SMOOTHERS = {2: ((2, 15.0), (4, 40.0), (12, 400.0)), 3: ((4, 40.0), (12, 400.0))}
 LARGEST_COARSEST = 3000
+TINY = float(np.finfo(float).tiny)
 LANCZOS_STEPS = 8
 Smoother = tuple[int, float]
 
@@ -42,7 +48,7 @@ class Outcome:
 class _Level:
     """A level in single precision: `up` brings displacements to it from the next coarser one."""
 
-    matrix: sparse.csr_matrix
+    matrix: Matrix
     held: np.ndarray
     inverse_diagonal: np.ndarray
     largest: float
@@ -70,17 +76,20 @@ class Multigrid:
 
     def __init__(self, mesh: Mesh, matrix: sparse.csr_matrix, held: Held):
         self.matrix, self.held = matrix, held.numbers
+        compiled = is_compiled(matrix.shape[0], mesh.dimension)
+        self.product: Matrix = NodeRows(matrix, mesh.dimension) if compiled else matrix
         self.smoothers = SMOOTHERS[mesh.dimension]
         self.coarsest: Solve | None
         try:
-            self.levels, self.coarsest = _hierarchy(mesh, matrix, held)
-        except RuntimeError:  # SuperLU on a singular matrix
+            self.levels, self.coarsest = _hierarchy(mesh, matrix, held, self.product)
+        except SolvingError:  # singular, or too large for the memory
             self.coarsest = None
 
     def solve(self, load: np.ndarray, values: np.ndarray, start: np.ndarray | None = None) -> Outcome:
         """Return u with u[held] = values, as near to K u = f elsewhere as 60 iterations a smoother bring it.
 
-        The error is measured in the energy norm, against that of the solution or of a first guess.
+        The error is measured in the energy norm, against that of the solution or of a first guess; besides, a
+        residual above what rounding leaves to a slender part is refused.
         """
         u = np.zeros(len(load)) if start is None else start.copy()
         u[self.held] = values
@@ -94,7 +103,7 @@ class Multigrid:
         total = 0
         for smoother in self.smoothers:
             cycle = partial(_cycle, self.levels, coarsest, smoother)
-            change, iterations, reached = gradients(self.matrix, right, self.held, energy, cycle)
+            change, iterations, reached = gradients(self.product, right, self.held, energy, cycle)
             u += change
             total += iterations
             if reached:
@@ -106,18 +115,26 @@ class Multigrid:
         size = max(float(np.linalg.norm(load)), float(np.linalg.norm(rest[self.held])))
         rest[self.held] = 0.0
         residual = float(np.linalg.norm(rest))
-        accepted = reached and residual <= residual_limit(self.matrix, u, size)
-        return Outcome(u, total, residual / max(size, float(np.finfo(float).tiny)), accepted)
+        return Outcome(
+            u, total, residual / max(size, TINY), reached and residual <= ROUND_OFF_LIMIT * max(size, TINY)
+        )
 
 
-def _cycle(levels: list[_Level], coarsest: Solve, smoother: Smoother, residual: np.ndarray) -> np.ndarray:
-    """Return one V-cycle's answer to a residual, from zero."""
+def _cycle(
+    levels: list[_Level], coarsest: Solve, smoother: Smoother, residual: np.ndarray, *, finest: bool = True
+) -> np.ndarray:
+    """Return one V-cycle's answer to a residual, from zero.
+
+    Coarser levels are smoothed more, so that iterations do not grow with the number of levels (the variable
+    V-cycle of Bramble & Pasciak 1987, Math. Comp. 49:311, from memory).
+    """
     if not levels:
         return coarsest(residual)
     level = levels[0]
+    coarser_smoother = (2 * smoother[0], 2.7 * smoother[1]) if finest else smoother
     x = _smooth(level, residual, smoother)
     below = level.coarser(residual - level.times(x))
-    x += level.finer(_cycle(levels[1:], coarsest, smoother, below))
+    x += level.finer(_cycle(levels[1:], coarsest, coarser_smoother, below, finest=False))
     x += _smooth(level, residual - level.times(x), smoother)
     return x
 
@@ -140,42 +157,43 @@ def _smooth(level: _Level, residual: np.ndarray, smoother: Smoother) -> np.ndarr
     return x
 
 
-def _hierarchy(mesh: Mesh, matrix: sparse.csr_matrix, held: Held) -> tuple[list[_Level], Solve]:
+def _hierarchy(
+    mesh: Mesh, matrix: sparse.csr_matrix, held: Held, product: Matrix
+) -> tuple[list[_Level], Solve]:
     """Return the levels from fine to coarse and the direct solution below them.
 
-    A coarse unknown is held where it would move a held one of the finer level.
+    A coarse unknown is held where it would move a held one of the finer level. `product` multiplies by the
+    matrix; those of the coarser levels are of its kind.
     """
     levels = []
-    degree, counts, dimension = mesh.degree, mesh.counts, mesh.dimension
+    lengths, dimension = family_lengths(mesh.part), mesh.dimension
+    steps: Mapping[int, int] = {family: mesh.degree * count for family, count in mesh.counts.items()}
     numbers, frame = held.numbers, held.frame
-    while matrix.shape[0] > LARGEST_COARSEST and (degree > 1 or max(counts.values()) > 1):
-        fewer = counts if degree > 1 else {family: -(-count // 2) for family, count in counts.items()}
-        up = prolongation(mesh.part, (fewer, 1), (counts, degree))
-        counts, degree = fewer, 1
+    while matrix.shape[0] > LARGEST_COARSEST and (fewer := coarser(lengths, steps)) is not None:
+        up = prolongation(mesh.part, (fewer, 1), (steps, 1))
+        steps = fewer
         both = sparse.kron(up, sparse.identity(dimension), format="csr")
         if frame is not None:
             both, frame = sparse.csr_matrix(frame.T @ both), None
         marked = np.zeros(matrix.shape[0])
         marked[numbers] = 1.0
         held_below = np.flatnonzero(abs(both).T @ marked > 1e-12)
-        levels.append(_level(matrix, numbers, both, held_below))
+        levels.append(_level(matrix.diagonal(), in_single(product), numbers, both, held_below))
         matrix, numbers = (both.T @ (matrix @ both)).tocsr(), held_below
+        product = NodeRows(matrix, dimension) if isinstance(product, NodeRows) else matrix
     return levels, _factored(matrix, numbers)
 
 
 def _level(
-    matrix: sparse.csr_matrix, held: np.ndarray, up: sparse.csr_matrix, held_below: np.ndarray
+    diagonal: np.ndarray, single: Matrix, held: np.ndarray, up: sparse.csr_matrix, held_below: np.ndarray
 ) -> _Level:
-    single = sparse.csr_matrix(
-        (matrix.data.astype(np.float32), matrix.indices, matrix.indptr), shape=matrix.shape
-    )
-    inverse = (1.0 / matrix.diagonal()).astype(np.float32)
+    inverse = (1.0 / diagonal).astype(np.float32)
     largest = 1.1 * _largest_eigenvalue(single, inverse, held)
     up = up.astype(np.float32)
     return _Level(single, held, inverse, largest, up, up.T.tocsr(), held_below)
 
 
-def _largest_eigenvalue(matrix: sparse.csr_matrix, inverse: np.ndarray, held: np.ndarray) -> float:
+def _largest_eigenvalue(matrix: Matrix, inverse: np.ndarray, held: np.ndarray) -> float:
     """Return the largest eigenvalue of D^-1 K from below, by Lanczos steps; some per cent are missing."""
     root = np.sqrt(inverse)
     vector = np.random.default_rng(0).standard_normal(len(root), dtype=np.float32)
@@ -198,11 +216,11 @@ def _largest_eigenvalue(matrix: sparse.csr_matrix, inverse: np.ndarray, held: np
 def _factored(matrix: sparse.csr_matrix, held: np.ndarray) -> Solve:
     free = np.ones(matrix.shape[0], dtype=bool)
     free[held] = False
-    factor = splu(matrix[free][:, free].tocsc(), permc_spec="MMD_AT_PLUS_A")
+    inverse = factorized(matrix[free][:, free].tocsc())
 
     def solve(residual: np.ndarray) -> np.ndarray:
         x = np.zeros_like(residual)
-        x[free] = factor.solve(residual[free].astype(np.float64))
-        return np.asarray(x)
+        x[free] = inverse(residual[free].astype(np.float64))
+        return x
 
     return solve

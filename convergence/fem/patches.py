@@ -2,8 +2,13 @@
 
 Zienkiewicz & Zhu 1992, Int. J. Numer. Meth. Engng 33:1331 (eqs. 9-13). A polynomial is fitted to the
 element stress at the sampling points of the cells around each vertex; nodes between vertices take the
-average of their vertices' polynomials. A vertex on the boundary uses the cells around its inner neighbours,
-itself included: its own few cells do not determine the polynomial.
+average of their vertices' polynomials.
+
+A vertex on the boundary takes the patches of the inner vertices nearest to it together, each cell as often
+as they have it. The stress of a linear cell is wrong by O(h), but on a regular mesh this cancels over the
+patch of an inner vertex, value and slopes, and so it does over such a sum; over a mere union, or with the
+vertex's own cells, it does not (18 % off on the edges of a bore with tetrahedra, now 2 %). At degree 2
+nothing cancels that way, and the vertex's own cells make the way to it shorter.
 """
 
 from concurrent.futures import ThreadPoolExecutor
@@ -21,6 +26,7 @@ from convergence.fem.workers import workers
 SMALLEST_EIGENVALUE = 1e-7
 SAFE_PIVOT = 1e-2  # of the moments' Cholesky factor, squared; smaller ones are looked at closely
 ROUND_OFF = 1e-13
+SEEN = 1e-3  # squared share of a term that the terms before it do not have, at the samples
 THINNEST = 1e-4
 RINGS = 3
 VALUES = 100_000  # of monomials at samples, at once: they stay in the cache
@@ -70,9 +76,10 @@ class Patches:
         self._fit()
 
     def _fit(self) -> None:
-        """Fit inner vertices on their cells, the rest on those of the inner vertices beside them too.
+        """Fit inner vertices on their cells, the rest on the patches of the nearest of these.
 
-        Patches that do not determine the polynomial grow by rings of cells, then lose its higher terms.
+        Where none is near, the vertex's own cells are taken, then those beside them too; terms that
+        even these do not tell apart from lower ones are left out.
         """
         corners, m = self.t.shape
         n = self.centre.shape[1]
@@ -84,57 +91,77 @@ class Patches:
         fitted[self._outer_faces().ravel()] = False
         with workers() as pool:
             inner = np.flatnonzero(fitted)
-            fitted[inner] = self._groups(touch[inner], inner, len(self.powers), pool)
+            fitted[inner] = self._groups(touch[inner], inner, pool)
             left = np.flatnonzero(~fitted)
-            around = touch[left]
-            beside = sparse.csr_array(around @ touched)
-            beside.data[:] = fitted[beside.indices]
-            beside.eliminate_zeros()
-            patches = sparse.csr_array(beside @ touch + around)
-            for terms in (len(self.powers), self.mesh.dimension + 1, 1):
-                for _ in range(RINGS):
-                    keep = ~self._groups(patches, left, terms, pool)
-                    if not keep.any():
-                        return
-                    left = left[keep]
-                    patches = sparse.csr_array(sparse.csr_array(patches[keep] @ touched) @ touch)
-        raise AssertionError("a constant can always be fitted")
+            near = sparse.csr_array(touch[left] @ touched)
+            for _ in range(RINGS if fitted.any() else 0):
+                keep = ~self._groups(self._joined(near, fitted, touch, left), left, pool)
+                left, near = left[keep], sparse.csr_array(sparse.csr_array(near[keep] @ touch) @ touched)
+            left = left[~self._groups(touch[left], left, pool)]
+            wider = sparse.csr_array(sparse.csr_array(touch[left] @ touched) @ touch)
+            self._groups(wider, left, pool, every=False)
+
+    def _joined(
+        self, near: sparse.csr_array, fitted: np.ndarray, touch: sparse.csr_array, vertices: np.ndarray
+    ) -> sparse.csr_array:
+        """Return how often (vertices, cells) the patches of the fitted of the near vertices have a cell."""
+        beside = near.copy()
+        beside.data[:] = fitted[beside.indices]
+        beside.eliminate_zeros()
+        cells = sparse.csr_array(beside @ touch)
+        if self.mesh.degree == 2:
+            own = touch[vertices]
+            own.data = np.repeat(np.diff(beside.indptr) > 0, np.diff(own.indptr)).astype(own.data.dtype)
+            cells = sparse.csr_array(cells + own)
+            cells.eliminate_zeros()
+        return cells
 
     def _groups(
-        self, patches: sparse.csr_array, vertices: np.ndarray, terms: int, pool: ThreadPoolExecutor
+        self, patches: sparse.csr_array, vertices: np.ndarray, pool: ThreadPoolExecutor, every: bool = True
     ) -> np.ndarray:
-        """Fit vertices, each on its row of patches, those with equally many cells together."""
+        """Return which vertices could be fitted, each on its row of patches, none on an empty one.
+
+        Those with equally many cells are fitted together, with all terms or, else, what terms they can.
+        """
         size = np.diff(patches.indptr)
         done = np.zeros(len(vertices), dtype=bool)
         batches = []
-        for count in np.unique(size):
+        for count in np.unique(size[size > 0]):
             rows = np.flatnonzero(size == count)
-            step = max(1, VALUES // (int(count) * self.samples.shape[2] * terms))
+            step = max(1, VALUES // (int(count) * self.samples.shape[2] * len(self.powers)))
             batches += [rows[start : start + step] for start in range(0, len(rows), step)]
 
         def fit(rows: np.ndarray) -> None:
-            cells = patches.indices[patches.indptr[rows][:, None] + np.arange(size[rows[0]])]
-            done[rows] = self._solve(vertices[rows], cells, terms)
+            at = patches.indptr[rows][:, None] + np.arange(size[rows[0]])
+            done[rows] = self._solve(vertices[rows], patches.indices[at], patches.data[at], every)
 
         list(pool.map(fit, batches))
         return done
 
-    def _solve(self, vertices: np.ndarray, cells: np.ndarray, terms: int) -> np.ndarray:
-        """Return which patches (v, cells each) determine their polynomial; those are kept."""
+    def _solve(self, vertices: np.ndarray, cells: np.ndarray, times: np.ndarray, every: bool) -> np.ndarray:
+        """Return which patches (v, cells each, so many times) determine their terms; those are kept."""
         offset = self.samples[cells].transpose(0, 2, 1, 3) - self.centre[:, vertices].T[:, :, None, None]
         offset = offset.reshape(*offset.shape[:2], -1)
         count = offset.shape[2]
         frame = _even_frame(offset @ offset.transpose(0, 2, 1) / count)
-        basis = _monomials((frame @ offset).transpose(1, 0, 2), self.powers[:terms])
+        basis = _monomials((frame @ offset).transpose(1, 0, 2), self.powers)
         basis = np.ascontiguousarray(basis.transpose(1, 0, 2))
-        moments = basis @ basis.transpose(0, 2, 1) / count
-        right = basis @ self.stress[cells].reshape(len(cells), count, -1) / count
-        guarded = moments + ROUND_OFF * np.eye(terms)
-        pivots = np.diagonal(np.linalg.cholesky(guarded), axis1=1, axis2=2) ** 2
+        shares = np.repeat(times / times.sum(axis=1, keepdims=True), self.samples.shape[2], axis=1)
+        weighted = basis * (shares / self.samples.shape[2])[:, None, :]
+        moments = weighted @ basis.transpose(0, 2, 1)
+        right = weighted @ self.stress[cells].reshape(len(cells), count, -1)
+        one = np.eye(len(self.powers))
+        pivots = np.diagonal(np.linalg.cholesky(moments + ROUND_OFF * one), axis1=1, axis2=2) ** 2
         good = pivots.min(axis=1) > SAFE_PIVOT
-        doubtful = np.flatnonzero(~good)
-        good[doubtful] = np.linalg.eigvalsh(moments[doubtful])[:, 0] > SMALLEST_EIGENVALUE
-        self.coefficients[vertices[good], :terms] = np.linalg.solve(moments[good], right[good])
+        if every:
+            doubtful = np.flatnonzero(~good)
+            good[doubtful] = np.linalg.eigvalsh(moments[doubtful])[:, 0] > SMALLEST_EIGENVALUE
+        else:
+            seen = pivots > SEEN * np.maximum(np.diagonal(moments, axis1=1, axis2=2), SEEN)
+            moments = np.where(seen[:, :, None] & seen[:, None, :], moments, one)
+            right *= seen[:, :, None]
+            good[:] = True
+        self.coefficients[vertices[good]] = np.linalg.solve(moments[good], right[good])
         self.frame[vertices[good]] = frame[good]
         return np.asarray(good)
 

@@ -6,7 +6,8 @@ over a coarse mesh, the recovered stress is no better than the element stress.
 """
 
 from collections.abc import Callable
-from functools import lru_cache
+from functools import wraps
+from weakref import WeakKeyDictionary
 
 import numpy as np
 
@@ -16,12 +17,27 @@ from convergence.fem.solution import Solution
 from convergence.fem.strain import volumes
 from convergence.fem.stress import stress_at
 
-CHUNK = 50_000
+CHUNK = 4_000
 FEW = 20_000  # cells
 Stress = Callable[[Geometry, np.ndarray], np.ndarray]
 
 
-@lru_cache(maxsize=1)
+def _kept(derived: Callable[[Solution], np.ndarray]) -> Callable[[Solution], np.ndarray]:
+    """Keep the result for the latest solution only, and not beyond that solution's own life."""
+    latest: WeakKeyDictionary[Solution, np.ndarray] = WeakKeyDictionary()
+
+    @wraps(derived)
+    def kept(solution: Solution) -> np.ndarray:
+        found = latest.get(solution)
+        if found is None:
+            latest.clear()
+            found = latest[solution] = derived(solution)
+        return found
+
+    return kept
+
+
+@_kept
 def recovered_stress(solution: Solution) -> np.ndarray:
     """Return the recovered stress at the nodes of each cell (components, nodes of a cell, cells)."""
     pieces = [(cells, Patches(solution, cells).at_cell_nodes()) for cells in solution.mesh.regions.values()]
@@ -38,7 +54,7 @@ def nodal_values(solution: Solution, at_cell_nodes: np.ndarray) -> np.ndarray:
     return values
 
 
-@lru_cache(maxsize=1)
+@_kept
 def energy_error(solution: Solution) -> np.ndarray:
     """Return the squared energy norm (force × length) of recovered minus element stress, per cell."""
     recovered = recovered_stress(solution)
@@ -68,8 +84,13 @@ def element_energy(solution: Solution, cells: np.ndarray) -> np.ndarray:
 
 def cell_volumes(solution: Solution, cells: np.ndarray | None = None) -> np.ndarray:
     """Return the volume of each of the cells, all where None."""
-    at = at_rule(solution.mesh, 2 * solution.mesh.degree, cells)
-    return np.asarray(volumes(solution.problem, at).sum(axis=1))
+    mesh = solution.mesh
+    chosen = np.arange(mesh.cells) if cells is None else cells
+    found = np.empty(len(chosen))
+    for start in range(0, len(chosen), CHUNK):
+        rows = slice(start, start + CHUNK)
+        found[rows] = volumes(solution.problem, at_rule(mesh, 2 * mesh.degree, chosen[rows])).sum(axis=1)
+    return found
 
 
 def variation_energy(solution: Solution) -> np.ndarray:

@@ -170,7 +170,7 @@ def _between(plan: np.ndarray, kind: Element) -> np.ndarray:
 def edge_nodes(
     part: SolidPart, counts: Mapping[int, int], degree: int, points: tuple[str, ...]
 ) -> np.ndarray:
-    """Return the nodes of a mesh along an edge through named points, each next to the one before."""
+    """Return the nodes of a mesh along an edge through named points, ascending."""
     flat = Grids(part.plan, counts, degree)
     base = np.concatenate([[0], np.cumsum([degree * counts[family] for family in part.layer_families])])
     known = {

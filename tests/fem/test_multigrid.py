@@ -13,7 +13,7 @@ import pytest
 from scipy import sparse
 
 from convergence.errors import SolvingError
-from convergence.fem import equations, multigrid
+from convergence.fem import equations, gradients, multigrid
 from convergence.fem.assembly import stiffness
 from convergence.fem.equations import Equations
 from convergence.fem.grid import Grids
@@ -135,10 +135,11 @@ def test_no_load_is_no_displacement() -> None:
 def test_an_unconverged_solution_is_never_used(missing: int, monkeypatch: pytest.MonkeyPatch) -> None:
     level, matrix, load, held = system(PANEL, divided(PANEL, 45), "quadrilateral", 1)
     most = Multigrid(level, matrix, held).solve(load, held.values).iterations - missing
-    monkeypatch.setattr(multigrid, "MOST_ITERATIONS", most)
+    monkeypatch.setattr(gradients, "MOST_ITERATIONS", most)
+    monkeypatch.setitem(multigrid.SMOOTHERS, 2, multigrid.SMOOTHERS[2][:1])
     monkeypatch.setitem(equations.MOST_DIRECT, 2, 0)
     outcome = Multigrid(level, matrix, held).solve(load, held.values)
-    assert not outcome.converged and outcome.iterations == most and outcome.residual > multigrid.TOLERANCE
+    assert not outcome.converged and outcome.iterations == most
     used = Equations(level, matrix, held).solve(load, held.values)
     assert np.array_equal(used, direct(matrix, load, held))
 
@@ -171,13 +172,17 @@ def test_a_piece_that_nothing_holds_is_refused(divisions: int, monkeypatch: pyte
         Equations(level, matrix, held).solve(load, held.values)
 
 
-def test_a_slender_part_is_solved_as_far_as_round_off_allows() -> None:
-    """An aspect of 40: K times the rounding of u exceeds 1e-8 of the load, the solutions still agree."""
+def test_a_slender_part_is_solved() -> None:
+    """An aspect of 40, 200 cells long: rounding leaves eps × 40² × 200², about 1e-8, to the displacement.
+
+    The condition of bending is the square of both; 1e-6 leaves room for its factor.
+    """
     arm = tapered_arm(depth_root=40.0, depth_tip=20.0, material=STEEL)
     level, matrix, load, held = system(arm, divided(arm, 10), "quadrilateral", 1)
     outcome = Multigrid(level, matrix, held).solve(load, held.values)
-    assert outcome.converged and outcome.residual > 1e-8
-    assert_agree(matrix, outcome.u, direct(matrix, load, held))
+    assert outcome.converged
+    expected = direct(matrix, load, held)
+    assert np.abs(outcome.u - expected).max() <= 1e-6 * np.abs(expected).max()
 
 
 def test_the_residual_accepted() -> None:

@@ -86,9 +86,13 @@ def test_stress_at_a_vertex_of_the_bore(
     order_of: Callable,
     formal: Callable,
 ) -> None:
-    """Direct: p. Recovered: p + 1 on quadrilaterals; one-sided patches of triangles promise p only."""
+    """Direct: p. Recovered: p + 1 on quadrilaterals; one-sided patches of triangles promise p only.
+
+    With quadratic triangles two terms of the error cancel on coarse meshes: their ladder begins finer.
+    """
     shape, degree = element
-    ladder = ladder_of("thick_cylinder", shape, degree, 2, 4)
+    levels = (12, 3) if (*element, recovery) == ("triangle", 2, "recovered") else (2, 4)
+    ladder = ladder_of("thick_cylinder", shape, degree, *levels)
     exact = -21.0  # the pressure on the bore, as radial stress
     errors = abs(measured("stress", ladder, at="bore_x", component="xx", recovery=recovery) - exact)
     if recovery == "direct":
