@@ -62,7 +62,8 @@ def climb(study: Study, folder: Path, budget: Budget = NO_LIMIT) -> Iterator[Lev
             within = replace(budget, memory=min(budget.memory, allowed_memory()))
             why = shortage(first[:number], sizes[number], within, time.perf_counter() - begun)
             try:
-                solved = {} if why else _level(cases, missing, counts, folder, number)
+                coarser = meshes[number - 1] if number else None
+                solved = {} if why else _level(cases, missing, counts, coarser, folder, number)
             except MemoryError:
                 why = "memory ran out"
             if why:
@@ -135,10 +136,13 @@ def _level(
     cases: Mapping[str, Study],
     problems: Mapping[str, Problem],
     counts: dict[int, int],
+    coarser: dict[int, int] | None,
     folder: Path,
     number: int,
 ) -> dict[str, Level]:
     """Solve one level of problems that differ in their loads only; save their fields.
+
+    `coarser` are the counts of the level below, None for the first.
 
     Seconds and memory are those of all these problems together.
     """
@@ -155,7 +159,7 @@ def _level(
             degree=spec.degree,
             formulation=spec.formulation,
         )
-        guesses = [_guess(folder / name, number - 1, spec, meshed) for name in problems]
+        guesses = [_guess(_unknowns_file(folder / name, number - 1), coarser, meshed) for name in problems]
         solutions = solve_cases(list(problems.values()), meshed, guesses)
         for name, solution in zip(problems, solutions, strict=True):
             values[name] = {**_measured(cases[name], solution), **_records(solution)}
@@ -174,17 +178,12 @@ def _unknowns_file(folder: Path, number: int) -> Path:
     return folder / "levels" / f"solution-{number}.npy"
 
 
-def _guess(folder: Path, number: int, spec: LadderSpec, meshed: Mesh) -> np.ndarray | None:
-    """Return a first guess from the solution of a coarser level, None where there is none of its size."""
-    path = _unknowns_file(folder, number)
-    if number < 0 or not path.exists():
+def _guess(path: Path, counts: dict[int, int] | None, meshed: Mesh) -> np.ndarray | None:
+    """Return a first guess from the solution of the level below, None where there is none of its size."""
+    if counts is None or not path.exists():
         return None
-    part = meshed.part
-    coarsest = part.divisions(size=spec.size, divisions=spec.divisions)
-    counts, unknowns = finer(coarsest, spec.ratio, number), np.load(path)
-    if len(unknowns) != part.dimension * count_nodes(part, counts, spec.degree):
-        return None
-    return first_guess(counts, unknowns, meshed)
+    unknowns, nodes = np.load(path), count_nodes(meshed.part, counts, meshed.degree)
+    return first_guess(counts, unknowns, meshed) if len(unknowns) == meshed.dimension * nodes else None
 
 
 def _measured(study: Study, solution: Solution) -> dict[str, float]:

@@ -1,4 +1,4 @@
-"""Meshes handed to scikit-fem, whose own maps, bases and forms are an independent opinion on ours."""
+"""Meshes handed to scikit-fem, an independent opinion on our maps and forms; errors against exact fields."""
 
 from collections.abc import Callable
 from dataclasses import dataclass
@@ -9,7 +9,10 @@ import numpy as np
 import pytest
 import skfem
 
+from convergence.fem.geometry import at_rule, interpolate
 from convergence.fem.mesh import Mesh
+from convergence.fem.solution import Solution
+from convergence.fem.strain import volumes
 
 NATIVE = {
     ("line", 1): skfem.MeshLine1,
@@ -103,3 +106,17 @@ def native(level: Mesh) -> Native:
 @pytest.fixture(scope="session")
 def as_skfem() -> Callable[[Mesh], Native]:
     return native
+
+
+@pytest.fixture(scope="session")
+def displacement_error() -> Callable[[Solution], float]:
+    def error(solution: Solution) -> float:
+        """Return the L2 norm of the displacement's error over the volume."""
+        level, exact = solution.mesh, solution.problem.exact
+        assert exact is not None
+        at = at_rule(level, 8)
+        found = interpolate(solution.displacement[:, level.cell_nodes], at.shapes)
+        squares = ((exact.displacement(*at.x) - found) ** 2).sum(axis=0)
+        return float(np.sqrt((squares * volumes(solution.problem, at)).sum()))
+
+    return error

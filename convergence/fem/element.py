@@ -92,11 +92,11 @@ class Element:
 
     def shapes(self, local: np.ndarray) -> np.ndarray:
         """Return the shape functions (n, ...) at local places (D, ...)."""
-        return self._evaluate(local)[0]
+        return self.evaluate(local)[0]
 
     def gradients(self, local: np.ndarray) -> np.ndarray:
         """Return their derivatives (n, D, ...) by the local coordinates."""
-        return self._evaluate(local)[1]
+        return self.evaluate(local)[1]
 
     def rule(self, order: int) -> tuple[np.ndarray, np.ndarray]:
         """Return places (D, q) and weights (q,) of a rule that is exact for polynomials of that order."""
@@ -113,7 +113,8 @@ class Element:
             beyond += [coordinate - 1.0 for coordinate in local]
         return np.asarray(np.maximum(np.max(beyond, axis=0), 0.0))
 
-    def _evaluate(self, local: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
+    def evaluate(self, local: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
+        """Return the shape functions and their derivatives together, as `shapes` and `gradients`."""
         if self.shape == "wedge":
             return _wedge(self.degree, local)
         native = NATIVE[self.shape, self.degree]()
@@ -143,8 +144,7 @@ def _wedge_order(degree: int) -> list[tuple[int, int]]:
 
 def _wedge(degree: int, local: np.ndarray) -> tuple[np.ndarray, np.ndarray]:
     flat, along = _factors(degree)
-    plan, plan_slopes = flat.shapes(local[:2]), flat.gradients(local[:2])
-    line, line_slopes = along.shapes(local[2:]), along.gradients(local[2:])
+    (plan, plan_slopes), (line, line_slopes) = flat.evaluate(local[:2]), along.evaluate(local[2:])
     order = _wedge_order(degree)
     shapes = np.array([plan[t] * line[s] for t, s in order])
     slopes = [

@@ -45,7 +45,7 @@ def _basis(mesh: Mesh, nodes: np.ndarray, order: int) -> FacetBasis:
         return _end(mesh, nodes)
     kind = element(SHAPES[mesh.dimension, mesh.degree, len(nodes)], mesh.degree)
     local, weights = kind.rule(order)
-    shapes, slopes = kind.shapes(local), kind.gradients(local)
+    shapes, slopes = kind.evaluate(local)
     corners = mesh.nodes[:, nodes]
     tangents = np.einsum("dnf,nkq->kdfq", corners, slopes)
     if mesh.dimension == 2:

@@ -12,6 +12,7 @@ from convergence.fem.grid import Grids
 from convergence.fem.mesh import Mesh
 from convergence.fem.part import Part
 from convergence.fem.solid_part import SolidPart
+from convergence.fem.transfer import places_along
 
 
 def first_guess(counts: Mapping[int, int], unknowns: np.ndarray, fine: Mesh) -> np.ndarray | None:
@@ -27,7 +28,7 @@ def first_guess(counts: Mapping[int, int], unknowns: np.ndarray, fine: Mesh) -> 
         return None
     before, after = (Grids(part.plan, cells, degree) for cells in (counts, fine.counts))
     layers = values.reshape(-1, before.size, fine.dimension)
-    starts = np.concatenate([[0], np.cumsum([degree * counts[family] for family in part.layer_families])])
+    starts = part.plane_numbers(counts, degree)
     found = [layers[:1]]
     for start, end, family in zip(starts, starts[1:], part.layer_families, strict=False):
         steps = degree * fine.counts[family]
@@ -51,9 +52,8 @@ def _plane(values: np.ndarray, coarse: Grids, fine: Grids) -> np.ndarray:
 
 def _along(fine: int, coarse: int, degree: int, values: np.ndarray) -> np.ndarray:
     """Return values (degree coarse + 1, ...) of nodes along an edge, read at fine + 1 equal steps."""
-    scaled = np.arange(fine + 1) * coarse
-    cell = np.minimum(scaled // fine, coarse - 1)
-    s = ((scaled - cell * fine) / fine).reshape(-1, *[1] * (values.ndim - 1))
+    cell, s = places_along(fine, coarse)
+    s = s.reshape(-1, *[1] * (values.ndim - 1))
     shapes = [1.0 - s, s] if degree == 1 else [(1 - s) * (1 - 2 * s), 4 * s * (1 - s), s * (2 * s - 1)]
     total = np.zeros((fine + 1, *values.shape[1:]))
     for number, shape in enumerate(shapes):

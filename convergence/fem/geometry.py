@@ -48,7 +48,7 @@ def geometry(
 ) -> Geometry:
     """Return the geometry of cells (all where None) at local places (D, q), or (D, m, q) one set per cell."""
     corners = mesh.nodes[:, mesh.cell_nodes if cells is None else mesh.cell_nodes[:, cells]]
-    shapes, slopes = mesh.element.shapes(local), mesh.element.gradients(local)
+    shapes, slopes = mesh.element.evaluate(local)
     det, inward = inverse(derivatives(corners, slopes))
     dx = det * (weights if weights is not None else 0.0)
     return Geometry(interpolate(corners, shapes), shapes, slopes, inward, det, dx)

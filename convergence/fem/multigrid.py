@@ -95,23 +95,22 @@ class Multigrid:
         u[self.held] = values
         forces = self.matrix @ u
         energy = None if start is None else float(u @ forces)
-        right = np.asarray(load - forces)
-        right[self.held] = 0.0
         coarsest = self.coarsest
         if coarsest is None:
             return Outcome(u, 0, 1.0, False)
         total = 0
         for smoother in self.smoothers:
+            right = np.asarray(load - forces)
+            right[self.held] = 0.0
             cycle = partial(_cycle, self.levels, coarsest, smoother)
             change, iterations, reached = gradients(self.product, right, self.held, energy, cycle)
             u += change
             total += iterations
+            forces = self.matrix @ u
             if reached:
                 break
-            energy = float(u @ (self.matrix @ u))
-            right = load - self.matrix @ u
-            right[self.held] = 0.0
-        rest = np.asarray(load - self.matrix @ u)
+            energy = float(u @ forces)
+        rest = np.asarray(load - forces)
         size = max(float(np.linalg.norm(load)), float(np.linalg.norm(rest[self.held])))
         rest[self.held] = 0.0
         residual = float(np.linalg.norm(rest))

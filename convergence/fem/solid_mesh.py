@@ -61,7 +61,7 @@ class _Swept:
         self.places = self.flat.places(straight_diagonals=shape != "hexahedron")
         self.rank = DIRECTION @ self.places
         self.steps = [degree * counts[family] for family in part.layer_families]
-        self.base = np.concatenate([[0], np.cumsum(self.steps)])
+        self.base = part.plane_numbers(counts, degree)
         shares = [np.linspace(0.0, 1.0, n + 1) for n in self.steps]
         levels = [part.steps(layer, share)[1:] for layer, share in enumerate(shares)]
         self.s = np.concatenate([[part.planes[0][1]], *levels])
@@ -172,7 +172,7 @@ def edge_nodes(
 ) -> np.ndarray:
     """Return the nodes of a mesh along an edge through named points, ascending."""
     flat = Grids(part.plan, counts, degree)
-    base = np.concatenate([[0], np.cumsum([degree * counts[family] for family in part.layer_families])])
+    base = part.plane_numbers(counts, degree)
     known = {
         f"{point}_{plane}": (point, number)
         for number, (plane, _) in enumerate(part.planes)
@@ -191,7 +191,7 @@ def edge_nodes(
 def used_nodes(part: SolidPart, counts: Mapping[int, int], degree: int) -> np.ndarray:
     """Return which nodes of the full sweep (all plan nodes on all planes) the part's own layers use."""
     grids = Grids(part.plan, counts, degree)
-    base = np.concatenate([[0], np.cumsum([degree * counts[family] for family in part.layer_families])])
+    base = part.plane_numbers(counts, degree)
     used = np.zeros((base[-1] + 1, grids.size), dtype=bool)
     for layer in range(part.layers):
         flat = np.unique(np.concatenate([grids.blocks[block].ravel() for block in part.members(layer)]))

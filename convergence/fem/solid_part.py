@@ -95,6 +95,10 @@ class SolidPart:
         """Return the family number of each layer; those of the plan's edges are 0 and more."""
         return tuple(-1 - layer for layer in range(self.layers))
 
+    def plane_numbers(self, counts: Mapping[int, int], degree: int) -> np.ndarray:
+        """Return the number of each plane of the part among the planes of nodes of a mesh."""
+        return np.concatenate([[0], np.cumsum([degree * counts[f] for f in self.layer_families])])
+
     def members(self, layer: int) -> tuple[int, ...]:
         """Return the blocks of the plan that a layer has, none outside the part."""
         if not 0 <= layer < self.layers:

@@ -41,10 +41,14 @@ class Solution:
         return self.unknowns.reshape(-1, self.mesh.dimension).T
 
     @cached_property
+    def _stretching(self) -> np.ndarray:
+        """Return K u of the material."""
+        return np.asarray(self.stiffness @ self.unknowns)
+
+    @property
     def internal(self) -> np.ndarray:
         """Return the nodal forces of the material, K u less those of the temperature."""
-        forces = np.asarray(self.stiffness @ self.unknowns)
-        return forces if self.thermal is None else forces - self.thermal
+        return self._stretching if self.thermal is None else self._stretching - self.thermal
 
     @cached_property
     def springs(self) -> np.ndarray:
@@ -66,7 +70,7 @@ class Solution:
 
         Without temperature and elastic supports it is the strain energy.
         """
-        return 0.5 * float(self.unknowns @ (self.stiffness @ self.unknowns + self.springs))
+        return 0.5 * float(self.unknowns @ (self._stretching + self.springs))
 
     @property
     def work(self) -> float:

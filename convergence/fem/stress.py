@@ -103,11 +103,3 @@ def displacement_at(solution: Solution, local: np.ndarray, cells: np.ndarray) ->
 def cell_node_stress(solution: Solution) -> np.ndarray:
     """Return the element stress at the nodes of each cell (components, nodes of a cell, cells)."""
     return np.swapaxes(direct_stress(solution, solution.mesh.element.nodes.T), 1, 2)
-
-
-def nodal_average(solution: Solution, at_cell_nodes: np.ndarray) -> np.ndarray:
-    """Return the average (components, nodes) of stresses (components, nodes of a cell, cells) at nodes."""
-    nodes = solution.mesh.cell_nodes.ravel()
-    count = np.bincount(nodes, minlength=solution.mesh.nodes.shape[1])
-    sums = [np.bincount(nodes, weights=values.ravel(), minlength=len(count)) for values in at_cell_nodes]
-    return np.array(sums) / count

@@ -28,11 +28,8 @@ def prolongation(part: AnyPart, coarse: tuple[Counts, int], fine: tuple[Counts, 
     if isinstance(part, RodPart):
         raise TypeError("a rod is solved directly")
     plan = _plane(part.plan, coarse, fine)
-    steps = [
-        _chain(degree_b * b[family], degree_a * a[family])
-        for family in part.layer_families
-        for (a, degree_a), (b, degree_b) in [(coarse, fine)]
-    ]
+    (few, low), (many, high) = coarse, fine
+    steps = [_chain(high * many[family], low * few[family]) for family in part.layer_families]
     whole = sparse.csr_matrix(sparse.kron(_joined(steps), plan, format="csr"))
     if not part.filled:
         return whole
@@ -45,8 +42,8 @@ def _plane(part: Part, coarse: tuple[Counts, int], fine: tuple[Counts, int]) -> 
     size = fine_grids.size
     columns, weights = np.zeros((4, size), dtype=np.int64), np.zeros((4, size))
     for wanted, ids in zip(fine_grids.blocks, coarse_grids.blocks, strict=True):
-        i, x = _places(wanted.shape[0] - 1, ids.shape[0] - 1)
-        j, y = _places(wanted.shape[1] - 1, ids.shape[1] - 1)
+        i, x = places_along(wanted.shape[0] - 1, ids.shape[0] - 1)
+        j, y = places_along(wanted.shape[1] - 1, ids.shape[1] - 1)
         corners = [ids[np.ix_(i + right, j + up)] for right, up in ((0, 0), (1, 0), (1, 1), (0, 1))]
         columns[:, wanted.ravel()] = np.reshape(corners, (4, -1))
         weights[:, wanted.ravel()] = _weights(x[:, None], y[None, :]).reshape(4, -1)
@@ -58,7 +55,7 @@ def _plane(part: Part, coarse: tuple[Counts, int], fine: tuple[Counts, int]) -> 
 
 def _chain(fine: int, coarse: int) -> sparse.csr_matrix:
     """Return the matrix (fine + 1, coarse + 1) along one layer."""
-    cell, x = _places(fine, coarse)
+    cell, x = places_along(fine, coarse)
     rows = np.tile(np.arange(fine + 1), 2)
     entries = (np.concatenate([1.0 - x, x]), (rows, np.concatenate([cell, cell + 1])))
     matrix = sparse.csr_matrix(entries, shape=(fine + 1, coarse + 1))
@@ -81,7 +78,7 @@ def _joined(steps: list[sparse.csr_matrix]) -> sparse.csr_matrix:
     return sparse.csr_matrix(placed, shape=shape)
 
 
-def _places(fine: int, coarse: int) -> tuple[np.ndarray, np.ndarray]:
+def places_along(fine: int, coarse: int) -> tuple[np.ndarray, np.ndarray]:
     """Return the coarse cell of every fine node of an edge and its place 0 … 1 in it."""
     scaled = np.arange(fine + 1) * coarse
     cell = np.minimum(scaled // fine, coarse - 1)

@@ -4,6 +4,7 @@ from collections.abc import Mapping
 
 import numpy as np
 
+from convergence.errors import require
 from convergence.fem.part import Curve, EdgeName, Part, arc, graded
 from convergence.models._grading import away_from
 
@@ -38,8 +39,13 @@ def l_shape(w: float, height: float, d: float, length: float, r: float, grading:
     """Return an L with an upright leg of width w, an arm of depth d and an inner corner of radius r.
 
     The outer corner is the origin. Without a fillet arm_upper and post_right fall on inner_corner, and
-    cells grow away from it by `grading`.
+    cells grow away from it by `grading`. Unsuitable, in the words of the brackets, where a leg is too short.
     """
+    require(
+        (height > d + r, "post_height", height, f"more than arm_depth + fillet_radius {d + r:g}"),
+        (length > w + r, "arm_length", length, f"more than post_width + fillet_radius {w + r:g}"),
+        (r == 0.0 or grading == 1.0, "grading", grading, "1 with a fillet, where cells follow its radius"),
+    )
     points = _points(w, height, d, length, r)
     arm, post = ("arm_upper", "post_right") if r else ("inner_corner", "inner_corner")
     inner: tuple[tuple[str, str, str, str], ...] = (

@@ -7,7 +7,6 @@ there has no limit, at a fillet it has.
 from typing import Annotated
 
 from convergence.dimensions import LENGTH, Bounds, PositiveLength, Stress
-from convergence.errors import require
 from convergence.fem.loads import Traction
 from convergence.fem.material import Material, PlaneKind
 from convergence.fem.problem import Problem, Support
@@ -47,17 +46,6 @@ def l_bracket(
     The fillet has at least two cells per division on each half of its arc. `grading` makes the cells at a
     sharp inner corner smaller.
     """
-    width, height = post_width + fillet_radius, arm_depth + fillet_radius
-    require(
-        (post_height > height, "post_height", post_height, f"more than arm_depth + fillet_radius {height:g}"),
-        (arm_length > width, "arm_length", arm_length, f"more than post_width + fillet_radius {width:g}"),
-        (
-            fillet_radius == 0.0 or grading == 1.0,
-            "grading",
-            grading,
-            "1 with a fillet, where cells follow its radius",
-        ),
-    )
     return Problem(
         title="L-shaped bracket, filleted" if fillet_radius else "L-shaped bracket, sharp",
         part=l_shape(post_width, post_height, arm_depth, arm_length, fillet_radius, grading),

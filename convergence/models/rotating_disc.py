@@ -9,7 +9,7 @@ import numpy as np
 
 from convergence.dimensions import PositiveLength, PositiveStress
 from convergence.errors import require
-from convergence.fem.loads import BodyForce
+from convergence.fem.loads import centrifugal
 from convergence.fem.material import Material
 from convergence.fem.part import Part, arc
 from convergence.fem.problem import Exact, Problem
@@ -55,7 +55,7 @@ def rotating_disc(
         part=part,
         materials={"body": material},
         supports=SYMMETRY,
-        loads=(BodyForce(lambda x, y: density * np.array([x, y])),),
+        loads=(centrifugal(density, 1.0, axis=2),),
         kind="plane stress",
         thickness=thickness,
         exact=_disc(a, b, density, thickness, material),

@@ -7,6 +7,7 @@ exact where the cells have flat faces; on curved cells the outline of the cut is
 from dataclasses import dataclass
 from functools import cache
 from itertools import product
+from typing import Literal
 
 import numpy as np
 from scipy.spatial import Delaunay
@@ -20,6 +21,7 @@ from convergence.quantities._place import Recovery, place_of, stress_in, stress_
 
 ON_PLANE = 1e-9  # of the part's size: nodes as near as this count as in front of the plane
 RULE_ORDER = 4
+Component = Literal["normal", "x", "y", "z"]
 Triangle = tuple[tuple[int, int], ...]
 
 
@@ -34,6 +36,11 @@ class Cut:
     arm: np.ndarray
     areas: np.ndarray
     normal: np.ndarray
+
+    def sum(self, vectors: np.ndarray, component: Component) -> float:
+        """Return the integral over the cut of a component of vectors (3, n, q)."""
+        along = self.normal if component == "normal" else np.eye(3)["xyz".index(component)]
+        return float((np.einsum("i,inq->nq", along, vectors) * self.areas).sum())
 
 
 def cut_order(degree: int, shape: str, recovery: Recovery) -> float:

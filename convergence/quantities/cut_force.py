@@ -5,13 +5,11 @@ most 2: the outline of the cut is straight between the nodes' tetrahedra, exact 
 """
 
 from collections.abc import Mapping
-from typing import Annotated, Any, Literal
-
-import numpy as np
+from typing import Annotated, Any
 
 from convergence.dimensions import Direction, Force, Point, PointName, PositiveLength
 from convergence.fem.solution import Solution
-from convergence.quantities._cut import cut, cut_order
+from convergence.quantities._cut import Component, cut, cut_order
 from convergence.quantities._place import Recovery
 from convergence.results import Kind
 
@@ -28,7 +26,7 @@ def cut_force(
     *,
     at: Annotated[Point | PointName, "point on the plane"],
     normal: Annotated[Direction, "normal of the plane"],
-    component: Annotated[Literal["normal", "x", "y", "z"], "direction of the force"] = "normal",
+    component: Annotated[Component, "direction of the force"] = "normal",
     radius: Annotated[
         PositiveLength | None, "only within this distance of `at`, all of the plane if not given"
     ] = None,
@@ -36,5 +34,4 @@ def cut_force(
 ) -> Force:
     """Force from the side the normal points to on the other one: along the normal positive in tension."""
     found = cut(solution, "cut_force", at, normal, radius, recovery)
-    direction = found.normal if component == "normal" else np.eye(3)["xyz".index(component)]
-    return float(((direction[:, None, None] * found.traction).sum(axis=0) * found.areas).sum())
+    return found.sum(found.traction, component)

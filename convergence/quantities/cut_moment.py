@@ -5,13 +5,13 @@ cells have flat faces.
 """
 
 from collections.abc import Mapping
-from typing import Annotated, Any, Literal
+from typing import Annotated, Any
 
 import numpy as np
 
 from convergence.dimensions import Direction, Moment, Point, PointName, PositiveLength
 from convergence.fem.solution import Solution
-from convergence.quantities._cut import cut, cut_order
+from convergence.quantities._cut import Component, cut, cut_order
 from convergence.quantities._place import Recovery
 from convergence.results import Kind
 
@@ -28,7 +28,7 @@ def cut_moment(
     *,
     at: Annotated[Point | PointName, "point on the plane, and the one the moment is taken about"],
     normal: Annotated[Direction, "normal of the plane"],
-    component: Annotated[Literal["normal", "x", "y", "z"], "axis of the moment, normal is torsion"] = "z",
+    component: Annotated[Component, "axis of the moment, normal is torsion"] = "z",
     radius: Annotated[
         PositiveLength | None, "only within this distance of `at`, all of the plane if not given"
     ] = None,
@@ -36,6 +36,4 @@ def cut_moment(
 ) -> Moment:
     """Moment of the side the normal points to on the other one, counter-clockwise about the axis."""
     found = cut(solution, "cut_moment", at, normal, radius, recovery)
-    direction = found.normal if component == "normal" else np.eye(3)["xyz".index(component)]
-    moments = np.cross(found.arm, found.traction, axis=0)
-    return float(((direction[:, None, None] * moments).sum(axis=0) * found.areas).sum())
+    return found.sum(np.cross(found.arm, found.traction, axis=0), component)

@@ -5,11 +5,9 @@ from collections.abc import Callable
 from pathlib import Path
 from typing import Any
 
-import numpy as np
 import pytest
 
 from convergence.fem.element import Shape
-from convergence.fem.geometry import at_rule, interpolate
 from convergence.fem.mesh import mesh
 from convergence.fem.part import finer
 from convergence.fem.problem import Problem
@@ -39,17 +37,3 @@ def climb() -> Callable[..., list[Solution]]:
         ]
 
     return solutions
-
-
-@pytest.fixture(scope="session")
-def displacement_error() -> Callable[[Solution], float]:
-    def error(solution: Solution) -> float:
-        """Return the L2 norm of the displacement's error."""
-        level, exact = solution.mesh, solution.problem.exact
-        assert exact is not None
-        at = at_rule(level, 8)
-        found = interpolate(solution.displacement[:, level.cell_nodes], at.shapes)
-        squares = ((exact.displacement(*at.x) - found) ** 2).sum(axis=0)
-        return float(np.sqrt((squares * at.dx).sum()))
-
-    return error

@@ -5,14 +5,12 @@ from collections.abc import Callable, Mapping, Sequence
 import numpy as np
 import pytest
 
-from convergence.fem.geometry import at_rule, interpolate
 from convergence.fem.mesh import Formulation, Shape, mesh
 from convergence.fem.part import Part, finer
 from convergence.fem.problem import Exact, Problem, Support
 from convergence.fem.recovery import exact_energy_error
 from convergence.fem.solid_part import SolidPart
 from convergence.fem.solution import Solution, solve
-from convergence.fem.strain import volumes
 
 Climb = Callable[..., list[Solution]]
 
@@ -42,20 +40,6 @@ def climb() -> Climb:
         ]
 
     return solutions
-
-
-@pytest.fixture(scope="session")
-def displacement_error() -> Callable[[Solution], float]:
-    def error(solution: Solution) -> float:
-        """Return the L2 norm of the displacement's error."""
-        level, exact = solution.mesh, solution.problem.exact
-        assert exact is not None
-        at = at_rule(level, 2 * level.degree + 4)
-        found = interpolate(solution.displacement[:, level.cell_nodes], at.shapes)
-        squares = ((exact.displacement(*at.x) - found) ** 2).sum(axis=0)
-        return float(np.sqrt((squares * volumes(solution.problem, at)).sum()))
-
-    return error
 
 
 @pytest.fixture(scope="session")
