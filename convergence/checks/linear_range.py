@@ -9,9 +9,9 @@ import numpy as np
 
 from convergence.checks._ladder import not_applicable, per_level, recorded
 from convergence.fem.geometry import geometry
-from convergence.fem.recovery import recovered_stress
+from convergence.fem.recovery import recovered_von_mises
 from convergence.fem.solution import Solution
-from convergence.fem.stress import component, gradient_at
+from convergence.fem.stress import gradient_at
 from convergence.results import Check, Facts, Ladder, Yield
 
 DISPLACEMENT_LIMIT, ROTATION_LIMIT = 0.01, 0.1
@@ -21,7 +21,7 @@ BEFORE, AFTER = "linear_range.", ".peak_von_mises"
 def record(solution: Solution) -> dict[str, float]:
     """Return the peak von Mises stress of each region, the largest displacement over the size, rotation."""
     mesh = solution.mesh
-    stress = component(recovered_stress(solution), "von_mises")
+    stress = recovered_von_mises(solution)
     numbers: dict[str, float] = {}
     for region, cells in mesh.regions.items():
         own = stress[:, cells]

@@ -9,7 +9,7 @@ acceptable, more asks for refinement (common practice).
 import numpy as np
 
 from convergence.checks._ladder import not_applicable, per_level, place_words, recorded
-from convergence.fem.recovery import recovered_stress
+from convergence.fem.recovery import recovered_von_mises
 from convergence.fem.solution import Solution
 from convergence.fem.stress import component, direct_stress
 from convergence.results import Check, Facts, Ladder
@@ -20,7 +20,7 @@ GOOD, LIMIT = 0.05, 0.10
 def record(solution: Solution) -> dict[str, float]:
     """Return half the largest spread around the node of the largest recovered von Mises stress, and where."""
     mesh = solution.mesh
-    recovered = component(recovered_stress(solution), "von_mises")
+    recovered = recovered_von_mises(solution)
     place, cell = np.unravel_index(recovered.argmax(), recovered.shape)
     hot = int(mesh.cell_nodes[place, cell])
     region = next(cells for cells in mesh.regions.values() if cell in cells)

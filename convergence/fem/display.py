@@ -5,9 +5,8 @@ import numpy as np
 from convergence.fem.element import Element, element
 from convergence.fem.facets import SHAPES
 from convergence.fem.mesh import Mesh
-from convergence.fem.recovery import cell_volumes, energy_error, nodal_values, recovered_stress
+from convergence.fem.recovery import cell_volumes, energy_error, nodal_values, recovered_von_mises
 from convergence.fem.solution import Solution
-from convergence.fem.stress import component
 from convergence.fields import Fields
 
 PLACES = {
@@ -26,7 +25,7 @@ def display(solution: Solution) -> Fields:
     mesh = solution.mesh
     if mesh.dimension == 1:
         return _rod(solution)
-    stress = component(nodal_values(solution, recovered_stress(solution)), "von_mises")
+    stress = nodal_values(solution, recovered_von_mises(solution))
     error = energy_error(solution) / cell_volumes(solution)
     groups = [(mesh.cell_nodes, np.arange(mesh.cells))] if mesh.dimension == 2 else _surface(mesh)
     drawn: list[np.ndarray] = []
@@ -70,7 +69,7 @@ def _rod(solution: Solution) -> Fields:
     mesh = solution.mesh
     x = mesh.nodes[0]
     radius = np.sqrt(solution.problem.depth(x) / np.pi)
-    stress = component(nodal_values(solution, recovered_stress(solution)), "von_mises")
+    stress = nodal_values(solution, recovered_von_mises(solution))
     start, end = mesh.cell_nodes[:2]
     upper = len(x)
     cells = np.array([start, end, end + upper, start + upper])

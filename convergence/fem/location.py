@@ -6,7 +6,6 @@ chord by the sagitta and is then taken from the nearest cell.
 """
 
 import numpy as np
-from scipy.spatial import KDTree
 
 from convergence.errors import Unsuitable
 from convergence.fem.mesh import Mesh
@@ -53,6 +52,8 @@ def _search(mesh: Mesh, places: np.ndarray) -> tuple[np.ndarray, np.ndarray, np.
 
 
 def _around(mesh: Mesh, places: np.ndarray, count: int) -> tuple[np.ndarray, np.ndarray, np.ndarray]:
+    from scipy.spatial import KDTree
+
     centres = mesh.nodes[:, mesh.cell_nodes[: mesh.element.corners]].mean(axis=1)
     count = min(count, mesh.cells)
     cells = KDTree(centres.T).query(places.T, k=count)[1].reshape(-1, count)

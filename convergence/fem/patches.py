@@ -30,7 +30,7 @@ SEEN = 1e-3  # squared share of a term that the terms before it do not have, at 
 THINNEST = 1e-4
 RINGS = 3
 VALUES = 100_000  # of monomials at samples, at once: they stay in the cache
-NODES = 4096  # at once
+NODES, CELLS = 4096, 4096  # at once
 Powers = tuple[tuple[int, ...], ...]
 
 
@@ -69,7 +69,10 @@ class Patches:
         places = sample_places(mesh.element)
         at = mesh.nodes[:, mesh.cell_nodes[:, cells]]
         self.samples = np.ascontiguousarray(interpolate(at, mesh.element.shapes(places)).transpose(1, 0, 2))
-        self.stress = np.ascontiguousarray(direct_stress(solution, places, cells).transpose(1, 2, 0))
+        parts = [cells[start : start + CELLS] for start in range(0, len(cells), CELLS)]
+        with workers() as pool:
+            found = pool.map(lambda part: direct_stress(solution, places, part).transpose(1, 2, 0), parts)
+            self.stress = np.concatenate(list(found))
         components = self.stress.shape[2]
         self.frame = np.zeros((len(numbers), mesh.dimension, mesh.dimension))
         self.coefficients = np.zeros((len(numbers), len(self.powers), components))

@@ -15,7 +15,8 @@ from convergence.fem.geometry import Geometry, at_rule, interpolate
 from convergence.fem.patches import Patches
 from convergence.fem.solution import Solution
 from convergence.fem.strain import volumes
-from convergence.fem.stress import stress_at
+from convergence.fem.stress import component, stress_at
+from convergence.fem.workers import workers
 
 CHUNK = 4_000
 FEW = 20_000  # cells
@@ -45,6 +46,12 @@ def recovered_stress(solution: Solution) -> np.ndarray:
     for cells, values in pieces:
         result[:, :, cells] = values
     return result
+
+
+@_kept
+def recovered_von_mises(solution: Solution) -> np.ndarray:
+    """Return the von Mises stress of the recovered stress (nodes of a cell, cells)."""
+    return component(recovered_stress(solution), "von_mises")
 
 
 def nodal_values(solution: Solution, at_cell_nodes: np.ndarray) -> np.ndarray:
@@ -116,13 +123,17 @@ def _per_cell(solution: Solution, order: int, stress: Stress, cells: np.ndarray 
     mesh = solution.mesh
     chosen = np.arange(mesh.cells) if cells is None else cells
     norm = np.empty(len(chosen))
+
+    def integrate(region: str, rows: np.ndarray) -> None:
+        at = at_rule(mesh, order, chosen[rows])
+        values = stress(at, chosen[rows])
+        strain = np.tensordot(solution.problem.materials[region].compliance(solution.problem.kind), values, 1)
+        norm[rows] = ((values * strain).sum(axis=0) * volumes(solution.problem, at)).sum(axis=1)
+
+    parts = []
     for region, members in mesh.regions.items():
         mine = np.arange(len(chosen)) if len(mesh.regions) == 1 else np.flatnonzero(np.isin(chosen, members))
-        compliance = solution.problem.materials[region].compliance(solution.problem.kind)
-        for start in range(0, len(mine), CHUNK):
-            rows = mine[start : start + CHUNK]
-            at = at_rule(mesh, order, chosen[rows])
-            values = stress(at, chosen[rows])
-            energies = np.einsum("smq,st,tmq->mq", values, compliance, values, optimize=True)
-            norm[rows] = (energies * volumes(solution.problem, at)).sum(axis=1)
+        parts += [(region, mine[start : start + CHUNK]) for start in range(0, len(mine), CHUNK)]
+    with workers() as pool:
+        list(pool.map(lambda part: integrate(*part), parts))
     return norm

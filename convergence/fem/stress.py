@@ -55,15 +55,15 @@ def direct_stress(solution: Solution, local: np.ndarray, cells: np.ndarray | Non
 def stress_at(solution: Solution, at: Geometry, cells: np.ndarray) -> np.ndarray:
     """Return the element stress (components, m, q) at points of cells."""
     strain = strain_at(solution, at, cells)
-    stress = np.zeros_like(strain)
+    stress = np.empty_like(strain)
     problem, regions = solution.problem, solution.mesh.regions
     for region, members in regions.items():
-        mine = np.arange(len(cells)) if len(regions) == 1 else np.flatnonzero(np.isin(cells, members))
+        mine = slice(None) if len(regions) == 1 else np.flatnonzero(np.isin(cells, members))
         elastic = strain[:, mine]
         if is_heated(problem):
             elastic = elastic - thermal_strain(problem, region, at.x[:, mine])
         elasticity = problem.materials[region].elasticity(problem.kind)
-        stress[:, mine] = np.einsum("st,tmq->smq", elasticity, elastic)
+        stress[:, mine] = np.tensordot(elasticity, elastic, 1)
     return stress
 
 

@@ -11,7 +11,7 @@ if TYPE_CHECKING:
     from matplotlib.colors import Normalize
 
 PAGE_WIDTH = 9.4
-INK_OF_EDGES, INK_OF_OUTLINE = "#27425c", "#444444"
+INK_OF_EDGES, INK_OF_OUTLINE, TINT = "#27425c", "#444444", "#d9d9d9"
 CLOSEST_EDGES = 2.5  # points on the page; closer ones print as a black patch
 
 
@@ -25,7 +25,7 @@ def view(axes: "Axes", *clouds: np.ndarray) -> None:
     points = np.hstack(clouds)
     room = 0.04 * size_of(points)
     low, high = points.min(axis=1) - room, points.max(axis=1) + room
-    axes.set(xlim=(low[0], high[0]), ylim=(low[1], high[1]))
+    axes.set(xlim=(low[0], high[0]), ylim=(low[1], high[1]), xticks=[], yticks=[])
     axes.set_aspect("equal")
     axes.set_axis_off()
 
@@ -77,11 +77,17 @@ def edges(axes: "Axes", points: np.ndarray, lines: np.ndarray, thick: float) -> 
     axes.add_collection(drawn)
 
 
-def tint(axes: "Axes", points: np.ndarray, cells: np.ndarray) -> None:
-    """Fill a plane mesh evenly, where its edges would print as a black patch."""
-    from matplotlib.colors import Normalize
+def tint(axes: "Axes", points: np.ndarray, boundary: np.ndarray) -> None:
+    """Fill a plane part evenly, where its edges would print as a black patch.
 
-    nodal(axes, points, cells, np.zeros_like(points[0]), "Greys", Normalize(-1.0, 3.0))
+    The part lies on one side of all boundary segments, so that walks around holes run the other way and
+    leave them open.
+    """
+    from matplotlib.patches import PathPatch
+    from matplotlib.path import Path
+
+    walks = Path.make_compound_path(*(Path(points[:, chain].T) for chain in _chains(boundary)))
+    axes.add_patch(PathPatch(walks, facecolor=TINT, linewidth=0.0))
 
 
 def nodal(
@@ -91,7 +97,9 @@ def nodal(
     from matplotlib.tri import Triangulation
 
     grid = Triangulation(points[0], points[1], triangles(cells))
-    return axes.tripcolor(grid, values, shading="gouraud", cmap=cmap, norm=norm, rasterized=True)
+    drawn = axes.tripcolor(grid, values, shading="gouraud", cmap=cmap, norm=norm, rasterized=True)
+    drawn.set_in_layout(False)
+    return drawn
 
 
 def cellwise(

@@ -51,7 +51,7 @@ def mesh(axes: "Axes", drawn: Scene, width: float) -> None:
         if not dense:
             _space.edges(axes, drawn.seen, field.edges, thick)
     elif dense:
-        _plane.tint(axes, points, field.cells)
+        _plane.tint(axes, points, field.boundary)
     else:
         _plane.edges(axes, points, field.edges, thick)
     if dense or drawn.seen:

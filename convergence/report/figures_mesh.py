@@ -36,7 +36,7 @@ def mesh_figure(fields: Sequence[Fields], turned: np.ndarray, ladder: Ladder, le
             _scene.frame(axes, turned, whole)
             h = f"h = {numbers.compact(level.h, 3)} {length}".strip()
             between = ", " if width > 2.4 else "\n"
-            axes.set_title(f"level {place + 1}: {numbers.count(level.cells)} cells{between}{h}")
+            axes.set_title(f"level {place + 1}: {numbers.count(level.cells)} cells{between}{h}", y=1.0)
 
     caption = "Same view and scale."
     if any(dense):

@@ -3,10 +3,14 @@
 import math
 from collections.abc import Callable
 from dataclasses import replace
+from typing import Any
 from xml.etree import ElementTree
 
 import numpy as np
 import pytest
+from matplotlib.backends.backend_agg import FigureCanvasAgg
+from matplotlib.colors import to_hex
+from matplotlib.figure import Figure
 
 from convergence.fields import Fields
 from convergence.report import _plane
@@ -140,3 +144,18 @@ def test_long_names_are_shortened_in_the_middle() -> None:
     assert middle("short") == "short"
     long = middle("a" * 50 + "b" * 50)
     assert len(long) <= 42 and long.startswith("a") and long.endswith("b")
+
+
+def test_a_tinted_part_keeps_its_hole_open() -> None:
+    """A square of side 6 with a hole of side 2: a pixel within the ring is tinted, one in the hole is not."""
+    corners = np.array([[-1.0, 1.0, 1.0, -1.0], [-1.0, -1.0, 1.0, 1.0]])
+    boundary = np.array([[0, 1, 2, 3, 4, 7, 6, 5], [1, 2, 3, 0, 7, 6, 5, 4]])
+    figure = Figure(figsize=(2.0, 2.0), dpi=50)
+    axes = figure.add_axes((0.0, 0.0, 1.0, 1.0))
+    _plane.tint(axes, np.hstack((3.0 * corners, corners)), boundary)
+    _plane.view(axes, 3.0 * corners)
+    canvas: Any = FigureCanvasAgg(figure)
+    canvas.draw()
+    pixels = np.asarray(canvas.buffer_rgba())
+    assert to_hex(pixels[50, 20] / 255.0) == _plane.TINT
+    assert to_hex(pixels[50, 50] / 255.0) == "#ffffff"
