@@ -44,11 +44,18 @@ def at_rule(mesh: Mesh, order: int, cells: np.ndarray | None = None) -> Geometry
 
 
 def geometry(
-    mesh: Mesh, local: np.ndarray, cells: np.ndarray | None = None, weights: np.ndarray | None = None
+    mesh: Mesh,
+    local: np.ndarray,
+    cells: np.ndarray | None = None,
+    weights: np.ndarray | None = None,
+    basis: tuple[np.ndarray, np.ndarray] | None = None,
 ) -> Geometry:
-    """Return the geometry of cells (all where None) at local places (D, q), or (D, m, q) one set per cell."""
+    """Return the geometry of cells (all where None) at local places (D, q), or (D, m, q) one set per cell.
+
+    `basis` are the element's shapes and slopes there where they are known.
+    """
     corners = mesh.nodes[:, mesh.cell_nodes if cells is None else mesh.cell_nodes[:, cells]]
-    shapes, slopes = mesh.element.evaluate(local)
+    shapes, slopes = basis or mesh.element.evaluate(local)
     det, inward = inverse(derivatives(corners, slopes))
     dx = det * (weights if weights is not None else 0.0)
     return Geometry(interpolate(corners, shapes), shapes, slopes, inward, det, dx)

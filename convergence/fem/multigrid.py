@@ -174,22 +174,30 @@ def _hierarchy(
         both = sparse.kron(up, sparse.identity(dimension), format="csr")
         if frame is not None:
             both, frame = sparse.csr_matrix(frame.T @ both), None
+        down = both.T.tocsr()
         marked = np.zeros(matrix.shape[0])
         marked[numbers] = 1.0
-        held_below = np.flatnonzero(abs(both).T @ marked > 1e-12)
-        levels.append(_level(matrix.diagonal(), in_single(product), numbers, both, held_below))
-        matrix, numbers = (both.T @ (matrix @ both)).tocsr(), held_below
+        held_below = np.flatnonzero(abs(down) @ marked > 1e-12)
+        levels.append(_level(matrix.diagonal(), in_single(product), numbers, (both, down), held_below))
+        matrix, numbers = (
+            (down @ (matrix @ both)).T.tocsr(),
+            held_below,
+        )  # symmetric: turning it sorts its rows
         product = NodeRows(matrix, dimension) if isinstance(product, NodeRows) else matrix
     return levels, _factored(matrix, numbers)
 
 
 def _level(
-    diagonal: np.ndarray, single: Matrix, held: np.ndarray, up: sparse.csr_matrix, held_below: np.ndarray
+    diagonal: np.ndarray,
+    single: Matrix,
+    held: np.ndarray,
+    transfers: tuple[sparse.csr_matrix, sparse.csr_matrix],
+    held_below: np.ndarray,
 ) -> _Level:
     inverse = (1.0 / diagonal).astype(np.float32)
     largest = 1.1 * _largest_eigenvalue(single, inverse, held)
-    up = up.astype(np.float32)
-    return _Level(single, held, inverse, largest, up, up.T.tocsr(), held_below)
+    up, down = (each.astype(np.float32) for each in transfers)
+    return _Level(single, held, inverse, largest, up, down, held_below)
 
 
 def _largest_eigenvalue(matrix: Matrix, inverse: np.ndarray, held: np.ndarray) -> float:

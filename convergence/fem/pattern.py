@@ -1,7 +1,8 @@
 """Cell matrices summed into a sparse matrix whose pattern of entries is known beforehand.
 
 The pattern depends on the nodes of the cells alone. Two counting sorts, by column and then by row, make it;
-both are scipy's changes of format, so the work grows with the number of pairs of nodes in cells.
+both are scipy's changes of format, so the work grows with the number of pairs of nodes in cells. Cell
+matrices are symmetric: of the nodes a, b of a cell only the pairs a <= b are kept.
 """
 
 from dataclasses import dataclass
@@ -9,71 +10,82 @@ from dataclasses import dataclass
 import numpy as np
 from scipy import sparse
 
+PIECE = 50_000  # nodes whose rows are ordered at once, to save memory
+
+
+def pairs(nodes: int) -> tuple[np.ndarray, np.ndarray]:
+    """Return the nodes a <= b of the pairs of a cell's nodes."""
+    return np.triu_indices(nodes)
+
 
 @dataclass(frozen=True, eq=False)
 class Pattern:
     """The neighbours of node i are `neighbours[indptr[i]:indptr[i + 1]]`, ascending, itself included.
 
-    `slots` (m, k, k) is the place in `neighbours` of the pair (row, column) of a cell's nodes (k, m).
+    `sums` (neighbours, 2 pairs m) adds up the pairs of m cells, then their transposes.
     """
 
-    cell_nodes: np.ndarray
     indptr: np.ndarray
     neighbours: np.ndarray
-    slots: np.ndarray
+    sums: sparse.csr_array
 
-    def columns(self, dimension: int) -> tuple[np.ndarray, np.ndarray]:
-        """Return indices and indptr of the CSR matrix with `dimension` unknowns at each node."""
-        one = np.ones((1, 1, 1), dtype=np.int8)
-        blocks = np.broadcast_to(one, (len(self.neighbours), dimension, dimension))
-        size = dimension * (len(self.indptr) - 1)
-        matrix = sparse.bsr_array((blocks, self.neighbours, self.indptr), shape=(size, size)).tocsr()
-        return matrix.indices, matrix.indptr
+    def summed(self, blocks: np.ndarray) -> np.ndarray:
+        """Return the blocks (D columns, D rows, neighbours) of the sum of cells' (D, D, pairs, m)."""
+        dimension = len(blocks)
+        total = np.empty((dimension, dimension, len(self.neighbours)))
+        for row, column in np.ndindex(dimension, dimension):
+            parts = np.concatenate([blocks[row, column].ravel(), blocks[column, row].ravel()])
+            total[column, row] = self.sums @ parts
+        return total
+
+    def matrix(self, blocks: np.ndarray) -> sparse.csr_matrix:
+        """Return the matrix of blocks as `summed`; unknowns are interleaved, D at each node."""
+        dimension, nodes, count = len(blocks), len(self.indptr) - 1, len(self.neighbours)
+        places = np.tile(self.neighbours, dimension)
+        starts = [self.indptr[:-1] + row * count for row in range(dimension)]
+        ends = np.concatenate([*starts, [dimension * count]]).astype(np.int32)
+        order = np.arange(dimension * nodes, dtype=np.int32).reshape(dimension, nodes).T
+        entries = np.empty((dimension * count, dimension))
+        indices = np.empty(entries.shape, dtype=np.int32)
+        for column, values in enumerate(blocks.reshape(dimension, -1)):
+            by_row = sparse.csr_array((values, places, ends), shape=(dimension * nodes, nodes))
+            for first in range(0, nodes, PIECE):
+                rows = by_row[order[first : first + PIECE].ravel()]
+                at = slice(dimension * self.indptr[first], dimension * self.indptr[first] + rows.nnz)
+                entries[at, column] = rows.data
+                indices[at, column] = dimension * rows.indices + column
+        lengths = np.repeat(dimension * np.diff(self.indptr), dimension)
+        rows_end = np.concatenate([[0], np.cumsum(lengths)]).astype(np.int32)
+        size = dimension * nodes
+        return sparse.csr_matrix((entries.ravel(), indices.ravel(), rows_end), shape=(size, size))
 
 
 def pattern(cell_nodes: np.ndarray, nodes: int) -> Pattern:
     """Return the pattern of cells (k, m) that share a number of nodes."""
     k, m = cell_nodes.shape
     owners = np.ascontiguousarray(cell_nodes.T, dtype=np.int32)
-    pairs = np.arange(k * k * m, dtype=np.int32)
-    starts = np.arange(0, k * k * m + 1, k, dtype=np.int32)
     columns = np.repeat(owners, k, axis=0).ravel()
-    by_column = sparse.csr_array((pairs, columns, starts), shape=(k * m, nodes)).tocsc()
+    starts = np.arange(0, k * k * m + 1, k, dtype=np.int32)
+    by_column = sparse.csr_array((_numbers(k, m), columns, starts), shape=(k * m, nodes)).tocsc()
+    del columns
     entries = (by_column.data, owners.ravel()[by_column.indices], by_column.indptr)
     by_row = sparse.csc_array(entries, shape=(nodes, nodes)).tocsr()
-    first = np.empty(len(pairs), dtype=bool)
-    first[0] = True
-    np.not_equal(by_row.indices[1:], by_row.indices[:-1], out=first[1:])
-    first[by_row.indptr[:-1][np.diff(by_row.indptr) > 0]] = True
-    number = np.cumsum(first, dtype=np.int32)
-    indptr = np.concatenate([[0], number]).astype(np.int32)[by_row.indptr]
-    slots = pairs
-    slots[by_row.data] = number - 1
-    return Pattern(cell_nodes, indptr, by_row.indices[first], slots.reshape(m, k, k))
+    del by_column, entries
+    new = np.empty(k * k * m, dtype=bool)
+    new[0] = True
+    np.not_equal(by_row.indices[1:], by_row.indices[:-1], out=new[1:])
+    new[by_row.indptr[:-1][np.diff(by_row.indptr) > 0]] = True
+    slots = np.flatnonzero(new).astype(np.int32)
+    whole = (np.ones(len(new)), by_row.data, np.append(slots, np.int32(len(new))))
+    sums = sparse.csr_array(whole, shape=(len(slots), k * (k + 1) * m))
+    indptr = np.searchsorted(slots, by_row.indptr).astype(np.int32)
+    return Pattern(indptr, by_row.indices[slots], sums)
 
 
-class Sum:
-    """A growing sum of cell matrices on a pattern."""
-
-    def __init__(self, on: Pattern, dimension: int):
-        self.on, self.dimension = on, dimension
-        self.entries = np.zeros(dimension**2 * len(on.neighbours))
-        self._lengths = dimension * np.diff(on.indptr)
-        self._before = (dimension - 1) * dimension * on.indptr[:-1].astype(np.int64)
-
-    def add(self, cells: np.ndarray, blocks: np.ndarray) -> None:
-        """Add blocks (m, D k, D k) of cells."""
-        nodes, dimension = self.on.cell_nodes[:, cells].T, self.dimension
-        k = nodes.shape[1]
-        first = (dimension * self.on.slots[cells] + self._before[nodes][:, :, None]).ravel()
-        step = np.repeat(self._lengths[nodes].ravel(), k)
-        parts = blocks.reshape(len(blocks), k, dimension, k, dimension)
-        for row in range(dimension):
-            at = first + row * step
-            for column in range(dimension):
-                np.add.at(self.entries, at + column, parts[:, :, row, :, column].ravel())
-
-    def matrix(self) -> sparse.csr_matrix:
-        """Return the sum."""
-        size = len(self._lengths) * self.dimension
-        return sparse.csr_matrix((self.entries, *self.on.columns(self.dimension)), shape=(size, size))
+def _numbers(k: int, m: int) -> np.ndarray:
+    """Return the numbers (m k k) of the pairs of nodes of cells, those a <= b before the others."""
+    a, b = pairs(k)
+    first = np.empty((k, k), dtype=np.int32)
+    first[b, a] = m * (len(a) + np.arange(len(a)))
+    first[a, b] = m * np.arange(len(a))
+    return (first + np.arange(m, dtype=np.int32)[:, None, None]).ravel()

@@ -12,8 +12,8 @@ from typing import Any
 import numpy as np
 from scipy import sparse
 
-# unknowns by dimension; numba takes 0.5 to 1.4 s to start from a warm cache, and rows are short in a plane
-LEAST_COMPILED = {2: 2_000_000, 3: 150_000}
+# unknowns by dimension that repay numba's start of 0.3 s from a warm cache; rows are short in a plane
+LEAST_COMPILED = {2: 500_000, 3: 100_000}
 LEAST_SHARED = 20_000  # nodes that repay a second thread
 Matrix = Any  # what has `@`: a sparse matrix or NodeRows
 

@@ -54,10 +54,28 @@ def strain_gradients(problem: Problem, at: Geometry) -> np.ndarray:
     if problem.kind != "axisymmetric":
         return at.gradients
     shapes = at.shapes if at.shapes.ndim == 3 else at.shapes[:, None, :]
-    x = at.x[0]
-    away = x > ON_AXIS * problem.part.size
-    hoop = np.where(away, shapes / np.where(away, x, 1.0), at.gradients[:, 0])
+    away, inverse = _off_axis(problem, at)
+    hoop = np.where(away, shapes * inverse, at.gradients[:, 0])
     return np.concatenate([at.gradients, hoop[:, None]], axis=1)
+
+
+def strain_maps(problem: Problem, at: Geometry) -> np.ndarray:
+    """Return what makes `strain_gradients` of the slopes and, around an axis, the shapes, (K, G, m, q)."""
+    if problem.kind != "axisymmetric":
+        return at.inward
+    d = len(at.x)
+    away, inverse = _off_axis(problem, at)
+    maps = np.zeros((d + 1, d + 1, *away.shape))
+    maps[:d, :d] = at.inward
+    maps[:d, d] = np.where(away, 0.0, at.inward[:, 0])
+    maps[d, d] = np.where(away, inverse, 0.0)
+    return maps
+
+
+def _off_axis(problem: Problem, at: Geometry) -> tuple[np.ndarray, np.ndarray]:
+    """Return where points (m, q) are away from the axis, and 1/x there."""
+    away = at.x[0] > ON_AXIS * problem.part.size
+    return away, 1.0 / np.where(away, at.x[0], 1.0)
 
 
 def strain_forms(kind: ProblemKind, dimension: int) -> np.ndarray:

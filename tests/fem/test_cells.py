@@ -14,11 +14,11 @@ from convergence.fem.grid import cut
 from convergence.fem.material import Material, ProblemKind
 from convergence.fem.mesh import Mesh, mesh
 from convergence.fem.part import Part
-from convergence.fem.pattern import Sum, pattern
+from convergence.fem.pattern import pairs, pattern
 from convergence.fem.problem import AnyPart, Problem
 from convergence.fem.rod_part import RodPart
 from convergence.fem.solid_part import SolidPart
-from convergence.fem.strain import strain_forms, strain_gradients, strain_operator
+from convergence.fem.strain import strain_forms, strain_gradients, strain_maps, strain_operator
 
 SHAPES: tuple[Shape, ...] = ("line", "triangle", "quadrilateral", "tetrahedron", "hexahedron", "wedge")
 EVERY_CELL = pytest.mark.parametrize(("shape", "degree"), list(product(SHAPES, (1, 2))))
@@ -155,21 +155,21 @@ def test_a_grid_is_cut_without_gaps(shape: Shape, degree: int) -> None:
 
 @pytest.mark.parametrize("dimension", [1, 2, 3])
 def test_sums_of_cell_matrices(dimension: int) -> None:
-    """Random cells, some nodes in none of them, against scipy's sum of triplets; added in two portions."""
+    """Random symmetric cells, some nodes in none of them, against scipy's sum of triplets."""
     nodes, k, m = 40, 4, 30
     used = RANDOM.choice(nodes, 25, replace=False)
     cell_nodes = np.array([RANDOM.choice(used, k, replace=False) for _ in range(m)]).T
     blocks = RANDOM.normal(size=(m, k * dimension, k * dimension))
-    total = Sum(pattern(cell_nodes, nodes), dimension)
-    order = RANDOM.permutation(m)
-    for cells in (order[:11], order[11:]):
-        total.add(cells, blocks[cells])
+    blocks += blocks.transpose(0, 2, 1)
+    a, b = pairs(k)
+    of_pairs = blocks.reshape(m, k, dimension, k, dimension)[:, a, :, b].transpose(2, 3, 0, 1)
+    on = pattern(cell_nodes, nodes)
     unknowns = (dimension * cell_nodes.T[:, :, None] + np.arange(dimension)).reshape(m, -1)
     rows = np.repeat(unknowns, k * dimension, axis=1).ravel()
     columns = np.tile(unknowns, (1, k * dimension)).ravel()
     size = nodes * dimension
     other = sparse.coo_matrix((blocks.ravel(), (rows, columns)), shape=(size, size)).tocsr()
-    found = total.matrix()
+    found = on.matrix(on.summed(of_pairs))
     assert abs(found - other).max() <= 1e-13
     assert found.nnz == other.nnz
     assert all(
@@ -205,3 +205,14 @@ def test_strains_against_a_plain_loop(kind: ProblemKind, shape: Shape) -> None:
         assert operator[:, d * node + component] == pytest.approx(np.array(expected), abs=1e-14)
         formed = np.einsum("sk,kmq->smq", forms[:, component], pieces[node])
         assert formed == pytest.approx(np.array(expected), abs=1e-14)
+
+
+def test_gradients_around_an_axis_are_maps_of_slopes_and_shapes() -> None:
+    """Off the axis N/x is a gradient of its own; on it du/dx stands in."""
+    level = cells_of("quadrilateral", 2)
+    problem = Problem("cell", level.part, {"body": Material(1.0, 0.3)}, (), (), "axisymmetric")
+    at = at_rule(level, 4)
+    at.x[0, :, 0] = 0.0
+    kinds = np.concatenate([at.slopes, at.shapes[:, None]], axis=1)
+    found = np.einsum("nkq,kgmq->ngmq", kinds, strain_maps(problem, at))
+    assert found == pytest.approx(strain_gradients(problem, at), abs=1e-13)

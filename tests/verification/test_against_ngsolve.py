@@ -13,7 +13,7 @@ from typing import Any, Literal
 import numpy as np
 import pytest
 
-from convergence.fem.assembly import stiffness_rule
+from convergence.fem.cell_matrices import stiffness_rule
 from convergence.fem.loads import BodyForce, Pressure, Traction
 from convergence.fem.material import Material, ProblemKind
 from convergence.fem.mesh import Mesh, Shape, mesh
