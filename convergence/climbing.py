@@ -45,14 +45,16 @@ def climb(study: Study, folder: Path, budget: Budget = NO_LIMIT) -> Iterator[Lev
     levels of the first one are yielded. A level that only some cases have is solved for the others.
 
     A level that is foretold not to fit the budget or the memory of the machine is not begun, and one
-    that runs out of memory is given up: the ladder ends before it with a remark. A first level raises.
+    that runs out of memory is given up: the ladder ends before it with a remark. A first level raises, but
+    for that of a companion: its ladder is kept without a level.
     """
     assert study.ladder is not None
     cases = study.cases or {"": study}
+    folders = {name: folder / name / study.subfolder for name in cases}
     common = study.problem()
     meshes = plan(study.ladder, common)
     problems = {name: replace(case.problem(), part=common.part) for name, case in cases.items()}
-    saved = {name: _saved(case, folder / name, study.ladder.levels) for name, case in cases.items()}
+    saved = {name: _saved(case, folders[name], study.ladder.levels) for name, case in cases.items()}
     first = next(iter(saved.values()))
     remarks: tuple[str, ...] = ()
     begun, sizes = time.perf_counter(), unknowns(study)
@@ -63,25 +65,28 @@ def climb(study: Study, folder: Path, budget: Budget = NO_LIMIT) -> Iterator[Lev
             why = shortage(first[:number], sizes[number], within, time.perf_counter() - begun)
             try:
                 coarser = meshes[number - 1] if number else None
-                solved = {} if why else _level(cases, missing, counts, coarser, folder, number)
+                solved = {} if why else _level(cases, missing, counts, coarser, folders, number)
             except MemoryError:
                 why = "memory ran out"
             if why:
-                remarks = _ended(number, sizes[number], why)
+                remarks = _ended(number, sizes[number], why, study.subfolder)
                 break
             for name, level in solved.items():
                 saved[name].append(level)
-                _save(cases[name], saved[name], folder / name)
-                _unknowns_file(folder / name, number - 1).unlink(missing_ok=True)
+                _save(cases[name], saved[name], folders[name])
+                _unknowns_file(folders[name], number - 1).unlink(missing_ok=True)
         yield first[number]
     for name, case in cases.items():
         ended = len(saved[name]) < study.ladder.levels
-        _save(case, saved[name], folder / name, remarks if ended else ())
+        _save(case, saved[name], folders[name], remarks if ended else ())
 
 
-def _ended(number: int, dofs: int, why: str) -> tuple[str, ...]:
-    """Return the remark on a ladder that ends before a level; SolvingError where it has no other."""
-    what = f"level {number + 1} ({numbers.count(dofs)} unknowns) is not solved: {why}"
+def _ended(number: int, dofs: int, why: str, companion: str) -> tuple[str, ...]:
+    """Return the remark on a ladder that ends before a level; SolvingError where nothing can be judged."""
+    whose = f"of the {companion} " if companion else ""
+    what = f"level {number + 1} {whose}({numbers.count(dofs)} unknowns) is not solved: {why}"
+    if companion:
+        return (what,)
     if number == 0:
         raise SolvingError(f"{what}; ask for a coarser first level")
     return (f"{what}; the levels before it are judged",)
@@ -137,7 +142,7 @@ def _level(
     problems: Mapping[str, Problem],
     counts: dict[int, int],
     coarser: dict[int, int] | None,
-    folder: Path,
+    folders: Mapping[str, Path],
     number: int,
 ) -> dict[str, Level]:
     """Solve one level of problems that differ in their loads only; save their fields.
@@ -159,14 +164,14 @@ def _level(
             degree=spec.degree,
             formulation=spec.formulation,
         )
-        guesses = [_guess(_unknowns_file(folder / name, number - 1), coarser, meshed) for name in problems]
+        guesses = [_guess(_unknowns_file(folders[name], number - 1), coarser, meshed) for name in problems]
         solutions = solve_cases(list(problems.values()), meshed, guesses)
         for name, solution in zip(problems, solutions, strict=True):
             values[name] = {**_measured(cases[name], solution), **_records(solution)}
-            (folder / name / "levels").mkdir(parents=True, exist_ok=True)
+            (folders[name] / "levels").mkdir(parents=True, exist_ok=True)
             if number == 0 or faces(meshed) <= MOST_FACES:
-                display(solution).save(level_file(folder / name, number))
-            np.save(_unknowns_file(folder / name, number), solution.unknowns)
+                display(solution).save(level_file(folders[name], number))
+            np.save(_unknowns_file(folders[name], number), solution.unknowns)
     except SolvingError as error:
         raise SolvingError(f"level {number + 1}: {error}") from error
     dofs, seconds, memory = meshed.nodes.size, time.perf_counter() - start, peak_memory()

@@ -6,12 +6,14 @@ from dataclasses import replace
 import numpy as np
 
 from convergence import rooms
+from convergence.checks._instead import instead_columns
 from convergence.checks.linear_range import own_peaks
+from convergence.corner import Corner
 from convergence.corners.singular_corners import singular_corners, unexamined_corners
 from convergence.fem.material import Material
 from convergence.fem.problem import AnyPart
 from convergence.intervals import Interval, interval
-from convergence.results import Check, Corner, Facts, Findings, Ladder, Quantity, Yield
+from convergence.results import Check, Facts, Findings, Ladder, Quantity, Yield
 from convergence.study import Study
 from convergence.verdicts import verdict
 
@@ -55,14 +57,23 @@ def _covered(quantity: Quantity, part: AnyPart, corners: tuple[Corner, ...]) -> 
 
 def judge(ladder: Ladder, quantities: tuple[Quantity, ...], facts: Facts, title: str) -> Findings:
     """Return estimates, checks and a verdict for every quantity of a ladder."""
-    intervals = {
-        q.name: _interval(ladder, q.name, q.formal_order, _scale(ladder, q, facts)) for q in quantities
+    intervals = {q.name: _interval(ladder, q, _scale(ladder, q, facts)) for q in quantities}
+    peaks = {
+        name: _interval(ladder, Quantity(name, kind="peak_stress", degree=facts.degree))
+        for name in own_peaks(ladder)
     }
-    peaks = {name: _interval(ladder, name, None) for name in own_peaks(ladder)}
+    facts = replace(
+        facts, kinds={q.name: q.kind for q in quantities}, units={q.name: q.unit for q in quantities}
+    )
+    others = {
+        name: interval(ladder.h, f, formal_order=None, kind="point_stress", degree=facts.degree)
+        for name, f in instead_columns(ladder, facts).items()
+    }
+    stated = intervals | peaks | others
     facts = replace(
         facts,
-        kinds={q.name: q.kind for q in quantities},
-        intervals={name: (found.low, found.high) for name, found in (intervals | peaks).items()},
+        intervals={name: (found.low, found.high) for name, found in stated.items()},
+        growing={n: (i.order_low, i.order_high) for n, i in intervals.items() if i.growth == "shown"},
     )
     checks = tuple(rooms.find("checks", name)(ladder, facts) for name in rooms.names("checks"))
     return Findings(
@@ -78,11 +89,17 @@ def judge(ladder: Ladder, quantities: tuple[Quantity, ...], facts: Facts, title:
     )
 
 
-def _interval(ladder: Ladder, name: str, formal_order: float | None, scale: float = 0.0) -> Interval:
-    f = ladder.column(name)
+def _interval(ladder: Ladder, quantity: Quantity, scale: float = 0.0) -> Interval:
+    f = ladder.column(quantity.name)
     noise = _solver_noise(ladder) * max(_largest(f), scale)
-    resolution = max(ladder.resolution.get(name, 0.0), noise)
-    return interval(ladder.h, f, formal_order=formal_order, resolution=resolution)
+    return interval(
+        ladder.h,
+        f,
+        formal_order=quantity.formal_order,
+        kind=quantity.kind,
+        degree=quantity.degree,
+        resolution=max(ladder.resolution.get(quantity.name, 0.0), noise),
+    )
 
 
 def _scale(ladder: Ladder, quantity: Quantity, facts: Facts) -> float:

@@ -1,7 +1,7 @@
 """The ladder a study asks for: sizes from coarse to fine, cell shape and degree."""
 
 from dataclasses import dataclass, replace
-from typing import Annotated, Literal
+from typing import Annotated, Any, Literal
 
 from convergence.dimensions import RATIO, Bounds, PositiveLength
 from convergence.errors import require
@@ -30,6 +30,13 @@ class LadderSpec:
     degree: int
     formulation: Formulation
 
+    def with_companion(self, *, degree: Literal[1, 2] | None, shape: Shape | None) -> "LadderSpec":
+        """Return the ladder of another degree, other cells or both. Unsuitable where it would be the same."""
+        found = replace(self, degree=degree or self.degree, shape=shape or self.shape)
+        key, same = ("degree", degree) if shape is None else ("shape", shape)
+        require((found != self, key, same, "another degree or other cells than [ladder] has"))
+        return found
+
     def of_dimension(self, dimension: int) -> "LadderSpec":
         """Return the ladder with cells that fill the dimension. Unsuitable where its own do not."""
         shapes = SHAPES[dimension]
@@ -57,3 +64,12 @@ def ladder(
     if size is None and divisions is None:
         divisions = 2
     return LadderSpec(size, divisions, ratio, levels, shape, degree, formulation)
+
+
+def companion(
+    *,
+    degree: Annotated[Literal[1, 2] | None, "polynomial degree, that of [ladder] if not given"] = None,
+    shape: Annotated[Shape | None, "shape of the cells, that of [ladder] if not given"] = None,
+) -> dict[str, Any]:
+    """Return how a study's [companion], a second ladder of the same model, differs from its [ladder]."""
+    return {"degree": degree, "shape": shape}

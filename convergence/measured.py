@@ -60,6 +60,7 @@ def read_measured(
         name=name,
         kind=rooms.beside("quantities", measure, "KIND"),
         unit=units.label(dimension) if dimension else "",
+        degree=degree,
         formal_order=order,
         relative=accepted.relative,
         absolute=accepted.absolute,

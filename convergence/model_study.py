@@ -3,7 +3,7 @@
 import hashlib
 import json
 from collections.abc import Mapping
-from dataclasses import asdict, dataclass, field
+from dataclasses import asdict, dataclass, field, replace
 from typing import Any
 
 from convergence import __version__, rooms
@@ -12,7 +12,7 @@ from convergence.errors import listing, nearest
 from convergence.fem.dilatation import require_suitable
 from convergence.fem.material import ORTHOTROPIC, Material, material, material_names
 from convergence.fem.problem import Problem
-from convergence.ladder_spec import LadderSpec, ladder
+from convergence.ladder_spec import LadderSpec, companion, ladder
 from convergence.measured import read_measured
 from convergence.results import Quantity
 from convergence.sections import Sections
@@ -24,7 +24,8 @@ YIELD = ("yield_strength", "yield_source")
 class ModelStudy:
     """What the tables of a model study say; `cases` have the arguments of the model in each load case.
 
-    `parts` is all that changes a number of a level beside the arguments.
+    `parts` is all that changes a number of a level beside the arguments. `companion` is the same model on a
+    second ladder.
     """
 
     model: str
@@ -34,6 +35,7 @@ class ModelStudy:
     dimension: int
     cases: Mapping[str, Mapping[str, Any]]
     parts: Mapping[str, Any] = field(default_factory=dict)
+    companion: "ModelStudy | None" = None
 
     def fingerprint(self, arguments: Mapping[str, Any]) -> str:
         """Return the fingerprint of the study with these arguments of the model."""
@@ -66,35 +68,56 @@ def read_materials(sections: Sections, tables: tuple[str, ...]) -> dict[str, Mat
 
 
 def read_model(sections: Sections, materials: Mapping[str, Material], unit_system: str) -> ModelStudy:
-    """Read [model], [cases], [ladder] and [quantities]; their faults are kept in `sections`."""
+    """Read all tables of a model study but the materials; their faults are kept in `sections`."""
     spec = sections.read(ladder, "ladder") or ladder()
     model, arguments, problem = _model(sections, materials)
     dimension = problem.part.dimension if problem else 2
     spec = sections.called(spec.of_dimension, {"dimension": dimension}, "ladder") or spec
     cases: dict[str, dict[str, Any]] = {}
     if problem:
-        suits = {"formulation": spec.formulation, "shape": spec.shape, "kind": problem.kind}
-        sections.called(require_suitable, suits, "ladder")
         cases = read_cases(sections, rooms.find("models", model), arguments, materials)
-    asked = sections.named("quantities", "quantity")
     if not sections.file.data.get("quantities"):
         sections.fault((), "no quantity of interest", "add [quantities.NAME] with measure = ...")
-    found = [
-        sections.keep(
-            *read_measured(sections.file, name, spec.degree, spec.shape or "", sections.units, problem)
-        )
-        for name in asked
-    ]
-    kept = [item for item in found if item]
     parts = {
         "version": __version__,
         "units": unit_system,
         "materials": {name: _constants(found) for name, found in materials.items()},
+    }
+    blank = ModelStudy(model, arguments, spec, (), dimension, cases, parts)
+    found = _on_ladder(sections, blank, spec, problem, "ladder")
+    if "companion" not in sections.file.data or sections.faults:
+        return found
+    second = _companion(sections, spec, dimension)
+    return replace(found, companion=second and _on_ladder(sections, blank, second, problem, "companion"))
+
+
+def _on_ladder(
+    sections: Sections, blank: ModelStudy, spec: LadderSpec, problem: Problem | None, table: str
+) -> ModelStudy:
+    """Return a study on a ladder, its quantities with the formal orders that they have there."""
+    if problem:
+        suits = {"formulation": spec.formulation, "shape": spec.shape, "kind": problem.kind}
+        sections.called(require_suitable, suits, table)
+    found = [
+        sections.keep(
+            *read_measured(sections.file, name, spec.degree, spec.shape or "", sections.units, problem)
+        )
+        for name in sections.named("quantities", "quantity")
+    ]
+    kept = [item for item in found if item]
+    parts = {
+        **blank.parts,
         "ladder": {**asdict(spec), "levels": None},
         "quantities": {item.quantity.name: [item.measure, item.arguments] for item in kept},
     }
-    quantities = tuple(item.quantity for item in kept)
-    return ModelStudy(model, arguments, spec, quantities, dimension, cases, parts)
+    return replace(blank, ladder=spec, quantities=tuple(item.quantity for item in kept), parts=parts)
+
+
+def _companion(sections: Sections, spec: LadderSpec, dimension: int) -> LadderSpec | None:
+    """Return the second ladder, of the same sizes; None where its table has faults."""
+    said = sections.read(companion, "companion")
+    found = None if said is None else sections.called(spec.with_companion, said, "companion")
+    return found and sections.called(found.of_dimension, {"dimension": dimension}, "companion")
 
 
 def _model(

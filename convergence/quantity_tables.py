@@ -15,7 +15,7 @@ EXAMPLES = {"quantity": "peak_stress", "case": "side_pull"}
 KEEPERS = {"quantity": "ladder", "case": "folder of a run"}
 RESERVED = {
     "quantity": ("h", "cells", "nodes", "dofs", "seconds", "memory"),
-    "case": ("levels", "figures"),
+    "case": ("levels", "figures", "companion"),
 }
 ASSUMED_TOLERANCE = 0.05
 

@@ -8,6 +8,9 @@ from typing import TYPE_CHECKING, Any, Literal
 
 import numpy as np
 
+from convergence.corner import Corner
+from convergence.coverage import Coverage
+
 if TYPE_CHECKING:
     import pandas as pd
 
@@ -31,8 +34,7 @@ class Level:
     """One mesh: measured cell size h, its cost, and one number per quantity and record.
 
     A place belonging to a quantity is kept as NAME.x and NAME.y, a check's record as CHECK.NAME.
-    `memory` is the largest resident memory of the process in MB while the level was solved, NaN where
-    it is not known.
+    `memory` is the largest resident memory of the process in MB meanwhile, NaN where it is not known.
     """
 
     h: float
@@ -47,8 +49,7 @@ class Level:
 class Ladder:
     """Levels from coarse to fine; index 0 is the coarsest.
 
-    `resolution` is half a unit of the last printed digit where the values came from print; `h_unit` the
-    unit of the sizes, "" where it is not known or they are relative.
+    `resolution`: half a unit of the last printed digit; `h_unit`: "" where not known or relative.
     """
 
     levels: tuple[Level, ...]
@@ -79,13 +80,14 @@ class Ladder:
 class Quantity:
     """A quantity of interest: how it is measured, what theory says of it, what is accepted.
 
-    `formal_order` holds for a smooth solution, None where kind or degree is not known. `measure`
-    maps a Solution to a float or Located; None for a column of a table.
+    `degree` is that of the elements, `formal_order` holds for a smooth solution; None where not known.
+    `measure` maps a Solution to a float or Located; None for a column of a table.
     """
 
     name: str
     kind: Kind = "unknown"
     unit: str = ""
+    degree: int | None = None
     formal_order: float | None = None
     relative: float | None = None
     absolute: float | None = None
@@ -105,39 +107,6 @@ class Quantity:
 
 
 @dataclass(frozen=True)
-class Corner:
-    """A singular corner of a plane, or an edge of a solid: opening in degrees, its two sides, exponent.
-
-    `path` are the places along it (one in a plane), `points` the part's own points on it.
-    """
-
-    name: str
-    path: tuple[tuple[float, ...], ...]
-    points: tuple[str, ...]
-    opening: float
-    sides: tuple[str, str]
-    exponent: float
-
-    @property
-    def where(self) -> str:
-        """Return "at (x, y)", or "from (x, y, z) to (x, y, z)" for an edge."""
-        ends = [f"({', '.join(f'{x:.4g}' for x in place)})" for place in (self.path[0], self.path[-1])]
-        if len(self.path) == 1:
-            return f"at {ends[0]}"
-        return f"all around through {ends[0]}" if ends[0] == ends[1] else f"from {ends[0]} to {ends[1]}"
-
-    def distance(self, place: tuple[float, ...]) -> float:
-        """Return how far a place is from the corner."""
-        corners, at = np.array(self.path), np.array(place)
-        if len(corners) == 1:
-            return float(np.linalg.norm(corners[0] - at))
-        start, along = corners[:-1], np.diff(corners, axis=0)
-        squares = np.maximum((along**2).sum(axis=1), np.finfo(float).tiny)
-        share = np.clip(((at - start) * along).sum(axis=1) / squares, 0.0, 1.0)
-        return float(np.linalg.norm(start + share[:, None] * along - at, axis=1).min())
-
-
-@dataclass(frozen=True)
 class Yield:
     """A yield strength and where it stands."""
 
@@ -153,7 +122,8 @@ class Facts:
     has the singular corners within the reach of each quantity; `unexamined` and `doubtful` say the same of
     corners on which theory is silent; `components` what a stress is, `regions` the one it is confined to,
     "" where none; `yields` the yield strengths by region, of a table under ""; `intervals` the stated
-    (low, high) per name, NaN where there is none.
+    (low, high) per name, NaN where there is none; `units` the unit of each quantity; `growing` the range of
+    the order of those whose levels show growth without limit.
     """
 
     degree: int | None = None
@@ -168,6 +138,8 @@ class Facts:
     components: Mapping[str, str] = field(default_factory=dict)
     regions: Mapping[str, str] = field(default_factory=dict)
     intervals: Mapping[str, tuple[float, float]] = field(default_factory=dict)
+    units: Mapping[str, str] = field(default_factory=dict)
+    growing: Mapping[str, tuple[float, float]] = field(default_factory=dict)
 
     @property
     def exponent(self) -> float | None:
@@ -208,7 +180,7 @@ class Check:
 
 @dataclass(frozen=True)
 class Verdict:
-    """The statement on one quantity. Half-widths and tolerance are absolute; NaN where there is none."""
+    """The statement on one quantity. `uncertainty` is about the finest value; NaN where there is none."""
 
     word: VerdictWord
     value: float
@@ -219,6 +191,8 @@ class Verdict:
     tolerance: float
     behaviour: str
     observed_order: float
+    order_low: float
+    order_high: float
     formal_order: float | None
     expected_order: float | None
     next_h: float
@@ -226,7 +200,7 @@ class Verdict:
     next_dofs: float
     next_seconds: float
     next_memory: float
-    coverage: float | None
+    coverage: Coverage | None
     reasons: tuple[str, ...]
 
 

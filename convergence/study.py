@@ -15,12 +15,13 @@ from convergence.fem.material import Material
 from convergence.fem.problem import Problem
 from convergence.intake.table import table
 from convergence.ladder_spec import LadderSpec
-from convergence.model_study import digest, material_tables, read_materials, read_model
+from convergence.model_study import ModelStudy, digest, material_tables, read_materials, read_model
 from convergence.results import Ladder, Quantity
 from convergence.sections import Sections
 from convergence.tomlfile import read_toml
 
-SECTIONS = ("model", "cases", "table", "ladder", "quantities")
+SECTIONS = ("model", "cases", "table", "ladder", "companion", "quantities")
+COMPANION = "companion"
 DEFAULT_SYSTEM = "mm, N, MPa"
 
 
@@ -31,7 +32,8 @@ class Study:
     `table` is the ladder of the table, its columns under the names of the quantities; `table_file` is
     where it stands. `materials` are under the names of their tables. `fingerprint` changes with everything
     that changes a number of a level. `cases` are studies of their own that differ in their loads only: then
-    they are what is solved and judged.
+    they are what is solved and judged. `companion` is the same study on a second ladder; it is kept in the
+    `subfolder` of the folder of a run.
     """
 
     file: Path
@@ -50,6 +52,8 @@ class Study:
     table_file: Path | None = None
     dimension: int = 2
     cases: Mapping[str, "Study"] = field(default_factory=dict)
+    companion: "Study | None" = None
+    subfolder: str = ""
 
     def problem(self) -> Problem:
         """Return the problem of a model study."""
@@ -109,6 +113,15 @@ def head(
 
 def _model_study(sections: Sections, blank: Study) -> Study:
     found = read_model(sections, blank.materials, blank.unit_system)
+    study = _on_ladder(blank, found)
+    if found.companion is None:
+        return study
+    second = _on_ladder(replace(blank, subfolder=COMPANION), found.companion)
+    cases = {name: replace(case, companion=second.cases[name]) for name, case in study.cases.items()}
+    return replace(study, companion=second, cases=cases)
+
+
+def _on_ladder(blank: Study, found: ModelStudy) -> Study:
     study = replace(
         blank,
         model=found.model,
@@ -132,7 +145,7 @@ def _model_study(sections: Sections, blank: Study) -> Study:
 
 
 def _table_study(sections: Sections, blank: Study) -> Study:
-    for section, what in (("ladder", "ladder of its own"), ("cases", "load cases")):
+    for section, what in (("ladder", "ladder of its own"), ("companion", "model"), ("cases", "load cases")):
         if section in sections.file.data:
             sections.fault((section,), f"a table study has no {what}", f"remove [{section}]")
     arguments = sections.bound(table, sections.table("table"), "table")

@@ -5,14 +5,18 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 
 from convergence import numbers
+from convergence.checks._corner import STRESS_KINDS
+from convergence.corner import Corner
+from convergence.coverage import Coverage
 from convergence.forecast import STEEPEST_MEMORY, STEEPEST_TIME, grown
+from convergence.histories.width import MOST_LEVELS
 from convergence.intervals import LEAST_ORDER, Interval
-from convergence.results import Corner, Facts, Ladder, Quantity, Verdict, VerdictWord
+from convergence.results import Facts, Ladder, Quantity, Verdict, VerdictWord
 
+SETTLED = 0.03  # half-width over value below which no singular value of the bank lies
 MOST_ORDER = 4.0
 AFFORDABLE_DOFS = 5e7
 OUT_OF_REACH = 1e-40
-NO_COVERAGE = "its coverage has not been calibrated"
 
 
 @dataclass(frozen=True)
@@ -32,7 +36,7 @@ def verdict(
     """Return the statement on a quantity; `spoiled` has the verdicts that failed checks force, with why."""
     expected = expected_order(quantity, facts)
     tolerance = accepted(quantity, found.value)
-    word = _word(quantity, found, tolerance, spoiled)
+    word = _word(quantity, found, tolerance, spoiled, facts)
     ahead = _next_mesh(found, tolerance, expected, ladder, facts) if word == "refine" else Next()
     stated = word != "singular"
     reasons = _reasons(quantity, found, spoiled, tolerance, expected, ahead, word)
@@ -48,6 +52,8 @@ def verdict(
         tolerance=tolerance,
         behaviour=found.behaviour,
         observed_order=found.order,
+        order_low=found.order_low,
+        order_high=found.order_high,
         formal_order=quantity.formal_order,
         expected_order=expected,
         next_h=ahead.h,
@@ -55,7 +61,7 @@ def verdict(
         next_dofs=ahead.dofs,
         next_seconds=ahead.seconds,
         next_memory=ahead.memory,
-        coverage=None,
+        coverage=found.coverage if stated else None,
         reasons=tuple(reasons),
     )
 
@@ -73,16 +79,25 @@ def accepted(quantity: Quantity, value: float) -> float:
     return max(relative, quantity.absolute or 0.0)
 
 
-def _word(quantity: Quantity, found: Interval, tolerance: float, spoiled: Mapping[str, str]) -> VerdictWord:
+def _word(
+    quantity: Quantity, found: Interval, tolerance: float, spoiled: Mapping[str, str], facts: Facts
+) -> VerdictWord:
     if "singular" in spoiled:
         return "singular"
-    if spoiled or found.flaw or found.levels < 3:
+    if spoiled or found.flaw or found.levels < 3 or _may_grow(quantity, found, facts):
         return "unproven"
     if found.half_width <= tolerance:
         return "sound"
     if tolerance <= 0.0 or found.behaviour == "constant" or _nothing_to_relate(quantity, found):
         return "unproven"
     return "refine"
+
+
+def _may_grow(quantity: Quantity, found: Interval, facts: Facts) -> bool:
+    """Return whether a stress of an unknown model moves so much that growth without limit is possible."""
+    if facts.corners is not None or quantity.kind not in STRESS_KINDS or found.growth == "excluded":
+        return False
+    return found.half_width > SETTLED * abs(found.value)
 
 
 def _nothing_to_relate(quantity: Quantity, found: Interval) -> bool:
@@ -129,15 +144,30 @@ def _reasons(
     if found.flaw:
         return [*reasons, f"No interval: {found.flaw}."]
     reasons += _about_order(found, quantity.formal_order, expected)
-    widths = ", ".join(f"{name} {width:.3g}" for name, width in found.widths.items())
     if found.behaviour == "constant":
         reasons.append("The last three levels give the same value, to round-off or to its printed digits.")
-    elif found.widths:
-        half = numbers.beside_limit(found.half_width, tolerance)
-        reasons.append(f"Half-width {half}, the widest of {widths}; {NO_COVERAGE}.")
+    elif found.coverage is not None:
+        reasons += _about_interval(found, tolerance, found.coverage)
     if found.levels == 2:
-        reasons.append("Two levels cannot show an order; a third one would.")
+        reasons.append("Two levels never prove a value: the interval is an orientation; add a third level.")
+    elif word == "unproven" and not spoiled and found.half_width > tolerance and found.growth != "excluded":
+        reasons.append(
+            "The levels do not tell slow convergence from growth without limit (a singular place): add a "
+            "finer level, or say whether a corner, a point force or a support's end is near."
+        )
     return reasons + _about_tolerance(quantity, found, tolerance, ahead, word)
+
+
+def _about_interval(found: Interval, tolerance: float, measured: Coverage) -> list[str]:
+    half = numbers.beside_limit(found.half_width, tolerance)
+    best, own = numbers.compact(found.limit, 6), numbers.compact(0.5 * (found.high - found.low), 2)
+    levels = f"{measured.levels} levels{' and more' if measured.levels == MOST_LEVELS else ''}"
+    share, low, high = (f"{100.0 * x:.1f} %" for x in (measured.share, measured.low, measured.high))
+    return [
+        f"Half-width {half} about the finest value; best estimate of the limit {best} ± {own}.",
+        f"Such intervals ({levels}, {measured.knowledge} known) held the limit of {share} ({low} to {high}) "
+        f"of {measured.cases} known ladders, each judged with its family of parts left out.",
+    ]
 
 
 def _about_order(found: Interval, formal: float | None, expected: float | None) -> list[str]:
@@ -145,11 +175,7 @@ def _about_order(found: Interval, formal: float | None, expected: float | None) 
         return []
     lines = [f"The last three levels show {found.behaviour}, observed order {found.order:.2f}."]
     if found.behaviour.endswith("divergence"):
-        fitted = found.estimates["least_squares"].order
-        return [
-            *lines,
-            f"All levels together converge with order {fitted:.2f}, so these changes are scatter.",
-        ]
+        return [f"{lines[0][:-1]}: all levels together carry the interval, these changes alone do not."]
     if expected is None or formal is None:
         return lines
     cause = (

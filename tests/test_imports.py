@@ -23,11 +23,11 @@ FOUNDATIONS = {
         "tomlfile",
         "bind",
     ),
-    *("ladder_spec", "quantity_tables", "columns", "sections", "memory"),
+    *("ladder_spec", "quantity_tables", "columns", "sections", "memory", "corner", "coverage"),
 }
 FLOORS = (
     FOUNDATIONS,
-    {"fem", "estimators", "intake"},
+    {"fem", "estimators", "intake", "histories"},
     {"corners"},
     {"models", "quantities", "checks"},
     {"measured", "cases"},
@@ -41,7 +41,7 @@ FLOORS = (
     {"__main__"},
 )
 # rooms whose files build on each other in one direction; in all others a member stands alone
-BUILT_UP = {"fem", "corners", "report", "calibration", "bench"}
+BUILT_UP = {"fem", "corners", "report", "calibration", "bench", "histories"}
 ONLY_IN = {
     "skfem": {"fem", "models", "quantities"},
     "matplotlib": {"report", "bench"},

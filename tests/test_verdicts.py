@@ -9,8 +9,9 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from convergence import numbers
+from convergence.corner import Corner
 from convergence.intervals import Interval, interval
-from convergence.results import Corner, Facts, Ladder, Level, Quantity, Verdict
+from convergence.results import Facts, Ladder, Level, Quantity, Verdict
 from convergence.verdicts import accepted, expected_order, verdict
 
 H = np.array([16.0, 8.0, 4.0, 2.0, 1.0])

@@ -2,7 +2,8 @@
 
 import numpy as np
 
-from convergence.results import Corner, Facts, Ladder
+from convergence.corner import Corner
+from convergence.results import Facts, Ladder
 
 NEAR = 2.0
 STRESS_KINDS = ("peak_stress", "point_stress", "unknown")

@@ -6,8 +6,9 @@ energy. The stress there is left to the checks of peaks. What is read at a dista
 """
 
 from convergence.checks._ladder import not_applicable
+from convergence.corner import Corner
 from convergence.fem.solution import Solution
-from convergence.results import Check, Corner, Facts, Kind, Ladder
+from convergence.results import Check, Facts, Kind, Ladder
 
 SPOILED = ("displacement", "rotation", "energy")
 

@@ -1,24 +1,29 @@
 """Whether a stress has a limit at all: growth over the ladder, and corners of the model.
 
 Two witnesses. The model: a corner whose exponent λ is below one (Williams 1952, J. Appl. Mech. 19:526) at
-the place of the value. The ladder: increments that do not shrink, as h^(λ−1) or log h makes them grow. Faster
-growth than λ = 0.2 is no singularity but a notch that the coarse levels did not resolve.
+the place of the value. The ladder, where the model is not known: error laws that grow outweigh those that
+fall, by odds that few values with a limit reach on the bank. Faster growth than λ = 0.2 is no singularity but
+a notch that the coarse levels did not resolve. The reason names what to report instead, with its interval,
+where the levels hold it.
 """
 
 import numpy as np
 
 from convergence.checks._corner import STRESS_KINDS, described, growing_corner
+from convergence.checks._growth import Growth, growth, growth_words
+from convergence.checks._instead import Instead, instead
 from convergence.checks._ladder import not_applicable
+from convergence.corner import Corner
 from convergence.corners.singular_corners import singular_corners
 from convergence.fem.mesh import Mesh
 from convergence.fem.recovery import cell_volumes, element_energy
 from convergence.fem.solid_mesh import edge_nodes
 from convergence.fem.solid_part import SolidPart
 from convergence.fem.solution import Solution
-from convergence.results import Check, Corner, Facts, Ladder
-from convergence.sequences import noise_floor, observed_order
+from convergence.results import Check, Facts, Ladder
 
-FASTEST, SLOWEST = -0.8, 0.05
+FASTEST, SLOWEST = -0.8, -0.15
+STATED = 2
 REMEDIES = {
     ("point", "force"): ", or spread the force over the area it acts on",
     ("point", "support"): ", or spread the support over the area it acts on",
@@ -63,51 +68,42 @@ def singular_peak(ladder: Ladder, facts: Facts) -> Check:
     return Check("singular_peak", False, finding, spoils, leads_to="singular")
 
 
-def growth_exponent(h: np.ndarray, f: np.ndarray) -> float:
-    """Return λ of f = B + A h^(λ−1) through the three finest levels; NaN where the values do not grow so."""
-    values = np.abs(f)
-    if len(f) < 3 or not np.all(np.isfinite(values[-3:])) or not values[-3] < values[-2] < values[-1]:
-        return float("nan")
-    if values[-1] - values[-2] <= noise_floor(f):
-        return float("nan")
-    order = observed_order(h, values)
-    return 1.0 + order if FASTEST <= order <= SLOWEST else float("nan")
-
-
 def _reason(ladder: Ladder, facts: Facts, name: str) -> str:
-    f = ladder.column(name)
-    exponent = growth_exponent(ladder.h, f)
-    before = growth_exponent(ladder.h[:-1], f[:-1])
     corner = growing_corner(ladder, facts, name)
     if corner is not None:
-        return _at_corner(corner, corner_exponent(ladder, corner.name))
-    if facts.corners is None and np.isfinite(exponent) and np.isfinite(before):
-        growth = "log h" if abs(exponent - 1.0) <= SLOWEST else f"h^({exponent:.2f}-1)"
-        return (
-            f"the value grows like {growth} over the levels and shows no limit; "
-            "report the stress at a stated distance, a mean or a resultant, or model the real radius"
-        )
+        found = growth(ladder.h, ladder.column(f"singular_peak.{corner.name}"))
+        return f"{_at_corner(corner, found)}; {_report(corner, instead(ladder, facts, name))}"
+    if facts.corners is None and name in facts.growing:
+        return _by_itself(*facts.growing[name])
     return ""
 
 
-def corner_exponent(ladder: Ladder, corner: str) -> float:
-    """Return λ from the stress intensity at a corner on the last two levels; NaN without them."""
-    intensity = ladder.column(f"singular_peak.{corner}")[-2:]
-    if len(intensity) < 2 or not np.all(intensity > 0.0):
-        return float("nan")
-    return float(1.0 + np.log(intensity[1] / intensity[0]) / np.log(ladder.h[-1] / ladder.h[-2]))
-
-
-def _at_corner(corner: Corner, exponent: float) -> str:
-    growth = f"h^(λ-1) without limit: theory λ = {corner.exponent:.3f}"
-    measured = f"the cells that touch it give {exponent:.3f}"
-    if corner.exponent <= 0.0:
-        growth = f"h^{corner.exponent - 1.0:.0f} without limit by theory"
-        measured = f"like h^{exponent - 1.0:.2f} in the cells that touch it"
-    if not np.isfinite(exponent):
-        measured = "the levels do not measure it"
+def _by_itself(low: float, high: float) -> str:
+    """Return why the values alone show no limit, by the range of their order; "" for an unresolved notch."""
+    if low + high < 2.0 * FASTEST:
+        return ""
+    pace = f"h^(λ-1), λ from {1.0 + low:.2f} to {1.0 + min(high, 0.0):.2f}"
+    pace += ", or log h" if high > SLOWEST else ""
     return (
-        f"the value sits on {described(corner)}; stress there grows like {growth}, {measured}; report the "
-        "stress at a stated distance, a mean over a line or a resultant"
-        f"{REMEDIES.get(corner.sides, ', or model the real radius')}"
+        f"the value grows like {pace}, over the levels and shows no limit; "
+        "report the stress at a stated distance, a mean or a resultant, or model the real radius"
     )
+
+
+def _at_corner(corner: Corner, found: Growth) -> str:
+    growing = f"h^(λ-1) without limit: theory λ = {corner.exponent:.3f}"
+    measured = growth_words(found, corner.exponent)
+    if corner.exponent <= 0.0:
+        growing = f"h^{corner.exponent - 1.0:.0f} without limit by theory"
+        if np.isfinite(found.exponent):
+            measured = f"like h^{found.exponent - 1.0:.2f} in the cells that touch it"
+    return f"the value sits on {described(corner)}; stress there grows like {growing}, {measured}"
+
+
+def _report(corner: Corner, others: tuple[Instead, ...]) -> str:
+    """Return what to report: numbers where there are some with an interval, the nearest place first."""
+    rest = f"a mean over a line or a resultant{REMEDIES.get(corner.sides, ', or model the real radius')}"
+    stated = [one for one in others if np.isfinite(one.half_width)]
+    if not stated:
+        return f"report the stress at a stated distance, {rest}"
+    return f"report instead: {'; '.join(one.words for one in stated[:STATED])}; or {rest}"

@@ -42,6 +42,7 @@ def show_cases(judged: JudgedCases) -> None:
     from rich.text import Text
 
     from convergence.envelope import worst_case
+    from convergence.report._trust import coverage_lines
     from convergence.report._words import next_step, overall_cases
     from convergence.report.terminal import CASE_COLUMNS, case_rows
 
@@ -61,7 +62,7 @@ def show_cases(judged: JudgedCases) -> None:
         verdict = cases[worst].verdicts[quantity.name]
         _show_reasons(screen, f"{quantity.name}, {worst}", verdict, next_step(verdict))
     screen.print(Text(overall_cases(cases)))
-    lines = [line for findings in cases.values() for line in _remarks(findings)]
+    lines = [line for one in cases.values() for line in [*coverage_lines(one), *_remarks(one)]]
     for line in dict.fromkeys(lines):
         screen.print(Text(line))
 
@@ -97,17 +98,19 @@ def show_table(findings: Findings, *, methods: bool = False) -> None:
     from rich.table import Table
     from rich.text import Text
 
+    from convergence.report._trust import coverage_lines
     from convergence.report.terminal import COLUMNS, summary_rows
 
     screen = _screen()
     table = Table(box=None, pad_edge=False, header_style="bold")
-    for name in ("quantity", "verdict", "value", "order / theory"):
+    for name in ("quantity", "verdict", "value", "best estimate", "order / theory"):
         table.add_column(name, overflow="fold")
     rows = [dict(zip(COLUMNS, row, strict=True)) for row in summary_rows(findings)]
     for row in rows:
         verdict = Text(row["verdict"], COLOURS.get(row["verdict"], ""))
         value = f"{row['value']} {row['unit']}".strip()
-        table.add_row(Text(row["quantity"]), verdict, Text(value), Text(row["order / theory"]))
+        cells = (value, row["best estimate"], row["order / theory"])
+        table.add_row(Text(row["quantity"]), verdict, *(Text(cell) for cell in cells))
     screen.print(Text(findings.title, "bold"))
     screen.print(table)
     for row in rows:
@@ -116,7 +119,7 @@ def show_table(findings: Findings, *, methods: bool = False) -> None:
     if methods:
         for row in rows:
             _show_methods(screen, findings, row["quantity"])
-    for line in _remarks(findings):
+    for line in [*coverage_lines(findings), *_remarks(findings)]:
         screen.print(Text(line))
 
 
@@ -131,7 +134,8 @@ def _show_methods(screen: "Console", findings: Findings, name: str) -> None:
     if not found:
         screen.print(Text(f"\n{name}: no method has an answer"))
         return
-    screen.print(Text(f"\n{name}: each method, half-width about the finest value"))
+    what = "published methods for comparison, half-width about the finest value"
+    screen.print(Text(f"\n{name}: {what}"))
     table = Table(box=None, pad_edge=False)
     for column in METHOD_COLUMNS:
         table.add_column(column, overflow="fold")

@@ -3,7 +3,7 @@
 from collections import Counter
 from collections.abc import Iterable
 
-from convergence.results import Corner
+from convergence.corner import Corner
 
 Kind = tuple[tuple[str, str], int]
 

@@ -11,6 +11,7 @@ from collections.abc import Iterator
 
 import numpy as np
 
+from convergence.corner import Corner
 from convergence.corners.chains import chained, edge_name
 from convergence.corners.fans import Fan, Sides
 from convergence.corners.forced_points import forced_points
@@ -18,7 +19,6 @@ from convergence.corners.sides import Conditions, conditions
 from convergence.corners.sites import Site, sites
 from convergence.fem.problem import Problem
 from convergence.fem.rod_part import RodPart
-from convergence.results import Corner
 
 REGULAR = 0.999
 GROWTH = 1.1

@@ -8,13 +8,14 @@ from typing import Annotated, Any, Literal
 
 import numpy as np
 
+from convergence.corner import Corner
 from convergence.dimensions import Length, PartPoint, PointName
 from convergence.fem.location import locate
 from convergence.fem.problem import AnyPart
 from convergence.fem.solution import Solution
 from convergence.fem.stress import displacement_at
 from convergence.quantities._place import axis_of, place_of
-from convergence.results import Corner, Kind
+from convergence.results import Kind
 
 KIND: Kind = "displacement"
 

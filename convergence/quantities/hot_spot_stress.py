@@ -11,6 +11,7 @@ from typing import Annotated, Any, Literal
 
 import numpy as np
 
+from convergence.corner import Corner
 from convergence.dimensions import Direction, PartPoint, PointName, PositiveLength, Stress
 from convergence.errors import require
 from convergence.fem.problem import AnyPart
@@ -25,7 +26,7 @@ from convergence.quantities._place import (
     tensor,
     unit,
 )
-from convergence.results import Corner, Kind
+from convergence.results import Kind
 
 KIND: Kind = "point_stress"
 

@@ -10,6 +10,7 @@ from typing import Annotated, Any
 
 import numpy as np
 
+from convergence.corner import Corner
 from convergence.dimensions import (
     STRESS,
     BoundaryName,
@@ -27,7 +28,7 @@ from convergence.fem.solution import Solution
 from convergence.fem.stress import Component, cell_node_stress
 from convergence.fem.stress import component as component_of
 from convergence.quantities._place import Recovery, place_of, stress_order
-from convergence.results import Corner, Kind
+from convergence.results import Kind
 
 KIND: Kind = "peak_stress"
 

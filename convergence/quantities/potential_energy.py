@@ -7,10 +7,11 @@ smooth solution, 2 min(p, λ) with a corner of exponent λ (Szabó & Babuška 19
 from collections.abc import Mapping
 from typing import Any
 
+from convergence.corner import Corner
 from convergence.dimensions import Energy
 from convergence.fem.problem import AnyPart
 from convergence.fem.solution import Solution
-from convergence.results import Corner, Kind
+from convergence.results import Kind
 
 KIND: Kind = "energy"
 

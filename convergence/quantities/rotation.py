@@ -10,6 +10,7 @@ from typing import Annotated, Any, Literal
 
 import numpy as np
 
+from convergence.corner import Corner
 from convergence.dimensions import BoundaryName, Degrees, PartPoint, PointName
 from convergence.errors import require
 from convergence.fem.facets import facet_bases
@@ -20,7 +21,7 @@ from convergence.fem.problem import AnyPart
 from convergence.fem.solution import Solution
 from convergence.fem.stress import gradient_at
 from convergence.quantities._place import place_of
-from convergence.results import Corner, Kind
+from convergence.results import Kind
 
 KIND: Kind = "rotation"
 

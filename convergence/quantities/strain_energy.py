@@ -7,11 +7,12 @@ region p + 1, as the weight breaks off at its edges.
 from collections.abc import Mapping
 from typing import Annotated, Any
 
+from convergence.corner import Corner
 from convergence.dimensions import Energy, RegionName
 from convergence.fem.problem import AnyPart
 from convergence.fem.recovery import element_energy
 from convergence.fem.solution import Solution
-from convergence.results import Corner, Kind
+from convergence.results import Kind
 
 KIND: Kind = "energy"
 

@@ -8,13 +8,14 @@ only p on the boundary of triangle meshes and between the vertices of quadratic 
 from collections.abc import Mapping
 from typing import Annotated, Any
 
+from convergence.corner import Corner
 from convergence.dimensions import STRESS, Located, PartPoint, PointName
 from convergence.fem.problem import AnyPart
 from convergence.fem.solution import Solution
 from convergence.fem.stress import Component
 from convergence.fem.stress import component as component_of
 from convergence.quantities._place import Recovery, place_of, point_stress, stress_order
-from convergence.results import Corner, Kind
+from convergence.results import Kind
 
 KIND: Kind = "point_stress"
 

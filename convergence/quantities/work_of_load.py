@@ -9,11 +9,12 @@ from collections.abc import Mapping
 from dataclasses import replace
 from typing import Annotated, Any
 
+from convergence.corner import Corner
 from convergence.dimensions import BoundaryName, Energy
 from convergence.fem.load_vector import load_vector
 from convergence.fem.problem import AnyPart
 from convergence.fem.solution import Solution
-from convergence.results import Corner, Kind
+from convergence.results import Kind
 
 KIND: Kind = "energy"
 

@@ -66,12 +66,11 @@ def value_ticks(axes: "Axes", low: float, high: float) -> None:
     _fix(axes, "y", ticks, [numbers.at_step(tick, step) for tick in ticks])
 
 
-def log_ticks(axes: "Axes", low: float, high: float, percent: bool = False) -> None:
-    """Make y logarithmic from low to high (> 0) with ticks that are readable over any span."""
+def log_ticks(axes: "Axes", low: float, high: float, percent: bool = False, which: str = "y") -> None:
+    """Make y (or x) logarithmic from low to high (> 0) with ticks that are readable over any span."""
     from matplotlib.ticker import MaxNLocator
 
-    axes.set_yscale("log")
-    axes.set_ylim(low, high)
+    axes.set(**{f"{which}scale": "log", f"{which}lim": (low, high)})
     decades = math.log10(high / low)
     if decades < 0.7:
         ticks = [float(t) for t in MaxNLocator(6).tick_values(low, high)]
@@ -82,7 +81,7 @@ def log_ticks(axes: "Axes", low: float, high: float, percent: bool = False) -> N
         ticks = [step * 10.0**power for power in powers if power % every == 0 for step in steps]
     ticks = [tick for tick in ticks if low <= tick <= high]
     labels = [f"{numbers.compact(100 * t, 3)} %" if percent else numbers.compact(t, 3) for t in ticks]
-    _fix(axes, "y", ticks, labels)
+    _fix(axes, which, ticks, labels)
 
 
 def bracket(unit: str) -> str:

@@ -8,10 +8,11 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from convergence.corner import Corner
 from convergence.fields import Fields
 from convergence.report import _plane, _scene
 from convergence.report._axes import middle
-from convergence.results import Corner, Findings
+from convergence.results import Findings
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes

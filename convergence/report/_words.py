@@ -5,9 +5,8 @@ from collections.abc import Mapping
 
 from convergence import numbers
 from convergence.envelope import SEVERITY, Envelope, worst_first
+from convergence.report import _trust
 from convergence.results import Findings, Ladder, Quantity, Verdict
-
-NOT_CALIBRATED = "its coverage has not been calibrated"
 
 
 def anchor(findings: Findings, quantity: Quantity) -> str:
@@ -54,7 +53,7 @@ def interval_text(verdict: Verdict) -> str:
     """Return "low to high", rounded outward, or "none"."""
     if verdict.word == "singular" or math.isnan(verdict.low) or math.isnan(verdict.high):
         return numbers.NONE
-    low, high = numbers.outward(verdict.low, verdict.high, verdict.value, verdict.uncertainty)
+    low, high = numbers.outward(verdict.low, verdict.high, verdict.limit, _trust.half_width(verdict))
     return f"{low} to {high}"
 
 
@@ -114,18 +113,28 @@ def statement(findings: Findings, quantity: Quantity, length: str) -> str:
             f"{start} has no limit: {value} on the finest mesh is set by the mesh and not by the part."
             " It is singular and must not be quoted."
         )
-    reach = interval_text(verdict)
-    if verdict.word == "unproven" or reach == numbers.NONE:
+    reach, coverage = _expected(quantity, verdict), _trust.coverage_text(verdict)
+    if reach and verdict.coverage is not None and verdict.coverage.levels == 2:
+        said = f"{start} is {value} on the finest mesh, but two levels never prove anything"
+        return f"{said}. For orientation only, the interval is {reach}. {_end(verdict, length)} {coverage}"
+    if verdict.word == "unproven" or not reach:
         why = verdict.reasons[0].rstrip(".") if verdict.reasons else "No reason was recorded"
         lacking = f"but the evidence does not suffice. {why}"
         return f"{start} is {value} on the finest mesh, {lacking}. {_end(verdict, length)}"
     shown, accepted = precision_text(quantity, verdict)
-    where = (
-        f"is {value}; the answer of this model without discretization error is expected within"
-        f" {with_unit(reach, quantity.unit)}"
-    )
+    where = f"is {value}; the answer of this model without discretization error is expected within {reach}"
     side = "inside" if verdict.word == "sound" else "wider than"
-    return f"{start} {where}, {shown}, which is {side} the tolerance of {accepted}. {_end(verdict, length)}"
+    width = f"The finest value is uncertain by {shown}, {side} the tolerance of {accepted}"
+    said = f"{start} {where}. {width}. {_end(verdict, length)}"
+    return f"{said} {coverage}".rstrip()
+
+
+def _expected(quantity: Quantity, verdict: Verdict) -> str:
+    """Return the interval with the best estimate in it, "" where there is none."""
+    reach, best = interval_text(verdict), _trust.best_text(verdict)
+    if reach == numbers.NONE:
+        return ""
+    return f"{with_unit(reach, quantity.unit)}, best estimate {with_unit(best, quantity.unit)}"
 
 
 def _end(verdict: Verdict, length: str) -> str:

@@ -7,17 +7,19 @@ from pathlib import Path
 
 from convergence.dimensions import Units
 from convergence.fields import Fields
+from convergence.histories.table import outcomes, table
 from convergence.report import _scene, html, records, sections_fields
 from convergence.report._picture import Picture
 from convergence.report.figures_error import error_map, norm_figure
-from convergence.report.figures_growth import growth_figure
+from convergence.report.figures_growth import field_figure, growth_figure
 from convergence.report.figures_mesh import mesh_figure
 from convergence.report.figures_order import error_figure
+from convergence.report.figures_standing import standing_figure
 from convergence.report.figures_stress import stress_figure
 from convergence.report.figures_value import value_figure
 from convergence.report.sections_checks import checks_section
 from convergence.report.sections_closing import caution_section, trace_section
-from convergence.report.sections_method import made_section
+from convergence.report.sections_method import found_section
 from convergence.report.sections_quantity import quantities_section
 from convergence.report.sections_statement import statement_section
 from convergence.results import Findings, Quantity
@@ -53,7 +55,7 @@ def write_report(
         ("quantities", "Quantities", quantities_section(findings, by_quantity, findings.ladder.h_unit)),
         ("checks", "Checks", checks_section(findings)),
         *field_parts,
-        ("interval", "Interval", made_section(findings)),
+        ("interval", "Interval", found_section(findings, table())),
         ("caution", "Caution", caution_section()),
         ("trace", "Traceability", trace_section(facts, study_text)),
     ]
@@ -93,11 +95,15 @@ def _quantity_pictures(findings: Findings, length: str) -> dict[str, list[Pictur
 def _pictures(findings: Findings, quantity: Quantity, stem: str, length: str) -> list[Picture]:
     ladder, verdict = findings.ladder, findings.verdicts[quantity.name]
     if verdict.word == "singular":
-        drawn = [growth_figure(f"{stem}-growth", quantity, ladder, length, _exponent(findings, quantity))]
+        drawn = [
+            growth_figure(f"{stem}-growth", quantity, ladder, length, _exponent(findings, quantity)),
+            field_figure(f"{stem}-field", quantity, ladder, findings.facts),
+        ]
     else:
         drawn = [
             value_figure(f"{stem}-value", quantity, verdict, ladder, length),
             error_figure(f"{stem}-order", quantity, verdict, ladder, length),
+            standing_figure(f"{stem}-standing", quantity, verdict, ladder, outcomes()),
         ]
     return [picture for picture in drawn if picture is not None]
 

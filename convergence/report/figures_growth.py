@@ -1,13 +1,15 @@
-"""Growth of a singular quantity: no limit is drawn, because there is none."""
+"""Growth of a singular quantity, with no limit because there is none, and the field beside its corner."""
 
 from typing import TYPE_CHECKING
 
 import numpy as np
 
 from convergence import numbers
+from convergence.checks._field import Field, blamed, field_of
+from convergence.fem.stress import component
 from convergence.report._axes import bracket, cell_size_axis, log_ticks, middle
-from convergence.report._picture import GREEN, INK, RED, Picture, draw
-from convergence.results import Ladder, Quantity
+from convergence.report._picture import BLUE, GREEN, GREY, INK, RED, Picture, draw
+from convergence.results import Facts, Ladder, Quantity
 
 if TYPE_CHECKING:
     from matplotlib.figure import Figure
@@ -57,3 +59,51 @@ def _powers(h: np.ndarray, size: np.ndarray, exponent: float | None) -> dict[str
     if exponent is not None:
         powers["corner theory"] = exponent - 1.0
     return powers
+
+
+def field_figure(stem: str, quantity: Quantity, ladder: Ladder, facts: Facts) -> Picture | None:
+    """Return the figure of the von Mises stress over the distance from the corner, a line a level.
+
+    None where no corner is to blame, or the levels did not record its field.
+    """
+    corner = blamed(ladder, facts, quantity.name)
+    field = field_of(ladder, corner) if corner is not None and ladder.levels else None
+    if corner is None or field is None or not len(field.distances):
+        return None
+    r, stress = field.distances, component(field.stress, "von_mises")
+    length = ladder.h_unit
+
+    def paint(figure: "Figure") -> None:
+        axes = figure.add_subplot()
+        axes.set_xscale("log")
+        axes.set_xlim(r[-1] / 1.2, r[0] * 1.2)
+        axes.set_xticks(r, [numbers.compact(distance, 3) for distance in r])
+        axes.minorticks_off()
+        for level in range(stress.shape[1] - 1):
+            label = "coarser levels" if level == 0 else None
+            axes.plot(
+                r, stress[:, level], "-", color=GREY, alpha=0.3 + 0.5 * level / stress.shape[1], label=label
+            )
+        axes.plot(r, stress[:, -1], "o-", color=INK, label="finest level")
+        if field.clean:
+            slope = stress[field.clean - 1, -1] * (r / r[field.clean - 1]) ** (corner.exponent - 1.0)
+            axes.plot(r, slope, "--", color=GREEN, label=f"corner theory: r^({corner.exponent - 1.0:.3f})")
+        axes.axvspan(r[-1] / 1.2, _border(field), color=RED, alpha=0.12, label="polluted", linewidth=0)
+        log_ticks(axes, float(stress[stress > 0].min()) / 1.15, float(stress.max()) * 1.25)
+        axes.set_xlabel(f"distance from {middle(corner.name)}{bracket(length)}")
+        axes.set_ylabel(f"von Mises stress{bracket(quantity.unit)}")
+        axes.set_title("Levels agree outside the polluted core", color=BLUE, loc="left")
+        figure.legend(loc="outside lower center", ncols=2)
+
+    words = field.pollution(length)
+    caption = f"Stress on a ray from the corner into the body, both axes logarithmic: {words}."
+    return draw(stem, (5.2, 4.1), f"Stress over the distance from {corner.name}; {words}", caption, paint)
+
+
+def _border(field: Field) -> float:
+    """Return the distance where the polluted core ends: between the last clean place and the next."""
+    if not field.clean:
+        return float(field.distances[0] * 1.2)
+    return float(
+        field.distances[field.clean - 1] / (1.2 if field.clean == len(field.distances) else 2.0**0.5)
+    )

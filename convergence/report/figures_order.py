@@ -5,12 +5,14 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from convergence import numbers
 from convergence.report._axes import bracket, cell_size_axis, log_ticks
-from convergence.report._picture import GREY, INK, Picture, draw
+from convergence.report._picture import BLUE, GREY, INK, Picture, draw
 from convergence.report._slopes import slope_words, slopes
 from convergence.results import Ladder, Quantity, Verdict
 
 if TYPE_CHECKING:
+    from matplotlib.axes import Axes
     from matplotlib.figure import Figure
 
 
@@ -27,12 +29,13 @@ def error_figure(
     drawn = np.isfinite(errors) & (errors > 0)
     if verdict.behaviour == "constant" or not drawn.any():
         return None
-    what = "difference from the limit" if limited else "change from the level before"
+    what = "difference from the best estimate" if limited else "change from the level before"
 
     def paint(figure: "Figure") -> None:
         axes = figure.add_subplot()
         cell_size_axis(axes, ladder, length)
         h, error = ladder.h[drawn], errors[drawn]
+        _believed(axes, h[-1], error[-1], verdict)
         slopes(axes, h[-1], error[-1], _orders(verdict))
         axes.plot(h, error, "o", color=INK, label="levels", zorder=4)
         low, high = float(error.min()) / 2.5, float(error.max()) * 1.8
@@ -45,9 +48,21 @@ def error_figure(
 
     caption = f"Size of the {what}, both axes logarithmic: a constant order is a straight line."
     if limited:
-        caption += " The limit is extrapolated from the same levels and is no independent witness."
+        caption += " The best estimate is made from the same levels and is no independent witness."
     alt = f"{what} of {quantity.name} against the cell size; {slope_words(_orders(verdict))}"
     return draw(stem, (5.2, 4.1), alt, caption, paint)
+
+
+def _believed(axes: "Axes", h: float, error: float, verdict: Verdict) -> None:
+    """Shade the orders that 95 % of the belief lie between, through the finest level."""
+    if not (math.isfinite(verdict.limit) and verdict.order_high > 0.0):
+        return
+    low, high = sorted(axes.get_xlim())
+    steps = np.log(np.geomspace(low, high, 50) / h)
+    lower, upper = (max(order, 0.0) for order in (verdict.order_low, verdict.order_high))
+    flat, steep = error * np.exp(lower * steps), error * np.exp(upper * steps)
+    label = f"believed: {numbers.order(verdict.order_low)} to {numbers.order(verdict.order_high)}"
+    axes.fill_between(h * np.exp(steps), flat, steep, color=BLUE, alpha=0.16, linewidth=0, label=label)
 
 
 def _orders(verdict: Verdict) -> dict[str, float]:

@@ -7,12 +7,13 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from convergence import numbers
+from convergence.corner import Corner
 from convergence.fields import Fields
 from convergence.report import _plane, _scene
 from convergence.report._axes import bracket
 from convergence.report._marks import Deformed, Peak, hatch, mark, peaks, top
 from convergence.report._picture import Picture, draw
-from convergence.results import Corner, Findings
+from convergence.results import Findings
 
 if TYPE_CHECKING:
     from matplotlib.figure import Figure

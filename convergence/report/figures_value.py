@@ -1,4 +1,4 @@
-"""A quantity against the cell size: levels, fitted curve, limit, interval and tolerance."""
+"""A quantity against the cell size: levels, curve, best estimate of the limit, interval and tolerance."""
 
 import math
 from typing import TYPE_CHECKING
@@ -14,6 +14,8 @@ if TYPE_CHECKING:
     from matplotlib.axes import Axes
     from matplotlib.figure import Figure
 
+SMALL = 0.25  # intervals below this share of the picture are drawn enlarged beside it
+
 
 def value_figure(
     stem: str, quantity: Quantity, verdict: Verdict, ladder: Ladder, length: str
@@ -24,12 +26,18 @@ def value_figure(
     if not known.any():
         return None
     low, high, cut = _view(values[known], verdict)
+    order = _order(verdict, ladder.h[known], values[known])
+    enlarged = verdict.high - verdict.low < SMALL * (high - low)
 
     def paint(figure: "Figure") -> None:
         axes = figure.add_subplot()
+        if enlarged:
+            axes, beside = _two(figure)
+            _enlarge(beside, verdict)
         cell_size_axis(axes, ladder, length)
         _interval(axes, verdict)
-        _curve(axes, verdict, ladder.h[known], values[known])
+        if not math.isnan(order):
+            _curve(axes, verdict.limit, ladder.h[known][-1], values[known][-1], order)
         axes.plot(ladder.h[known], values[known], "o", color=INK, label="levels", zorder=4)
         value_ticks(axes, low, high)
         axes.set_ylabel(f"{middle(quantity.name)}{bracket(quantity.unit)}")
@@ -40,9 +48,11 @@ def value_figure(
     if missing:
         caption = f"Value; {numbers.several(missing, 'level')} without one."
     if not math.isnan(verdict.low):
-        caption += " Shaded: the stated interval."
-    if not math.isnan(verdict.limit) and verdict.observed_order > 0:
-        caption += " Curve: the stated limit approached with the observed order from the finest level."
+        caption += " Shaded: the interval, centred on the best estimate of the limit (diamond)."
+    if enlarged:
+        caption += " Right: enlarged, the dot is the finest value."
+    if not math.isnan(order):
+        caption += f" Curve: best estimate plus a power of the cell size, {numbers.order(order)} fits best."
     caption += "".join(f" The {part} lies partly outside the picture." for part in cut)
     levels = numbers.several(int(known.sum()), "level")
     alt = f"{quantity.name} against the cell size on {levels}; verdict {verdict.word}"
@@ -71,23 +81,62 @@ def _view(values: np.ndarray, verdict: Verdict) -> tuple[float, float, list[str]
 
 
 def _interval(axes: "Axes", verdict: Verdict) -> None:
-    """Shade the interval, rule the tolerance about the finest value and the limit."""
+    """Shade the interval, rule the tolerance about the finest value, and mark the best estimate."""
     if math.isfinite(verdict.low) and math.isfinite(verdict.high):
         axes.axhspan(verdict.low, verdict.high, color=BLUE, alpha=0.18, linewidth=1.2, label="interval")
     if math.isfinite(verdict.tolerance) and math.isfinite(verdict.value):
         for sign, label in ((-1, "tolerance"), (1, "")):
-            edge = verdict.value + sign * verdict.tolerance
-            axes.axhline(edge, color=GREY, linestyle=(0, (1, 2)), label=label or None)
+            at = verdict.value + sign * verdict.tolerance
+            axes.axhline(at, color=GREY, linestyle=(0, (1, 2)), label=label or None)
     if math.isfinite(verdict.limit):
-        axes.axhline(verdict.limit, color=GREEN, linestyle=(0, (7, 2)), label="limit")
+        axes.axhline(verdict.limit, color=GREEN, linestyle=(0, (7, 2)), label="best estimate")
+        _best(axes, verdict, 0.975)
 
 
-def _curve(axes: "Axes", verdict: Verdict, h: np.ndarray, values: np.ndarray) -> None:
-    """Draw limit + (finest - limit) (h / finest h)^order."""
-    if not (math.isfinite(verdict.limit) and verdict.observed_order > 0):
-        return
+def _best(axes: "Axes", verdict: Verdict, x: float) -> None:
+    """Draw the best estimate with its interval at x, a share of the width."""
+    across, ends = axes.get_yaxis_transform(), [verdict.low, verdict.high]
+    axes.plot([x, x], ends, "_-", color=GREEN, lw=1.2, ms=9.0, zorder=5, transform=across)
+    axes.plot([x], [verdict.limit], "D", color=GREEN, ms=5.0, zorder=5, transform=across)
+
+
+def _two(figure: "Figure") -> tuple["Axes", "Axes"]:
+    """Return the axes of the ladder and narrow ones beside them."""
+    figure.clear()
+    axes, beside = figure.subplots(1, 2, width_ratios=(5, 1))
+    return axes, beside
+
+
+def _enlarge(axes: "Axes", verdict: Verdict) -> None:
+    """Draw interval, best estimate and finest value; the tolerance where it is not far away."""
+    ends = [verdict.low, verdict.high, verdict.value]
+    if verdict.tolerance <= 3.0 * verdict.uncertainty:
+        ends += [verdict.value - verdict.tolerance, verdict.value + verdict.tolerance]
+    room = 0.15 * (max(ends) - min(ends))
+    axes.axhspan(verdict.low, verdict.high, color=BLUE, alpha=0.18, linewidth=1.2)
+    for sign in (-1, 1):
+        axes.axhline(verdict.value + sign * verdict.tolerance, color=GREY, linestyle=(0, (1, 2)))
+    _best(axes, verdict, 0.7)
+    axes.plot([0.3], [verdict.value], "o", color=INK, zorder=4, transform=axes.get_yaxis_transform())
+    value_ticks(axes, min(ends) - room, max(ends) + room)
+    axes.set_xticks([])
+    axes.set_xlabel("enlarged")
+
+
+def _order(verdict: Verdict, h: np.ndarray, values: np.ndarray) -> float:
+    """Return the power of h that fits the levels on the finest one's side of the best estimate, else NaN."""
+    away = (values - verdict.limit) / (values[-1] - verdict.limit or math.nan)
+    used = (away > 0.0) & (h > h[-1])
+    if not used.any():
+        return math.nan
+    steps = np.log(h[used] / h[-1])
+    order = float(steps @ np.log(away[used]) / (steps @ steps))
+    return order if order > 0.0 else math.nan
+
+
+def _curve(axes: "Axes", limit: float, h: float, value: float, order: float) -> None:
+    """Draw limit + (value - limit) (size / h)^order, through the finest level."""
     low, high = sorted(axes.get_xlim())
     fine = np.geomspace(low, high, 200)
-    factor = np.exp(np.minimum(verdict.observed_order * np.log(fine / h[-1]), 50.0))
-    curve = verdict.limit + (values[-1] - verdict.limit) * factor
+    curve = limit + (value - limit) * np.exp(np.minimum(order * np.log(fine / h), 50.0))
     axes.plot(fine, curve, "-", color=RED, label="fitted curve", zorder=3)

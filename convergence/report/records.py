@@ -8,7 +8,10 @@ from importlib import metadata
 from typing import Any
 
 from convergence import __version__
+from convergence.coverage import Coverage
 from convergence.envelope import envelope
+from convergence.report._trust import half_width
+from convergence.report.sections_instead import instead_objects
 from convergence.results import Check, Estimate, Findings, Level, Quantity, Verdict
 
 PACKAGES = ("numpy", "scipy", "scikit-fem")
@@ -36,7 +39,7 @@ def _statement(findings: Findings, name: str) -> dict[str, Any]:
         "limit": _number(verdict.limit),
         "low": _number(verdict.low),
         "high": _number(verdict.high),
-        "coverage": _number(verdict.coverage),
+        "coverage": None if verdict.coverage is None else verdict.coverage.share,
         "observed_order": _number(verdict.observed_order),
         "formal_order": _number(verdict.formal_order),
         "behaviour": verdict.behaviour,
@@ -82,6 +85,10 @@ def _more(quantity: Quantity, verdict: Verdict) -> dict[str, Any]:
         "unit": quantity.unit,
         "description": quantity.description,
         "uncertainty": _number(verdict.uncertainty),
+        "best_estimate": {"value": _number(verdict.limit), "half_width": _number(half_width(verdict))},
+        "order_low": _number(verdict.order_low),
+        "order_high": _number(verdict.order_high),
+        "measured_coverage": _coverage(verdict.coverage),
         "tolerance": _number(verdict.tolerance),
         "relative_tolerance": _number(quantity.relative),
         "absolute_tolerance": _number(quantity.absolute),
@@ -92,6 +99,19 @@ def _more(quantity: Quantity, verdict: Verdict) -> dict[str, Any]:
         "next_seconds": _number(verdict.next_seconds),
         "next_memory": _number(verdict.next_memory),
     }
+
+
+def _coverage(coverage: Coverage | None) -> dict[str, Any] | None:
+    """Return what was measured with its share; `low` and `high` are its binomial interval."""
+    if coverage is None:
+        return None
+    return asdict(coverage) | {"share": coverage.share, "ratio": _number(coverage.ratio)}
+
+
+def _instead(findings: Findings, quantity: Quantity) -> list[dict[str, Any]]:
+    numbers = ("value", "low", "high")
+    rows = instead_objects(findings, quantity)
+    return [row | {name: _number(row[name]) for name in numbers} for row in rows]
 
 
 def _level(level: Level) -> dict[str, Any]:
@@ -140,7 +160,8 @@ def findings_object(findings: Findings) -> dict[str, Any]:
     """Return everything that is known about one ladder, for findings.json."""
     record = judge_object(findings)
     for quantity in findings.quantities:
-        record["quantities"][quantity.name].update(_more(quantity, findings.verdicts[quantity.name]))
+        more = _more(quantity, findings.verdicts[quantity.name])
+        record["quantities"][quantity.name].update(more | {"instead": _instead(findings, quantity)})
     return {
         "title": findings.title,
         **record,

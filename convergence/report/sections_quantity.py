@@ -6,9 +6,10 @@ from collections.abc import Mapping
 import numpy as np
 
 from convergence import numbers
-from convergence.report import _words, html
+from convergence.report import _trust, _words, html
 from convergence.report._picture import Picture
 from convergence.report.html import Html, text
+from convergence.report.sections_instead import instead_part
 from convergence.results import Estimate, Findings, Ladder, Quantity, Verdict
 
 
@@ -30,11 +31,30 @@ def _part(findings: Findings, quantity: Quantity, pictures: list[Picture], lengt
     return html.join(
         title,
         html.paragraph(quantity.description, "tiny") if quantity.description else Html(""),
+        _interval(verdict, quantity),
         html.bullets([_words.sentence(reason) for reason in verdict.reasons]),
+        instead_part(findings, quantity),
         shown if pictures else html.paragraph("No level has a value: there is nothing to draw."),
         _levels(findings.ladder, quantity, verdict, length),
         _estimates(findings.estimates.get(quantity.name, {}), quantity),
     )
+
+
+def _interval(verdict: Verdict, quantity: Quantity) -> Html:
+    """Return value, interval, best estimate, order and coverage in words, nothing without an interval."""
+    reach = _words.interval_text(verdict)
+    if reach == numbers.NONE:
+        return Html("")
+    value, best, low_high = (
+        _words.with_unit(number, quantity.unit)
+        for number in (_words.value_text(verdict), _trust.best_text(verdict), reach)
+    )
+    said = f"{value} on the finest mesh; interval {low_high}, best estimate {best}."
+    if math.isfinite(verdict.order_low) and math.isfinite(verdict.order_high):
+        low, high = numbers.order(verdict.order_low), numbers.order(verdict.order_high)
+        below = "; below zero it would grow without limit" if verdict.order_low < 0 else ""
+        said += f" The error falls with an order between {low} and {high} (95 % of the belief{below})."
+    return html.paragraph(f"{said} {_trust.coverage_text(verdict)}".rstrip())
 
 
 def _levels(ladder: Ladder, quantity: Quantity, verdict: Verdict, length: str) -> Html:
@@ -77,5 +97,8 @@ def _estimates(estimates: Mapping[str, Estimate], quantity: Quantity) -> Html:
         for name, estimate in estimates.items()
     ]
     head = ("method", f"limit{unit}", f"uncertainty{unit}", "order", "remark")
-    caption = "What each method says (uncertainty: half-width about the finest value)"
+    caption = (
+        "Published methods, for comparison: the interval is not made from them"
+        " (uncertainty: half-width about the finest value)"
+    )
     return html.table(caption, head, rows, "methods")

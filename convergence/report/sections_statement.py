@@ -1,10 +1,16 @@
 """The first page: what holds, for which quantity, on what conditions, and what is not covered."""
 
-from convergence.report import _words, html
+import math
+
+from convergence.report import _trust, _words, html
 from convergence.report.html import Html, text
 from convergence.results import Findings, Quantity
 
-HEAD = ("quantity", "value", "unit", "interval", "half-width", "tolerance", "verdict")
+HEAD = ("quantity", "value", "interval, best estimate", "unit", "uncertainty", "tolerance", "verdict")
+HALVES = (
+    "± beside a value: its uncertainty, the distance from the finest value to the far end of the interval,"
+    " which is compared with the tolerance. ± beside a best estimate: half the interval."
+)
 
 
 def statement_section(findings: Findings, length: str) -> Html:
@@ -21,7 +27,8 @@ def statement_section(findings: Findings, length: str) -> Html:
         html.element("h3", {}, text("Not covered")),
         html.bullets(_not_covered(findings)),
         html.element("h3", {}, text("Each quantity")),
-        html.table("Values on the finest mesh", HEAD, rows, "statement"),
+        html.table("Values on the finest mesh and best estimates of their limits", HEAD, rows, "statement"),
+        html.paragraph(HALVES, "tiny"),
         *sentences,
     )
 
@@ -31,9 +38,12 @@ def _row(findings: Findings, quantity: Quantity) -> list[Html]:
     width, accepted = _words.precision_text(quantity, verdict)
     if verdict.word == "singular":
         width = "none"
-    cells = (quantity.name, _words.value_text(verdict), quantity.unit, _words.interval_text(verdict))
     link = html.element("a", {"href": f"#{_words.anchor(findings, quantity)}"}, text(quantity.name))
-    return [link, *(text(cell) for cell in cells[1:]), text(width), text(accepted), html.badge(verdict.word)]
+    both = (_words.interval_text(verdict), _trust.best_text(verdict))
+    lines = (html.element("div", {}, text(one)) for one in dict.fromkeys(both))
+    cells = (text(cell) for cell in (quantity.unit, width, accepted))
+    value = text(_words.value_text(verdict))
+    return [link, value, html.join(*lines), *cells, html.badge(verdict.word)]
 
 
 def _not_covered(findings: Findings) -> list[str]:
@@ -58,6 +68,11 @@ def never_covered(findings: Findings) -> list[str]:
     assumed = [quantity.name for quantity in findings.quantities if quantity.assumed_tolerance]
     if assumed:
         items.append(f"No tolerance was given for {', '.join(assumed)}: a common one was assumed.")
-    if any(verdict.coverage is None for verdict in findings.verdicts.values()):
-        items.append("How often such an interval holds the answer: its coverage has not been calibrated.")
+    bare = [
+        name
+        for name, verdict in findings.verdicts.items()
+        if verdict.coverage is None and math.isfinite(verdict.low)
+    ]
+    if bare:
+        items.append(f"No coverage was measured for intervals such as that of {', '.join(bare)}.")
     return items

@@ -5,12 +5,12 @@ from collections.abc import Mapping
 
 from convergence.envelope import envelope, worst_first
 from convergence.numbers import order, percent, significant
-from convergence.report import _words
+from convergence.report import _trust, _words
 from convergence.results import Findings
 
 CASE_COLUMNS = ("case", "verdict", "value")
 METHOD_COLUMNS = ("method", "order", "limit", "half-width", "of the value")
-COLUMNS = ("quantity", "value", "unit", "interval", "verdict", "order / theory", "next step")
+COLUMNS = ("quantity", "value", "unit", "best estimate", "interval", "verdict", "order / theory", "next step")
 
 
 def summary_rows(findings: Findings) -> list[tuple[str, ...]]:
@@ -23,6 +23,7 @@ def summary_rows(findings: Findings) -> list[tuple[str, ...]]:
                 quantity.name,
                 _words.value_text(verdict),
                 quantity.unit,
+                _trust.best_text(verdict),
                 _words.interval_text(verdict),
                 verdict.word,
                 _words.order_text(verdict),

@@ -10,8 +10,9 @@ from convergence.checks.energy_norm import energy_norm
 from convergence.checks.peak_region import peak_region
 from convergence.checks.singular_peak import singular_peak
 from convergence.checks.unexamined_corner import unexamined_corner
+from convergence.corner import Corner
 from convergence.judgement import judge
-from convergence.results import Corner, Facts, Ladder, Level, Quantity
+from convergence.results import Facts, Ladder, Level, Quantity
 
 NAN = float("nan")
 HOOK = Corner("tip_lower", ((1200.0, -60.0),), ("tip_lower",), 92.86, ("point", "force"), 0.0)

@@ -7,10 +7,11 @@ import numpy as np
 import pytest
 
 from convergence.checks.linear_range import linear_range, own_peaks, record
+from convergence.corner import Corner
 from convergence.fem.mesh import mesh
 from convergence.fem.problem import Support
 from convergence.fem.solution import solve
-from convergence.results import Check, Corner, Facts, Ladder, Level, Yield
+from convergence.results import Check, Facts, Ladder, Level, Yield
 
 CORNER = Corner("heel", ((0.0, 0.0),), ("heel",), 270.0, ("free", "free"), 0.5445)
 

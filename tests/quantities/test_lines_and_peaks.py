@@ -7,6 +7,7 @@ from typing import Any
 import numpy as np
 import pytest
 
+from convergence.corner import Corner
 from convergence.errors import Unsuitable
 from convergence.fem.loads import Traction
 from convergence.fem.mesh import mesh
@@ -17,7 +18,6 @@ from convergence.quantities import peak_stress as module
 from convergence.quantities.mean_stress import mean_stress
 from convergence.quantities.peak_stress import peak_stress
 from convergence.quantities.section_force import section_force
-from convergence.results import Corner
 
 TENSION, HOLE, SIDE, THICKNESS = 60.0, 10.0, 40.0, 8.0
 

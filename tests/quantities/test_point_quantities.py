@@ -6,12 +6,12 @@ from typing import Any
 import numpy as np
 import pytest
 
+from convergence.corner import Corner
 from convergence.errors import Unsuitable
 from convergence.fem.part import Part
 from convergence.quantities import stress as module
 from convergence.quantities.displacement import displacement
 from convergence.quantities.stress import stress
-from convergence.results import Corner
 
 pytestmark = pytest.mark.slow
 

@@ -5,6 +5,7 @@ from collections.abc import Callable
 import numpy as np
 import pytest
 
+from convergence.corner import Corner
 from convergence.errors import Unsuitable
 from convergence.fem.solution import Solution
 from convergence.quantities.mean_displacement import mean_displacement
@@ -14,7 +15,6 @@ from convergence.quantities.rotation import covers, rotation
 from convergence.quantities.strain_energy import strain_energy
 from convergence.quantities.work_of_load import covers as work_covers
 from convergence.quantities.work_of_load import work_of_load
-from convergence.results import Corner
 
 pytestmark = pytest.mark.slow
 

@@ -6,6 +6,7 @@ import numpy as np
 import pytest
 
 from convergence import rooms
+from convergence.corner import Corner
 from convergence.errors import Unsuitable
 from convergence.fem.material import Material
 from convergence.fem.mesh import mesh
@@ -14,7 +15,6 @@ from convergence.quantities.hot_spot_stress import covers, extrapolation, hot_sp
 from convergence.quantities.linearised_stress import linearised_stress
 from convergence.quantities.section_force import section_force
 from convergence.quantities.section_moment import section_moment
-from convergence.results import Corner
 
 pytestmark = pytest.mark.slow
 

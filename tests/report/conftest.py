@@ -6,21 +6,14 @@ from collections.abc import Callable
 import numpy as np
 import pytest
 
+from convergence.corner import Corner
+from convergence.coverage import Coverage
 from convergence.dimensions import SYSTEMS, Units
 from convergence.fields import Fields
-from convergence.results import (
-    Check,
-    Corner,
-    Estimate,
-    Facts,
-    Findings,
-    Ladder,
-    Level,
-    Quantity,
-    Verdict,
-)
+from convergence.results import Check, Estimate, Facts, Findings, Ladder, Level, Quantity, Verdict
 
 NAN = math.nan
+COVERAGE = Coverage("kind and degree", 5, 2140, 2057, 0.9521, 0.9690, 3.1)
 Map = Callable[[np.ndarray, np.ndarray, np.ndarray], tuple[np.ndarray, ...]]
 
 # corners of a hexahedron's faces, counter-clockwise from outside; corner i, j, k is number 4 i + 2 j + k
@@ -33,7 +26,8 @@ def make_verdict(word: str = "sound", **changes: object) -> Verdict:
         "word": word, "value": 312.437, "limit": 313.9, "low": 310.441, "high": 314.433,
         "uncertainty": 1.996, "tolerance": 0.02 * 312.437, "behaviour": "monotone",
         "observed_order": 1.94, "formal_order": 2.0, "expected_order": 2.0, "next_h": NAN,
-        "next_cells": NAN, "next_dofs": NAN, "next_seconds": NAN, "next_memory": NAN, "coverage": None,
+        "next_cells": NAN, "next_dofs": NAN, "next_seconds": NAN, "next_memory": NAN,
+        "order_low": 1.62, "order_high": 2.21, "coverage": COVERAGE,
         "reasons": ("The last three changes fall with the order of theory.",),
     }  # fmt: skip
     return Verdict(**{**facts, **changes})  # type: ignore[arg-type]
@@ -102,13 +96,13 @@ def make_findings() -> Findings:
         ),
         make_verdict(
             "singular", value=float(columns["corner_stress"][-1]), limit=NAN, low=NAN, high=NAN,
-            uncertainty=NAN, tolerance=5.0, observed_order=NAN, behaviour="growing",
+            uncertainty=NAN, tolerance=5.0, observed_order=NAN, coverage=None, behaviour="growing",
             reasons=("The inner corner at 60, 60 has the exponent 0.545.", "Report a stress 10 mm away."),
         ),
         make_verdict(
             "unproven", value=12001.9, limit=NAN, low=NAN, high=NAN, uncertainty=NAN, tolerance=60.0,
-            observed_order=NAN, formal_order=None, expected_order=None, behaviour="oscillating",
-            reasons=("Changes keep their size from level to level",),
+            coverage=None, observed_order=NAN, formal_order=None, expected_order=None,
+            behaviour="oscillating", reasons=("Changes keep their size from level to level",),
         ),
     )  # fmt: skip
     quantities = (

@@ -3,9 +3,10 @@
 import math
 from dataclasses import replace
 
+from convergence.corner import Corner
 from convergence.report._picture import Picture
 from convergence.report.sections_fields import stress_section
-from convergence.results import Corner, Findings
+from convergence.results import Findings
 
 PICTURE = Picture("stress", "what it shows", "what it says", "<svg></svg>", b"", 6.0)
 HOOK = Corner("tip", ((0.0, 1.0, 2.0),), ("tip",), 0.0, ("point", "force"), -1.0)

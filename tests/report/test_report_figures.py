@@ -43,9 +43,40 @@ def test_value_figure_says_what_it_shows(
     picture = value_figure("s-value", STRESS, verdict_of(), ladder, "mm")
     assert picture is not None
     shown = texts(picture.svg)
-    for word in ("interval", "tolerance", "limit", "fitted curve", "s [MPa]", "h [mm]", "24,000", "1,500"):
+    for word in (
+        "interval",
+        "tolerance",
+        "best estimate",
+        "fitted curve",
+        "s [MPa]",
+        "h [mm]",
+        "24,000",
+        "1,500",
+    ):
         assert word in shown
     assert picture.png.startswith(b"\x89PNG")
+
+
+def test_curve_fits_the_levels_and_a_narrow_interval_is_enlarged(
+    verdict_of: Callable[..., Verdict], ladder_of: Callable[..., Ladder]
+) -> None:
+    """Values 313.9 - 2 h^1.75 exactly; a level on the other side of the best estimate takes no part."""
+    ladder = ladder_of({"s": np.append(320.0, 313.9 - 2.0 * H**1.75)}, np.append(8.0, H))
+    verdict = verdict_of(value=311.9, limit=313.9, low=313.5, high=314.3)
+    picture = value_figure("s-value", STRESS, verdict, ladder, "mm")
+    assert picture is not None and "1.75 fits best" in picture.caption
+    assert "Right: enlarged" in picture.caption and "enlarged" in texts(picture.svg)
+    wide = value_figure("s-value", STRESS, replace(verdict, low=303.9, high=323.9), ladder, "mm")
+    assert wide is not None and "enlarged" not in wide.caption + texts(wide.svg)
+
+
+def test_orders_of_the_belief_are_shaded(
+    verdict_of: Callable[..., Verdict], ladder_of: Callable[..., Ladder]
+) -> None:
+    ladder = ladder_of({"s": 313.9 - 2.0 * H**1.75}, H)
+    for verdict, shaded in ((verdict_of(), True), (verdict_of(order_low=-1.0, order_high=-0.5), False)):
+        picture = error_figure("e", STRESS, verdict, ladder, "mm")
+        assert picture is not None and ("believed: 1.62 to 2.21" in texts(picture.svg)) == shaded
 
 
 @pytest.mark.parametrize("values", [[NAN, NAN, NAN], [0.0, 0.0, 0.0]])

@@ -40,6 +40,22 @@ def test_both_are_strict_json(findings: Findings) -> None:
         assert json.loads(text)["quantities"]["fillet_stress"]["estimates"]["richardson"]["limit"] is None
 
 
+def test_coverage_is_a_share_and_in_full_what_was_measured(findings: Findings) -> None:
+    """2,057 of 2,140; half of the interval from 311.6 to 315.6 is the uncertainty of the made-up verdict."""
+    share = 2057 / 2140
+    assert judge_object(findings)["quantities"]["fillet_stress"]["coverage"] == share
+    full = findings_object(findings)["quantities"]
+    assert full["fillet_stress"]["measured_coverage"] == {
+        "knowledge": "kind and degree", "levels": 5, "cases": 2140, "covered": 2057, "share": share,
+        "low": 0.9521, "high": 0.9690, "ratio": 3.1,
+    }  # fmt: skip
+    best = full["fillet_stress"]["best_estimate"]
+    assert best["value"] == 313.9 and abs(best["half_width"] - 1.996) < 1e-12
+    assert (full["fillet_stress"]["order_low"], full["fillet_stress"]["order_high"]) == (1.62, 2.21)
+    assert full["corner_stress"]["measured_coverage"] is None
+    assert full["corner_stress"]["best_estimate"] == {"value": None, "half_width": None}
+
+
 def test_the_full_object_holds_the_rest(findings: Findings) -> None:
     record = findings_object(findings)
     tip = record["quantities"]["tip_deflection"]

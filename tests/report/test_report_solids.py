@@ -6,6 +6,7 @@ from dataclasses import replace
 
 import numpy as np
 
+from convergence.corner import Corner
 from convergence.dimensions import Units
 from convergence.fields import Fields
 from convergence.report import _scene, _space
@@ -14,7 +15,7 @@ from convergence.report.figures_error import error_map
 from convergence.report.figures_mesh import mesh_figure
 from convergence.report.figures_stress import stress_figure
 from convergence.report.sections_fields import stress_section
-from convergence.results import Corner, Findings
+from convergence.results import Findings
 
 Solid = Callable[[int], Fields]
 VIEW = _space._rotation(np.array((0.8, 0.6, 1.0)))

@@ -1,0 +1,143 @@
+"""The packaged table and the outcomes it was measured with, from the bank."""
+
+import csv
+import gzip
+import io
+import json
+from collections.abc import Callable, Mapping, Sequence
+from dataclasses import asdict, dataclass
+from datetime import date
+from pathlib import Path
+from typing import Any
+
+import numpy as np
+
+from convergence.calibration.fit import weighed
+from convergence.calibration.known_ladder import KnownLadder
+from convergence.calibration.left_out import (
+    KNOWLEDGE,
+    Outcome,
+    all_stretches,
+    all_weights,
+    outcomes,
+    told_left_out,
+)
+from convergence.calibration.sub_ladders import sub_ladders
+from convergence.coverage import Coverage, Knowledge
+from convergence.histories.calibrated import LEAST_TO_SHOW
+from convergence.histories.table import OUTCOMES, TABLE
+from convergence.histories.width import MOST_LEVELS
+
+FALSE_ALARM = 0.015
+MISSED = 0.01
+STRESSES = ("point_stress", "peak_stress")
+MOST = 320  # sub-ladders of a family
+DIGITS = 4
+
+
+@dataclass(frozen=True, eq=False)
+class Calibrated:
+    """The table as it is written, and every outcome by what was known."""
+
+    table: Mapping[str, Any]
+    outcomes: Mapping[Knowledge, Sequence[Outcome]]
+
+
+def calibrate(ladders: Sequence[KnownLadder], made: date, say: Callable[[str], None]) -> Calibrated:
+    """Fit weights and stretches to all families, and judge each family without it."""
+    subs = sub_ladders(ladders, MOST)
+    say(f"{len(subs)} sub-ladders of {len(ladders)} ladders")
+    bank = [weighed(sub) for sub in subs]
+    weights: dict[str, np.ndarray] = {}
+    stretch: dict[str, Any] = {}
+    judged: dict[Knowledge, list[Outcome]] = {}
+    growing = np.zeros(0)
+    for known in KNOWLEDGE:
+        told = told_left_out(bank, known, say)
+        found, growing = all_weights(bank, known)
+        weights |= found
+        stretch[known] = all_stretches([one for one, _ in told if not one.sub.of.singular], known)
+        judged[known] = outcomes(told, known)
+        say(f"{known}: judged")
+    table = {
+        "made_of": {
+            "date": made.isoformat(),
+            "families": sorted({ladder.family for ladder in ladders}),
+            "ladders": len(ladders),
+            "sub_ladders": len(subs),
+        },
+        "weights": {name: _rounded(values) for name, values in weights.items()},
+        "growing": _rounded(growing),
+        "growth": {known: _growth(judged[known]) for known in KNOWLEDGE},
+        "stretch": {known: _short(by_levels) for known, by_levels in stretch.items()},
+        "coverage": {known: _coverages(known, judged[known]) for known in KNOWLEDGE},
+    }
+    return Calibrated(table, judged)
+
+
+def write_calibrated(found: Calibrated, table: Path = TABLE, rows: Path = OUTCOMES) -> None:
+    """Write the table and the outcomes beside the code that reads them."""
+    table.write_text(json.dumps(found.table, indent=1) + "\n", encoding="utf-8")
+    text = io.StringIO()
+    columns = csv.writer(text, lineterminator="\n")
+    names = ("regularity_nothing", "share_nothing", "regularity_known", "share_known")
+    columns.writerow(("levels", "kind", "degree", "dimension", "source", *names))
+    for bare, told in zip(found.outcomes["nothing"], found.outcomes["kind and degree"], strict=True):
+        of = bare.sub.of
+        if of.singular:
+            continue
+        numbers = [f"{value:.3g}" for one in (bare, told) for value in _standing(one)]
+        columns.writerow((bare.sub.levels, of.kind, of.degree, of.dimension, of.source, *numbers))
+    with rows.open("wb") as raw, gzip.GzipFile("", "wb", fileobj=raw, mtime=0) as packed:
+        packed.write(text.getvalue().encode())
+
+
+def coverage_of(known: Knowledge, levels: int, group: Sequence[Outcome]) -> Coverage:
+    """Return the measured coverage of some outcomes with its 95 % binomial interval."""
+    from scipy.stats import beta
+
+    cases, covered = len(group), sum(one.is_covered for one in group)
+    low = float(beta.ppf(0.025, covered, cases - covered + 1)) if covered else 0.0
+    high = float(beta.ppf(0.975, covered + 1, cases - covered)) if covered < cases else 1.0
+    ratio = float(np.median([one.half / one.sub.error for one in group]))
+    return Coverage(known, levels, cases, covered, low, high, ratio)
+
+
+def finite(judged: Sequence[Outcome]) -> list[Outcome]:
+    """Return the outcomes of ladders that have a limit."""
+    return [one for one in judged if not one.sub.of.singular]
+
+
+def _standing(one: Outcome) -> tuple[float, float]:
+    """Return half-width over span of the values, and error of the best estimate over half-width."""
+    best = 0.5 * (one.low + one.high)
+    return one.half / float(np.ptp(one.sub.f)), abs(best - one.sub.of.limit) / one.half
+
+
+def _coverages(known: Knowledge, judged: Sequence[Outcome]) -> dict[str, Any]:
+    found = {}
+    for levels in range(2, MOST_LEVELS + 1):
+        group = [one for one in finite(judged) if min(one.sub.levels, MOST_LEVELS) == levels]
+        if group:
+            found[str(levels)] = asdict(coverage_of(known, levels, group))
+    return found
+
+
+def _growth(judged: Sequence[Outcome]) -> dict[str, float]:
+    """Return the odds above which few stresses with a limit lie, and above which most without one do."""
+    many = [one for one in judged if one.sub.levels >= LEAST_TO_SHOW]
+    stresses = [one.growth for one in finite(many) if one.sub.of.kind in STRESSES]
+    singular = [one.growth for one in many if one.sub.of.singular]
+    shown, possible = np.quantile(stresses, 1.0 - FALSE_ALARM), np.quantile(singular, MISSED)
+    return {"shown": round(float(shown), DIGITS), "possible": round(float(possible), DIGITS)}
+
+
+def _short(by_levels: Mapping[str, Mapping[str, float]]) -> dict[str, dict[str, float]]:
+    return {
+        levels: {name: round(value, DIGITS) for name, value in stretch.items()}
+        for levels, stretch in by_levels.items()
+    }
+
+
+def _rounded(weights: np.ndarray) -> list[float]:
+    return [float(f"{value:.{DIGITS}g}") for value in weights.ravel()]

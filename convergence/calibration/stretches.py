@@ -1,0 +1,112 @@
+"""Stretch of the interval: quantile regression of true errors on the facts of belief and ladder.
+
+Koenker & Bassett 1978, Econometrica 46:33; Hunter & Lange 2000, J. Comput. Graph. Stat. 9:60, for the way to
+its minimum. Then one factor for each number of levels, so that every source of meshes is covered (split
+conformal: Vovk, Gammerman & Shafer 2005, Algorithmic Learning in a Random World, section 4.1).
+"""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+
+import numpy as np
+
+from convergence.calibration.sub_ladders import SubLadder
+from convergence.histories.width import UNIT, half_width
+
+ASKED = 0.955
+LEAST_OF_A_KIND = 0.93
+REGRESSED = 0.955
+STEPS = 80
+NEAR = 1e-3
+RIDGE = 20.0  # ladders that would stand for facts without effect
+FOLDS = 6
+LEAST_ERROR = 1e-4
+FEW = 50
+SIMILAR = {"similar": "nested"}
+Facts = Mapping[str, float]
+Stretch = dict[str, float]
+
+
+@dataclass(frozen=True, eq=False)
+class Told:
+    """A sub-ladder with the facts of a belief that its family had no part in, and that best estimate."""
+
+    sub: SubLadder
+    facts: Facts
+    limit: float
+
+    @property
+    def miss(self) -> float:
+        """Return the true error of the best estimate."""
+        return abs(self.limit - self.sub.of.limit)
+
+
+def fitted_stretch(known: Sequence[Told], names: Sequence[str]) -> Stretch:
+    """Return β by the names of the facts, the constant such that each source of meshes is covered as asked.
+
+    Kinds of quantity and dimensions are covered a little less at least: a peak in a bare table cannot be told
+    from a smooth quantity. The constant comes from errors of families that had no part in the β they are held
+    against.
+    """
+    stretch, families = _regressed(known, names), np.array([one.sub.of.family for one in known])
+    fold = np.unique(families, return_inverse=True)[1] % FOLDS
+    over = np.empty(len(known))
+    for number in range(FOLDS):
+        others = _regressed([one for one, at in zip(known, fold, strict=True) if at != number], names)
+        for place in np.flatnonzero(fold == number).tolist():
+            over[place] = np.log(known[place].miss / half_width(known[place].facts, others))
+    sources = np.array([SIMILAR.get(one.sub.of.source, one.sub.of.source) for one in known])
+    kinds = np.array([one.sub.of.kind for one in known])
+    dimensions = np.array([one.sub.of.dimension for one in known])
+    needed = [_conformal(over, ASKED)]
+    for labels, asked in ((sources, ASKED), (kinds, LEAST_OF_A_KIND), (dimensions, LEAST_OF_A_KIND)):
+        groups = [over[labels == label] for label in np.unique(labels)]
+        needed += [_conformal(group, asked) for group in groups if len(group) >= FEW]
+    return {**stretch, "always": stretch["always"] + max(needed)}
+
+
+def _regressed(known: Sequence[Told], names: Sequence[str]) -> Stretch:
+    rows = np.array([[one.facts.get(name, 0.0) for name in names] for one in known])
+    ratios = np.array([one.miss / one.facts[UNIT] for one in known])
+    found = _quantile_regression(rows, np.log(np.maximum(ratios, LEAST_ERROR)), family_weights(known))
+    return dict(zip(names, found.tolist(), strict=True))
+
+
+def names_of(known: Sequence[Told], *, kinds: bool, degrees: bool) -> list[str]:
+    """Return the facts that vary among some ladders, with those of kind and degree where they are told."""
+    usual = [name for name in known[0].facts if not name.startswith(("is ", "degree ")) and name != UNIT]
+    usual = [n for n in usual if n != "always" and np.ptp([one.facts[n] for one in known]) > 0.0]
+    present = sorted({name for one in known for name in one.facts})
+    if kinds:
+        usual += [name for name in present if name.startswith("is ")][1:]
+    if degrees:
+        usual += [name for name in present if name.startswith("degree ")][1:]
+    return ["always", *usual]
+
+
+def family_weights(known: Sequence[Told]) -> np.ndarray:
+    """Return a weight per ladder; families count the same."""
+    _, index, counts = np.unique(
+        [one.sub.of.family for one in known], return_inverse=True, return_counts=True
+    )
+    return np.asarray(1.0 / counts[index])
+
+
+def _conformal(over: np.ndarray, asked: float) -> float:
+    """Return the value that a share of all, the next one included, does not exceed."""
+    rank = int(np.ceil(asked * (len(over) + 1)))
+    return float(np.sort(over)[min(rank, len(over)) - 1])
+
+
+def _quantile_regression(rows: np.ndarray, y: np.ndarray, weights: np.ndarray) -> np.ndarray:
+    """Return β by majorisation (Hunter & Lange 2000), drawn a little towards a constant alone."""
+    weights = weights * len(y) / weights.sum()
+    drawn = np.diag(RIDGE * rows.var(axis=0))
+    found = np.zeros(rows.shape[1])
+    found[0] = np.quantile(y, REGRESSED)
+    for _ in range(STEPS):
+        rest = y - rows @ found
+        scaled = weights / (NEAR + np.abs(rest))
+        normal = (rows * scaled[:, None]).T @ rows + drawn
+        found = np.linalg.solve(normal, rows.T @ (scaled * y + (2.0 * REGRESSED - 1.0) * weights))
+    return np.asarray(found)

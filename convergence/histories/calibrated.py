@@ -1,0 +1,67 @@
+"""The calibrated interval of one ladder: its belief, stretched, and the coverage measured for its like."""
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from typing import Literal
+
+import numpy as np
+
+from convergence.coverage import Coverage
+from convergence.histories.belief import Belief, belief
+from convergence.histories.table import CAUTION, Table, key, knowledge, table
+from convergence.histories.width import facts, half_width, levels_key
+
+ORDER_SHARES = (0.025, 0.975)
+LEAST_TO_SHOW = 4  # levels
+MOST_LEVELS = 7  # the finest ones count
+Growth = Literal["shown", "possible", "excluded"]
+
+
+@dataclass(frozen=True)
+class Calibrated:
+    """Best estimate of the limit and its interval; the order in 95 % of the belief; growth without limit."""
+
+    limit: float
+    low: float
+    high: float
+    order_low: float
+    order_high: float
+    growth: Growth
+    coverage: Coverage | None
+
+
+def calibrated(
+    h: np.ndarray, f: np.ndarray, *, kind: str = "unknown", degree: int | None = None, resolution: float = 0.0
+) -> Calibrated:
+    """Return what two or more different values over falling sizes say; `resolution` as in `evidence`."""
+    taught = table()
+    h, f = h[-MOST_LEVELS:], f[-MOST_LEVELS:]
+    kind = kind if kind in taught.weights else "unknown"
+    found = believed(h, f, taught, kind, degree, resolution)
+    known, levels = knowledge(kind, degree), levels_key(len(f))
+    told = facts(found, h, f, kind, degree)
+    half = max(half_width(told, taught.stretch[known][levels]), resolution)
+    low, high = (found.order(share) for share in ORDER_SHARES)
+    return Calibrated(
+        limit=found.limit,
+        low=found.limit - half,
+        high=found.limit + half,
+        order_low=low,
+        order_high=high,
+        growth=_growth(found, taught.growth[known], len(f)),
+        coverage=taught.coverage[known][levels],
+    )
+
+
+def _growth(found: Belief, above: Mapping[str, float], levels: int) -> Growth:
+    if found.growth >= above["shown"] and levels >= LEAST_TO_SHOW:
+        return "shown"
+    return "possible" if found.growth >= above["possible"] else "excluded"
+
+
+def believed(
+    h: np.ndarray, f: np.ndarray, taught: Table, kind: str, degree: int | None, resolution: float
+) -> Belief:
+    """Return the belief with the weights of a kind and degree, the nearest ones where they are not known."""
+    weights = taught.weights.get(key(kind, degree), taught.weights[""])
+    return belief(h, f, weights + taught.growing, caution=CAUTION, resolution=resolution)

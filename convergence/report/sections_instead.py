@@ -1,0 +1,49 @@
+"""What to report instead of a singular stress: a table with intervals, and what the model does not allow."""
+
+from typing import Any
+
+from convergence import numbers
+from convergence.checks._instead import Instead, instead, missing
+from convergence.report import html
+from convergence.report.html import Html, text
+from convergence.results import Findings, Quantity
+
+TOLERANCE = 0.05  # where the quantity has none relative to its value
+HEAD = ("instead", "value", "interval", "verdict")
+
+
+def instead_part(findings: Findings, quantity: Quantity) -> Html:
+    """Return the table of a quantity that stands on a singular corner, nothing for others."""
+    found = instead(findings.ladder, findings.facts, quantity.name)
+    absent = missing(findings.ladder, findings.facts, quantity.name)
+    accepted = tolerance(quantity)
+    caption = f"What to report instead (verdict at a tolerance of {numbers.plain_percent(accepted)})"
+    table = html.table(caption, HEAD, [_row(one, accepted) for one in found]) if found else Html("")
+    return html.join(table, *(html.paragraph(sentence, "tiny") for sentence in absent))
+
+
+def tolerance(quantity: Quantity) -> float:
+    """Return the share of a value that is accepted of what is reported instead of a quantity."""
+    return TOLERANCE if quantity.relative is None else quantity.relative
+
+
+def instead_objects(findings: Findings, quantity: Quantity) -> list[dict[str, Any]]:
+    """Return the rows of the table for JSON; numbers that are not known as NaN."""
+    return [
+        {
+            "what": one.label,
+            "unit": one.unit,
+            "value": one.value,
+            "low": one.low,
+            "high": one.high,
+            "verdict": one.word(tolerance(quantity)),
+        }
+        for one in instead(findings.ladder, findings.facts, quantity.name)
+    ]
+
+
+def _row(one: Instead, accepted: float) -> list[Html]:
+    value = f"{numbers.rounded(one.value, one.half_width)} {one.unit}".strip()
+    low, high = numbers.outward(one.low, one.high, one.value, one.half_width)
+    reach = numbers.NONE if low == numbers.NONE else f"{low} to {high}"
+    return [text(one.label), text(value), text(reach), html.badge(one.word(accepted))]
