@@ -112,6 +112,7 @@ def plan(spec: LadderSpec, problem: Problem) -> list[dict[int, int]]:
 
 
 def _save(study: Study, levels: list[Level], folder: Path, remarks: tuple[str, ...] = ()) -> None:
+    folder.mkdir(parents=True, exist_ok=True)
     ladder = Ladder(tuple(levels), study.file.name, study.fingerprint, remarks, h_unit=study.units.length)
     write_ladder(ladder, folder / LADDER)
 

@@ -16,7 +16,6 @@ PARTS = {
     "grid_convergence_index": "grid convergence index",
     "least_squares": "least-squares uncertainty",
 }
-LEAST_ORDER = 0.05
 
 
 @dataclass(frozen=True)
@@ -27,7 +26,8 @@ class Interval:
     value. `order` is that of the last three levels; the order of the error law lies from `order_low` to
     `order_high`. `growth`: whether the levels show, allow or exclude that there is no limit. `widths` are
     half-widths of published methods, for comparison; `lost` is the number of levels without a value; `flaw`
-    says why there is no interval, "" where there is one.
+    says why there is no interval, "" where there is one; `companion` what a second ladder says and `side` on
+    which side of the values the limit is known to be, "" where nothing.
     """
 
     value: float
@@ -46,6 +46,8 @@ class Interval:
     flaw: str
     coverage: Coverage | None
     estimates: Mapping[str, Estimate]
+    companion: str = ""
+    side: str = ""
 
 
 def interval(

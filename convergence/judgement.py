@@ -8,12 +8,16 @@ import numpy as np
 from convergence import rooms
 from convergence.checks._instead import instead_columns
 from convergence.checks.linear_range import own_peaks
+from convergence.companions import together
 from convergence.corner import Corner
 from convergence.corners.singular_corners import singular_corners, unexamined_corners
 from convergence.fem.material import Material
-from convergence.fem.problem import AnyPart
+from convergence.fem.problem import AnyPart, Problem
+from convergence.histories.table import table
 from convergence.intervals import Interval, interval
-from convergence.results import Check, Facts, Findings, Ladder, Quantity, Yield
+from convergence.ladder_spec import Formulation
+from convergence.one_sided import one_sided
+from convergence.results import Check, Companion, Facts, Findings, Ladder, Quantity, Yield
 from convergence.study import Study
 from convergence.verdicts import verdict
 
@@ -39,6 +43,7 @@ def facts_of(study: Study) -> Facts:
         components={q.name: str(q.arguments.get("component", "")) for q in quantities},
         regions={q.name: str(q.arguments.get("region") or "") for q in quantities},
         yields={region: _yield(material) for region, material in problem.materials.items()},
+        sides={q.name: _side(q, problem, study.ladder.formulation) for q in quantities},
     )
 
 
@@ -55,9 +60,27 @@ def _covered(quantity: Quantity, part: AnyPart, corners: tuple[Corner, ...]) -> 
     return tuple(corner for corner in corners if covers(part, corner, quantity.arguments))
 
 
-def judge(ladder: Ladder, quantities: tuple[Quantity, ...], facts: Facts, title: str) -> Findings:
+def _side(quantity: Quantity, problem: Problem, formulation: Formulation) -> int:
+    """Return on which side of its values theory has the limit, 0 where it does not say."""
+    side = rooms.beside("quantities", quantity.measure_name, "side")
+    return int(side(problem, quantity.arguments)) if side and formulation == "displacement" else 0
+
+
+def judge(
+    ladder: Ladder,
+    quantities: tuple[Quantity, ...],
+    facts: Facts,
+    title: str,
+    companion: Companion | None = None,
+) -> Findings:
     """Return estimates, checks and a verdict for every quantity of a ladder."""
     intervals = {q.name: _interval(ladder, q, _scale(ladder, q, facts)) for q in quantities}
+    if companion:
+        intervals |= {q.name: _together(intervals[q.name], companion, q, facts) for q in companion.quantities}
+    intervals = {
+        name: one_sided(found, ladder.column(name), facts.sides.get(name, 0))
+        for name, found in intervals.items()
+    }
     peaks = {
         name: _interval(ladder, Quantity(name, kind="peak_stress", degree=facts.degree))
         for name in own_peaks(ladder)
@@ -86,7 +109,13 @@ def judge(ladder: Ladder, quantities: tuple[Quantity, ...], facts: Facts, title:
         verdicts={
             q.name: verdict(q, intervals[q.name], spoiled(checks, q.name), ladder, facts) for q in quantities
         },
+        companion=companion,
     )
+
+
+def _together(main: Interval, companion: Companion, quantity: Quantity, facts: Facts) -> Interval:
+    other = _interval(companion.ladder, quantity, _scale(companion.ladder, quantity, facts))
+    return together(main, other, table())
 
 
 def _interval(ladder: Ladder, quantity: Quantity, scale: float = 0.0) -> Interval:

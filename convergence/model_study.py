@@ -88,7 +88,9 @@ def read_model(sections: Sections, materials: Mapping[str, Material], unit_syste
     if "companion" not in sections.file.data or sections.faults:
         return found
     second = _companion(sections, spec, dimension)
-    return replace(found, companion=second and _on_ladder(sections, blank, second, problem, "companion"))
+    if second is None:
+        return found
+    return replace(found, companion=_on_ladder(sections, blank, second, problem, "companion"))
 
 
 def _on_ladder(

@@ -123,7 +123,8 @@ class Facts:
     corners on which theory is silent; `components` what a stress is, `regions` the one it is confined to,
     "" where none; `yields` the yield strengths by region, of a table under ""; `intervals` the stated
     (low, high) per name, NaN where there is none; `units` the unit of each quantity; `growing` the range of
-    the order of those whose levels show growth without limit.
+    the order of those whose levels show growth without limit; `sides` has 1 where the limit is never below a
+    value, -1 where it is never above.
     """
 
     degree: int | None = None
@@ -139,6 +140,7 @@ class Facts:
     regions: Mapping[str, str] = field(default_factory=dict)
     intervals: Mapping[str, tuple[float, float]] = field(default_factory=dict)
     units: Mapping[str, str] = field(default_factory=dict)
+    sides: Mapping[str, int] = field(default_factory=dict)
     growing: Mapping[str, tuple[float, float]] = field(default_factory=dict)
 
     @property
@@ -205,6 +207,15 @@ class Verdict:
 
 
 @dataclass(frozen=True)
+class Companion:
+    """A second ladder, of another degree or other cells; the quantities are those measured there."""
+
+    ladder: Ladder
+    quantities: tuple[Quantity, ...]
+    cells: str
+
+
+@dataclass(frozen=True)
 class Findings:
     """Everything that is said about one ladder."""
 
@@ -215,6 +226,7 @@ class Findings:
     estimates: Mapping[str, Mapping[str, Estimate]]
     checks: tuple[Check, ...]
     verdicts: Mapping[str, Verdict]
+    companion: Companion | None = None
 
     @property
     def all_sound(self) -> bool:

@@ -8,16 +8,15 @@ from typing import Annotated, Any
 from convergence import rooms
 from convergence.bind import bind
 from convergence.cases import loads_of
-from convergence.columns import bare_quantities, read_column
 from convergence.dimensions import SYSTEMS, Units
 from convergence.errors import Fault, InputError, nearest
 from convergence.fem.material import Material
 from convergence.fem.problem import Problem
-from convergence.intake.table import table
 from convergence.ladder_spec import LadderSpec
 from convergence.model_study import ModelStudy, digest, material_tables, read_materials, read_model
 from convergence.results import Ladder, Quantity
 from convergence.sections import Sections
+from convergence.table_study import TableStudy, read_table_study
 from convergence.tomlfile import read_toml
 
 SECTIONS = ("model", "cases", "table", "ladder", "companion", "quantities")
@@ -54,6 +53,13 @@ class Study:
     cases: Mapping[str, "Study"] = field(default_factory=dict)
     companion: "Study | None" = None
     subfolder: str = ""
+
+    @property
+    def cells(self) -> str:
+        """Return what the meshes are made of, in words; the name of the file of a table."""
+        if self.ladder is None:
+            return self.table_file.name if self.table_file else ""
+        return f"{self.ladder.shape}s of degree {self.ladder.degree}"
 
     def problem(self) -> Problem:
         """Return the problem of a model study."""
@@ -145,50 +151,25 @@ def _on_ladder(blank: Study, found: ModelStudy) -> Study:
 
 
 def _table_study(sections: Sections, blank: Study) -> Study:
-    for section, what in (("ladder", "ladder of its own"), ("companion", "model"), ("cases", "load cases")):
+    for section, what in (("ladder", "ladder of its own"), ("cases", "load cases")):
         if section in sections.file.data:
             sections.fault((section,), f"a table study has no {what}", f"remove [{section}]")
-    arguments = sections.bound(table, sections.table("table"), "table")
-    if arguments is None:
+    found = read_table_study(sections, blank.file, blank.units)
+    if found is None:
         return blank
-    path = _beside(blank.file, arguments["file"])
-    read = sections.called(table, {**arguments, "file": str(path)}, "table")
-    if read is None:
-        return blank
-    found, units = read
-    asked = sections.named("quantities", "quantity")
-    pairs = [
-        sections.keep((q, source), faults)
-        for q, source, faults in (read_column(sections.file, name, blank.units, units) for name in asked)
-    ]
-    sources = {quantity.name: source for quantity, source in pairs if quantity}
-    quantities = tuple(quantity for quantity, _ in pairs if quantity)
-    if not sections.file.data.get("quantities"):
-        quantities = bare_quantities(found, units, kinds={}, degree=None, relative=None)
-        sources = {quantity.name: quantity.name for quantity in quantities}
+    study = _of_table(blank, found)
+    if found.companion is None:
+        return study
+    return replace(study, companion=_of_table(replace(blank, subfolder=COMPANION), found.companion))
+
+
+def _of_table(blank: Study, found: TableStudy) -> Study:
+    parts = {"table": found.file.read_text(encoding="utf-8-sig"), "columns": found.columns}
     return replace(
         blank,
-        quantities=quantities,
-        table=_renamed(found, sources),
-        table_file=path,
-        dimension=arguments["dimension"],
-        fingerprint=digest({"table": path.read_text(encoding="utf-8-sig"), "columns": sources}),
+        quantities=found.quantities,
+        table=found.ladder,
+        table_file=found.file,
+        dimension=found.dimension,
+        fingerprint=digest(parts),
     )
-
-
-def _beside(study: Path, file: str) -> Path:
-    """Return the table's path from the study's folder; a copy of the study has its table beside it."""
-    path = study.parent / file
-    copy = study.parent / Path(file).name
-    return copy if copy.exists() and not path.exists() else path
-
-
-def _renamed(found: Ladder, sources: Mapping[str, str]) -> Ladder:
-    """Return the ladder with the columns under the names of the quantities, and their places."""
-    columns = {name + end: source + end for name, source in sources.items() for end in ("", ".x", ".y", ".z")}
-    levels = tuple(
-        replace(lv, values={new: lv.values[old] for new, old in columns.items() if old in lv.values})
-        for lv in found.levels
-    )
-    fine = {new: found.resolution[old] for new, old in columns.items() if old in found.resolution}
-    return replace(found, levels=levels, resolution=fine)

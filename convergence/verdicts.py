@@ -2,32 +2,15 @@
 
 import math
 from collections.abc import Mapping
-from dataclasses import dataclass
 
 from convergence import numbers
 from convergence.checks._corner import STRESS_KINDS
 from convergence.corner import Corner
-from convergence.coverage import Coverage
-from convergence.forecast import STEEPEST_MEMORY, STEEPEST_TIME, grown
-from convergence.histories.width import MOST_LEVELS
-from convergence.intervals import LEAST_ORDER, Interval
+from convergence.intervals import Interval
+from convergence.next_mesh import Next, next_mesh
 from convergence.results import Facts, Ladder, Quantity, Verdict, VerdictWord
 
 SETTLED = 0.03  # half-width over value below which no singular value of the bank lies
-MOST_ORDER = 4.0
-AFFORDABLE_DOFS = 5e7
-OUT_OF_REACH = 1e-40
-
-
-@dataclass(frozen=True)
-class Next:
-    """The mesh at which the interval is expected to fit the tolerance; NaN where there is none."""
-
-    h: float = math.nan
-    cells: float = math.nan
-    dofs: float = math.nan
-    seconds: float = math.nan
-    memory: float = math.nan
 
 
 def verdict(
@@ -37,9 +20,10 @@ def verdict(
     expected = expected_order(quantity, facts)
     tolerance = accepted(quantity, found.value)
     word = _word(quantity, found, tolerance, spoiled, facts)
-    ahead = _next_mesh(found, tolerance, expected, ladder, facts) if word == "refine" else Next()
+    refines = word == "refine"
+    ahead = next_mesh(quantity, found, tolerance, expected, ladder, facts) if refines else Next()
     stated = word != "singular"
-    reasons = _reasons(quantity, found, spoiled, tolerance, expected, ahead, word)
+    reasons = _reasons(quantity, found, spoiled, tolerance, expected, ahead, word, facts)
     if word in ("sound", "refine"):
         reasons += _about_unexamined(facts.doubtful.get(quantity.name, ()))
     return Verdict(
@@ -56,11 +40,11 @@ def verdict(
         order_high=found.order_high,
         formal_order=quantity.formal_order,
         expected_order=expected,
-        next_h=ahead.h,
-        next_cells=ahead.cells,
-        next_dofs=ahead.dofs,
-        next_seconds=ahead.seconds,
-        next_memory=ahead.memory,
+        next_h=ahead.mesh.h,
+        next_cells=ahead.mesh.cells,
+        next_dofs=ahead.mesh.dofs,
+        next_seconds=ahead.mesh.seconds,
+        next_memory=ahead.mesh.memory,
         coverage=found.coverage if stated else None,
         reasons=tuple(reasons),
     )
@@ -105,27 +89,6 @@ def _nothing_to_relate(quantity: Quantity, found: Interval) -> bool:
     return not quantity.absolute and abs(found.value) <= found.half_width
 
 
-def _next_mesh(
-    found: Interval, tolerance: float, expected: float | None, ladder: Ladder, facts: Facts
-) -> Next:
-    scattered = found.behaviour.endswith("divergence")
-    order = found.estimates["least_squares"].order if scattered else found.order
-    order = order if math.isfinite(order) else (expected or 1.0)
-    ceiling = MOST_ORDER if expected is None else min(expected, MOST_ORDER)
-    order = min(max(order, LEAST_ORDER), max(ceiling, LEAST_ORDER))
-    finest = ladder.levels[-1]
-    h = finest.h * max((tolerance / found.half_width) ** (1.0 / order), OUT_OF_REACH)
-    growth = (finest.h / h) ** facts.dimension
-    counts = list((finest.h / ladder.h) ** facts.dimension)
-    return Next(
-        h,
-        finest.cells * growth,
-        finest.dofs * growth,
-        grown(counts, [level.seconds for level in ladder.levels], growth, steepest=STEEPEST_TIME),
-        grown(counts, [level.memory for level in ladder.levels], growth, steepest=STEEPEST_MEMORY),
-    )
-
-
 def _reasons(
     quantity: Quantity,
     found: Interval,
@@ -134,40 +97,48 @@ def _reasons(
     expected: float | None,
     ahead: Next,
     word: VerdictWord,
+    facts: Facts,
 ) -> list[str]:
     decisive = [spoiled["singular"]] if "singular" in spoiled else spoiled.values()
     reasons = [f"{_capital(reason)}." for reason in decisive]
+    if word == "unproven":
+        reasons += _why_unproven(quantity, found, tolerance, facts)
     if found.lost:
         reasons.append(f"{found.lost} level(s) without a value were left out.")
-    if word == "singular":
+    if word == "singular" or found.flaw:
         return reasons
-    if found.flaw:
-        return [*reasons, f"No interval: {found.flaw}."]
+    reasons += [said for said in (found.companion, found.side) if said]
     reasons += _about_order(found, quantity.formal_order, expected)
     if found.behaviour == "constant":
         reasons.append("The last three levels give the same value, to round-off or to its printed digits.")
-    elif found.coverage is not None:
-        reasons += _about_interval(found, tolerance, found.coverage)
+    else:
+        half = numbers.beside_limit(found.half_width, tolerance)
+        best, own = numbers.compact(found.limit, 6), numbers.compact(0.5 * (found.high - found.low), 2)
+        about = "" if found.side else f" ± {own}"
+        reasons.append(f"Half-width {half} about the finest value; best estimate of the limit {best}{about}.")
+    return reasons + _about_tolerance(quantity, tolerance, ahead)
+
+
+def _why_unproven(quantity: Quantity, found: Interval, tolerance: float, facts: Facts) -> list[str]:
+    """Return what, beside failed checks, leaves a quantity unproven."""
+    if found.flaw:
+        return [f"No interval: {found.flaw}."]
     if found.levels == 2:
-        reasons.append("Two levels never prove a value: the interval is an orientation; add a third level.")
-    elif word == "unproven" and not spoiled and found.half_width > tolerance and found.growth != "excluded":
-        reasons.append(
+        return ["Two levels never prove a value: the interval is an orientation; add a third level."]
+    if _may_grow(quantity, found, facts):
+        return [
             "The levels do not tell slow convergence from growth without limit (a singular place): add a "
             "finer level, or say whether a corner, a point force or a support's end is near."
-        )
-    return reasons + _about_tolerance(quantity, found, tolerance, ahead, word)
-
-
-def _about_interval(found: Interval, tolerance: float, measured: Coverage) -> list[str]:
-    half = numbers.beside_limit(found.half_width, tolerance)
-    best, own = numbers.compact(found.limit, 6), numbers.compact(0.5 * (found.high - found.low), 2)
-    levels = f"{measured.levels} levels{' and more' if measured.levels == MOST_LEVELS else ''}"
-    share, low, high = (f"{100.0 * x:.1f} %" for x in (measured.share, measured.low, measured.high))
-    return [
-        f"Half-width {half} about the finest value; best estimate of the limit {best} ± {own}.",
-        f"Such intervals ({levels}, {measured.knowledge} known) held the limit of {share} ({low} to {high}) "
-        f"of {measured.cases} known ladders, each judged with its family of parts left out.",
-    ]
+        ]
+    if found.half_width <= tolerance:
+        return []
+    if _nothing_to_relate(quantity, found):
+        return ["The value is zero within its interval: give an absolute_tolerance."]
+    if tolerance <= 0.0:
+        return ["The tolerance is zero: no interval is that narrow."]
+    if found.behaviour == "constant":
+        return ["Round-off or the printed digits are wider than the tolerance: no finer mesh helps."]
+    return []
 
 
 def _about_order(found: Interval, formal: float | None, expected: float | None) -> list[str]:
@@ -193,24 +164,12 @@ def _about_order(found: Interval, formal: float | None, expected: float | None) 
     return lines
 
 
-def _about_tolerance(
-    quantity: Quantity, found: Interval, tolerance: float, ahead: Next, word: VerdictWord
-) -> list[str]:
+def _about_tolerance(quantity: Quantity, tolerance: float, ahead: Next) -> list[str]:
     parts = [f"{100 * quantity.relative:.4g} % of the value"] if quantity.relative else []
     parts += [f"{quantity.absolute:.4g} {quantity.unit}".strip()] if quantity.absolute else []
     assumed = " (assumed, none was given)" if quantity.assumed_tolerance else ""
     accepted_text = f"Accepted: {' or '.join(parts)}{assumed}, that is {numbers.compact(tolerance, 5)}."
-    if word != "sound" and _nothing_to_relate(quantity, found):
-        accepted_text += " The value is zero within its interval: give an absolute_tolerance."
-    lines = [accepted_text]
-    if word == "refine" and math.isfinite(ahead.h):
-        cost = numbers.cost(ahead.cells, ahead.dofs, ahead.seconds, ahead.memory)
-        lines.append(f"A cell size of about {ahead.h:.3g}{cost} would do, if the order holds.")
-        if ahead.dofs > AFFORDABLE_DOFS:
-            lines.append(
-                "That is out of reach: use degree 2, a smaller part around the place, or another quantity."
-            )
-    return lines
+    return [accepted_text, *ahead.advice]
 
 
 def _about_unexamined(corners: tuple[Corner, ...]) -> list[str]:

@@ -14,8 +14,8 @@ NAN = math.nan
 
 def verdict(word: VerdictWord, value: float, low: float = NAN, high: float = NAN) -> Verdict:
     return Verdict(
-        word, value, NAN, low, high, 0.5 * (high - low), NAN, "", NAN, None, None, NAN, NAN, NAN, NAN, NAN,
-        None, (),
+        word, value, NAN, low, high, 0.5 * (high - low), NAN, "", NAN, NAN, NAN, None, None, NAN, NAN, NAN,
+        NAN, NAN, None, (),
     )  # fmt: skip
 
 

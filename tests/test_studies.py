@@ -35,7 +35,7 @@ EXPECTED = {
     "end_fitting": {"cone_corner": "singular"},
     "hinge_pin": {},
     "lug": {"base_corner": "singular"},
-    "lug_solid": {},
+    "lug_solid": {"hole_peak": "refine"},
     "patch": {},
     "pin_link": {},
     "roller_plate": {"weld_toe": "singular"},

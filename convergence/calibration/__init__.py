@@ -1,4 +1,5 @@
-"""How often the estimates are right: ladders whose limits are known exactly, and the coverage over them.
+"""How the interval is calibrated: a bank of ladders with known limits, the table made of it, and its page.
 
-`exact_ladders` makes the ladders, `coverage` counts, `python -m convergence.calibration` writes the page.
+`making` makes the bank (`drawn_ladders`, `mapped_ladders`), `bank` keeps it, `calibrate` fits the table and
+judges every family without it, `page` says what was measured. `python -m convergence.calibration` does all.
 """

@@ -1,52 +1,45 @@
-"""`python -m convergence.calibration [FOLDER]`: measure coverage on the exact ladders, write coverage.md."""
+"""`python -m convergence.calibration [FOLDER] [--bank] [--date YYYY-MM-DD]`: bank, table and page.
 
-import math
-import sys
-from pathlib import Path
-
-from convergence.calibration.coverage import LEVELS, STATED, Count, coverage
-from convergence.calibration.exact_ladders import CASES, LADDERS, exact_ladders
-
-HEAD = """# Coverage of the estimates on parts with exact solutions
-
-Parts: {cases}. Every named point and one place inside every block; triangles and quadrilaterals, degree 1
-and 2; ladders {ladders}; every run of 3, 4 and 5 neighbouring levels. Energies, displacements, direct and
-recovered stresses, each with its formal order given. Values exact to 1e-8 are left out.
-
-All meshes of a ladder are similar (structured), which flatters every method: on ladders of unstructured
-meshes the classical ones do worse. Nothing was fitted to these ladders, and the interval as stated is not
-calibrated.
-
-- answers: share of cases in which the method gives a half-width U about the finest value at all;
-- covers: share of answers for which the exact value lies within U;
-- median U/e: half-width over true error.
-
-| method | levels | cases | answers | covers | median U/e |
-| --- | --- | --- | --- | --- | --- |
+From the packaged bank of known ladders come histories/table.json, histories/outcomes.csv.gz,
+FOLDER/calibration.md and its plots. With --bank the bank itself is made anew first: about an hour on two
+processors; it needs NGSolve with Netgen.
 """
 
+import argparse
+import importlib.util
+from datetime import date
+from pathlib import Path
 
-def page() -> str:
-    """Return the page with the measured table."""
-    counts = coverage(exact_ladders())
-    ladders = " and ".join(f"of {n} levels from {d} divisions, ratio {r:g}" for d, r, n in LADDERS)
-    head = HEAD.format(cases=", ".join(CASES), ladders=ladders)
-    methods = sorted({method for method, _ in counts} - {STATED})
-    keys = [(method, levels) for method in (*methods, STATED) for levels in LEVELS]
-    rows = [_row(*key, counts[key]) for key in keys]
-    return head + "\n".join(rows) + "\n"
+from convergence.calibration.bank import read_bank, write_bank
+from convergence.calibration.calibrate import calibrate, write_calibrated
+from convergence.calibration.making import made_bank
+from convergence.calibration.page import write_page
+
+MISSING = "calibration: NGSolve is not installed; install it with: pip install -e '.[dev]'"
 
 
-def _row(method: str, levels: int, count: Count) -> str:
-    name = method.replace("_", " ")
-    if not count.answered:
-        return f"| {name} | {levels} | {count.cases} | none | none | none |"
-    ratio = f"{count.median_ratio:.2f}" if math.isfinite(count.median_ratio) else "none"
-    share = 100.0 * count.answered / count.cases
-    return f"| {name} | {levels} | {count.cases} | {share:.0f} % | {100.0 * count.coverage:.1f} % | {ratio} |"
+def say(line: str) -> None:
+    """Print a line of progress."""
+    print(line, flush=True)
+
+
+def main() -> None:
+    """Make what is asked for."""
+    parser = argparse.ArgumentParser(prog="python -m convergence.calibration", description=__doc__)
+    parser.add_argument("folder", nargs="?", default="figures", type=Path, help="where the page goes")
+    parser.add_argument("--bank", action="store_true", help="make the bank anew first: about an hour")
+    parser.add_argument("--date", default=date.today(), type=date.fromisoformat, help="date of the table")
+    chosen = parser.parse_args()
+    if chosen.bank:
+        if importlib.util.find_spec("ngsolve") is None:
+            raise SystemExit(MISSING)
+        write_bank(made_bank(say))
+    ladders = read_bank()
+    found = calibrate(ladders, chosen.date, say)
+    write_calibrated(found)
+    chosen.folder.mkdir(exist_ok=True)
+    write_page(chosen.folder, found, ladders)
 
 
 if __name__ == "__main__":
-    folder = Path(sys.argv[1] if len(sys.argv) > 1 else "figures")
-    folder.mkdir(exist_ok=True)
-    (folder / "coverage.md").write_text(page(), encoding="utf-8")
+    main()

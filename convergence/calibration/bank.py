@@ -20,12 +20,12 @@ DIGITS = 12
 
 
 def write_bank(ladders: Iterable[KnownLadder], path: Path = BANK) -> None:
-    """Write the rows, byte for byte the same for the same ladders."""
+    """Write the rows in order of their names, byte for byte the same for the same ladders."""
     text = io.StringIO()
     names = [field.name for field in fields(KnownLadder)]
     rows = csv.writer(text, lineterminator="\n")
     rows.writerow(names)
-    rows.writerows([_cell(getattr(ladder, name)) for name in names] for ladder in ladders)
+    rows.writerows([_cell(getattr(ladder, name)) for name in names] for ladder in sorted(ladders, key=_name))
     with path.open("wb") as raw, gzip.GzipFile("", "wb", fileobj=raw, mtime=0) as packed:
         packed.write(text.getvalue().encode())
 
@@ -34,6 +34,11 @@ def read_bank(path: Path = BANK) -> list[KnownLadder]:
     """Return all ladders."""
     with gzip.open(path, "rt", encoding="utf-8", newline="") as packed:
         return [_ladder(row) for row in csv.DictReader(packed)]
+
+
+def _name(ladder: KnownLadder) -> tuple[str | int, ...]:
+    made = (ladder.source, ladder.shape, ladder.degree)
+    return (ladder.family, ladder.case, *made, ladder.label, len(ladder.h))
 
 
 def _cell(value: Any) -> str:

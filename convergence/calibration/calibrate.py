@@ -12,6 +12,8 @@ from typing import Any
 
 import numpy as np
 
+from convergence.calibration.binomial import binomial_interval
+from convergence.calibration.companions import companion_factors, companion_outcomes, companion_pairs
 from convergence.calibration.fit import weighed
 from convergence.calibration.known_ladder import KnownLadder
 from convergence.calibration.left_out import (
@@ -22,16 +24,17 @@ from convergence.calibration.left_out import (
     outcomes,
     told_left_out,
 )
+from convergence.calibration.promises import promises
 from convergence.calibration.sub_ladders import sub_ladders
-from convergence.coverage import Coverage, Knowledge
+from convergence.coverage import WITH_COMPANION, Companion, Coverage, Knowledge
 from convergence.histories.calibrated import LEAST_TO_SHOW
-from convergence.histories.table import OUTCOMES, TABLE
+from convergence.histories.table import OUTCOMES, TABLE, as_table
 from convergence.histories.width import MOST_LEVELS
 
 FALSE_ALARM = 0.015
-MISSED = 0.01
+MISSED = 0.015
 STRESSES = ("point_stress", "peak_stress")
-MOST = 320  # sub-ladders of a family
+MOST = 300  # sub-ladders of a family
 DIGITS = 4
 
 
@@ -59,7 +62,11 @@ def calibrate(ladders: Sequence[KnownLadder], made: date, say: Callable[[str], N
         stretch[known] = all_stretches([one for one, _ in told if not one.sub.of.singular], known)
         judged[known] = outcomes(told, known)
         say(f"{known}: judged")
-    table = {
+    pairs = companion_pairs(judged["kind and degree"])
+    together = _coverages(WITH_COMPANION, companion_outcomes(pairs))
+    factors = companion_factors(pairs)
+    stretch[WITH_COMPANION] = {levels: {"always": float(np.log(one))} for levels, one in factors.items()}
+    table: dict[str, Any] = {
         "made_of": {
             "date": made.isoformat(),
             "families": sorted({ladder.family for ladder in ladders}),
@@ -71,7 +78,11 @@ def calibrate(ladders: Sequence[KnownLadder], made: date, say: Callable[[str], N
         "growth": {known: _growth(judged[known]) for known in KNOWLEDGE},
         "stretch": {known: _short(by_levels) for known, by_levels in stretch.items()},
         "coverage": {known: _coverages(known, judged[known]) for known in KNOWLEDGE},
+        "next_mesh": {},
     }
+    table["coverage"][WITH_COMPANION] = together
+    say("promises of the next mesh")
+    table["next_mesh"] = {name: asdict(one) for name, one in promises(ladders, as_table(table)).items()}
     return Calibrated(table, judged)
 
 
@@ -92,13 +103,10 @@ def write_calibrated(found: Calibrated, table: Path = TABLE, rows: Path = OUTCOM
         packed.write(text.getvalue().encode())
 
 
-def coverage_of(known: Knowledge, levels: int, group: Sequence[Outcome]) -> Coverage:
+def coverage_of(known: Knowledge | Companion, levels: int, group: Sequence[Outcome]) -> Coverage:
     """Return the measured coverage of some outcomes with its 95 % binomial interval."""
-    from scipy.stats import beta
-
     cases, covered = len(group), sum(one.is_covered for one in group)
-    low = float(beta.ppf(0.025, covered, cases - covered + 1)) if covered else 0.0
-    high = float(beta.ppf(0.975, covered + 1, cases - covered)) if covered < cases else 1.0
+    low, high = binomial_interval(covered, cases)
     ratio = float(np.median([one.half / one.sub.error for one in group]))
     return Coverage(known, levels, cases, covered, low, high, ratio)
 
@@ -114,7 +122,7 @@ def _standing(one: Outcome) -> tuple[float, float]:
     return one.half / float(np.ptp(one.sub.f)), abs(best - one.sub.of.limit) / one.half
 
 
-def _coverages(known: Knowledge, judged: Sequence[Outcome]) -> dict[str, Any]:
+def _coverages(known: Knowledge | Companion, judged: Sequence[Outcome]) -> dict[str, Any]:
     found = {}
     for levels in range(2, MOST_LEVELS + 1):
         group = [one for one in finite(judged) if min(one.sub.levels, MOST_LEVELS) == levels]

@@ -52,7 +52,7 @@ FINER, EDGED_FINER = (2.0, 1.4), (1.7, 1.3)  # reference against coarsest: best,
 LAYERS = (14, 9)
 SMOOTH_LAYERS = (6, 5)  # stress read in smaller cells is spoilt by rounding
 SAME = 1e-11
-CURVED = 5.0  # cells of a reference along an arc, as Netgen counts them
+CURVED = {2: (5.0, 5.0), 3: (4.5, 3.5)}  # cells of a reference along an arc, as Netgen counts them
 
 
 def drawn_ladders(family: str, case: DrawnCase) -> Iterator[KnownLadder]:
@@ -96,7 +96,7 @@ class _Solved:
 
 
 def _is_sound(mesh: Any, degree: int) -> bool:
-    """Return whether no cell is inside out: coarse cells along a small radius may be, once they are curved."""
+    """Return whether no cell is inside out: coarse cells along a small radius may be, once curved."""
     mesh.Curve(degree)
     size = ng.Det(ng.specialcf.JacobianMatrix(mesh.dim))
     return bool(sampled(mesh, size, nodes(mesh.dim, 2))[1].min() > 0.0)
@@ -131,7 +131,8 @@ def _reference(case: DrawnCase, *, fine: bool) -> DrawnSolution:
     geometry = _geometry(case, towards_corners=True)
     finer = EDGED_FINER if case.edges else FINER
     size = case.size / finer[0 if fine else 1]
-    mesh = ng.Mesh(geometry.GenerateMesh(maxh=size, curvaturesafety=CURVED))
+    curved = CURVED[dimension][0 if fine else 1]
+    mesh = ng.Mesh(geometry.GenerateMesh(maxh=size, curvaturesafety=curved))
     if case.corners or case.edges:
         is_mild = case.exponent is None or dimension == 3
         mesh.RefineHP((SMOOTH_LAYERS if is_mild else LAYERS)[0 if fine else 1], 0.2)

@@ -17,8 +17,6 @@ from convergence.calibration.concentrated import concentrated
 from convergence.calibration.exact_values import exact_value
 from convergence.calibration.known_ladder import KnownLadder
 from convergence.calibration.mapped_case import STEEL, MappedCase, MappedReading
-from convergence.calibration.mapped_plane_cases import plane_cases
-from convergence.calibration.mapped_solid_cases import solid_cases
 from convergence.calibration.perturbed import perturbed
 from convergence.corner import Corner
 from convergence.corners.singular_corners import singular_corners
@@ -59,13 +57,7 @@ USEFUL = 1e-3
 PERTURBED = "perturbed"
 
 
-def mapped_ladders() -> Iterator[KnownLadder]:
-    """Yield all ladders of all cases."""
-    for case in (*plane_cases(), *solid_cases()):
-        yield from ladders_of(case)
-
-
-def ladders_of(case: MappedCase) -> Iterator[KnownLadder]:
+def mapped_ladders(case: MappedCase) -> Iterator[KnownLadder]:
     """Yield the ladders of a case: every reading with a limit or singular x shape x degree x plan."""
     problem: Problem = rooms.find("models", case.model)(**{"material": STEEL, **case.arguments})
     corners = singular_corners(problem)

@@ -58,17 +58,17 @@ def fitted_stretch(known: Sequence[Told], names: Sequence[str]) -> Stretch:
     sources = np.array([SIMILAR.get(one.sub.of.source, one.sub.of.source) for one in known])
     kinds = np.array([one.sub.of.kind for one in known])
     dimensions = np.array([one.sub.of.dimension for one in known])
-    needed = [_conformal(over, ASKED)]
+    needed = [conformal(over, ASKED)]
     for labels, asked in ((sources, ASKED), (kinds, LEAST_OF_A_KIND), (dimensions, LEAST_OF_A_KIND)):
         groups = [over[labels == label] for label in np.unique(labels)]
-        needed += [_conformal(group, asked) for group in groups if len(group) >= FEW]
+        needed += [conformal(group, asked) for group in groups if len(group) >= FEW]
     return {**stretch, "always": stretch["always"] + max(needed)}
 
 
 def _regressed(known: Sequence[Told], names: Sequence[str]) -> Stretch:
     rows = np.array([[one.facts.get(name, 0.0) for name in names] for one in known])
     ratios = np.array([one.miss / one.facts[UNIT] for one in known])
-    found = _quantile_regression(rows, np.log(np.maximum(ratios, LEAST_ERROR)), family_weights(known))
+    found = quantile_regression(rows, np.log(np.maximum(ratios, LEAST_ERROR)), family_weights(known))
     return dict(zip(names, found.tolist(), strict=True))
 
 
@@ -92,13 +92,13 @@ def family_weights(known: Sequence[Told]) -> np.ndarray:
     return np.asarray(1.0 / counts[index])
 
 
-def _conformal(over: np.ndarray, asked: float) -> float:
+def conformal(over: np.ndarray, asked: float) -> float:
     """Return the value that a share of all, the next one included, does not exceed."""
     rank = int(np.ceil(asked * (len(over) + 1)))
     return float(np.sort(over)[min(rank, len(over)) - 1])
 
 
-def _quantile_regression(rows: np.ndarray, y: np.ndarray, weights: np.ndarray) -> np.ndarray:
+def quantile_regression(rows: np.ndarray, y: np.ndarray, weights: np.ndarray) -> np.ndarray:
     """Return β by majorisation (Hunter & Lange 2000), drawn a little towards a constant alone."""
     weights = weights * len(y) / weights.sum()
     drawn = np.diag(RIDGE * rows.var(axis=0))

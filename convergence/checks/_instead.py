@@ -49,7 +49,8 @@ class Instead:
 
     @property
     def half_width(self) -> float:
-        return 0.5 * (self.high - self.low)
+        """Return how far the interval reaches from the value, which need not be its middle."""
+        return max(self.high - self.value, self.value - self.low)
 
     def word(self, tolerance: float) -> VerdictWord:
         """Return the verdict against a tolerance that is a share of the value."""

@@ -18,13 +18,15 @@ def default_folder(name: str) -> Path:
 
 
 def keep_study(study: Study, folder: Path) -> None:
-    """Copy the study, and its table where it has one, so that the folder can be judged by itself."""
+    """Copy the study, and its tables where it has some, so that the folder can be judged by itself."""
     folder.mkdir(parents=True, exist_ok=True)
     write_text(folder / STUDY, study.text)
-    if study.table_file:
-        copy = folder / study.table_file.name
-        if not (copy.exists() and copy.samefile(study.table_file)):
-            shutil.copyfile(study.table_file, copy)
+    for each in (study, study.companion):
+        if each is None or each.table_file is None:
+            continue
+        copy = folder / each.table_file.name
+        if not (copy.exists() and copy.samefile(each.table_file)):
+            shutil.copyfile(each.table_file, copy)
 
 
 def same_study(study: Study, ladder: Ladder, path: Path) -> Ladder:

@@ -10,7 +10,7 @@ from convergence.dimensions import SYSTEMS, Units
 from convergence.errors import Fault, InputError, nearest
 from convergence.intake.ladder_file import is_ladder_file, read_ladder
 from convergence.intake.table import read_table
-from convergence.results import Facts, Findings, Kind, Ladder
+from convergence.results import Companion, Facts, Findings, Kind, Ladder
 from convergence.study import Study, load
 
 
@@ -79,17 +79,26 @@ def judge_saved(study: Study, folder: Path) -> Judged | JudgedCases:
 
 
 def _judged_ladder(study: Study, folder: Path) -> Judged:
-    path = folder / LADDER
+    second = study.companion
+    return _judged(study, _solved(study, folder), _solved(second, folder) if second else None)
+
+
+def _solved(study: Study, folder: Path) -> Ladder:
+    """Return the ladder of a study in the folder of its run."""
+    path = folder / study.subfolder / LADDER
     if not path.is_file():
         raise InputError([Fault(str(path), "nothing solved yet", f"meshassay run {study.file}")])
-    ladder = replace(same_study(study, read_ladder(path), path), source=str(path))
-    return _judged(study, ladder)
+    return replace(same_study(study, read_ladder(path), path), source=str(path))
 
 
-def _judged(study: Study, ladder: Ladder) -> Judged:
+def _judged(study: Study, ladder: Ladder, second: Ladder | None) -> Judged:
     from convergence.judgement import facts_of, judge
 
-    findings = judge(ladder, study.quantities, facts_of(study), study.title)
+    companion = None
+    if study.companion and second:
+        companion = Companion(second, study.companion.quantities, study.companion.cells)
+        ladder = replace(ladder, remarks=ladder.remarks + second.remarks)
+    findings = judge(ladder, study.quantities, facts_of(study), study.title, companion)
     return Judged(findings, study.name, study.units, study.text)
 
 
@@ -119,7 +128,7 @@ def _judged_study(study: Study, folder: Path, said: Said) -> Judged | JudgedCase
         what = "--kind, --degree, --tolerance and --dimension are for bare tables"
         raise InputError([Fault(str(study.file), what, "write them in the study")])
     if study.table:
-        return _judged(study, study.table)
+        return _judged(study, study.table, study.companion.table if study.companion else None)
     return judge_saved(study, folder)
 
 

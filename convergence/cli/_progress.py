@@ -8,16 +8,17 @@ from convergence.forecast import forecast
 from convergence.results import Level
 
 
-def follow(levels: Iterable[Level], unknowns: Sequence[int]) -> None:
+def follow(levels: Iterable[Level], unknowns: Sequence[int], companion: str = "") -> None:
     """Draw levels until there are no more; say on a terminal how far it is, elsewhere nothing.
 
-    `unknowns` has the number of unknowns of every level that was asked for.
+    `unknowns` has the number of unknowns of every level that was asked for; `companion` is the word before
+    the levels of a companion.
     """
     from rich.console import Console
 
     screen = Console(stderr=True, highlight=False)
-    total = len(unknowns)
-    status = screen.status(f"level 1 of {total}{ahead([], unknowns)}") if screen.is_terminal else None
+    total, word = len(unknowns), f"{companion} level".lstrip()
+    status = screen.status(f"{word} 1 of {total}{ahead([], unknowns)}") if screen.is_terminal else None
     holding: AbstractContextManager[object] = status or nullcontext()
     solved: list[Level] = []
     with holding:
@@ -26,9 +27,9 @@ def follow(levels: Iterable[Level], unknowns: Sequence[int]) -> None:
             if not status:
                 continue
             used = f"{level.seconds:.1f} s" + memory_text(",", level.memory)
-            screen.print(f"level {len(solved)} of {total}: {level.dofs:,} unknowns, {used}")
+            screen.print(f"{word} {len(solved)} of {total}: {level.dofs:,} unknowns, {used}")
             if len(solved) < total:
-                status.update(f"level {len(solved) + 1} of {total}{ahead(solved, unknowns)}")
+                status.update(f"{word} {len(solved) + 1} of {total}{ahead(solved, unknowns)}")
 
 
 def ahead(solved: Sequence[Level], unknowns: Sequence[int]) -> str:

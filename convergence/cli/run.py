@@ -1,5 +1,6 @@
 """`meshassay run STUDY`: solve the ladder of a study, judge it, write the report."""
 
+import time
 from dataclasses import replace
 from pathlib import Path
 
@@ -22,7 +23,8 @@ def run(study: Path, out: Path | None, budgets: tuple[str, ...], as_json: bool) 
 
     Each level is kept when it is solved: a run that was stopped goes on where it was. A table study
     has nothing to solve; its table is judged. A level that would not fit in memory is not begun. The load
-    cases of a study are solved together; each has a report of its own in the folder of its name.
+    cases of a study are solved together; each has a report of its own in the folder of its name. A companion
+    is climbed after the ladder, with what is left of the budget.
     """
     from convergence.cli._budget import budget_of
     from convergence.cli._folder import LADDER, default_folder, keep_study
@@ -37,12 +39,17 @@ def run(study: Path, out: Path | None, budgets: tuple[str, ...], as_json: bool) 
     asked = load(study)
     folder = out or default_folder(asked.name)
     keep_study(asked, folder)
-    if asked.table:
-        write_ladder(replace(asked.table, fingerprint=asked.fingerprint), folder / LADDER)
-    elif asked.ladder:
-        from convergence.climbing import climb, unknowns
+    begun = time.perf_counter()
+    for each in filter(None, (asked, asked.companion)):
+        if each.table:
+            place = folder / each.subfolder
+            place.mkdir(exist_ok=True)
+            write_ladder(replace(each.table, fingerprint=each.fingerprint), place / LADDER)
+        else:
+            from convergence.climbing import climb, unknowns
 
-        follow(climb(asked, folder, budget), unknowns(asked))
+            left = replace(budget, seconds=budget.seconds - (time.perf_counter() - begun))
+            follow(climb(each, folder, left), unknowns(each), each.subfolder)
     judged = judge_saved(asked, folder)
     page = report(judged, folder)
     if as_json:

@@ -11,11 +11,14 @@ from functools import cached_property
 import numpy as np
 
 from convergence.histories.evidence import evidence
-from convergence.histories.laws import IS_GROWING, ORDERS
+from convergence.histories.laws import IS_GROWING, ORDERS, SCATTERS
 
 TINY = 1e-300
 SPREAD = np.logspace(-4.0, 3.5, 50)
-FIXED_ORDERS = (0.25, 0.5, 0.75, 1.0, 1.25, 1.5, 2.0, 2.5, 3.0, 4.0, 5.0)
+FIXED_ORDERS = (
+    *(-1.0, -0.75, -0.5, -0.25, -0.1),
+    *(0.25, 0.5, 0.75, 1.0, 1.25, 1.5, 2.0, 2.5, 3.0, 4.0, 5.0),
+)
 AROUND = np.array([-6.0, -3.0, -1.5, -0.7, -0.3, -0.1, 0.0, 0.1, 0.3, 0.7, 1.5, 3.0, 6.0])
 
 
@@ -89,13 +92,17 @@ def belief(
 
 
 def candidates(h: np.ndarray, f: np.ndarray) -> np.ndarray:
-    """Return limits to weigh: around the finest value at all distances, and around those of fixed orders."""
+    """Return limits to weigh: around the finest value at all distances, and around those of fixed orders.
+
+    The latter in steps of what the misfit, or the least scatter, leaves open: evidence is that narrow there.
+    """
     step = float(np.abs(np.diff(f)).max())
     found = [f[-1:], f[-1] + step * SPREAD, f[-1] - step * SPREAD]
     for order in FIXED_ORDERS:
         weight = (h[-1] / h) ** order
         rows = np.stack([weight, np.ones_like(weight)], axis=1)
         (limit, size), *_ = np.linalg.lstsq(rows, f * weight, rcond=None)
-        scatter = np.linalg.norm(f * weight - rows @ (limit, size)) / np.linalg.norm(weight)
-        found.append(limit + max(scatter, 1e-3 * abs(size), 1e-6 * step) * AROUND)
+        misfit = np.linalg.norm(f * weight - rows @ (limit, size))
+        width = max(misfit, SCATTERS[0] * abs(size)) / np.linalg.norm(weight - weight.mean())
+        found.append(limit + max(width, 1e-6 * step) * AROUND)
     return np.unique(np.concatenate(found))

@@ -37,15 +37,18 @@ def calibrated(
     taught = table()
     h, f = h[-MOST_LEVELS:], f[-MOST_LEVELS:]
     kind = kind if kind in taught.weights else "unknown"
-    found = believed(h, f, taught, kind, degree, resolution)
+    finest, span = float(f[-1]), float(np.ptp(f))
+    shifted = (f - finest) / span
+    found = believed(h, shifted, taught, kind, degree, resolution / span)
     known, levels = knowledge(kind, degree), levels_key(len(f))
-    told = facts(found, h, f, kind, degree)
-    half = max(half_width(told, taught.stretch[known][levels]), resolution)
+    told = facts(found, h, shifted, kind, degree)
+    half = max(span * half_width(told, taught.stretch[known][levels]), resolution)
+    limit = finest + span * found.limit
     low, high = (found.order(share) for share in ORDER_SHARES)
     return Calibrated(
-        limit=found.limit,
-        low=found.limit - half,
-        high=found.limit + half,
+        limit=limit,
+        low=limit - half,
+        high=limit + half,
         order_low=low,
         order_high=high,
         growth=_growth(found, taught.growth[known], len(f)),

@@ -17,6 +17,7 @@ import numpy as np
 
 from convergence.coverage import Coverage, Knowledge
 from convergence.histories.laws import COURSES, SCATTERS
+from convergence.histories.promise import Promise
 
 TABLE = Path(__file__).with_name("table.json")
 OUTCOMES = Path(__file__).with_name("outcomes.csv.gz")
@@ -29,6 +30,7 @@ class Table:
     """What the bank taught. `growing` are the weights of the laws without limit, of even odds.
 
     `growth` has, by the state of knowledge, the log odds above which growth is "shown" and "possible".
+    `next_mesh` has what a finer mesh may be promised to do, by class.
     """
 
     made_of: Mapping[str, Any]
@@ -37,6 +39,7 @@ class Table:
     stretch: Mapping[str, Mapping[str, Mapping[str, float]]]
     growth: Mapping[str, Mapping[str, float]]
     coverage: Mapping[str, Mapping[str, Coverage]]
+    next_mesh: Mapping[str, Promise]
 
 
 def knowledge(kind: str, degree: int | None) -> Knowledge:
@@ -61,7 +64,11 @@ def table() -> Table:
 
 def read_table(path: Path) -> Table:
     """Return the table of a file."""
-    found = json.loads(path.read_text(encoding="utf-8"))
+    return as_table(json.loads(path.read_text(encoding="utf-8")))
+
+
+def as_table(found: Mapping[str, Any]) -> Table:
+    """Return the table of what its file holds."""
     shape = (len(COURSES), len(SCATTERS))
     return Table(
         made_of=found["made_of"],
@@ -73,6 +80,7 @@ def read_table(path: Path) -> Table:
             known: {levels: Coverage(**counts) for levels, counts in by_levels.items()}
             for known, by_levels in found["coverage"].items()
         },
+        next_mesh={name: Promise(**bound) for name, bound in found["next_mesh"].items()},
     )
 
 

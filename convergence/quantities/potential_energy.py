@@ -9,8 +9,9 @@ from typing import Any
 
 from convergence.corner import Corner
 from convergence.dimensions import Energy
-from convergence.fem.problem import AnyPart
+from convergence.fem.problem import AnyPart, Problem
 from convergence.fem.solution import Solution
+from convergence.quantities._side import falls
 from convergence.results import Kind
 
 KIND: Kind = "energy"
@@ -24,6 +25,11 @@ def formal_order(degree: int, shape: str, arguments: Mapping[str, Any]) -> float
 def covers(part: AnyPart, corner: Corner, arguments: Mapping[str, Any]) -> bool:
     """Return whether a force acts on a point, which leaves the energy without a limit."""
     return corner.exponent <= 0.0
+
+
+def side(problem: Problem, arguments: Mapping[str, Any]) -> int:
+    """Return -1 where the limit is never above the value: meshes follow what supports prescribe."""
+    return -int(falls(problem))
 
 
 def potential_energy(solution: Solution) -> Energy:

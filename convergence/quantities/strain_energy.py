@@ -9,9 +9,10 @@ from typing import Annotated, Any
 
 from convergence.corner import Corner
 from convergence.dimensions import Energy, RegionName
-from convergence.fem.problem import AnyPart
+from convergence.fem.problem import AnyPart, Problem
 from convergence.fem.recovery import element_energy
 from convergence.fem.solution import Solution
+from convergence.quantities._side import is_rigid, rises
 from convergence.results import Kind
 
 KIND: Kind = "energy"
@@ -27,6 +28,11 @@ def covers(part: AnyPart, corner: Corner, arguments: Mapping[str, Any]) -> bool:
     region = arguments.get("region")
     inside = region is None or region not in part.regions or part.region_points(region) & set(corner.points)
     return corner.exponent <= 0.0 and bool(inside)
+
+
+def side(problem: Problem, arguments: Mapping[str, Any]) -> int:
+    """Return 1 where the limit is never below the value: loads alone on supports that hold still."""
+    return int(arguments.get("region") is None and is_rigid(problem) and rises(problem))
 
 
 def strain_energy(

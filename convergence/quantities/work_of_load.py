@@ -12,8 +12,9 @@ from typing import Annotated, Any
 from convergence.corner import Corner
 from convergence.dimensions import BoundaryName, Energy
 from convergence.fem.load_vector import load_vector
-from convergence.fem.problem import AnyPart
+from convergence.fem.problem import AnyPart, Problem
 from convergence.fem.solution import Solution
+from convergence.quantities._side import rises
 from convergence.results import Kind
 
 KIND: Kind = "energy"
@@ -27,6 +28,11 @@ def formal_order(degree: int, shape: str, arguments: Mapping[str, Any]) -> float
 def covers(part: AnyPart, corner: Corner, arguments: Mapping[str, Any]) -> bool:
     """Return whether a force acts on a point, or a support at a point lets the part move without a limit."""
     return corner.exponent <= 0.0 and (arguments.get("boundary") is None or "support" in corner.sides)
+
+
+def side(problem: Problem, arguments: Mapping[str, Any]) -> int:
+    """Return 1 where the limit is never below the value: loads alone on supports that hold still."""
+    return int(arguments.get("boundary") is None and rises(problem))
 
 
 def work_of_load(

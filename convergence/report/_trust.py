@@ -4,15 +4,16 @@ import math
 from collections.abc import Mapping
 
 from convergence import numbers
-from convergence.coverage import Coverage, Knowledge
+from convergence.coverage import WITH_COMPANION, Companion, Coverage, Knowledge
 from convergence.histories.width import MOST_LEVELS
 from convergence.results import Findings, Verdict
 
 AIM = 0.95
-KNOWN: Mapping[Knowledge, str] = {
+KNOWN: Mapping[Knowledge | Companion, str] = {
     "nothing": "kind and degree not known",
     "kind": "kind known, degree not",
     "kind and degree": "kind and degree known",
+    WITH_COMPANION: "kind and degree known, with a companion ladder",
 }
 
 
@@ -22,11 +23,14 @@ def half_width(verdict: Verdict) -> float:
 
 
 def best_text(verdict: Verdict) -> str:
-    """Return the best estimate with its half-width, or "none"."""
+    """Return the best estimate, with its half-width where the interval is centred on it, or "none"."""
     half = half_width(verdict)
     if verdict.word == "singular" or not (math.isfinite(verdict.limit) and math.isfinite(half)):
         return numbers.NONE
-    return f"{numbers.rounded(verdict.limit, half)} ± {numbers.significant(half, 2)}"
+    best = numbers.rounded(verdict.limit, half)
+    if verdict.value in (verdict.low, verdict.high):  # the limit is on one side of the value by theory
+        return best
+    return f"{best} ± {numbers.significant(half, 2)}"
 
 
 def levels_text(coverage: Coverage) -> str:

@@ -6,7 +6,7 @@ from collections.abc import Mapping
 from convergence import numbers
 from convergence.envelope import SEVERITY, Envelope, worst_first
 from convergence.report import _trust
-from convergence.results import Findings, Ladder, Quantity, Verdict
+from convergence.results import Companion, Findings, Ladder, Quantity, Verdict
 
 
 def anchor(findings: Findings, quantity: Quantity) -> str:
@@ -87,7 +87,7 @@ def next_step(verdict: Verdict, length: str = "") -> str:
         return "report another quantity"
     if math.isfinite(verdict.next_h):
         return f"h = {with_unit(numbers.compact(verdict.next_h, 3), length)}"
-    return "see the reasons"
+    return "refine in steps" if verdict.word == "refine" else "see the reasons"
 
 
 def condition(ladder: Ladder, verdict: Verdict, length: str) -> str:
@@ -106,7 +106,7 @@ def condition(ladder: Ladder, verdict: Verdict, length: str) -> str:
 def statement(findings: Findings, quantity: Quantity, length: str) -> str:
     """Return the sentence that may be quoted: conditions first, then the number, then the verdict."""
     verdict = findings.verdicts[quantity.name]
-    start = f"{condition(findings.ladder, verdict, length)}, {quantity.name}"
+    start = f"{condition(findings.ladder, verdict, length)}{_beside(findings.companion)}, {quantity.name}"
     value = with_unit(finest_text(verdict), quantity.unit)
     if verdict.word == "singular":
         return (
@@ -127,6 +127,12 @@ def statement(findings: Findings, quantity: Quantity, length: str) -> str:
     width = f"The finest value is uncertain by {shown}, {side} the tolerance of {accepted}"
     said = f"{start} {where}. {width}. {_end(verdict, length)}"
     return f"{said} {coverage}".rstrip()
+
+
+def _beside(companion: Companion | None) -> str:
+    if companion is None:
+        return ""
+    return f", and on {numbers.several(len(companion.ladder.levels), 'level')} of {companion.cells}"
 
 
 def _expected(quantity: Quantity, verdict: Verdict) -> str:

@@ -101,7 +101,7 @@ def _pictures(findings: Findings, quantity: Quantity, stem: str, length: str) ->
         ]
     else:
         drawn = [
-            value_figure(f"{stem}-value", quantity, verdict, ladder, length),
+            value_figure(f"{stem}-value", quantity, verdict, ladder, length, findings.companion),
             error_figure(f"{stem}-order", quantity, verdict, ladder, length),
             standing_figure(f"{stem}-standing", quantity, verdict, ladder, outcomes()),
         ]

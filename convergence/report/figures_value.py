@@ -8,7 +8,7 @@ import numpy as np
 from convergence import numbers
 from convergence.report._axes import bracket, cell_size_axis, middle, value_ticks
 from convergence.report._picture import BLUE, GREEN, GREY, INK, RED, Picture, draw
-from convergence.results import Ladder, Quantity, Verdict
+from convergence.results import Companion, Ladder, Quantity, Verdict
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -18,14 +18,20 @@ SMALL = 0.25  # intervals below this share of the picture are drawn enlarged bes
 
 
 def value_figure(
-    stem: str, quantity: Quantity, verdict: Verdict, ladder: Ladder, length: str
+    stem: str,
+    quantity: Quantity,
+    verdict: Verdict,
+    ladder: Ladder,
+    length: str,
+    companion: Companion | None = None,
 ) -> Picture | None:
     """Return the figure, None where no level has a value."""
     values = ladder.column(quantity.name)
     known = np.isfinite(values)
     if not known.any():
         return None
-    low, high, cut = _view(values[known], verdict)
+    second = companion.ladder.column(quantity.name) if companion else np.zeros(0)
+    low, high, cut = _view(np.append(values[known], second[np.isfinite(second)]), verdict)
     order = _order(verdict, ladder.h[known], values[known])
     enlarged = verdict.high - verdict.low < SMALL * (high - low)
 
@@ -39,16 +45,19 @@ def value_figure(
         if not math.isnan(order):
             _curve(axes, verdict.limit, ladder.h[known][-1], values[known][-1], order)
         axes.plot(ladder.h[known], values[known], "o", color=INK, label="levels", zorder=4)
+        if companion:
+            _companion(axes, companion, second)
         value_ticks(axes, low, high)
         axes.set_ylabel(f"{middle(quantity.name)}{bracket(quantity.unit)}")
         figure.legend(loc="outside lower center", ncols=3)
 
-    missing = int((~known).sum())
     caption = "Value on every level."
-    if missing:
+    if missing := int((~known).sum()):
         caption = f"Value; {numbers.several(missing, 'level')} without one."
+    if companion:
+        caption += f" Squares: the companion ladder of {companion.cells}."
     if not math.isnan(verdict.low):
-        caption += " Shaded: the interval, centred on the best estimate of the limit (diamond)."
+        caption += " Shaded: the interval, and in it the best estimate of the limit (diamond)."
     if enlarged:
         caption += " Right: enlarged, the dot is the finest value."
     if not math.isnan(order):
@@ -57,6 +66,13 @@ def value_figure(
     levels = numbers.several(int(known.sum()), "level")
     alt = f"{quantity.name} against the cell size on {levels}; verdict {verdict.word}"
     return draw(stem, (5.2, 4.1), alt, caption, paint)
+
+
+def _companion(axes: "Axes", companion: Companion, values: np.ndarray) -> None:
+    h = companion.ladder.h
+    coarse, fine = axes.get_xlim()
+    axes.set_xlim(max([coarse, *(1.1 * h)]), min([fine, *(h / 1.4)]))
+    axes.plot(h, values, "s", color=INK, markerfacecolor="none", label="companion", zorder=4)
 
 
 def _view(values: np.ndarray, verdict: Verdict) -> tuple[float, float, list[str]]:

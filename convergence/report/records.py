@@ -12,7 +12,7 @@ from convergence.coverage import Coverage
 from convergence.envelope import envelope
 from convergence.report._trust import half_width
 from convergence.report.sections_instead import instead_objects
-from convergence.results import Check, Estimate, Findings, Level, Quantity, Verdict
+from convergence.results import Check, Companion, Estimate, Findings, Level, Quantity, Verdict
 
 PACKAGES = ("numpy", "scipy", "scikit-fem")
 
@@ -125,6 +125,13 @@ def _level(level: Level) -> dict[str, Any]:
     }
 
 
+def _companion(companion: Companion | None) -> dict[str, Any] | None:
+    if companion is None:
+        return None
+    levels = [_level(level) for level in companion.ladder.levels]
+    return {"cells": companion.cells, "table": levels}
+
+
 def _check(check: Check) -> dict[str, Any]:
     return {
         "name": check.name,
@@ -169,6 +176,7 @@ def findings_object(findings: Findings) -> dict[str, Any]:
         "fingerprint": findings.ladder.fingerprint,
         "remarks": list(findings.ladder.remarks),
         "table": [_level(level) for level in findings.ladder.levels],
+        "companion": _companion(findings.companion),
         "checks": [_check(check) for check in findings.checks],
         "facts": _facts(findings),
         "versions": versions(),

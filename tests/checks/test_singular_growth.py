@@ -164,11 +164,13 @@ def test_only_stresses_have_something_instead(kind: str) -> None:
     assert instead(levels_of(4), facts, "f") == () and missing(levels_of(4), facts, "f") == ()
 
 
-def test_two_levels_give_values_without_intervals() -> None:
-    findings = judged(levels_of(2))
+@pytest.mark.parametrize("levels", [1, 2])
+def test_two_levels_prove_nothing(levels: int) -> None:
+    """One gives values alone, two an interval for orientation; neither settles a value."""
+    findings = judged(levels_of(levels))
     found = instead(findings.ladder, findings.facts, "f")
-    assert found and all(one.word(0.05) == "unproven" for one in found)
-    assert all("without an interval" in one.words for one in found)
+    assert found and all(one.word(1e9) == "unproven" for one in found)
+    assert all(("without an interval" in one.words) == (levels == 1) for one in found)
 
 
 @pytest.mark.parametrize("change", [lambda f: f, lambda f: -f])

@@ -92,7 +92,7 @@ def test_how_the_interval_is_found_fits_half_a_page(findings: Findings) -> None:
     """Half a page of A4 in 10.5 point holds 22 lines of 16 words beside a heading and a small table."""
     even = np.ones((len(COURSES), len(SCATTERS)))
     made = {"date": "2031-05-02", "families": ["arm", "bar"], "ladders": 3120, "sub_ladders": 12_345}
-    page = found_section(findings, Table(made, {"": even}, even, {}, {}, {}))
+    page = found_section(findings, Table(made, {"": even}, even, {}, {}, {}, {}))
     paragraphs = re.findall(r"<p>(.*?)</p>", page)
     assert len(" ".join(paragraphs).split()) < 22 * 16
     for words in ("12,345 of two", "2 families", "0.1 to 6", "3 to 200 %", "left out", "Not covered"):

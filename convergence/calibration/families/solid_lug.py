@@ -28,7 +28,7 @@ def solid_lug() -> list[DrawnCase]:
 
 
 def _pulled() -> DrawnCase:
-    side, crown = (0.0, 10.0, 0.0), (10.0, 0.0, 8.0)
+    side, nose = (0.0, 13.0, 0.0), (22.0, 0.0, 0.0)
     return DrawnCase(
         name="lug of the davit arm, pulled",
         kind="solid",
@@ -43,15 +43,15 @@ def _pulled() -> DrawnCase:
             mean_displacement("bore opens", "pressed", "x"),
             reaction("nose force", "nose", "y"),
             section_force("nose section", "nose", "y"),
-            stress("side of the bore", side, "xx"),
-            stress("side direct", (0.0, 10.0, 8.0), "xx", "direct"),
-            stress("crown", crown, "yy"),
+            stress("beside the bore", side, "xx"),
+            stress("side direct", (0.0, 13.0, 8.0), "xx", "direct"),
+            stress("nose stress", nose, "yy"),
             stress("shank", (-28.0, 13.0, 4.0), "xx"),
             peak("peak nodal", "von_mises"),
             peak("peak direct", "first_principal", "direct"),
             peak("peak gauss", "von_mises", "gauss"),
             peak("crown peak", "yy", near=(22.0, 0.0, 4.0), radius=7.0),
-            *linearised("ligament", side, (0.0, 22.0, 0.0), "xx"),
+            *linearised("ligament", (0.0, 10.5, 0.0), (0.0, 22.0, 0.0), "xx"),
         ),
     )
 
@@ -92,7 +92,7 @@ def _padeye() -> DrawnCase:
     """Return a padeye pulled at 45 degrees, its base in a corner of two frictionless walls."""
     turn = math.radians(45.0)
     loaded = (9.0 * math.cos(turn), 9.0 * math.sin(turn), 0.0)
-    toe = (-20.0, -26.0, 0.0)
+    toe = (-20.0, -22.0, 0.0)
     return DrawnCase(
         name="padeye pulled aslant",
         kind="solid",
@@ -104,7 +104,7 @@ def _padeye() -> DrawnCase:
         readings=(
             Reading("energy", "energy", "energy"),
             displacement("top", (0.0, 20.0, 0.0), "x"),
-            displacement("heel", (40.0, -34.0, 0.0), "y"),
+            displacement("heel", (40.0, -34.0, 0.0), "x"),
             mean_displacement("face", "outer", "x"),
             section_force("lifted", "bottom", "y"),
             section_force("shoved", "wall", "x"),

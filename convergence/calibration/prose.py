@@ -1,0 +1,177 @@
+"""The words of the calibration page."""
+
+from collections.abc import Mapping
+from typing import Any
+
+from convergence import numbers
+from convergence.calibration.make_up import LeftOut
+from convergence.calibration.promises import BOUNDED
+from convergence.calibration.stretches import ASKED, LEAST_OF_A_KIND
+from convergence.calibration.sub_ladders import BETTER_KNOWN, RATIOS
+from convergence.histories.laws import FALLING, SCATTERS
+from convergence.histories.width import CENTRAL
+
+METHOD = """## Method
+
+Every candidate L for the limit implies the error of every level, e = f - L. Such a history is weighed
+against error laws: e = c h^p / (1 + (h/k)^p), scattered by a share of itself, with orders p from {least:g}
+to {most:g}, a knee k above which cells are too large to see the place, {scatters} sizes of scatter, and
+growing laws that have no limit. The weights of the laws are learned from the bank
+(expectation-maximisation), by kind of quantity and degree where these are told. Summed over the laws this
+is a belief about the limit. Its median is the best estimate, half of its central {central} the unit of
+width. The unit is multiplied by exp(β·φ): φ are facts such as the spread of the belief, the last changes
+and the scatter; β is fitted by quantile regression to the true errors of the bank. A last (conformal)
+factor for each number of levels covers {asked} of every source of meshes, and at least {least_asked} of
+every kind of quantity and dimension. Shift and scale of the values change nothing; sizes count by their
+ratios.
+
+Measured is by leaving out: a sub-ladder is judged with weights, β and factor that were fitted without its
+family.
+"""
+
+SOURCES = """The ladders are of three sorts. *Remeshed*: a mesher (Netgen) asked for ever smaller cells.
+*Nested*: each cell of a drawn part cut along its edges; counted with them are the *similar* meshes of
+this program's own mapped parts, at ratios 2, 1.5 and irregular ones. *Perturbed*: nested or similar
+meshes whose inner nodes are moved by up to a fifth of a cell. Sub-ladders are runs of 2 to 7 levels,
+every level, every second, every third or irregular choices, with ratios from {low:g} to {high:g}; of
+every family, kinds of quantity and numbers of levels come in equal parts, as far as there are enough.
+
+Limits are exact where there is a closed form. Otherwise they are read from a reference: for drawn parts a
+mesh refined geometrically towards corners, of degree 5 to 8; for mapped ones a quadratic mesh much finer
+than the ladder's and graded to the corners. A coarser reference bounds its error. A sub-ladder is judged
+only if the error of its finest value is {better:g} times that bound or more: of {with_limit:,} ladders
+with a limit, {too_good:,} have a finest value too good to be judged so, and only coarser runs of them
+count. Runs that hardly move (1e-7 of the value) are left out too. {never:,} ladders have no run in the
+measured sample, for these reasons or because a family's share was full. "Judged" and "singular" count
+sub-ladders with a limit and without one.
+
+Three readings were taken out of the bank after a first look at the results: the largest von Mises stress of
+a whole tapered arm, of a whole lug and along the lower side of a skew panel, 56 ladders. Their models have a
+singular corner, but on coarse meshes the largest stress stands elsewhere, and the values show that smooth
+place first (37.74, 37.78, 37.79, 37.79) and the corner late (93.8, 94.2, 99.3, 107.9, 116.0) or never. With
+them in, 16 of 423 singular sub-ladders of four levels and more (3.8 %) were called neither singular nor
+unproven from bare tables, and 15 of the 16 were theirs. So the shares under "Values without a limit" are
+those of peaks at the corner itself; a peak that has yet to move to a corner cannot be seen in a bare table.
+"""
+
+COVERAGE = """## Coverage, whole families left out
+
+{cases:,} sub-ladders with a limit. Ours: share of intervals that hold the limit (95 % binomial interval);
+median U/e about the best estimate / about the finest value, where U is the half-width and e the true
+error of the finest value. Aims: 95 %, and from three levels U/e of 4.5 at most from bare tables (4.5
+where the kind is known, 3.5 where kind and degree are); what falls short is **bold**. Published rules:
+share of the half-widths about the finest value that reach the limit, of those that were given; median
+U/e. They were run on the same sub-ladders and told the formal order. Tables by kind and the like are over
+three levels and more.
+
+Were the errors of a group draws from one normal distribution about zero, the narrowest half-width that
+covers 95 % of them would be 1.96 / 0.674 = 2.9 times the median error. A smaller median U/e needs a best
+estimate that is nearer than the finest value, or widths that follow the errors.
+
+![Coverage by group](calibration-coverage.svg)
+
+![Error over half-width](calibration-errors.svg)
+
+![U/e by levels](calibration-widths.svg)
+"""
+
+ANSWERS = """## Who answers at all
+
+A rule gives no half-width where its conditions do not hold. All sources together.
+"""
+
+COMPANION = """## A companion ladder
+
+Pairs of ladders of one quantity, of another degree or other cells, that end at nearly the same size:
+where both intervals meet, one stands for both. Coverage and U/e against the better of the two finest
+values, kind and degree known, families left out; pairs that do not meet have no interval. Aims: 95 % and
+U/e of 2; bold falls short.
+"""
+
+GROWTH = """## Values without a limit
+
+The odds of growing against falling laws tell them. From four levels a stress is called singular where the
+odds pass the first of these numbers, and growth stays possible above the second: {odds}. They were set on
+the whole bank, judged with families left out, so that {alarm} of the stresses with a limit lie above the
+first and {missed} of the singular ones below the second. A bare table says nothing of corners, so a
+stress whose growth is possible is *unproven*, unless its half-width is below {settled} of its value. A
+model that is known is asked for its corners instead. Where growth is faster than any corner's (λ < 0.2) a
+value is left unproven rather than called singular; such are counted as singular here. "Neither" may be
+called sound or refine. Aims at four levels and more: at most 2 % of the singular are neither, and at most
+2 % of those with a limit are called singular; bold falls short.
+"""
+
+PROMISE = """## The next mesh
+
+A finer size is promised to do where a bound on the half-width left says so: it holds in {bounded} of the
+steps, families counting the same. Held against finer levels of the bank's ladders at the tightest
+tolerance that would have been promised, each family by the bound of the others. Aim: 90 % are kept; bold
+falls short.
+"""
+
+SHORT = """## What falls short
+
+Every group of these tables, for each state of knowledge, that is covered below 95 %, and then, from three
+levels, every one whose median U/e is above its aim, about either value. "Beyond chance": 95 % lies above
+the binomial interval. Misses: which family (in a family: which kind) has most of them, what coverage is
+without it, and how far a miss is off in the median. Widths: the error of the best estimate over that of
+the finest value in the median (near one, the levels tell little of the limit, and no narrow interval can
+hold it), and who is widest.
+"""
+
+REMARKS = """## What these numbers are not
+
+- β and factor for a family were fitted without it, but to facts of the other families, and the weights
+  behind those facts were fitted without *their* family only: the family left out had a part in them.
+- Thresholds of growth, the choice of facts and constants such as the number of laws were made on the
+  whole bank.
+- Sub-ladders of a ladder share levels, and quantities of a part share meshes. The binomial intervals take
+  them for independent draws, so they are too narrow. The spread over families says more about a new part.
+- The families are ours. A part unlike all of them may be covered less.
+- Coverage is that of all such ladders, not the odds of one.
+"""
+
+
+def head(made_of: Mapping[str, Any]) -> str:
+    """Return the title and what the table was made of."""
+    families, ladders, subs = len(made_of["families"]), made_of["ladders"], made_of["sub_ladders"]
+    return f"""# Calibration of the interval
+
+Made {made_of["date"]} from {ladders:,} ladders of {families} families of parts; {subs:,} sub-ladders of them
+were measured. `make calibrate` makes bank, table and this page.
+"""
+
+
+def method() -> str:
+    """Return how an interval is found."""
+    return METHOD.format(
+        least=min(FALLING),
+        most=max(FALLING),
+        scatters=len(SCATTERS),
+        central=numbers.plain_percent(CENTRAL),
+        asked=numbers.plain_percent(ASKED),
+        least_asked=numbers.plain_percent(LEAST_OF_A_KIND),
+    )
+
+
+def bank(out: LeftOut) -> str:
+    """Return how the bank was made and what was left out."""
+    low, high = RATIOS
+    counts = {"with_limit": out.with_limit, "too_good": out.too_good, "never": out.never}
+    return "## The bank\n\n" + SOURCES.format(low=low, high=high, better=BETTER_KNOWN, **counts)
+
+
+def coverage(cases: int) -> str:
+    """Return what the tables of coverage show."""
+    return COVERAGE.format(cases=cases)
+
+
+def promise() -> str:
+    """Return how promises of the next mesh are held against the bank."""
+    return PROMISE.format(bounded=numbers.plain_percent(BOUNDED))
+
+
+def growth(odds: str, alarm: float, missed: float, settled: float) -> str:
+    """Return how growth is told, with the odds by state of knowledge."""
+    shares = {name: numbers.plain_percent(x) for name, x in (("alarm", alarm), ("missed", missed))}
+    return GROWTH.format(odds=odds, settled=numbers.plain_percent(settled), **shares)
