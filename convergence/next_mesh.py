@@ -107,7 +107,9 @@ def finer(ladder: Ladder, ratio: float, dimension: int) -> Mesh:
 
 
 def _promise(quantity: Quantity, found: Interval, ladder: Ladder) -> Promise | None:
-    """Return the promise for ladders like this one, None where the bank bears none out."""
+    """Return the promise for ladders like this one, None where the bank bears none out or changes grow."""
+    if found.behaviour.endswith("divergence"):
+        return None
     f = ladder.column(quantity.name)
     f = f[np.isfinite(f)]
     group = promise_class(quantity.kind, quantity.degree, found.half_width, abs(float(f[-1] - f[-2])))

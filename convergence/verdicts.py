@@ -78,8 +78,13 @@ def _word(
 
 
 def _may_grow(quantity: Quantity, found: Interval, facts: Facts) -> bool:
-    """Return whether a stress of an unknown model moves so much that growth without limit is possible."""
-    if facts.corners is not None or quantity.kind not in STRESS_KINDS or found.growth == "excluded":
+    """Return whether a value of an unknown model moves so much that growth without limit is possible.
+
+    What is no stress has a limit as a rule: there the levels must show growth.
+    """
+    if facts.corners is not None or found.growth == "excluded":
+        return False
+    if quantity.kind not in STRESS_KINDS and found.growth != "shown":
         return False
     return found.half_width > SETTLED * abs(found.value)
 

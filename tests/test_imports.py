@@ -178,7 +178,11 @@ def test_the_house_holds() -> None:
         ),
         ("models/lug.py", "from convergence.models import arm\n", "a member imports the member models.arm"),
         ("models/lug.py", "from . import arm\n", "models/lug.py:1: relative import"),
-        ("models/lug.py", "import matplotlib.pyplot as plt\n", "matplotlib outside bench, calibration, report"),
+        (
+            "models/lug.py",
+            "import matplotlib.pyplot as plt\n",
+            "matplotlib outside bench, calibration, report",
+        ),
         ("fem/mesh.py", "import ngsolve as ng\n", "ngsolve outside bench, calibration"),
         ("models/lug.py", "from netgen.occ import WorkPlane\n", "netgen outside bench, calibration"),
         ("calibration/bank.py", "print(1)\n", "calibration/bank.py:1: prints"),

@@ -52,7 +52,7 @@ FINER, EDGED_FINER = (2.0, 1.4), (1.7, 1.3)  # reference against coarsest: best,
 LAYERS = (14, 9)
 SMOOTH_LAYERS = (6, 5)  # stress read in smaller cells is spoilt by rounding
 SAME = 1e-11
-CURVED = {2: (5.0, 5.0), 3: (4.5, 3.5)}  # cells of a reference along an arc, as Netgen counts them
+CURVED = {2: (5.0, 5.0), 3: (5.0, 4.5)}  # cells of a reference along an arc, as Netgen counts them
 
 
 def drawn_ladders(family: str, case: DrawnCase) -> Iterator[KnownLadder]:

@@ -192,12 +192,16 @@ def _stated(answers: Sequence[Answer]) -> list[str]:
 def _promises(next_mesh: Mapping[str, Mapping[str, Any]]) -> str:
     rows = []
     for name, bound in next_mesh.items():
-        share = bound["kept"] / bound["cases"]
-        kept, low, high = (numbers.percent(x, PROBABILITY) for x in (share, bound["low"], bound["high"]))
-        stated = f"{_marked(kept, share < PROBABILITY)} ({_bare(low)} to {_bare(high)})"
+        stated = _kept(bound) if bound["cases"] else "none"
         rows.append([name.replace("_", " "), f"{bound['safety']:.2f}", f"{bound['cases']:,}", stated])
     head = ("class (kind/degree)", "bound on ratio × half-width left", "promises", "kept")
     return "\n".join([prose.promise(), _table(head, rows) if rows else "Not measured.\n"])
+
+
+def _kept(bound: Mapping[str, Any]) -> str:
+    share = bound["kept"] / bound["cases"]
+    kept, low, high = (numbers.percent(x, PROBABILITY) for x in (share, bound["low"], bound["high"]))
+    return f"{_marked(kept, share < PROBABILITY)} ({_bare(low)} to {_bare(high)})"
 
 
 def _short(of: Sequence[Group]) -> str:

@@ -14,7 +14,7 @@ from convergence.calibration.sub_ladders import SubLadder
 from convergence.histories.width import UNIT, half_width
 
 ASKED = 0.955
-LEAST_OF_A_KIND = 0.93
+OF_A_KIND = 0.93
 REGRESSED = 0.955
 STEPS = 80
 NEAR = 1e-3
@@ -22,6 +22,7 @@ RIDGE = 20.0  # ladders that would stand for facts without effect
 FOLDS = 6
 LEAST_ERROR = 1e-4
 FEW = 50
+MANY = 150  # in fewer ladders of a kind or dimension a handful of one family would decide
 SIMILAR = {"similar": "nested"}
 Facts = Mapping[str, float]
 Stretch = dict[str, float]
@@ -59,9 +60,13 @@ def fitted_stretch(known: Sequence[Told], names: Sequence[str]) -> Stretch:
     kinds = np.array([one.sub.of.kind for one in known])
     dimensions = np.array([one.sub.of.dimension for one in known])
     needed = [conformal(over, ASKED)]
-    for labels, asked in ((sources, ASKED), (kinds, LEAST_OF_A_KIND), (dimensions, LEAST_OF_A_KIND)):
+    for labels, asked, few in (
+        (sources, ASKED, FEW),
+        (kinds, OF_A_KIND, MANY),
+        (dimensions, OF_A_KIND, MANY),
+    ):
         groups = [over[labels == label] for label in np.unique(labels)]
-        needed += [conformal(group, asked) for group in groups if len(group) >= FEW]
+        needed += [conformal(group, asked) for group in groups if len(group) >= few]
     return {**stretch, "always": stretch["always"] + max(needed)}
 
 

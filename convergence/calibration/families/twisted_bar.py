@@ -108,7 +108,7 @@ def _sagging() -> DrawnCase:
         name="elliptic bar that sags",
         kind="solid",
         shape=_bar(section, length),
-        size=9.5,
+        size=10.5,
         held={"min_x": {"x": 0.0}, "min_z": {"z": 0.0}, "max_z": {"x": 0.0, "y": 0.0}},
         body=(0.0, -7.7e-5 * 60.0, 0.0),
         levels=6,
