@@ -123,8 +123,10 @@ REMARKS = """## What these numbers are not
 
 - β and factor for a family were fitted without it, but to facts of the other families, and the weights
   behind those facts were fitted without *their* family only: the family left out had a part in them.
-- Thresholds of growth, the choice of facts and constants such as the number of laws were made on the
-  whole bank.
+- Thresholds of growth, the choice of facts and constants such as the least size of a group that is covered by
+  itself were made on the whole bank, some of them after earlier coverages had been seen.
+- The nested ladders are mostly similar meshes of mapped parts, which are the regular ones: look at the rows
+  of drawn parts too.
 - Sub-ladders of a ladder share levels, and quantities of a part share meshes. The binomial intervals take
   them for independent draws, so they are too narrow. The spread over families says more about a new part.
 - The families are ours. A part unlike all of them may be covered less.
