@@ -71,7 +71,7 @@ def interval(
     elif manner == "constant" or np.ptp(y) <= noise:
         found = _still(y, noise)
     else:
-        found = calibrated(x, y, kind=kind, degree=degree, resolution=noise)
+        found = calibrated(x, y, kind=kind, degree=degree, resolution=0.5 * noise)
     estimates = {
         name: rooms.find("estimators", name)(x, y, formal_order=formal_order)
         for name in rooms.names("estimators")

@@ -102,7 +102,7 @@ def _half_width(
 ) -> float:
     """Return the half-width of the calibrated interval about the finest value."""
     h, f = ladder.h[levels][-MOST_LEVELS:], ladder.f[levels][-MOST_LEVELS:]
-    found = believed(h, f, taught, kind, degree, 0.0)
+    found = believed(h, f, taught, kind, degree)
     stretch = taught.stretch[knowledge(kind, degree)][levels_key(len(f))]
     return half_width(facts(found, h, f, kind, degree), stretch) + abs(found.limit - float(f[-1]))
 

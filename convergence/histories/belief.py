@@ -81,12 +81,10 @@ class Belief:
         return float(np.interp(share, middle / shares.sum(), orders))
 
 
-def belief(
-    h: np.ndarray, f: np.ndarray, weights: np.ndarray, *, caution: float, resolution: float = 0.0
-) -> Belief:
+def belief(h: np.ndarray, f: np.ndarray, weights: np.ndarray, *, caution: float) -> Belief:
     """Return the belief from two levels or more; weights (courses, scatters) of the error laws."""
     limits = candidates(h, f)
-    found = evidence(h, f, limits, resolution) * (3.0 / len(f)) ** caution
+    found = evidence(h, f, limits) * (3.0 / len(f)) ** caution
     likely = np.exp(found - found.max())
     return Belief(limits, likely * weights)
 

@@ -1,7 +1,7 @@
 """The calibrated interval of one ladder: its belief, stretched, and the coverage measured for its like."""
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Literal
 
 import numpy as np
@@ -12,6 +12,7 @@ from convergence.histories.table import CAUTION, Table, key, knowledge, table
 from convergence.histories.width import facts, half_width, levels_key
 
 ORDER_SHARES = (0.025, 0.975)
+NEGLIGIBLE = 1e-6  # of the span of the values
 LEAST_TO_SHOW = 4  # levels
 MOST_LEVELS = 7  # the finest ones count
 Growth = Literal["shown", "possible", "excluded"]
@@ -33,16 +34,30 @@ class Calibrated:
 def calibrated(
     h: np.ndarray, f: np.ndarray, *, kind: str = "unknown", degree: int | None = None, resolution: float = 0.0
 ) -> Calibrated:
-    """Return what two or more different values over falling sizes say; `resolution` as in `evidence`."""
-    taught = table()
+    """Return what two or more different values over falling sizes say.
+
+    `resolution` is how far rounding or the solver may have moved each value: the interval then spans those of
+    the values moved so, up and down in turn, where changes from level to level are read worst.
+    """
     h, f = h[-MOST_LEVELS:], f[-MOST_LEVELS:]
+    found = _read(h, f, kind, degree)
+    if resolution <= NEGLIGIBLE * float(np.ptp(f)):
+        return found
+    turns = resolution * (-1.0) ** np.arange(len(f))
+    moved = [_read(h, f + way * turns, kind, degree) for way in (-1.0, 1.0) if np.ptp(f + way * turns) > 0.0]
+    ends = [abs(end - found.limit) for one in (found, *moved) for end in (one.low, one.high)]
+    half = max(*ends, resolution)
+    return replace(found, low=found.limit - half, high=found.limit + half)
+
+
+def _read(h: np.ndarray, f: np.ndarray, kind: str, degree: int | None) -> Calibrated:
+    taught = table()
     kind = kind if kind in taught.weights else "unknown"
     finest, span = float(f[-1]), float(np.ptp(f))
     shifted = (f - finest) / span
-    found = believed(h, shifted, taught, kind, degree, resolution / span)
+    found = believed(h, shifted, taught, kind, degree)
     known, levels = knowledge(kind, degree), levels_key(len(f))
-    told = facts(found, h, shifted, kind, degree)
-    half = max(span * half_width(told, taught.stretch[known][levels]), resolution)
+    half = span * half_width(facts(found, h, shifted, kind, degree), taught.stretch[known][levels])
     limit = finest + span * found.limit
     low, high = (found.order(share) for share in ORDER_SHARES)
     return Calibrated(
@@ -62,9 +77,7 @@ def _growth(found: Belief, above: Mapping[str, float], levels: int) -> Growth:
     return "possible" if found.growth >= above["possible"] else "excluded"
 
 
-def believed(
-    h: np.ndarray, f: np.ndarray, taught: Table, kind: str, degree: int | None, resolution: float
-) -> Belief:
+def believed(h: np.ndarray, f: np.ndarray, taught: Table, kind: str, degree: int | None) -> Belief:
     """Return the belief with the weights of a kind and degree, the nearest ones where they are not known."""
     weights = taught.weights.get(key(kind, degree), taught.weights[""])
-    return belief(h, f, weights + taught.growing, caution=CAUTION, resolution=resolution)
+    return belief(h, f, weights + taught.growing, caution=CAUTION)

@@ -17,14 +17,11 @@ from convergence.histories.laws import SCATTERS, courses
 TINY = 1e-300
 
 
-def evidence(h: np.ndarray, f: np.ndarray, limits: np.ndarray, resolution: float = 0.0) -> np.ndarray:
-    """Return the logarithm (limits, courses, scatters), up to a constant of the ladder.
-
-    `resolution` is the uncertainty of a value from rounding or solving; it counts as a variance.
-    """
+def evidence(h: np.ndarray, f: np.ndarray, limits: np.ndarray) -> np.ndarray:
+    """Return the logarithm (limits, courses, scatters), up to a constant of the ladder."""
     n, g = len(f), courses(h)
     errors = f[None, :] - limits[:, None]
-    squares = np.maximum((errors**2 + resolution**2) @ (g**-2.0).T, TINY)
+    squares = np.maximum(errors**2 @ (g**-2.0).T, TINY)
     cosine = (errors @ (1.0 / g).T) / np.sqrt(squares)
     misfit = np.maximum(n - cosine**2, 0.0)
     moment = np.log(_absolute_moment(np.abs(cosine)[:, :, None] / SCATTERS, n - 1))

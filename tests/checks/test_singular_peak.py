@@ -187,7 +187,7 @@ def test_a_converging_table_is_not_singular(order: float) -> None:
     """Even slowly: the increments shrink. What is far from its limit is not called sound either."""
     values = 300.0 - 80.0 * (2.0 ** -np.arange(6.0)) ** order
     verdict = verdict_of(values)
-    assert verdict.word == ("sound" if order >= 1.0 else "unproven")
+    assert verdict.word in (("sound",) if order >= 1.0 else ("refine", "unproven"))
 
 
 @pytest.mark.parametrize(

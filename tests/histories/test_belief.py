@@ -100,14 +100,6 @@ def test_caution_widens_what_more_than_three_levels_say() -> None:
     assert three[0] == three[1]
 
 
-def test_resolution_widens() -> None:
-    h = 2.0 ** -np.arange(4.0)
-    f = 5.0 - 0.03 * h**2
-    assert belief(h, f, EVEN, caution=0.0, resolution=1e-3).half(0.7) > belief(h, f, EVEN, caution=0.0).half(
-        0.7
-    )
-
-
 @pytest.mark.parametrize("f", [(1.0, 1.4), (1.0, 2.0, 1.5, 1.75), (3.0, 3.0, 3.0, 4.0)])
 def test_candidates(f: tuple) -> None:
     """Ascending, all different, on both sides of the finest value, which is among them."""

@@ -124,6 +124,13 @@ def test_a_kind_that_the_bank_does_not_know_is_unknown(degree: int | None) -> No
     assert calibrated(h, f, kind="unknown", degree=degree) == calibrated(h, f)
 
 
+def test_two_digits_of_a_clean_series_are_still_evidence() -> None:
+    """10 + 0.01 h² printed to 0.01: rounding moves the limit by less than twice the last step."""
+    f = np.array([10.64, 10.16, 10.04, 10.01])
+    found = calibrated(np.array([8.0, 4.0, 2.0, 1.0]), f, resolution=0.005)
+    assert found.low < 10.0 < found.high and 0.005 < half(found) < 2.0 * (f[-2] - f[-1])
+
+
 def test_resolution_is_the_least_half_width() -> None:
     h = sizes(5)
     f = 5.0 - 0.03 * h**2
