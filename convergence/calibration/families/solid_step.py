@@ -114,7 +114,7 @@ def _flat_bar() -> DrawnCase:
     shape.faces.Min(X).name, shape.faces.Max(X).name = "root", "end"
     shape.faces.Min(Y).name, shape.faces.Min(Z).name = "middle", "neutral"
     shape.faces.Max(Z).name = "upper"
-    toe = (40.0, 12.0, 9.0)
+    toe, fillet = (40.0, 12.0, 9.0), (31.0, 14.0, 9.0)
     return DrawnCase(
         name="bracket arm of two widths, bent across",
         kind="solid",
@@ -141,9 +141,9 @@ def _flat_bar() -> DrawnCase:
             stress("arm", (45.0, 0.0, 9.0), "xx"),
             stress("wing corner", (14.0, 20.0, 9.0), "xx", "direct"),
             stress("across", (12.0, 0.0, 9.0), "yy"),
-            peak("peak nodal", "xx", near=toe, radius=18.0),
-            peak("peak direct", "von_mises", "direct", toe, 18.0),
-            peak("peak gauss", "first_principal", "gauss", toe, 18.0),
+            peak("peak nodal", "xx", near=fillet, radius=10.0),
+            peak("peak direct", "von_mises", "direct", fillet, 10.0),
+            peak("peak gauss", "first_principal", "gauss", fillet, 10.0),
             *linearised("thickness", (30.0, 0.0, 0.0), (30.0, 0.0, 9.0), "xx"),
         ),
     )
