@@ -81,7 +81,7 @@ def interval(
         limit=found.limit if found else math.nan,
         low=found.low if found else math.nan,
         high=found.high if found else math.nan,
-        half_width=max(found.high - value, value - found.low) if found else math.nan,
+        half_width=found.about(value) if found else math.nan,
         order=observed_order(x, y) if manner not in ("constant", "too few levels") else math.nan,
         order_low=found.order_low if found else math.nan,
         order_high=found.order_high if found else math.nan,

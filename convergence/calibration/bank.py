@@ -26,8 +26,13 @@ def write_bank(ladders: Iterable[KnownLadder], path: Path = BANK) -> None:
     rows = csv.writer(text, lineterminator="\n")
     rows.writerow(names)
     rows.writerows([_cell(getattr(ladder, name)) for name in names] for ladder in sorted(ladders, key=_name))
+    write_packed(text.getvalue(), path)
+
+
+def write_packed(text: str, path: Path) -> None:
+    """Write a packed text, byte for byte the same for the same text."""
     with path.open("wb") as raw, gzip.GzipFile("", "wb", fileobj=raw, mtime=0) as packed:
-        packed.write(text.getvalue().encode())
+        packed.write(text.encode())
 
 
 def read_bank(path: Path = BANK) -> list[KnownLadder]:

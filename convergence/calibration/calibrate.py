@@ -1,7 +1,6 @@
 """The packaged table and the outcomes it was measured with, from the bank."""
 
 import csv
-import gzip
 import io
 import json
 from collections.abc import Callable, Mapping, Sequence
@@ -12,6 +11,7 @@ from typing import Any
 
 import numpy as np
 
+from convergence.calibration.bank import write_packed
 from convergence.calibration.binomial import binomial_interval
 from convergence.calibration.companions import companion_factors, companion_outcomes, companion_pairs
 from convergence.calibration.fit import weighed
@@ -21,11 +21,13 @@ from convergence.calibration.left_out import (
     Outcome,
     all_stretches,
     all_weights,
+    finite,
     outcomes,
     told_left_out,
 )
 from convergence.calibration.promises import promises
 from convergence.calibration.sub_ladders import sub_ladders
+from convergence.checks._corner import STRESS_KINDS
 from convergence.coverage import WITH_COMPANION, Companion, Coverage, Knowledge
 from convergence.histories.calibrated import LEAST_TO_SHOW
 from convergence.histories.table import OUTCOMES, TABLE, as_table
@@ -33,7 +35,6 @@ from convergence.histories.width import MOST_LEVELS
 
 FALSE_ALARM = 0.015
 MISSED = 0.015
-STRESSES = ("point_stress", "peak_stress")
 MOST = 300  # sub-ladders of a family
 DIGITS = 4
 
@@ -99,8 +100,7 @@ def write_calibrated(found: Calibrated, table: Path = TABLE, rows: Path = OUTCOM
             continue
         numbers = [f"{value:.3g}" for one in (bare, told) for value in _standing(one)]
         columns.writerow((bare.sub.levels, of.kind, of.degree, of.dimension, of.source, *numbers))
-    with rows.open("wb") as raw, gzip.GzipFile("", "wb", fileobj=raw, mtime=0) as packed:
-        packed.write(text.getvalue().encode())
+    write_packed(text.getvalue(), rows)
 
 
 def coverage_of(known: Knowledge | Companion, levels: int, group: Sequence[Outcome]) -> Coverage:
@@ -111,15 +111,9 @@ def coverage_of(known: Knowledge | Companion, levels: int, group: Sequence[Outco
     return Coverage(known, levels, cases, covered, low, high, ratio)
 
 
-def finite(judged: Sequence[Outcome]) -> list[Outcome]:
-    """Return the outcomes of ladders that have a limit."""
-    return [one for one in judged if not one.sub.of.singular]
-
-
 def _standing(one: Outcome) -> tuple[float, float]:
     """Return half-width over span of the values, and error of the best estimate over half-width."""
-    best = 0.5 * (one.low + one.high)
-    return one.half / float(np.ptp(one.sub.f)), abs(best - one.sub.of.limit) / one.half
+    return one.half / float(np.ptp(one.sub.f)), abs(one.best - one.sub.of.limit) / one.half
 
 
 def _coverages(known: Knowledge | Companion, judged: Sequence[Outcome]) -> dict[str, Any]:
@@ -134,7 +128,7 @@ def _coverages(known: Knowledge | Companion, judged: Sequence[Outcome]) -> dict[
 def _growth(judged: Sequence[Outcome]) -> dict[str, float]:
     """Return the odds above which few stresses with a limit lie, and above which most without one do."""
     many = [one for one in judged if one.sub.levels >= LEAST_TO_SHOW]
-    stresses = [one.growth for one in finite(many) if one.sub.of.kind in STRESSES]
+    stresses = [one.growth for one in finite(many) if one.sub.of.kind in STRESS_KINDS]
     singular = [one.growth for one in many if one.sub.of.singular]
     shown, possible = np.quantile(stresses, 1.0 - FALSE_ALARM), np.quantile(singular, MISSED)
     return {"shown": round(float(shown), DIGITS), "possible": round(float(possible), DIGITS)}

@@ -41,7 +41,7 @@ class Pair:
     def over(self) -> float:
         """Return the logarithm of true error over half-width of the narrower interval."""
         one = min(self.main, self.other, key=lambda outcome: outcome.half)
-        return float(np.log(abs(_middle(one) - one.sub.of.limit) / one.half))
+        return float(np.log(abs(one.best - one.sub.of.limit) / one.half))
 
     @property
     def groups(self) -> tuple[str, str]:
@@ -94,14 +94,9 @@ def _together(pair: Pair, factor: float) -> Outcome:
     half = other.half * factor
     if half >= main.half:
         return Outcome(better, main.low, main.high, main.growth)
-    return Outcome(better, _middle(other) - half, _middle(other) + half, main.growth)
+    return Outcome(better, other.best - half, other.best + half, main.growth)
 
 
 def _are_companions(main: Outcome, other: Outcome) -> bool:
     differ = (main.sub.of.degree, main.sub.of.shape) != (other.sub.of.degree, other.sub.of.shape)
     return differ and 1.0 / ALIKE <= float(main.sub.h[-1] / other.sub.h[-1]) <= ALIKE
-
-
-def _middle(one: Outcome) -> float:
-    """Return the best estimate."""
-    return 0.5 * (one.low + one.high)

@@ -74,6 +74,12 @@ class DrawnCase:
         return 3 if self.kind == "solid" else 2
 
 
+def name_edges(shape: Any, names: Mapping[str, tuple[float, float]]) -> None:
+    """Name the edges of a face that are nearest to places."""
+    for name, place in names.items():
+        shape.edges.Nearest((*place, 0.0)).name = name
+
+
 def outline(*corners: tuple[float, float, str]) -> Any:
     """Return the face within straight lines through corners, counter-clockwise.
 

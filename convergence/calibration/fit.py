@@ -11,9 +11,8 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from convergence.calibration.sub_ladders import SubLadder
-from convergence.histories.belief import candidates
-from convergence.histories.evidence import evidence
+from convergence.calibration.sub_ladders import SubLadder, family_weights
+from convergence.histories.belief import candidates, tempered
 from convergence.histories.laws import COURSES, IS_GROWING, SCATTERS
 from convergence.histories.table import CAUTION
 
@@ -39,7 +38,7 @@ def weighed(sub: SubLadder) -> Weighed:
     """Return the evidence of a sub-ladder; a singular one has none at a truth (zeros)."""
     limits = candidates(sub.h, sub.f)
     places = limits if sub.of.singular else np.append(limits, sub.of.limit)
-    found = evidence(sub.h, sub.f, places).reshape(len(places), -1) * (3.0 / sub.levels) ** CAUTION
+    found = tempered(sub.h, sub.f, places, CAUTION).reshape(len(places), -1)
     likely = np.exp(found - found.max())
     at_truth = np.zeros(likely.shape[1]) if sub.of.singular else np.exp(found[-1] - found[-1].max())
     likely = likely[: len(limits)]
@@ -51,14 +50,14 @@ def fitted_weights(known: Sequence[Weighed], shared: np.ndarray | None = None) -
     """Return weights (courses, scatters) of the falling laws; they add up to one."""
     rows = np.array([one.at_truth for one in known]) * ~GROWS
     prior = EVEN * ~GROWS / (~GROWS).sum() if shared is None else SHARED * shared.ravel()
-    return _mixture(rows, _evenly([one.sub.of.family for one in known]), prior).reshape(SHAPE)
+    return _mixture(rows, family_weights([one.sub.of.family for one in known]), prior).reshape(SHAPE)
 
 
 def fitted_growth(known: Sequence[Weighed]) -> np.ndarray:
     """Return weights (courses, scatters) of the growing laws; they add up to one."""
     rows = np.array([one.over_all for one in known]) * GROWS
     prior = EVEN * GROWS / GROWS.sum()
-    return _mixture(rows, _evenly([one.sub.of.family for one in known]), prior).reshape(SHAPE)
+    return _mixture(rows, family_weights([one.sub.of.family for one in known]), prior).reshape(SHAPE)
 
 
 def _mixture(rows: np.ndarray, counts: np.ndarray, prior: np.ndarray) -> np.ndarray:
@@ -69,10 +68,3 @@ def _mixture(rows: np.ndarray, counts: np.ndarray, prior: np.ndarray) -> np.ndar
         weights = counts @ shares + prior
         weights /= weights.sum()
     return np.asarray(weights)
-
-
-def _evenly(families: Sequence[str]) -> np.ndarray:
-    """Return a weight per sub-ladder: families count the same, the mean weight is one."""
-    _, index, counts = np.unique(families, return_inverse=True, return_counts=True)
-    weights = 1.0 / counts[index]
-    return np.asarray(weights * len(weights) / weights.sum())

@@ -7,13 +7,13 @@ value singular; growth that is possible makes a stress unproven, unless its inte
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
-from convergence.calibration.left_out import Outcome
+from convergence.calibration.left_out import Outcome, finite
 from convergence.checks._corner import STRESS_KINDS
 from convergence.coverage import Knowledge
-from convergence.histories.calibrated import LEAST_TO_SHOW, MOST_LEVELS
+from convergence.histories.calibrated import FINEST_LEVELS, LEAST_TO_SHOW
 from convergence.verdicts import SETTLED
 
-SIZES = {"3 levels": (3, 3), f"{LEAST_TO_SHOW} levels and more": (LEAST_TO_SHOW, MOST_LEVELS)}
+SIZES = {"3 levels": (3, 3), f"{LEAST_TO_SHOW} levels and more": (LEAST_TO_SHOW, FINEST_LEVELS)}
 
 
 @dataclass(frozen=True)
@@ -38,20 +38,15 @@ def called(
     """
     sorts = {
         "singular stresses": [one for one in judged if one.sub.of.singular],
-        "stresses with a limit": [one for one in judged if _is_finite_stress(one)],
+        "stresses with a limit": [one for one in finite(judged) if one.sub.of.kind in STRESS_KINDS],
     }
     if known == "nothing":
-        finite = [one for one in judged if not one.sub.of.singular]
-        sorts["all quantities with a limit"] = finite
+        sorts["all quantities with a limit"] = finite(judged)
     return {
         (sort, levels): _count([one for one in members if low <= one.sub.levels <= high], above)
         for sort, members in sorts.items()
         for levels, (low, high) in SIZES.items()
     }
-
-
-def _is_finite_stress(one: Outcome) -> bool:
-    return not one.sub.of.singular and one.sub.of.kind in STRESS_KINDS
 
 
 def _count(members: Sequence[Outcome], above: Mapping[str, float]) -> Called:

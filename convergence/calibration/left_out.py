@@ -32,6 +32,11 @@ class Outcome:
         return self.low <= self.sub.of.limit <= self.high
 
     @property
+    def best(self) -> float:
+        """Return the best estimate of the limit."""
+        return 0.5 * (self.low + self.high)
+
+    @property
     def half(self) -> float:
         """Return the half-width about the best estimate."""
         return 0.5 * (self.high - self.low)
@@ -40,6 +45,11 @@ class Outcome:
     def about_finest(self) -> float:
         """Return the half-width about the finest value."""
         return max(self.high - float(self.sub.f[-1]), float(self.sub.f[-1]) - self.low)
+
+
+def finite(judged: Sequence[Outcome]) -> list[Outcome]:
+    """Return the outcomes of ladders that have a limit."""
+    return [one for one in judged if not one.sub.of.singular]
 
 
 def told_as(known: Knowledge, sub: SubLadder) -> tuple[str, int | None]:

@@ -15,11 +15,10 @@ import numpy as np
 
 from convergence.calibration.binomial import binomial_interval
 from convergence.calibration.known_ladder import KnownLadder
-from convergence.calibration.sub_ladders import RATIOS, STILL
-from convergence.histories.calibrated import MOST_LEVELS, believed
+from convergence.calibration.sub_ladders import RATIOS, STILL, family_weights
+from convergence.histories.calibrated import FINEST_LEVELS, read
 from convergence.histories.promise import ENOUGH, LEAST_RATIO, MOST_RATIO, ONE_STEP, Promise, promise_class
-from convergence.histories.table import Table, knowledge
-from convergence.histories.width import facts, half_width, levels_key
+from convergence.histories.table import Table
 
 BOUNDED = 0.94  # so that nine in ten hold where a family is new
 LEVELS = (3, 4, 5)
@@ -101,10 +100,8 @@ def _half_width(
     ladder: KnownLadder, levels: np.ndarray, kind: str, degree: int | None, taught: Table
 ) -> float:
     """Return the half-width of the calibrated interval about the finest value."""
-    h, f = ladder.h[levels][-MOST_LEVELS:], ladder.f[levels][-MOST_LEVELS:]
-    found = believed(h, f, taught, kind, degree)
-    stretch = taught.stretch[knowledge(kind, degree)][levels_key(len(f))]
-    return half_width(facts(found, h, f, kind, degree), stretch) + abs(found.limit - float(f[-1]))
+    h, f = ladder.h[levels][-FINEST_LEVELS:], ladder.f[levels][-FINEST_LEVELS:]
+    return read(h, f, kind, degree, taught).about(float(f[-1]))
 
 
 def promise(steps: Sequence[Step]) -> Promise:
@@ -125,7 +122,6 @@ def promise(steps: Sequence[Step]) -> Promise:
 
 def _safety(families: np.ndarray, products: np.ndarray) -> float:
     """Return the quantile of ratio times half-width left; families count the same."""
-    _, index, counts = np.unique(families, return_inverse=True, return_counts=True)
     order = np.argsort(products)
-    shares = np.cumsum((1.0 / counts[index])[order]) / len(counts)
+    shares = np.cumsum(family_weights(families)[order]) / len(families)
     return float(products[order[min(int(np.searchsorted(shares, BOUNDED)), len(order) - 1)]])

@@ -10,7 +10,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from convergence.calibration.sub_ladders import SubLadder
+from convergence.calibration.sub_ladders import SubLadder, family_weights
 from convergence.histories.width import UNIT, half_width
 
 ASKED = 0.955
@@ -73,7 +73,9 @@ def fitted_stretch(known: Sequence[Told], names: Sequence[str]) -> Stretch:
 def _regressed(known: Sequence[Told], names: Sequence[str]) -> Stretch:
     rows = np.array([[one.facts.get(name, 0.0) for name in names] for one in known])
     ratios = np.array([one.miss / one.facts[UNIT] for one in known])
-    found = quantile_regression(rows, np.log(np.maximum(ratios, LEAST_ERROR)), family_weights(known))
+    found = quantile_regression(
+        rows, np.log(np.maximum(ratios, LEAST_ERROR)), family_weights([one.sub.of.family for one in known])
+    )
     return dict(zip(names, found.tolist(), strict=True))
 
 
@@ -87,14 +89,6 @@ def names_of(known: Sequence[Told], *, kinds: bool, degrees: bool) -> list[str]:
     if degrees:
         usual += [name for name in present if name.startswith("degree ")][1:]
     return ["always", *usual]
-
-
-def family_weights(known: Sequence[Told]) -> np.ndarray:
-    """Return a weight per ladder; families count the same."""
-    _, index, counts = np.unique(
-        [one.sub.of.family for one in known], return_inverse=True, return_counts=True
-    )
-    return np.asarray(1.0 / counts[index])
 
 
 def conformal(over: np.ndarray, asked: float) -> float:

@@ -8,7 +8,7 @@ parts, as far as there are enough.
 
 import itertools
 from collections import defaultdict
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
 
 import numpy as np
@@ -57,6 +57,12 @@ def sub_ladders(ladders: Iterable[KnownLadder], most: int) -> list[SubLadder]:
             random.shuffle(group)
         chosen += itertools.islice(_in_turn(groups.values()), most)
     return chosen
+
+
+def family_weights(families: Sequence[str] | np.ndarray) -> np.ndarray:
+    """Return a weight per sub-ladder by its family: families count the same, the mean is one."""
+    _, index, counts = np.unique(families, return_inverse=True, return_counts=True)
+    return np.asarray(len(families) / len(counts) / counts[index])
 
 
 def _in_turn(groups: Iterable[list[SubLadder]]) -> Iterator[SubLadder]:

@@ -115,7 +115,7 @@ def tally(group: Iterable[Judged], method: str) -> Tally:
 def ours_of(one: Outcome) -> Answer:
     """Return what the calibrated interval answers."""
     error, half = one.sub.error, one.half
-    share = (0.5 * (one.low + one.high) - one.sub.of.limit) / half
+    share = (one.best - one.sub.of.limit) / half
     return Answer(one.is_covered, half / error, one.about_finest / error, share)
 
 

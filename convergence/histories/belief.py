@@ -84,9 +84,14 @@ class Belief:
 def belief(h: np.ndarray, f: np.ndarray, weights: np.ndarray, *, caution: float) -> Belief:
     """Return the belief from two levels or more; weights (courses, scatters) of the error laws."""
     limits = candidates(h, f)
-    found = evidence(h, f, limits) * (3.0 / len(f)) ** caution
+    found = tempered(h, f, limits, caution)
     likely = np.exp(found - found.max())
     return Belief(limits, likely * weights)
+
+
+def tempered(h: np.ndarray, f: np.ndarray, limits: np.ndarray, caution: float) -> np.ndarray:
+    """Return the evidence of candidate limits with the power that so many levels deserve."""
+    return np.asarray(evidence(h, f, limits) * (3.0 / len(f)) ** caution)
 
 
 def candidates(h: np.ndarray, f: np.ndarray) -> np.ndarray:

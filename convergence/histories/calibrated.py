@@ -14,7 +14,7 @@ from convergence.histories.width import facts, half_width, levels_key
 ORDER_SHARES = (0.025, 0.975)
 NEGLIGIBLE = 1e-6  # of the span of the values
 LEAST_TO_SHOW = 4  # levels
-MOST_LEVELS = 7  # the finest ones count
+FINEST_LEVELS = 7  # the finest ones count
 Growth = Literal["shown", "possible", "excluded"]
 
 
@@ -30,6 +30,10 @@ class Calibrated:
     growth: Growth
     coverage: Coverage | None
 
+    def about(self, value: float) -> float:
+        """Return the half-width about a value: the distance to the farther end."""
+        return max(self.high - value, value - self.low)
+
 
 def calibrated(
     h: np.ndarray, f: np.ndarray, *, kind: str = "unknown", degree: int | None = None, resolution: float = 0.0
@@ -39,23 +43,26 @@ def calibrated(
     `resolution` is how far rounding or the solver may have moved each value: the interval then spans those of
     the values moved so, up and down in turn, where changes from level to level are read worst.
     """
-    h, f = h[-MOST_LEVELS:], f[-MOST_LEVELS:]
-    found = _read(h, f, kind, degree)
+    h, f = h[-FINEST_LEVELS:], f[-FINEST_LEVELS:]
+    taught = table()
+    found = read(h, f, kind, degree, taught)
     if resolution <= NEGLIGIBLE * float(np.ptp(f)):
         return found
     turns = resolution * (-1.0) ** np.arange(len(f))
-    moved = [_read(h, f + way * turns, kind, degree) for way in (-1.0, 1.0) if np.ptp(f + way * turns) > 0.0]
+    both = [values for values in (f - turns, f + turns) if np.ptp(values) > 0.0]
+    moved = [read(h, values, kind, degree, taught) for values in both]
     ends = [abs(end - found.limit) for one in (found, *moved) for end in (one.low, one.high)]
     half = max(*ends, resolution)
     return replace(found, low=found.limit - half, high=found.limit + half)
 
 
-def _read(h: np.ndarray, f: np.ndarray, kind: str, degree: int | None) -> Calibrated:
-    taught = table()
+def read(h: np.ndarray, f: np.ndarray, kind: str, degree: int | None, taught: Table) -> Calibrated:
+    """Return what a table teaches of exact values of at most FINEST_LEVELS levels."""
     kind = kind if kind in taught.weights else "unknown"
     finest, span = float(f[-1]), float(np.ptp(f))
     shifted = (f - finest) / span
-    found = believed(h, shifted, taught, kind, degree)
+    weights = taught.weights.get(key(kind, degree), taught.weights[""])
+    found = belief(h, shifted, weights + taught.growing, caution=CAUTION)
     known, levels = knowledge(kind, degree), levels_key(len(f))
     half = span * half_width(facts(found, h, shifted, kind, degree), taught.stretch[known][levels])
     limit = finest + span * found.limit
@@ -75,9 +82,3 @@ def _growth(found: Belief, above: Mapping[str, float], levels: int) -> Growth:
     if found.growth >= above["shown"] and levels >= LEAST_TO_SHOW:
         return "shown"
     return "possible" if found.growth >= above["possible"] else "excluded"
-
-
-def believed(h: np.ndarray, f: np.ndarray, taught: Table, kind: str, degree: int | None) -> Belief:
-    """Return the belief with the weights of a kind and degree, the nearest ones where they are not known."""
-    weights = taught.weights.get(key(kind, degree), taught.weights[""])
-    return belief(h, f, weights + taught.growing, caution=CAUTION)

@@ -84,7 +84,7 @@ def standing(quantity: Quantity, verdict: Verdict, ladder: Ladder, bank: np.ndar
     Those of its number of levels and, where known and not too few, of its kind.
     """
     values = ladder.column(quantity.name)
-    values = values[np.isfinite(values)][-calibrated.MOST_LEVELS :]
+    values = values[np.isfinite(values)][-calibrated.FINEST_LEVELS :]
     half, span = _trust.half_width(verdict), float(np.ptp(values)) if len(values) else 0.0
     if verdict.coverage is None or not (half > 0.0 and span > 0.0):
         return None

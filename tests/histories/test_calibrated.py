@@ -5,7 +5,7 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as some
 
-from convergence.histories.calibrated import MOST_LEVELS, Calibrated, calibrated
+from convergence.histories.calibrated import FINEST_LEVELS, Calibrated, calibrated
 from convergence.histories.table import table
 
 KNOWN = (("unknown", None), ("displacement", None), ("energy", 2), ("point_stress", 1))
@@ -140,7 +140,7 @@ def test_resolution_is_the_least_half_width() -> None:
 
 
 def test_the_finest_levels_count() -> None:
-    h = sizes(MOST_LEVELS + 2)
+    h = sizes(FINEST_LEVELS + 2)
     f = 5.0 - 0.03 * h
     f[:2] = 99.0
     assert calibrated(h, f) == calibrated(h[2:], f[2:])

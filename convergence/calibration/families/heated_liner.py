@@ -5,7 +5,7 @@ from typing import Any
 import ngsolve as ng
 from netgen.occ import Circle, Glue, Rectangle, WorkPlane
 
-from convergence.calibration.drawn_case import DrawnCase, DrawnKind, Elastic, Reading
+from convergence.calibration.drawn_case import DrawnCase, DrawnKind, Elastic, Reading, name_edges
 
 Place = tuple[float, float]
 STEEL = Elastic(210_000.0, 0.3, 1.2e-5)
@@ -25,9 +25,9 @@ def _block() -> DrawnCase:
     outside = square - Circle((0, 0), joint).Face()
     liner = square * (Circle((0, 0), joint).Face() - Circle((0, 0), bore).Face())
     shape = _glued(liner, outside)
-    _name(shape, {"liner_cut": (0.5 * (bore + joint), 0.0), "body_cut": (0.5 * (joint + half), 0.0)})
-    _name(shape, {"left_liner": (0.0, 0.5 * (bore + joint)), "left_body": (0.0, 0.5 * (joint + half))})
-    _name(shape, {"bore": (0.7071 * bore, 0.7071 * bore), "outer": (half, 0.5 * half)})
+    name_edges(shape, {"liner_cut": (0.5 * (bore + joint), 0.0), "body_cut": (0.5 * (joint + half), 0.0)})
+    name_edges(shape, {"left_liner": (0.0, 0.5 * (bore + joint)), "left_body": (0.0, 0.5 * (joint + half))})
+    name_edges(shape, {"bore": (0.7071 * bore, 0.7071 * bore), "outer": (half, 0.5 * half)})
     radius = ng.sqrt(ng.x * ng.x + ng.y * ng.y)
     return _case(
         name="lined block",
@@ -61,8 +61,8 @@ def _eccentric() -> DrawnCase:
     hole, disc = Circle((bore[0], 0), bore[1]).Face(), Circle((joint[0], 0), joint[1]).Face()
     shape = _glued(upper * (disc - hole), upper - disc)
     thin, far, front = (0.5 * (24.0 + 30.0), 0.0), (40.0, 0.0), (-40.0, 0.0)
-    _name(shape, {"liner_cut": thin, "thick_cut": (-15.0, 0.0), "body_cut": far, "front_cut": front})
-    _name(shape, {"bore": (bore[0], bore[1]), "outer": (0.0, 45.0), "foot": (-60.0, 22.5)})
+    name_edges(shape, {"liner_cut": thin, "thick_cut": (-15.0, 0.0), "body_cut": far, "front_cut": front})
+    name_edges(shape, {"bore": (bore[0], bore[1]), "outer": (0.0, 45.0), "foot": (-60.0, 22.5)})
     away = (ng.x - bore[0]) * (ng.x - bore[0]) + ng.y * ng.y
     cuts = ("liner_cut", "thick_cut", "body_cut", "front_cut")
     return _case(
@@ -93,11 +93,13 @@ def _waved() -> DrawnCase:
     liner = plane.LineTo(37 + 30 * 0.18084796, height).LineTo(bore, height).Close().Face()
     shape = _glued(liner, WorkPlane().MoveTo(bore, 0).Rectangle(outer - bore, height).Face() - liner)
     joint = 37 + 30 * 0.18084796
-    _name(
+    name_edges(
         shape,
         {"liner_cut": (33.5, 0.0), "body_cut": (44.5, 0.0), "bore": (bore, 25.0), "outer": (outer, 25.0)},
     )
-    _name(shape, {"liner_top": (0.5 * (bore + joint), height), "body_top": (0.5 * (joint + outer), height)})
+    name_edges(
+        shape, {"liner_top": (0.5 * (bore + joint), height), "body_top": (0.5 * (joint + outer), height)}
+    )
     ends = ("liner_cut", "body_cut", "liner_top", "body_top")
     rise = 12 + 30 * 0.57357644
     own = (Reading("top", "reaction", "reaction", {"boundary": "body_top", "component": "y"}),)
@@ -135,11 +137,11 @@ def _blind() -> DrawnCase:
     liner = cup.LineTo(20, 24).Direction(0, -1).Arc(8, -90).LineTo(0, 16).Close().Face()
     around = WorkPlane().LineTo(42, 0).LineTo(42, 60).LineTo(26, 60).LineTo(26, 22).Direction(0, -1)
     shape = _glued(liner, around.Arc(12, -90).LineTo(0, 10).Close().Face())
-    _name(
+    name_edges(
         shape,
         {"liner_cut": (23.0, 60.0), "body_cut": (34.0, 60.0), "bore": (20.0, 42.0), "outer": (42.0, 30.0)},
     )
-    _name(shape, {"axis_liner": (0.0, 13.0), "axis_body": (0.0, 5.0)})
+    name_edges(shape, {"axis_liner": (0.0, 13.0), "axis_body": (0.0, 5.0)})
     return _case(
         name="blind polymer liner",
         kind="axisymmetric",
@@ -164,11 +166,6 @@ def _blind() -> DrawnCase:
 def _glued(liner: Any, body: Any) -> Any:
     liner.name, body.name = "liner", "body"
     return Glue([liner, body])
-
-
-def _name(shape: Any, names: dict[str, Place]) -> None:
-    for name, place in names.items():
-        shape.edges.Nearest((*place, 0.0)).name = name
 
 
 def _case(

@@ -5,7 +5,7 @@ from typing import Any
 import ngsolve as ng
 from netgen.occ import Glue, WorkPlane
 
-from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading
+from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading, name_edges
 from convergence.corners.bonded import wedge_exponents
 
 Place = tuple[float, float]
@@ -38,8 +38,8 @@ def _block(
     seat = 0.4 * wide
     plane = WorkPlane().LineTo(seat, 0).LineTo(wide, 0).LineTo(wide, high).LineTo(half, high)
     shape = plane.LineTo(0, high).Close().Face()
-    _name(shape, {"left": (0, high / 2), "seat": (seat / 2, 0), "rest": ((seat + wide) / 2, 0)})
-    _name(shape, {"patch": (half / 2, high), "beside": ((half + wide) / 2, high)})
+    name_edges(shape, {"left": (0, high / 2), "seat": (seat / 2, 0), "rest": ((seat + wide) / 2, 0)})
+    name_edges(shape, {"patch": (half / 2, high), "beside": ((half + wide) / 2, high)})
     under, inside = high - 0.8 * half, (1.7 * half, high - 1.3 * half)
     line = {"start": (1.5 * half, high), "end": (3.5 * half, high)}
     within = {"near": (0.0, under), "radius": 0.75 * half}
@@ -73,8 +73,8 @@ def _sheared() -> DrawnCase:
         WorkPlane().LineTo(wide, 0).LineTo(wide, high).LineTo(end, high).LineTo(start, high).LineTo(0, high)
     )
     shape = plane.Close().Face()
-    _name(shape, {"left": (0, 25), "seat": (45, 0), "right": (wide, 25)})
-    _name(shape, {"ahead": (69, high), "patch": (39, high), "beside": (15, high)})
+    name_edges(shape, {"left": (0, 25), "seat": (45, 0), "right": (wide, 25)})
+    name_edges(shape, {"ahead": (69, high), "patch": (39, high), "beside": (15, high)})
     behind = {"near": (start, high), "radius": 9.0}
     own = (
         Reading("patch u", "displacement", "mean_displacement", {"boundary": "patch", "component": "y"}),
@@ -119,8 +119,8 @@ def _base_plate() -> DrawnCase:
     steel = outline.LineTo(0, high).Close().Face()
     steel.name, grout.name = "plate", "grout"
     shape = Glue([steel, grout])
-    _name(shape, {"left": (0, deep / 2), "plate_left": (0, deep + thick / 2), "seat": (wide / 2, 0)})
-    _name(shape, {"patch": (column / 2, high), "beside": ((column + plate) / 2, high)})
+    name_edges(shape, {"left": (0, deep / 2), "plate_left": (0, deep + thick / 2), "seat": (wide / 2, 0)})
+    name_edges(shape, {"patch": (column / 2, high), "beside": ((column + plate) / 2, high)})
     end, near = (plate, deep), {"near": (plate, deep), "radius": 14.0}
     line = {"start": (0.4 * plate, high), "end": (plate, high)}
     sectors = ((90.0, *_wedge(STEEL)), (180.0, *_wedge(GROUT)))
@@ -164,11 +164,6 @@ def _base_plate() -> DrawnCase:
 def _wedge(material: Elastic) -> tuple[float, float]:
     """Return shear modulus and kappa in plane strain."""
     return material.young / (2.0 * (1.0 + material.poisson)), 3.0 - 4.0 * material.poisson
-
-
-def _name(shape: Any, names: dict[str, Place]) -> None:
-    for name, place in names.items():
-        shape.edges.Nearest((*place, 0.0)).name = name
 
 
 def _common(foot: Place, inside: Place, top: Place, bottom: Place) -> tuple[Reading, ...]:

@@ -6,7 +6,7 @@ from typing import Any
 import ngsolve as ng
 from netgen.occ import WorkPlane
 
-from convergence.calibration.drawn_case import DrawnCase, DrawnKind, Elastic, Reading
+from convergence.calibration.drawn_case import DrawnCase, DrawnKind, Elastic, Reading, name_edges
 from convergence.corners.williams import weakest_exponent
 
 Place = tuple[float, float]
@@ -27,8 +27,8 @@ def _block(name: str, lengths: tuple[float, float], poisson: float, size: float)
     """Return a quarter: half a width, half a height; the plate above comes down."""
     wide, high = lengths
     shape = WorkPlane().Rectangle(wide, high).Face()
-    _name(shape, {"left": (0, high / 2), "middle": (wide / 2, 0), "plate": (wide / 2, high)})
-    _name(shape, {"side": (wide, high / 2)})
+    name_edges(shape, {"left": (0, high / 2), "middle": (wide / 2, 0), "plate": (wide / 2, high)})
+    name_edges(shape, {"side": (wide, high / 2)})
     corner = (wide, high)
     own = (
         Reading("plate shear", "reaction", "reaction", {"boundary": "plate", "component": "x"}),
@@ -55,8 +55,8 @@ def _bushing(name: str, lengths: tuple[float, float, float], poisson: float, siz
     inner, outer, high = lengths
     shape = WorkPlane().MoveTo(inner, 0).Rectangle(outer - inner, high).Face()
     middle = 0.5 * (inner + outer)
-    _name(shape, {"pin": (inner, high / 2), "sleeve": (outer, high / 2)})
-    _name(shape, {"bottom": (middle, 0.0), "top": (middle, high)})
+    name_edges(shape, {"pin": (inner, high / 2), "sleeve": (outer, high / 2)})
+    name_edges(shape, {"bottom": (middle, 0.0), "top": (middle, high)})
     corners = tuple((x, y) for x in (inner, outer) for y in (0.0, high))
     line = {"start": (middle - 3.0, high), "end": (middle + 3.0, high)}
     own = (
@@ -86,7 +86,7 @@ def _pad(name: str, poisson: float, size: float) -> DrawnCase:
     half = math.asin(0.5 * high / sag)
     plane = WorkPlane().LineTo(wide, 0).Direction(-math.sin(half), math.cos(half))
     shape = plane.Arc(sag, -2.0 * math.degrees(half)).LineTo(0, high).Close().Face()
-    _name(shape, {"left": (0, high / 2), "bottom": (wide / 2, 0), "top": (wide / 2, high)})
+    name_edges(shape, {"left": (0, high / 2), "bottom": (wide / 2, 0), "top": (wide / 2, high)})
     own = (
         Reading("corner u", "displacement", "displacement", {"at": (wide, high), "component": "x"}),
         Reading("top corner", "displacement", "displacement", {"at": (wide, high), "component": "y"}),
@@ -113,7 +113,9 @@ def _ring(name: str, poisson: float, size: float) -> DrawnCase:
     inner, outer, high, round_ = 20.0, 30.0, 14.0, 4.0
     plane = WorkPlane().MoveTo(inner, 0).LineTo(outer, 0).LineTo(outer, high).LineTo(inner + round_, high)
     shape = plane.Direction(-1, 0).Arc(round_, 90).Close().Face()
-    _name(shape, {"bottom": (25.0, 0.0), "wall": (outer, high / 2), "top": (27.0, high), "wet": (inner, 5.0)})
+    name_edges(
+        shape, {"bottom": (25.0, 0.0), "wall": (outer, high / 2), "top": (27.0, high), "wet": (inner, 5.0)}
+    )
     edge = (inner, high - round_)
     turned = {"start": (inner + round_, high), "end": (outer, high)}
     own = (
@@ -135,11 +137,6 @@ def _ring(name: str, poisson: float, size: float) -> DrawnCase:
         corners=(edge, (inner + round_, high)),
         is_bonded=False,
     )
-
-
-def _name(shape: Any, names: dict[str, Place]) -> None:
-    for name, place in names.items():
-        shape.edges.Nearest((*place, 0.0)).name = name
 
 
 def _case(
