@@ -1,21 +1,14 @@
-"""The interval of one quantity, calibrated on the bank, beside what published methods say."""
+"""The interval of one quantity, calibrated on the bank."""
 
 import math
-from collections.abc import Mapping
 from dataclasses import dataclass
 
 import numpy as np
 
-from convergence import rooms
 from convergence.coverage import Coverage
 from convergence.histories.calibrated import Calibrated, Growth, calibrated
-from convergence.results import Estimate, Kind
+from convergence.results import Kind
 from convergence.sequences import behaviour, noise_floor, observed_order
-
-PARTS = {
-    "grid_convergence_index": "grid convergence index",
-    "least_squares": "least-squares uncertainty",
-}
 
 
 @dataclass(frozen=True)
@@ -24,10 +17,9 @@ class Interval:
 
     `limit` is the best estimate, `low` and `high` its calibrated interval, `half_width` that about the finest
     value. `order` is that of the last three levels; the order of the error law lies from `order_low` to
-    `order_high`. `growth`: whether the levels show, allow or exclude that there is no limit. `widths` are
-    half-widths of published methods, for comparison; `lost` is the number of levels without a value; `flaw`
-    says why there is no interval, "" where there is one; `companion` what a second ladder says and `side` on
-    which side of the values the limit is known to be, "" where nothing.
+    `order_high`. `growth`: whether the levels show, allow or exclude that there is no limit. `lost` is the
+    number of levels without a value; `flaw` says why there is no interval, "" where there is one; `companion`
+    what a second ladder says and `side` on which side of the values the limit is known to be, "" where nothing.
     """
 
     value: float
@@ -40,12 +32,10 @@ class Interval:
     order_high: float
     growth: Growth
     behaviour: str
-    widths: Mapping[str, float]
     levels: int
     lost: int
     flaw: str
     coverage: Coverage | None
-    estimates: Mapping[str, Estimate]
     companion: str = ""
     side: str = ""
 
@@ -54,7 +44,6 @@ def interval(
     h: np.ndarray,
     f: np.ndarray,
     *,
-    formal_order: float | None,
     kind: Kind = "unknown",
     degree: int | None = None,
     resolution: float = 0.0,
@@ -72,10 +61,6 @@ def interval(
         found = _still(y, noise)
     else:
         found = calibrated(x, y, kind=kind, degree=degree, resolution=0.5 * noise)
-    estimates = {
-        name: rooms.find("estimators", name)(x, y, formal_order=formal_order)
-        for name in rooms.names("estimators")
-    }
     return Interval(
         value=value,
         limit=found.limit if found else math.nan,
@@ -87,12 +72,10 @@ def interval(
         order_high=found.order_high if found else math.nan,
         growth=found.growth if found else "possible",
         behaviour=manner,
-        widths=_widths(y, estimates),
         levels=len(y),
         lost=len(f) - len(y),
         flaw=flaw,
         coverage=found.coverage if found else None,
-        estimates=estimates,
     )
 
 
@@ -101,13 +84,6 @@ def _still(f: np.ndarray, noise: float) -> Calibrated:
     half = max(noise, float(np.ptp(f[-3:])))
     value = float(f[-1])
     return Calibrated(value, value - half, value + half, math.nan, math.nan, "excluded", None)
-
-
-def _widths(f: np.ndarray, estimates: Mapping[str, Estimate]) -> dict[str, float]:
-    found = {name: estimates[key].uncertainty for key, name in PARTS.items() if key in estimates}
-    if len(f) >= 2:
-        found["last change"] = abs(float(f[-1] - f[-2]))
-    return {name: float(width) for name, width in found.items() if math.isfinite(width)}
 
 
 def _flaw(h: np.ndarray, f: np.ndarray, usable: np.ndarray) -> str:

@@ -17,7 +17,7 @@ from convergence.histories.table import table
 from convergence.intervals import Interval, interval
 from convergence.ladder_spec import Formulation
 from convergence.one_sided import one_sided
-from convergence.results import Check, Companion, Facts, Findings, Ladder, Quantity, Yield
+from convergence.results import Check, Companion, Estimate, Facts, Findings, Ladder, Quantity, Yield
 from convergence.study import Study
 from convergence.verdicts import verdict
 
@@ -89,7 +89,7 @@ def judge(
         facts, kinds={q.name: q.kind for q in quantities}, units={q.name: q.unit for q in quantities}
     )
     others = {
-        name: interval(ladder.h, f, formal_order=None, kind="point_stress", degree=facts.degree)
+        name: interval(ladder.h, f, kind="point_stress", degree=facts.degree)
         for name, f in instead_columns(ladder, facts).items()
     }
     stated = intervals | peaks | others
@@ -104,7 +104,7 @@ def judge(
         ladder=ladder,
         quantities=quantities,
         facts=facts,
-        estimates={name: found.estimates for name, found in intervals.items()},
+        estimates={quantity.name: _estimates(ladder, quantity) for quantity in quantities},
         checks=checks,
         verdicts={
             q.name: verdict(q, intervals[q.name], spoiled(checks, q.name), ladder, facts) for q in quantities
@@ -124,11 +124,20 @@ def _interval(ladder: Ladder, quantity: Quantity, scale: float = 0.0) -> Interva
     return interval(
         ladder.h,
         f,
-        formal_order=quantity.formal_order,
         kind=quantity.kind,
         degree=quantity.degree,
         resolution=max(ladder.resolution.get(quantity.name, 0.0), noise),
     )
+
+
+def _estimates(ladder: Ladder, quantity: Quantity) -> dict[str, Estimate]:
+    """Return what the published methods say of the levels with a value; the interval is not made from it."""
+    f = ladder.column(quantity.name)
+    known = np.isfinite(f)
+    return {
+        name: rooms.find("estimators", name)(ladder.h[known], f[known], formal_order=quantity.formal_order)
+        for name in rooms.names("estimators")
+    }
 
 
 def _scale(ladder: Ladder, quantity: Quantity, facts: Facts) -> float:

@@ -18,7 +18,7 @@ MEASURED = Coverage(WITH_COMPANION, 4, 289, 279, 0.937, 0.983, 3.2)
 
 
 def on_ladder(limit: float, error: float, order: float = 2.0) -> Interval:
-    return interval(H, limit + error * H**order, formal_order=2.0, kind="displacement", degree=1)
+    return interval(H, limit + error * H**order, kind="displacement", degree=1)
 
 
 def taught(factor: float = 1.0) -> Table:
@@ -83,27 +83,27 @@ def test_the_verdict_says_that_the_ladders_meet() -> None:
 
 
 def test_intervals_are_joined_only_where_their_coverage_was_measured() -> None:
-    three = interval(H[1:], 100.0 - 0.01 * H[1:] ** 2, formal_order=2.0, kind="displacement", degree=2)
+    three = interval(H[1:], 100.0 - 0.01 * H[1:] ** 2, kind="displacement", degree=2)
     found = together(WIDE, three, taught())
     assert (found.low, found.high, found.coverage) == (WIDE.low, WIDE.high, WIDE.coverage)
     assert found.companion.startswith("The two ladders meet")
 
 
 def test_a_companion_without_an_interval_is_left_out_with_the_reason() -> None:
-    empty = interval(H[:0], H[:0], formal_order=2.0)
+    empty = interval(H[:0], H[:0])
     found = together(WIDE, empty, taught())
     assert (found.low, found.high) == (WIDE.low, WIDE.high)
     assert found.companion == "The companion ladder is not used: the finest level has no value."
 
 
 def test_a_main_ladder_without_an_interval_gets_none_from_its_companion() -> None:
-    empty = interval(H[:0], H[:0], formal_order=2.0)
+    empty = interval(H[:0], H[:0])
     assert together(empty, NARROW, taught()) is empty
 
 
 @pytest.mark.parametrize("known", [{}, {"kind": "displacement"}])
 def test_intervals_are_joined_only_where_kind_and_degree_are_known(known: dict) -> None:
-    bare = interval(H, 100.0 - 0.2 * H**2, formal_order=None, **known)
+    bare = interval(H, 100.0 - 0.2 * H**2, **known)
     found = together(bare, NARROW, taught())
     assert (found.low, found.high, found.coverage) == (bare.low, bare.high, bare.coverage)
     assert found.companion.startswith("The two ladders meet")

@@ -7,17 +7,16 @@ import pytest
 from hypothesis import assume, given, settings
 from hypothesis import strategies as st
 
-from convergence import rooms
-from convergence.intervals import PARTS, Interval, interval
+from convergence.intervals import Interval, interval
 
 H = np.array([16.0, 8.0, 4.0, 2.0, 1.0])
 NAN = math.nan
 
 
-def of(values: object, h: object = H, formal: float | None = 2.0, resolution: float = 0.0) -> Interval:
+def of(values: object, h: object = H, resolution: float = 0.0) -> Interval:
     f = np.asarray(values, dtype=float)
     sizes = np.asarray(h, dtype=float)
-    return interval(sizes[-len(f) :] if len(f) else sizes[:0], f, formal_order=formal, resolution=resolution)
+    return interval(sizes[-len(f) :] if len(f) else sizes[:0], f, resolution=resolution)
 
 
 @pytest.mark.parametrize("order", [1.0, 2.0, 3.0, 4.0])
@@ -25,16 +24,13 @@ def of(values: object, h: object = H, formal: float | None = 2.0, resolution: fl
 def test_a_power_law(order: float, h: np.ndarray) -> None:
     """Order and limit are found; the interval holds the limit, the half-width reaches its farther end."""
     f = 5.0 + 0.03 * h**order
-    found = of(f, h, order)
+    found = of(f, h)
     assert found.flaw == "" and found.behaviour == "monotone convergence"
     assert found.low <= 5.0 <= found.high and found.low < found.limit < found.high
     assert abs(found.limit - 5.0) < 0.5 * abs(found.value - 5.0)
     assert found.half_width == max(found.high - found.value, found.value - found.low)
     assert found.order == pytest.approx(order, abs=1e-6)
     assert found.order_low <= order <= found.order_high and found.growth != "shown"
-    assert set(found.widths) == {*PARTS.values(), "last change"}
-    assert found.widths["last change"] == pytest.approx(0.03 * (h[-2] ** order - h[-1] ** order))
-    assert set(found.estimates) == set(rooms.names("estimators"))
     assert (found.levels, found.lost) == (5, 0)
     assert found.coverage is not None
     assert (found.coverage.knowledge, found.coverage.levels) == ("nothing", 5)
@@ -42,16 +38,9 @@ def test_a_power_law(order: float, h: np.ndarray) -> None:
 
 def test_kind_and_degree_are_used() -> None:
     f = 5.0 + 0.03 * H**2
-    told = [interval(H, f, formal_order=2.0, kind="energy", degree=degree) for degree in (None, 1)]
+    told = [interval(H, f, kind="energy", degree=degree) for degree in (None, 1)]
     assert len({one.half_width for one in (of(f), *told)}) == 3
     assert [one.coverage and one.coverage.knowledge for one in told] == ["kind", "kind and degree"]
-
-
-def test_theory_does_not_move_the_interval() -> None:
-    """The formal order is for the published estimates only."""
-    f = 5.0 + 0.03 * H**2
-    one, other = of(f, formal=2.0), of(f, formal=None)
-    assert (one.limit, one.low, one.high) == (other.limit, other.low, other.high)
 
 
 @pytest.mark.parametrize("value", [5.0, -5.0, 0.0, 1e-300, 1e300])
@@ -80,7 +69,7 @@ def test_settled_at_the_end_is_not_taken_for_exact() -> None:
     """Two equal values at the end are an accident until a third agrees: the change before still counts."""
     found = of([1.0, 2.0, 2.6, 2.9, 2.9])
     assert found.flaw == ""
-    assert found.behaviour == "monotone convergence" and found.widths["last change"] == 0.0
+    assert found.behaviour == "monotone convergence"
     assert found.low < found.limit < found.high and found.half_width > 1e-3 * 0.3
 
 
@@ -121,12 +110,11 @@ def test_growing_oscillation_has_a_wide_interval() -> None:
 
 
 def test_two_levels() -> None:
-    """An interval for orientation, wider than the change, whether theory is known or not."""
-    for formal in (2.0, None):
-        found = of([1.0, 1.4], formal=formal)
-        assert found.flaw == "" and found.behaviour == "too few levels" and math.isnan(found.order)
-        assert found.half_width > 0.4 and found.low < 1.4 < found.high
-        assert found.coverage is not None and found.coverage.levels == 2
+    """An interval for orientation, wider than the change."""
+    found = of([1.0, 1.4])
+    assert found.flaw == "" and found.behaviour == "too few levels" and math.isnan(found.order)
+    assert found.half_width > 0.4 and found.low < 1.4 < found.high
+    assert found.coverage is not None and found.coverage.levels == 2
 
 
 def test_two_equal_values() -> None:

@@ -33,7 +33,7 @@ def ladder_of(h: np.ndarray, f: np.ndarray, unknowns: float = 2e4) -> Ladder:
 
 
 def judged(f: np.ndarray, h: np.ndarray = H, kind: Kind = "displacement", degree: int | None = 1) -> Interval:
-    return interval(h, f, formal_order=2.0, kind=kind, degree=degree)
+    return interval(h, f, kind=kind, degree=degree)
 
 
 def ahead(

@@ -22,7 +22,7 @@ RISING = np.array([93.0, 97.5, 98.2, 99.4])  # as meshed anew each time: the int
 
 
 def judged(f: np.ndarray) -> Interval:
-    return interval(H, f, formal_order=2.0, kind="energy", degree=1)
+    return interval(H, f, kind="energy", degree=1)
 
 
 def test_the_side_without_the_limit_is_cut_off() -> None:
@@ -52,7 +52,7 @@ def test_nothing_is_cut_where_the_ladder_moves_against_theory() -> None:
 def test_nothing_is_cut_from_an_interval_on_the_other_side_or_from_none() -> None:
     beyond = replace(judged(RISING), low=80.0, high=90.0)
     assert one_sided(beyond, RISING, 1) is beyond
-    none = interval(H[:1], RISING[:1], formal_order=2.0)
+    none = interval(H[:1], RISING[:1])
     assert one_sided(none, RISING[:1], 1) is none
 
 

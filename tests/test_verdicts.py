@@ -40,7 +40,7 @@ def judged(
     f = np.asarray(values, dtype=float)
     sizes = np.asarray(h, dtype=float)[-len(f) :] if len(f) else H[:0]
     quantity = Quantity("f", kind, "mm", formal_order=formal, **tolerance)
-    found = interval(sizes, f, formal_order=formal, kind=kind)
+    found = interval(sizes, f, kind=kind)
     return verdict(quantity, found, spoiled or {}, ladder_of(sizes, f), facts or Facts())
 
 
@@ -57,12 +57,10 @@ def fixed(half_width: float, value: float = 100.0, **changes: object) -> Interva
         order_high=2.5,
         growth="excluded",
         behaviour="monotone convergence",
-        widths={"last change": half_width},
         levels=5,
         lost=0,
         flaw="",
         coverage=None,
-        estimates={},
     )
     return replace(base, **changes)
 

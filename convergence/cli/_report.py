@@ -3,20 +3,26 @@
 import sys
 from datetime import date
 from pathlib import Path
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
 from convergence.cli._judging import Judged, JudgedCases
 
+if TYPE_CHECKING:
+    from convergence.report.pictures import Draw
 
-def report(judged: Judged | JudgedCases, folder: Path) -> Path:
-    """Write the report into the folder, those of cases into theirs within it; return the page."""
+
+def report(judged: Judged | JudgedCases, folder: Path, draw_all: "Draw | None" = None) -> Path:
+    """Write the report into the folder, those of cases into theirs within it; return the page.
+
+    `draw_all` draws the figures, one by one where None.
+    """
     folder.mkdir(parents=True, exist_ok=True)
     if isinstance(judged, Judged):
-        return _report(judged, folder)
+        return _report(judged, folder, draw_all)
     from convergence.report.cases_page import write_cases
 
     for name, case in judged.cases.items():
-        report(case, folder / name)
+        report(case, folder / name, draw_all)
     return write_cases(
         judged.findings,
         folder,
@@ -29,8 +35,9 @@ def report(judged: Judged | JudgedCases, folder: Path) -> Path:
     )
 
 
-def _report(judged: Judged, folder: Path) -> Path:
+def _report(judged: Judged, folder: Path, draw_all: "Draw | None") -> Path:
     from convergence.report.document import write_report
+    from convergence.report.pictures import one_by_one
 
     return write_report(
         judged.findings,
@@ -41,6 +48,7 @@ def _report(judged: Judged, folder: Path) -> Path:
         study_name=judged.name,
         command=_command(),
         date=date.today().isoformat(),
+        draw_all=draw_all or one_by_one,
     )
 
 

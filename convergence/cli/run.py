@@ -27,11 +27,13 @@ def run(study: Path, out: Path | None, budgets: tuple[str, ...], as_json: bool) 
     is climbed after the ladder, with what is left of the budget.
     """
     from convergence.cli._budget import budget_of
+    from convergence.cli._drawing import drawing
     from convergence.cli._folder import LADDER, default_folder, keep_study
     from convergence.cli._judging import judge_saved
     from convergence.cli._progress import follow
     from convergence.cli._report import report
     from convergence.cli._show import show, show_json
+    from convergence.climbing import climb, unknowns
     from convergence.intake.ladder_file import write_ladder
     from convergence.study import load
 
@@ -40,18 +42,19 @@ def run(study: Path, out: Path | None, budgets: tuple[str, ...], as_json: bool) 
     folder = out or default_folder(asked.name)
     keep_study(asked, folder)
     begun = time.perf_counter()
-    for each in filter(None, (asked, asked.companion)):
-        if each.table:
-            place = folder / each.subfolder
-            place.mkdir(exist_ok=True)
-            write_ladder(replace(each.table, fingerprint=each.fingerprint), place / LADDER)
-        else:
-            from convergence.climbing import climb, unknowns
-
-            left = replace(budget, seconds=budget.seconds - (time.perf_counter() - begun))
-            follow(climb(each, folder, left), unknowns(each), each.subfolder)
-    judged = judge_saved(asked, folder)
-    page = report(judged, folder)
+    ladders = [each for each in (asked, asked.companion) if each]
+    sizes = {each.subfolder: [] if each.table else unknowns(each) for each in ladders}
+    with drawing(max(max(counts, default=0) for counts in sizes.values())) as draw_all:
+        for each in ladders:
+            if each.table:
+                place = folder / each.subfolder
+                place.mkdir(exist_ok=True)
+                write_ladder(replace(each.table, fingerprint=each.fingerprint), place / LADDER)
+            else:
+                left = replace(budget, seconds=budget.seconds - (time.perf_counter() - begun))
+                follow(climb(each, folder, left), sizes[each.subfolder], each.subfolder)
+        judged = judge_saved(asked, folder)
+        page = report(judged, folder, draw_all)
     if as_json:
         show_json([judged])
     else:

@@ -83,6 +83,14 @@ def draw(
     return Picture(name, alt, caption, svg, png, size[0])
 
 
+def get_ready() -> None:
+    """Load what drawing needs ahead of the first figure."""
+    import matplotlib.backends.backend_agg
+    import matplotlib.backends.backend_svg
+    import matplotlib.figure
+    import PIL.Image  # noqa: F401
+
+
 @contextmanager
 def _no_collections() -> Iterator[None]:
     """Leave garbage for later: a figure is so many objects that looking for it takes a fifth of the time."""

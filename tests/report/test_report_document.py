@@ -11,7 +11,8 @@ import pytest
 
 from convergence.dimensions import SYSTEMS, Units
 from convergence.fields import Fields
-from convergence.report.document import stems, write_report
+from convergence.report.document import write_report
+from convergence.report.pictures import stems
 from convergence.results import Facts, Findings
 
 VOID = {"meta", "br", "img", "link", "hr"}

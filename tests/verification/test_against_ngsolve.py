@@ -249,7 +249,7 @@ def test_an_overkill_solution_lies_in_the_interval(
     counts = part.divisions(size=None, divisions=1)
     meshes = [mesh(part, finer(counts, 2.0, n), shape=shape, degree=degree) for n in range(levels)]
     energies = np.array([solve(problem, level).energy for level in meshes])
-    stated = interval(np.array([level.h for level in meshes]), energies, formal_order=2.0 * degree)
+    stated = interval(np.array([level.h for level in meshes]), energies)
     overkill = mesh(part, part.divisions(size=None, divisions=fine), shape=shape, degree=1)
     before, best = (solved(problem, overkill, polynomial).energy for polynomial in (order - 1, order))
     assert stated.flaw == ""
