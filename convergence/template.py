@@ -33,6 +33,10 @@ def study_template(model: str) -> str:
         *(line for name in materials for line in _section(name, material)),
         *_section("ladder", ladder, first={"divisions": 2}),
         "",
+        "# A second ladder of the same model with other cells narrows the intervals where the two meet.",
+        "# [companion]",
+        '# shape = "triangle"',
+        "",
         "# A quantity is sound when its interval lies inside the tolerance.",
         f"# Measures: {', '.join(rooms.names('quantities'))}.",
     ]

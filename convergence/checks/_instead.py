@@ -59,13 +59,19 @@ class Instead:
         return "sound" if self.half_width <= tolerance * abs(self.value) else "refine"
 
     @property
+    def limit(self) -> float:
+        """Return the best estimate of the limit, the middle of the interval."""
+        return 0.5 * (self.low + self.high)
+
+    @property
     def words(self) -> str:
-        """Return label, value and interval."""
-        shown = f"{self.label}: {numbers.rounded(self.value, self.half_width)} {self.unit}".rstrip()
+        """Return label, best estimate and interval, and the finest value, which may lie outside."""
+        finest = f"{numbers.rounded(self.value, self.half_width)} {self.unit}".rstrip()
         if not np.isfinite(self.half_width):
-            return f"{shown}, without an interval"
-        low, high = numbers.outward(self.low, self.high, self.value, self.half_width)
-        return f"{shown} ({low} to {high})"
+            return f"{self.label}: {finest}, without an interval"
+        best = f"{numbers.rounded(self.limit, 0.5 * (self.high - self.low))} {self.unit}".rstrip()
+        low, high = numbers.outward(self.low, self.high, self.limit, self.half_width)
+        return f"{self.label}: {best} ({low} to {high}; {finest} on the finest mesh)"
 
 
 def instead(ladder: Ladder, facts: Facts, name: str) -> tuple[Instead, ...]:

@@ -1,5 +1,6 @@
 """What to report instead of a singular stress: a table with intervals, and what the model does not allow."""
 
+import math
 from typing import Any
 
 from convergence import numbers
@@ -9,7 +10,7 @@ from convergence.report.html import Html, text
 from convergence.results import Findings, Quantity
 
 TOLERANCE = 0.05  # where the quantity has none relative to its value
-HEAD = ("instead", "value", "interval", "verdict")
+HEAD = ("instead", "finest mesh", "best estimate", "interval", "verdict")
 
 
 def instead_part(findings: Findings, quantity: Quantity) -> Html:
@@ -34,6 +35,7 @@ def instead_objects(findings: Findings, quantity: Quantity) -> list[dict[str, An
             "what": one.label,
             "unit": one.unit,
             "value": one.value,
+            "limit": one.limit,
             "low": one.low,
             "high": one.high,
             "verdict": one.word(tolerance(quantity)),
@@ -43,7 +45,10 @@ def instead_objects(findings: Findings, quantity: Quantity) -> list[dict[str, An
 
 
 def _row(one: Instead, accepted: float) -> list[Html]:
-    value = f"{numbers.rounded(one.value, one.half_width)} {one.unit}".strip()
-    low, high = numbers.outward(one.low, one.high, one.value, one.half_width)
+    finest, best = (
+        numbers.NONE if math.isnan(number) else f"{numbers.rounded(number, one.half_width)} {one.unit}".strip()
+        for number in (one.value, one.limit)
+    )
+    low, high = numbers.outward(one.low, one.high, one.limit, one.half_width)
     reach = numbers.NONE if low == numbers.NONE else f"{low} to {high}"
-    return [text(one.label), text(value), text(reach), html.badge(one.word(accepted))]
+    return [*map(text, (one.label, finest, best, reach)), html.badge(one.word(accepted))]

@@ -73,6 +73,7 @@ def test_the_record(cornered: Findings) -> None:
         "what": "von Mises stress 2.5 mm from the corner",
         "unit": "MPa",
         "value": pytest.approx(90.0 * 2.5**-0.4555),
+        "limit": 59.0,
         "low": 57.0,
         "high": 61.0,
         "verdict": "sound",
