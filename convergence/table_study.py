@@ -1,39 +1,48 @@
 """The tables of a table study: the ladder, what its columns are, and the table of a companion ladder."""
 
+import hashlib
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
 from pathlib import Path
-from typing import Annotated
+from typing import Annotated, Any
 
 from convergence.columns import Degree, bare_quantities, formal_order, read_column
 from convergence.dimensions import Units
-from convergence.errors import nearest
-from convergence.intake.table import table
+from convergence.errors import listing, nearest
+from convergence.intake.table import Tables, table
 from convergence.results import Ladder, Quantity
 from convergence.sections import Sections
 
 
 @dataclass(frozen=True)
 class TableStudy:
-    """What the tables of a table study say; the columns of the ladder are under the names of the quantities.
+    """What the tables of a table study say; the columns of a ladder are under the names of the quantities.
 
+    `ladders` are those of the load cases, one under "" without any; `meaning` says what each case is.
     `columns` are the names in the file, by quantity; `companion` is the same on a second ladder.
     """
 
-    ladder: Ladder
+    ladders: Mapping[str, Ladder]
+    meaning: Mapping[str, str]
     file: Path
-    dimension: int
+    said: Mapping[str, Any]
     quantities: tuple[Quantity, ...]
     columns: Mapping[str, str]
     companion: "TableStudy | None" = None
 
+    def parts(self, case: str = "") -> dict[str, Any]:
+        """Return everything that changes a number of the ladder of a case."""
+        content = hashlib.sha256(self.file.read_bytes()).hexdigest()
+        return {"table": content, "said": {**self.said, "file": ""}, "columns": self.columns, "case": case}
 
-def read_table_study(sections: Sections, study: Path, units: Units) -> TableStudy | None:
+
+def read_table_study(sections: Sections, units: Units) -> TableStudy | None:
     """Read [table], [companion] and [quantities], None where the table cannot be read."""
-    read = _table(sections, "table", study)
+    read = _table(sections, "table")
     if read is None:
         return None
-    ladder, found, path, dimension = read
+    tables, path, said = read
+    found = tables.units
     asked = sections.named("quantities", "quantity")
     pairs = [
         sections.keep((q, source), faults)
@@ -42,12 +51,13 @@ def read_table_study(sections: Sections, study: Path, units: Units) -> TableStud
     columns = {quantity.name: source for quantity, source in pairs if quantity}
     quantities = tuple(quantity for quantity, _ in pairs if quantity)
     if not sections.file.data.get("quantities"):
-        quantities = bare_quantities(ladder, found, kinds={}, degree=None, relative=None)
+        first = next(iter(tables.ladders.values()))
+        quantities = bare_quantities(first, found, kinds={}, degree=None, relative=None)
         columns = {quantity.name: quantity.name for quantity in quantities}
-    main = TableStudy(_renamed(ladder, columns), path, dimension, quantities, columns)
+    main = TableStudy(_renamed(tables, columns), tables.meaning(), path, said, quantities, columns)
     if "companion" not in sections.file.data:
         return main
-    return replace(main, companion=_companion(sections, study, main))
+    return replace(main, companion=_companion(sections, main))
 
 
 def companion(
@@ -57,13 +67,17 @@ def companion(
     return degree
 
 
-def _companion(sections: Sections, study: Path, main: TableStudy) -> TableStudy | None:
-    read = _table(sections, "companion", study, "degree")
+def _companion(sections: Sections, main: TableStudy) -> TableStudy | None:
+    read = _table(sections, "companion", "degree")
     said = {key: value for key, value in sections.table("companion").items() if key == "degree"}
     own = sections.bound(companion, said, "companion")
     if read is None or own is None:
         return None
-    ladder, found, path, dimension = read
+    tables, path, where = read
+    found = tables.units
+    if tables.ladders.keys() != main.ladders.keys():
+        what = f"{path.name} has {_cases(tables.ladders)}"
+        sections.fault(("companion", "file"), what, f"{_cases(main.ladders)}, as in [table]")
     if path.name == main.file.name:
         sections.fault(("companion", "file"), "the name of the file of [table]", "another table", path.name)
     for quantity in main.quantities:
@@ -75,7 +89,12 @@ def _companion(sections: Sections, study: Path, main: TableStudy) -> TableStudy 
             what = f"the column {column!r} is in {found[column] or 'no unit'}"
             sections.fault(("companion", "file"), what, f"{quantity.unit or 'no unit'}, as in [table]")
     quantities = tuple(_of_degree(quantity, companion(**own)) for quantity in main.quantities)
-    return TableStudy(_renamed(ladder, main.columns), path, dimension, quantities, main.columns)
+    renamed = _renamed(tables, main.columns)
+    return TableStudy(renamed, tables.meaning(), path, where, quantities, main.columns)
+
+
+def _cases(ladders: Mapping[str, Ladder]) -> str:
+    return "no load cases" if "" in ladders else f"the load cases {listing(list(ladders))}"
 
 
 def _of_degree(quantity: Quantity, degree: int | None) -> Quantity:
@@ -84,31 +103,25 @@ def _of_degree(quantity: Quantity, degree: int | None) -> Quantity:
     return replace(quantity, degree=degree, formal_order=formal_order(quantity.kind, degree))
 
 
-def _table(
-    sections: Sections, section: str, study: Path, *also: str
-) -> tuple[Ladder, dict[str, str], Path, int] | None:
-    """Return the ladder of a table, the units of its columns, its path and dimension."""
+def _table(sections: Sections, section: str, *also: str) -> tuple[Tables, Path, dict[str, Any]] | None:
+    """Return the ladders of a table, its path and what the study says of it."""
     arguments = sections.bound(table, sections.table(section), section, also=also)
     if arguments is None:
         return None
-    path = _beside(study, arguments["file"])
+    path = sections.beside(arguments["file"])
     read = sections.called(table, {**arguments, "file": str(path)}, section)
-    return None if read is None else (*read, path, arguments["dimension"])
+    return None if read is None else (read, path, arguments)
 
 
-def _beside(study: Path, file: str) -> Path:
-    """Return the table's path from the study's folder; a copy of the study has its table beside it."""
-    path = study.parent / file
-    copy = study.parent / Path(file).name
-    return copy if copy.exists() and not path.exists() else path
-
-
-def _renamed(found: Ladder, columns: Mapping[str, str]) -> Ladder:
-    """Return the ladder with the columns under the names of the quantities, and their places."""
+def _renamed(found: Tables, columns: Mapping[str, str]) -> dict[str, Ladder]:
+    """Return the ladders with the columns under the names of the quantities, and their places."""
     names = {name + end: source + end for name, source in columns.items() for end in ("", ".x", ".y", ".z")}
-    levels = tuple(
-        replace(lv, values={new: lv.values[old] for new, old in names.items() if old in lv.values})
-        for lv in found.levels
-    )
-    fine = {new: found.resolution[old] for new, old in names.items() if old in found.resolution}
-    return replace(found, levels=levels, resolution=fine)
+    renamed = {}
+    for case, ladder in found.ladders.items():
+        levels = tuple(
+            replace(lv, values={new: lv.values[old] for new, old in names.items() if old in lv.values})
+            for lv in ladder.levels
+        )
+        fine = {new: ladder.resolution[old] for new, old in names.items() if old in ladder.resolution}
+        renamed[case] = replace(ladder, levels=levels, resolution=fine)
+    return renamed

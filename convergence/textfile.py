@@ -5,21 +5,14 @@ from pathlib import Path
 
 from convergence.errors import Fault, InputError
 
+MOST_BYTES = 200_000_000  # of a study or a table
+
 
 def read_text(path: Path, wanted: str) -> str:
     """Return the text of a UTF-8 file; `wanted` says what the user should give, e.g. "a study file"."""
-    where = str(path)
-    instead = f"give the path of {wanted}"
-    if path.is_dir():
-        raise InputError([Fault(where, "a folder", instead)])
+    where, instead = str(path), f"give the path of {wanted}"
     try:
-        raw = path.read_bytes()
-    except FileNotFoundError:
-        raise InputError([Fault(where, "no such file", _neighbour(path) or instead)]) from None
-    except OSError as error:
-        raise InputError([Fault(where, f"cannot be read ({error.strerror})", instead)]) from None
-    try:
-        text = raw.decode("utf-8-sig")
+        text = read_bytes(path, wanted).decode("utf-8-sig")
     except UnicodeDecodeError:
         text = "\0"
     if "\0" in text:
@@ -27,6 +20,25 @@ def read_text(path: Path, wanted: str) -> str:
     if not text.strip():
         raise InputError([Fault(where, "the file is empty", instead)])
     return text
+
+
+def read_bytes(path: Path, wanted: str) -> bytes:
+    """Return the content of a file that is not empty."""
+    where, instead = str(path), f"give the path of {wanted}"
+    if path.is_dir():
+        raise InputError([Fault(where, "a folder", instead)])
+    try:
+        with path.open("rb") as file:
+            raw = file.read(MOST_BYTES + 1)
+    except FileNotFoundError:
+        raise InputError([Fault(where, "no such file", _neighbour(path) or instead)]) from None
+    except OSError as error:
+        raise InputError([Fault(where, f"cannot be read ({error.strerror})", instead)]) from None
+    if len(raw) > MOST_BYTES:
+        raise InputError([Fault(where, f"more than {MOST_BYTES // 10**6} MB", instead)])
+    if not raw:
+        raise InputError([Fault(where, "the file is empty", instead)])
+    return raw
 
 
 def write_text(path: Path, text: str) -> None:

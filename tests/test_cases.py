@@ -142,7 +142,7 @@ def test_what_the_model_refuses_is_refused_in_a_case(tmp_path: Path) -> None:
 def test_a_table_has_no_cases(tmp_path: Path) -> None:
     (tmp_path / "t.csv").write_text("h,w\n1,1.5\n")
     assert said(tmp_path, '[table]\nfile = "t.csv"\n[cases.lift]\n') == [
-        "arm.toml:3: cases: a table study has no load cases; remove [cases]"
+        "arm.toml:3: cases: a table has levels in rows, cases in a column: it has no cases; remove [cases]"
     ]
 
 

@@ -10,6 +10,7 @@ from hypothesis import strategies as st
 from convergence.errors import InputError
 from convergence.intake._cells import number, resolution, split_unit
 from convergence.intake.table import read_table, table
+from convergence.results import Ladder
 
 GOOD = """# the davit's arm, by hand
 
@@ -28,16 +29,23 @@ def write(folder: Path, text: str | bytes) -> Path:
     return path
 
 
-def said(folder: Path, text: str | bytes, size: str | None = None) -> list[str]:
+def one_ladder(path: Path, dimension: int = 2) -> tuple[Ladder, dict[str, str]]:
+    """The ladder of a table without load cases, and its units."""
+    found = read_table(path, dimension=dimension)
+    assert list(found.ladders) == [""] and found.case_column == ""
+    return found.ladders[""], dict(found.units)
+
+
+def said(folder: Path, text: str | bytes, size: str | None = None, case: str | None = None) -> list[str]:
     path = write(folder, text)
     with pytest.raises(InputError) as caught:
-        read_table(path, size=size)
+        read_table(path, size=size, case=case)
     return [str(fault).replace(f"{folder}/", "") for fault in caught.value.faults]
 
 
 def test_a_table_is_a_ladder_from_coarse_to_fine(tmp_path: Path) -> None:
     path = write(tmp_path, GOOD)
-    ladder, units = read_table(path)
+    ladder, units = one_ladder(path)
     assert list(ladder.h) == [2.0, 1.0, 0.5]
     assert list(ladder.column("deflection")) == [1.95, 1.98, 1.99]
     stress = ladder.column("peak stress")
@@ -59,21 +67,21 @@ def test_a_table_is_a_ladder_from_coarse_to_fine(tmp_path: Path) -> None:
 @pytest.mark.parametrize("end", ["\n", "\r\n", "\r"])
 def test_separators_line_ends_and_byte_order_mark(tmp_path: Path, separator: str, end: str) -> None:
     text = "H,u\n1,2\n0.5,3\n".replace(",", separator).replace("\n", end)
-    ladder, _ = read_table(write(tmp_path, b"\xef\xbb\xbf" + text.encode()))
+    ladder, _ = one_ladder(write(tmp_path, b"\xef\xbb\xbf" + text.encode()))
     assert list(ladder.h) == [1.0, 0.5] and list(ladder.column("u")) == [2.0, 3.0]
 
 
 @pytest.mark.parametrize("name", ["cells", "Nodes", "DOFS"])
 @pytest.mark.parametrize("dimension", [2, 3])
 def test_sizes_follow_from_counts(tmp_path: Path, name: str, dimension: int) -> None:
-    ladder, _ = read_table(write(tmp_path, f"{name},u\n64,1\n4096,2\n"), dimension=dimension)
+    ladder, _ = one_ladder(write(tmp_path, f"{name},u\n64,1\n4096,2\n"), dimension=dimension)
     # (1/N)^(1/d): 64 = 8^2 = 4^3, 4096 = 64^2 = 16^3; a power in doubles is exact to a few last places
     expected = [1 / 8, 1 / 64] if dimension == 2 else [1 / 4, 1 / 16]
     assert list(ladder.h) == pytest.approx(expected, rel=1e-15)
 
 
 def test_h_goes_before_counts_and_costs_are_no_quantities(tmp_path: Path) -> None:
-    ladder, _ = read_table(
+    ladder, _ = one_ladder(
         write(tmp_path, "cells,h,dofs,seconds,Memory,u\n10,1,30,.5,90,7\n40,.5,100,2,,8\n")
     )
     assert [(lv.h, lv.cells, lv.dofs, lv.seconds) for lv in ladder.levels] == [
@@ -86,31 +94,38 @@ def test_h_goes_before_counts_and_costs_are_no_quantities(tmp_path: Path) -> Non
 
 def test_the_column_of_sizes_can_be_named(tmp_path: Path) -> None:
     path = write(tmp_path, "Edge,cells,u\n1.0,10,7\n0.7,20,8\n")
-    ladder, units = table(file=str(path), size="edge")
-    assert list(ladder.h) == [1.0, 0.7] and units == {"Edge": "", "u": ""}
+    found = table(file=str(path), size="edge")
+    assert list(found.ladders[""].h) == [1.0, 0.7] and found.units == {"Edge": "", "u": ""}
 
 
 def test_equal_sizes_with_different_values_stay(tmp_path: Path) -> None:
-    ladder, _ = read_table(write(tmp_path, "h,u\n1,2\n1,3\n"))
+    ladder, _ = one_ladder(write(tmp_path, "h,u\n1,2\n1,3\n"))
     assert list(ladder.h) == [1.0, 1.0] and list(ladder.column("u")) == [2.0, 3.0]
 
 
 def test_blank_columns_of_a_spreadsheet_are_dropped(tmp_path: Path) -> None:
-    ladder, units = read_table(write(tmp_path, "h,,u,,\n1,,2,,\n0.5,,3,,\n,,,,\n"))
+    ladder, units = one_ladder(write(tmp_path, "h,,u,,\n1,,2,,\n0.5,,3,,\n,,,,\n"))
     assert list(units) == ["h", "u"] and len(ladder.levels) == 2 and ladder.remarks == ()
 
 
 @pytest.mark.parametrize(
     ("text", "messages"),
     [
-        ("", ["t.csv: the file is empty; give the path of a table (.csv)"]),
+        ("", ["t.csv: the file is empty; give the path of a table (.csv, .xlsx, .ods)"]),
+        ("\n \n", ["t.csv: the file is empty; give a table"]),
         (
-            b"PK\x03\x04\x00",
-            ["t.csv: not a text file in UTF-8; give the path of a table (.csv), saved as text in UTF-8"],
+            b"h,u\n1,\x00\x8d2\n",
+            [
+                "t.csv: neither a text nor a workbook; "
+                "give a table as text (.csv, .txt) or a workbook (.xlsx, .xls, .ods)"
+            ],
         ),
         (
-            b"h,\xb5\n1,2\n",
-            ["t.csv: not a text file in UTF-8; give the path of a table (.csv), saved as text in UTF-8"],
+            "<html><table><tr><td>h</td></tr></table>",
+            [
+                "t.csv: a page of HTML or XML, not a table; "
+                "open it in a spreadsheet and save it as .xlsx, .ods or .csv"
+            ],
         ),
         ("h,u\n", ["t.csv: no rows of numbers; give a header and one row for each mesh"]),
         ("1,2\n3,4\n", ["t.csv:1: no header; the first row names the columns, e.g. h,deflection"]),
@@ -133,14 +148,16 @@ def test_blank_columns_of_a_spreadsheet_are_dropped(tmp_path: Path) -> None:
         ("h,u,\n1,2,3\n", ["t.csv:1: a column without a name; name every column"]),
         (
             "h,u\n\n1,2\n3\n4,5,6\n",
-            ["t.csv:4: a row of 1 cells; the header has 2", "t.csv:5: a row of 3 cells; the header has 2"],
+            [
+                "t.csv:4: a row of 1 cells; the header has 2",
+                "t.csv:5: a row of 3 cells; the header has 2; "
+                "decimal commas need another separator, such as ;",
+            ],
         ),
         ('h,u\n1,"2\n', ["t.csv:3: not a table (unexpected end of data); separate the cells by commas"]),
         (
-            "h;u\n1;2,5\n0;3\n;4\n-1;x\n1e999;inf\n",
+            "h;u\n1;2.5\n0;3\n;4\n-1;x\n1e999;inf\n",
             [
-                "t.csv:2: column 'u': not a number, got '2,5'; "
-                "write a number such as 1234.5 or 1.2e3, or leave the cell empty",
                 "t.csv:3: column 'h': not a size, got '0'; give a number above 0",
                 "t.csv:4: column 'h': not a size, got ''; give a number above 0",
                 "t.csv:5: column 'h': not a size, got '-1'; give a number above 0",
@@ -209,7 +226,9 @@ def test_units_in_brackets() -> None:
 def test_no_text_breaks_the_reader(tmp_path_factory: pytest.TempPathFactory, text: str) -> None:
     path = write(tmp_path_factory.getbasetemp(), text)
     try:
-        ladder, _ = read_table(path)
+        found = read_table(path)
     except InputError:
         return
-    assert all(level.h > 0 for level in ladder.levels) and ladder.levels
+    assert found.ladders
+    for ladder in found.ladders.values():
+        assert all(level.h > 0 for level in ladder.levels) and ladder.levels
