@@ -2,14 +2,16 @@
 
 The nodal forces K u − f of the supports against the applied loads, moments about the part's middle. It
 proves bookkeeping and solver, not the mesh: it holds on any mesh to round-off. Limit: 1e-6 of the load
-(common practice for a direct solver).
+(common practice for a direct solver). Where another solver printed loads and reactions, these are balanced.
 """
 
 import numpy as np
 
+from convergence import statics
 from convergence.checks._ladder import not_applicable, per_level, recorded
 from convergence.fem.solution import Solution
 from convergence.results import Check, Facts, Ladder
+from convergence.statics import Balance
 
 LIMIT = 1e-6
 
@@ -40,7 +42,9 @@ def record(solution: Solution) -> dict[str, float]:
 
 
 def equilibrium(ladder: Ladder, facts: Facts) -> Check:
-    """Pass where force and moment balance on every level."""
+    """Pass where force and moment balance on every level, or in the printout of another solver."""
+    if facts.balance is not None:
+        return _of_printout(facts.balance)
     sums = (f"{what}_{axis}" for what in ("load", "reaction") for axis in "xyz")
     known = [name for name in sums if np.isfinite(ladder.column(f"equilibrium.{name}")).any()]
     columns = recorded(ladder, "equilibrium", "force", "moment", *known)
@@ -56,3 +60,9 @@ def equilibrium(ladder: Ladder, facts: Facts) -> Check:
     )
     spoils = {} if passed else {"": "loads and reactions are out of balance"}
     return Check("equilibrium", passed, finding, spoils, values=per_level(columns))
+
+
+def _of_printout(balance: Balance) -> Check:
+    """Return the outcome of a printout, which belongs to no level; too few digits make no statement."""
+    spoils = {"": "the printed loads and reactions are out of balance"} if balance.passed is False else {}
+    return Check("equilibrium", balance.passed, statics.finding(balance), spoils)
