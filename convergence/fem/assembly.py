@@ -11,6 +11,7 @@ from convergence.fem.problem import ElasticSupport, Problem
 from convergence.fem.workers import workers
 
 ENTRIES = 40_000  # of cell matrices at once: they stay in the cache
+CELLS = 20_000  # at once
 
 
 def stiffness(problem: Problem, mesh: Mesh) -> sparse.csr_matrix:
@@ -39,6 +40,24 @@ def _blocks(problem: Problem, mesh: Mesh) -> np.ndarray:
     for task in waiting:
         task.result()
     return total
+
+
+def stretching(problem: Problem, mesh: Mesh, displacement: np.ndarray) -> np.ndarray:
+    """Return K u of the material for interleaved unknowns, cell by cell: K itself is never in memory."""
+    each, total = CellMatrices(problem, mesh), np.zeros((mesh.dimension, mesh.nodes.shape[1]))
+    u, apart = displacement.reshape(-1, mesh.dimension).T, each.first != each.second
+    for region, members in mesh.regions.items():
+        elasticity = problem.materials[region].elasticity(problem.kind)
+        for start in range(0, len(members), CELLS):
+            cells = members[start : start + CELLS]
+            blocks, nodes = each.blocks(cells, elasticity), mesh.cell_nodes[:, cells]
+            first, second = nodes[each.first], nodes[each.second]
+            forces = np.einsum("cdpm,dpm->cpm", blocks, u[:, second])
+            back = np.einsum("cdpm,cpm->dpm", blocks[:, :, apart], u[:, first[apart]])
+            for row, force, other in zip(total, forces, back, strict=True):
+                row += np.bincount(first.ravel(), force.ravel(), minlength=len(row))
+                row += np.bincount(second[apart].ravel(), other.ravel(), minlength=len(row))
+    return total.T.ravel()
 
 
 def foundation(problem: Problem, mesh: Mesh, support: ElasticSupport) -> sparse.csr_matrix:

@@ -10,6 +10,7 @@ from collections.abc import Mapping
 
 import numpy as np
 
+from convergence.fem.given_part import GivenPart
 from convergence.fem.part import Part
 from convergence.fem.problem import AnyPart
 from convergence.fem.rod_part import RodPart
@@ -24,6 +25,8 @@ def family_lengths(part: AnyPart) -> dict[int, float]:
     """Return the mean length of the edges of each family, of layers their thickness."""
     if isinstance(part, RodPart):
         return dict(enumerate(np.diff(part.stations).tolist()))
+    if isinstance(part, GivenPart):
+        raise TypeError("a part that is given by its meshes has no families of edges")
     plan = part.plan if isinstance(part, SolidPart) else part
     lengths = _plan_lengths(plan)
     if isinstance(part, SolidPart):

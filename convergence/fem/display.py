@@ -5,19 +5,14 @@ import numpy as np
 from convergence.fem.element import Element, element
 from convergence.fem.facets import SHAPES
 from convergence.fem.mesh import Mesh
+from convergence.fem.outer_facets import facet_element, facet_keys
+from convergence.fem.pieces import pieces
 from convergence.fem.recovery import cell_volumes, energy_error, nodal_values, recovered_von_mises
 from convergence.fem.solution import Solution
 from convergence.fields import Fields
 
-PLACES = {
-    "triangle": ((0, 0), (1, 0), (0, 1), (0.5, 0), (0.5, 0.5), (0, 0.5)),
-    "quadrilateral": ((0, 0), (1, 0), (1, 1), (0, 1), (0.5, 0), (1, 0.5), (0.5, 1), (0, 0.5), (0.5, 0.5)),
-}
-PIECES = {
-    "triangle": ((0, 3, 5), (3, 1, 4), (5, 4, 2), (3, 4, 5)),
-    "quadrilateral": ((0, 4, 8, 7), (4, 1, 5, 8), (8, 5, 2, 6), (7, 8, 6, 3)),
-}
 SHARP = np.cos(np.radians(30.0))
+MOST_FACES = 150_000  # more cannot be told apart in a picture; such levels leave no fields
 
 
 def display(solution: Solution) -> Fields:
@@ -33,10 +28,10 @@ def display(solution: Solution) -> Fields:
     edges: list[np.ndarray] = []
     for nodes, owner in groups:
         kind = element(SHAPES[3, mesh.degree, len(nodes)], mesh.degree)
-        pieces = _pieces(kind)
-        corners = np.concatenate([nodes[list(piece)] for piece in pieces], axis=1)
+        cuts = pieces(kind)
+        corners = np.concatenate([nodes[list(piece)] for piece in cuts], axis=1)
         drawn.append(corners if len(groups) == 1 or len(corners) == 4 else corners[[0, 1, 2, 2]])
-        owners.append(np.tile(owner, len(pieces)))
+        owners.append(np.tile(owner, len(cuts)))
         edges.append(_edges(nodes, kind))
     cells = np.concatenate(drawn, axis=1)
     lines = np.concatenate(edges, axis=1)
@@ -58,10 +53,10 @@ def display(solution: Solution) -> Fields:
 
 def faces(mesh: Mesh) -> int:
     """Return how many faces the fields of a mesh have."""
-    pieces = 4 if mesh.degree == 2 else 1
+    each = 4 if mesh.degree == 2 else 1
     if mesh.dimension < 3:
-        return mesh.cells * pieces
-    return pieces * sum(int(group.shape[1]) for groups in mesh.facets.values() for group in groups)
+        return mesh.cells * each
+    return each * sum(int(group.shape[1]) for groups in mesh.facets.values() for group in groups)
 
 
 def _rod(solution: Solution) -> Fields:
@@ -86,44 +81,24 @@ def _rod(solution: Solution) -> Fields:
 
 
 def _surface(mesh: Mesh) -> list[tuple[np.ndarray, np.ndarray]]:
-    """Return the facets of all boundaries (k, f), by shape, with the cell behind each."""
+    """Return the facets of all boundaries (k, f), each once, by shape, with the cell behind each."""
     found: dict[int, list[np.ndarray]] = {}
     for groups in mesh.facets.values():
         for group in groups:
             found.setdefault(len(group), []).append(group)
-    keys, cells = _face_keys(mesh)
+    size = mesh.nodes.shape[1]
+    faces = [mesh.cell_nodes[list(face)] for face in mesh.element.faces]
+    keys = np.concatenate([facet_keys(face, size) for face in faces])
+    order = np.argsort(keys)
     surface = []
     for same in found.values():
         nodes = np.concatenate(same, axis=1)
-        corners = element(SHAPES[3, mesh.degree, len(nodes)], 1).corners
-        wanted = _keys(nodes[:corners], mesh.nodes.shape[1])
-        surface.append((nodes, cells[np.searchsorted(keys, wanted)]))
+        corners = facet_element(3, mesh.degree, len(nodes)).corners
+        wanted = facet_keys(nodes[:corners], size)
+        once = np.sort(np.unique(wanted, return_index=True)[1])
+        cells = order[np.searchsorted(keys, wanted[once], sorter=order)] % mesh.cells
+        surface.append((nodes[:, once], cells))
     return surface
-
-
-def _face_keys(mesh: Mesh) -> tuple[np.ndarray, np.ndarray]:
-    """Return the keys of all faces of cells, sorted, and their cells."""
-    faces = [mesh.cell_nodes[list(face)] for face in mesh.element.faces]
-    keys = np.concatenate([_keys(face, mesh.nodes.shape[1]) for face in faces])
-    order = np.argsort(keys)
-    return keys[order], np.tile(np.arange(mesh.cells), len(faces))[order]
-
-
-def _keys(vertices: np.ndarray, size: int) -> np.ndarray:
-    """Return a number for each face (k, f), by its three smallest vertices."""
-    first, second, third = np.sort(vertices, axis=0)[:3].astype(np.int64)
-    return np.asarray((first * size + second) * size + third)
-
-
-def _pieces(kind: Element) -> list[tuple[int, ...]]:
-    """Return the local nodes of each piece of a face, counter-clockwise."""
-    number = [
-        int(np.hypot(*(kind.nodes - place).T).argmin())
-        for place in PLACES[kind.shape][: kind.corners if kind.degree == 1 else None]
-    ]
-    if kind.degree == 1:
-        return [tuple(number)]
-    return [tuple(number[node] for node in piece) for piece in PIECES[kind.shape]]
 
 
 def _edges(nodes: np.ndarray, kind: Element) -> np.ndarray:

@@ -118,10 +118,12 @@ class Element:
         if self.shape == "wedge":
             return _wedge(self.degree, local)
         native = NATIVE[self.shape, self.degree]()
-        found = [native.lbasis(local, node) for node in range(len(self.nodes))]
-        whole = local.shape[1:]
-        shapes = np.array([np.broadcast_to(value, whole) for value, _ in found])
-        slopes = np.array([[np.broadcast_to(part, whole) for part in slope] for _, slope in found])
+        shapes = np.empty((len(self.nodes), *local.shape[1:]))
+        slopes = np.empty((len(self.nodes), *local.shape))
+        for node in range(len(self.nodes)):
+            shapes[node], parts = native.lbasis(local, node)
+            for way, part in enumerate(parts):
+                slopes[node, way] = part
         return shapes, slopes
 
 

@@ -2,6 +2,7 @@
 
 import numpy as np
 
+from convergence.errors import SolvingError
 from convergence.fem.facets import FacetBasis, facet_bases
 from convergence.fem.geometry import at_rule
 from convergence.fem.loads import (
@@ -75,7 +76,11 @@ def _one_load(load: Load, problem: Problem, mesh: Mesh) -> np.ndarray:
     if isinstance(load, BearingLoad):
         size = float(np.linalg.norm(load.force))
         resultant = total.reshape(-1, mesh.dimension).sum(axis=0)
-        total *= size**2 / float(resultant @ np.array(load.force))
+        along = float(resultant @ np.array(load.force))
+        if not along > 0.0:
+            what = f"the force of the pin in {load.boundary} does not press on it"
+            raise SolvingError(f"{what}; a force towards the boundary, or a centre inside the hole")
+        total *= size**2 / along
     return total
 
 

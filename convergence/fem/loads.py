@@ -1,7 +1,8 @@
 """The loads of a problem, and the body forces of gravity and rotation."""
 
 from collections.abc import Callable
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from typing import Any
 
 import numpy as np
 
@@ -94,6 +95,22 @@ def centrifugal(density: float, rate: float, axis: int, region: str | None = Non
         )
 
     return BodyForce(value, region)
+
+
+def scaled(load: Load, factor: float) -> Load:
+    """Return a load times a factor."""
+    if isinstance(load, BearingLoad | PointForce):
+        return replace(load, force=_times(load.force, factor))
+    if isinstance(load, Resultant):
+        return replace(load, force=_times(load.force, factor), moment=_times(load.moment, factor))
+    return replace(load, value=_times(load.value, factor))
+
+
+def _times(value: Any, factor: float) -> Any:
+    """Return a number, a vector or a field times a factor."""
+    if callable(value):
+        return lambda *places: factor * value(*places)
+    return tuple(factor * part for part in value) if isinstance(value, tuple) else factor * value
 
 
 def values_at(value: float | Vector | FieldFunction, places: np.ndarray) -> np.ndarray:

@@ -7,7 +7,7 @@ there), xx in a rod; shear strains are engineering strains.
 """
 
 from collections.abc import Callable
-from dataclasses import dataclass
+from dataclasses import asdict, dataclass
 from typing import Annotated, Any, Literal, get_type_hints
 
 import numpy as np
@@ -60,6 +60,10 @@ class Material:
     shear_yz: float | None = None
     shear_zx: float | None = None
     angle: float = 0.0
+
+    def constants(self) -> dict[str, Any]:
+        """Return what changes a solution: all but the yield strength and its source."""
+        return {key: value for key, value in asdict(self).items() if not key.startswith("yield_")}
 
     @property
     def isotropic(self) -> bool:

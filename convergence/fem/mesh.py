@@ -14,6 +14,7 @@ import numpy as np
 from convergence.errors import SolvingError
 from convergence.fem.calculus import derivatives, determinant
 from convergence.fem.element import Element, Shape, element
+from convergence.fem.given_part import GivenPart
 from convergence.fem.grid import Grids, chain_facets, cut
 from convergence.fem.part import Part
 from convergence.fem.problem import AnyPart
@@ -109,6 +110,7 @@ def mesh(
 ) -> Mesh:
     """Return the mesh of a part with `counts` cells on each family of edges.
 
+    Of a given part {0: k} is its mesh number k from the coarsest, whose own shape and degree it must be.
     Raises SolvingError where a cell is inverted.
     """
     if isinstance(part, SolidPart):
@@ -116,6 +118,8 @@ def mesh(
         made = Mesh(part, dict(counts), shape, degree, *arrays)
     elif isinstance(part, RodPart):
         made = _rod(part, counts, shape, degree)
+    elif isinstance(part, GivenPart):
+        made = _given(part, counts, shape, degree)
     else:
         made = _plane(part, counts, shape, degree)
     made.require_positive()
@@ -168,10 +172,20 @@ def _rod(part: RodPart, counts: Mapping[int, int], shape: Shape, degree: int) ->
     )
 
 
+def _given(part: GivenPart, counts: Mapping[int, int], shape: Shape, degree: int) -> Mesh:
+    found = part.meshes[counts[0]]
+    if (found.shape, found.degree) != (shape, degree):
+        raise ValueError(f"the given cells are {found.shape}s of degree {found.degree}")
+    arrays = found.nodes, found.cell_nodes, found.facets, found.vertices, found.regions
+    return Mesh(part, dict(counts), shape, degree, *arrays)
+
+
 def count_nodes(part: AnyPart, counts: Mapping[int, int], degree: int) -> int:
     """Return the number of nodes of a mesh without making it."""
     if isinstance(part, RodPart):
         return 1 + degree * sum(counts.values())
+    if isinstance(part, GivenPart):
+        return part.count_nodes(counts[0])
     plan = part.plan if isinstance(part, SolidPart) else part
     fine = {family: degree * count for family, count in counts.items()}
     families = plan.families

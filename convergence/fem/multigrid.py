@@ -9,7 +9,7 @@ unknowns are left, the rest is solved directly.
 Vectors keep their held unknowns, at zero. Cycles run in single precision, the gradients in double.
 """
 
-from collections.abc import Mapping
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from functools import partial
 
@@ -17,7 +17,9 @@ import numpy as np
 from scipy import sparse
 
 from convergence.errors import SolvingError
+from convergence.fem.aggregation import aggregated, from_vertices, vertices
 from convergence.fem.coarsening import coarser, family_lengths
+from convergence.fem.given_part import GivenPart
 from convergence.fem.gradients import Solve, gradients, multiply
 from convergence.fem.held import Held
 from convergence.fem.mesh import Mesh
@@ -159,18 +161,16 @@ def _smooth(level: _Level, residual: np.ndarray, smoother: Smoother) -> np.ndarr
 def _hierarchy(
     mesh: Mesh, matrix: sparse.csr_matrix, held: Held, product: Matrix
 ) -> tuple[list[_Level], Solve]:
-    """Return the levels from fine to coarse and the direct solution below them.
+    """Return the levels from fine to coarse and the direct solution, or of given meshes the cycle, below.
 
     A coarse unknown is held where it would move a held one of the finer level. `product` multiplies by the
     matrix; those of the coarser levels are of its kind.
     """
     levels = []
-    lengths, dimension = family_lengths(mesh.part), mesh.dimension
-    steps: Mapping[int, int] = {family: mesh.degree * count for family, count in mesh.counts.items()}
-    numbers, frame = held.numbers, held.frame
-    while matrix.shape[0] > LARGEST_COARSEST and (fewer := coarser(lengths, steps)) is not None:
-        up = prolongation(mesh.part, (fewer, 1), (steps, 1))
-        steps = fewer
+    numbers, frame, dimension = held.numbers, held.frame, mesh.dimension
+    for up in _steps(mesh):
+        if matrix.shape[0] <= LARGEST_COARSEST:
+            break
         both = sparse.kron(up, sparse.identity(dimension), format="csr")
         if frame is not None:
             both, frame = sparse.csr_matrix(frame.T @ both), None
@@ -184,7 +184,22 @@ def _hierarchy(
             held_below,
         )  # symmetric: turning it sorts its rows
         product = NodeRows(matrix, dimension) if isinstance(product, NodeRows) else matrix
+    if isinstance(mesh.part, GivenPart):
+        return levels, aggregated(matrix, numbers, mesh.nodes[:, vertices(mesh)], frame)
     return levels, _factored(matrix, numbers)
+
+
+def _steps(mesh: Mesh) -> Iterator[sparse.csr_matrix]:
+    """Yield the matrices between the nodes of one level and the next coarser one, from the finest down."""
+    if isinstance(mesh.part, GivenPart):
+        if mesh.degree == 2:
+            yield from_vertices(mesh)
+        return
+    lengths = family_lengths(mesh.part)
+    steps: Mapping[int, int] = {family: mesh.degree * count for family, count in mesh.counts.items()}
+    while (fewer := coarser(lengths, steps)) is not None:
+        yield prolongation(mesh.part, (fewer, 1), (steps, 1))
+        steps = fewer
 
 
 def _level(

@@ -5,13 +5,14 @@ from dataclasses import dataclass, field
 
 import numpy as np
 
+from convergence.fem.given_part import GivenPart
 from convergence.fem.loads import FieldFunction, Load, values_at
 from convergence.fem.material import Material, ProblemKind
 from convergence.fem.part import Part
 from convergence.fem.rod_part import RodPart
 from convergence.fem.solid_part import SolidPart
 
-AnyPart = Part | SolidPart | RodPart
+AnyPart = Part | SolidPart | RodPart | GivenPart
 Prescribed = float | FieldFunction
 
 

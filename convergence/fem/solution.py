@@ -7,7 +7,7 @@ from functools import cached_property
 import numpy as np
 from scipy import sparse
 
-from convergence.fem.assembly import foundation, stiffness
+from convergence.fem.assembly import foundation, stiffness, stretching
 from convergence.fem.equations import Equations
 from convergence.fem.held import Held, held_by
 from convergence.fem.load_vector import load_vector, thermal_load
@@ -21,13 +21,14 @@ from convergence.fem.strain import is_heated
 class Solution:
     """The discrete solution. `unknowns` is interleaved, D per node.
 
-    `stiffness` is that of the material, `foundations` those of the elastic supports; `load` are the nodal
-    forces of the loads, `thermal` those that a temperature asks for, with their energy when all is held.
+    `assembled` is the stiffness of the material, None where it was not needed for the displacement, and
+    `foundations` those of the elastic supports; `load` are the nodal forces of the loads, `thermal` those
+    that a temperature asks for, with their energy when all is held.
     """
 
     problem: Problem
     mesh: Mesh
-    stiffness: sparse.csr_matrix
+    assembled: sparse.csr_matrix | None
     load: np.ndarray
     unknowns: np.ndarray
     held: Held
@@ -43,7 +44,9 @@ class Solution:
     @cached_property
     def _stretching(self) -> np.ndarray:
         """Return K u of the material."""
-        return np.asarray(self.stiffness @ self.unknowns)
+        if self.assembled is None:
+            return stretching(self.problem, self.mesh, self.unknowns)
+        return np.asarray(self.assembled @ self.unknowns)
 
     @property
     def internal(self) -> np.ndarray:

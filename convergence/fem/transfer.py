@@ -15,8 +15,8 @@ from scipy import sparse
 from convergence.fem.grid import Grids
 from convergence.fem.part import Part
 from convergence.fem.problem import AnyPart
-from convergence.fem.rod_part import RodPart
 from convergence.fem.solid_mesh import used_nodes
+from convergence.fem.solid_part import SolidPart
 
 Counts = Mapping[int, int]
 
@@ -25,8 +25,8 @@ def prolongation(part: AnyPart, coarse: tuple[Counts, int], fine: tuple[Counts, 
     """Return the matrix (fine nodes, coarse nodes) between two grids, each its counts and degree."""
     if isinstance(part, Part):
         return _plane(part, coarse, fine)
-    if isinstance(part, RodPart):
-        raise TypeError("a rod is solved directly")
+    if not isinstance(part, SolidPart):
+        raise TypeError("a part without blocks has no grids")
     plan = _plane(part.plan, coarse, fine)
     (few, low), (many, high) = coarse, fine
     steps = [_chain(high * many[family], low * few[family]) for family in part.layer_families]
