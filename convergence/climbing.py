@@ -5,29 +5,28 @@ from collections.abc import Iterator, Mapping
 from dataclasses import replace
 from itertools import pairwise
 from pathlib import Path
-from typing import Any
 
 import numpy as np
 
-from convergence import numbers, rooms
-from convergence.dimensions import Located
-from convergence.errors import Fault, InputError, SolvingError, Unsuitable
-from convergence.fem.display import display, faces
+from convergence import numbers
+from convergence.errors import Fault, InputError, SolvingError
+from convergence.fem.display import MOST_FACES, display, faces
 from convergence.fem.first_guess import first_guess
+from convergence.fem.given_part import GivenPart
 from convergence.fem.mesh import Mesh, count_nodes, mesh
 from convergence.fem.part import finer
 from convergence.fem.problem import Problem
-from convergence.fem.solution import Solution, solve_cases
+from convergence.fem.solution import solve_cases
 from convergence.forecast import Budget, shortage
 from convergence.intake.ladder_file import read_ladder, write_ladder
 from convergence.ladder_spec import LadderSpec
+from convergence.measuring import measured, records
 from convergence.memory import allowed_memory, peak_memory, reset_peak
 from convergence.results import Ladder, Level
 from convergence.study import Study
 
 LADDER = "ladder.csv"
 NO_LIMIT = Budget()
-MOST_FACES = 150_000  # more cannot be told apart in a picture; such levels leave no fields
 
 
 def level_file(folder: Path, number: int) -> Path:
@@ -101,7 +100,12 @@ def unknowns(study: Study) -> list[int]:
 
 
 def plan(spec: LadderSpec, problem: Problem) -> list[dict[int, int]]:
-    """Return the cells per family of edges of every level; InputError where two levels are the same mesh."""
+    """Return the cells per family of edges of every level; InputError where two levels are the same mesh.
+
+    Of a part that is given by its meshes they are the numbers of these.
+    """
+    if isinstance(problem.part, GivenPart):
+        return [{0: number} for number in range(spec.levels)]
     coarsest = problem.part.divisions(size=spec.size, divisions=spec.divisions)
     counts = [finer(coarsest, spec.ratio, number) for number in range(spec.levels)]
     for number, (coarse, fine) in enumerate(pairwise(counts)):
@@ -113,7 +117,8 @@ def plan(spec: LadderSpec, problem: Problem) -> list[dict[int, int]]:
 
 def _save(study: Study, levels: list[Level], folder: Path, remarks: tuple[str, ...] = ()) -> None:
     folder.mkdir(parents=True, exist_ok=True)
-    ladder = Ladder(tuple(levels), study.file.name, study.fingerprint, remarks, h_unit=study.units.length)
+    said = (*study.remarks, *remarks)
+    ladder = Ladder(tuple(levels), study.file.name, study.fingerprint, said, h_unit=study.units.length)
     write_ladder(ladder, folder / LADDER)
 
 
@@ -168,7 +173,8 @@ def _level(
         guesses = [_guess(_unknowns_file(folders[name], number - 1), coarser, meshed) for name in problems]
         solutions = solve_cases(list(problems.values()), meshed, guesses)
         for name, solution in zip(problems, solutions, strict=True):
-            values[name] = {**_measured(cases[name], solution), **_records(solution)}
+            study = cases[name]
+            values[name] = measured(study.quantities, solution, study.file.name) | records(solution)
             (folders[name] / "levels").mkdir(parents=True, exist_ok=True)
             if number == 0 or faces(meshed) <= MOST_FACES:
                 display(solution).save(level_file(folders[name], number))
@@ -190,36 +196,3 @@ def _guess(path: Path, counts: dict[int, int] | None, meshed: Mesh) -> np.ndarra
         return None
     unknowns, nodes = np.load(path), count_nodes(meshed.part, counts, meshed.degree)
     return first_guess(counts, unknowns, meshed) if len(unknowns) == meshed.dimension * nodes else None
-
-
-def _measured(study: Study, solution: Solution) -> dict[str, float]:
-    values: dict[str, float] = {}
-    faults = []
-    for quantity in study.quantities:
-        assert quantity.measure is not None
-        try:
-            values |= _numbers(quantity.name, quantity.measure(solution))
-        except Unsuitable as error:
-            where = f"{study.file.name}: quantities.{quantity.name}"
-            faults += [
-                Fault(f"{where}.{key}", "unsuitable", right, found) for key, found, right in error.problems
-            ]
-    if faults:
-        raise InputError(faults)
-    return values
-
-
-def _numbers(name: str, measured: Any) -> dict[str, float]:
-    if isinstance(measured, Located):
-        places = {"x": measured.x, "y": measured.y, "z": measured.z}
-        found = {f"{name}.{axis}": place for axis, place in places.items() if place is not None}
-        return {name: measured.value, **found}
-    return {name: float(measured)}
-
-
-def _records(solution: Solution) -> dict[str, float]:
-    return {
-        f"{check}.{name}": value
-        for check in rooms.names("checks")
-        for name, value in rooms.beside("checks", check, "record")(solution).items()
-    }

@@ -27,23 +27,26 @@ BALANCES = ("equilibrium.force", "energy_balance.difference", "solver_residual.r
 def facts_of(study: Study) -> Facts:
     """Return what theory and the study say beside the numbers."""
     quantities = study.quantities
-    facts = Facts(dimension=study.dimension)
+    facts = Facts(dimension=study.dimension, balance=study.balance)
     if study.ladder is None:
         return replace(facts, yields={"": _yield(study.materials["material"])})
     problem = study.problem()
-    corners, unexamined = singular_corners(problem), unexamined_corners(problem)
+    given = study.fields
+    corners = None if given and len(given.pieces) > 1 else singular_corners(problem)
+    unexamined = unexamined_corners(problem) if corners is not None else ()
     return replace(
         facts,
         degree=study.ladder.degree,
         size=problem.part.size,
         corners=corners,
-        covered={q.name: _covered(q, problem.part, corners) for q in quantities},
+        covered={q.name: _covered(q, problem.part, corners or ()) for q in quantities},
+        all_corners=given is None or bool(problem.supports),
         unexamined=unexamined,
         doubtful={q.name: _covered(q, problem.part, unexamined) for q in quantities},
         components={q.name: str(q.arguments.get("component", "")) for q in quantities},
         regions={q.name: str(q.arguments.get("region") or "") for q in quantities},
         yields={region: _yield(material) for region, material in problem.materials.items()},
-        sides={q.name: _side(q, problem, study.ladder.formulation) for q in quantities},
+        sides={q.name: _side(q, problem, study.ladder.formulation) for q in quantities if not given},
     )
 
 
@@ -54,6 +57,8 @@ def _yield(material: Material) -> Yield | None:
 
 def _covered(quantity: Quantity, part: AnyPart, corners: tuple[Corner, ...]) -> tuple[Corner, ...]:
     """Return those of some corners that are within the reach of a quantity."""
+    if quantity.measure is None:  # of files, over the whole part
+        return corners
     covers = rooms.beside("quantities", quantity.measure_name, "covers")
     if covers is None:
         return ()

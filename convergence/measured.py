@@ -1,7 +1,7 @@
 """Quantities of a model study: a measure with its arguments, checked against the names of the problem."""
 
 import functools
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Iterable, Mapping
 from dataclasses import dataclass, field
 from typing import Any
 
@@ -9,7 +9,7 @@ import numpy as np
 
 from convergence import rooms
 from convergence.bind import bind, parameters
-from convergence.dimensions import Units, returned_dimension
+from convergence.dimensions import LENGTH, Units, returned_dimension
 from convergence.errors import Fault, Unsuitable, listing, nearest
 from convergence.fem.problem import Problem
 from convergence.quantity_tables import TOLERANCE_KEYS, place_of, read_tolerances
@@ -47,7 +47,7 @@ def read_measured(
     function = rooms.find("quantities", measure)
     also = ("measure", *TOLERANCE_KEYS)
     arguments, more = bind(function, table, where=place, units=units, also=also)
-    faults += more + (_misplaced(function, arguments, place, problem) if problem else [])
+    faults += more + (misplaced(function, arguments, place, problem) if problem else [])
     if faults:
         return None, faults
     try:
@@ -71,16 +71,20 @@ def read_measured(
     return Measured(quantity, measure, arguments), []
 
 
-def _misplaced(
+def misplaced(
     function: Callable[..., Any],
     arguments: Mapping[str, Any],
     place: Callable[[str], str],
     problem: Problem,
+    given: Iterable[str] = (),
 ) -> list[Fault]:
-    """Return a fault for every name the problem has not, and every place outside the part."""
+    """Return a fault for every name the problem has not, and every place outside the part.
+
+    The caller gives the parameters `given` itself.
+    """
     faults = []
     names = problem.names()
-    for parameter in parameters(function):
+    for parameter in parameters(function, given):
         value = arguments.get(parameter.name)
         if isinstance(value, str) and value not in names.get(parameter.names, (value,)):
             what = f"the model has no such {parameter.names}"
@@ -88,7 +92,8 @@ def _misplaced(
         if isinstance(value, tuple) and "point" in parameter.forms:
             if len(value) != problem.part.dimension:
                 right = f"[{', '.join('xyz'[: problem.part.dimension])}]"
-                faults.append(Fault(place(parameter.name), "a point of another dimension", right, value))
+                what = f"a {'point' if parameter.dimension == LENGTH else 'vector'} of another dimension"
+                faults.append(Fault(place(parameter.name), what, right, value))
             elif parameter.on_part and not problem.part.contains(np.array(value)[:, None])[0]:
                 faults.append(Fault(place(parameter.name), "outside the part", "a place on the part", value))
     return faults

@@ -17,8 +17,6 @@ from convergence.measured import read_measured
 from convergence.results import Quantity
 from convergence.sections import Sections
 
-YIELD = ("yield_strength", "yield_source")
-
 
 @dataclass(frozen=True)
 class ModelStudy:
@@ -81,7 +79,7 @@ def read_model(sections: Sections, materials: Mapping[str, Material], unit_syste
     parts = {
         "version": __version__,
         "units": unit_system,
-        "materials": {name: _constants(found) for name, found in materials.items()},
+        "materials": {name: found.constants() for name, found in materials.items()},
     }
     blank = ModelStudy(model, arguments, spec, (), dimension, cases, parts)
     found = _on_ladder(sections, blank, spec, problem, "ladder")
@@ -145,11 +143,6 @@ def _model(
                 right = f"leave out {', '.join(ORTHOTROPIC)}, or take another model"
                 sections.fault((table, "young_y"), "orthotropic in a model with a closed form", right)
     return model, arguments, problem
-
-
-def _constants(found: Material) -> dict[str, Any]:
-    """Return what changes a number of a level."""
-    return {key: value for key, value in asdict(found).items() if key not in YIELD}
 
 
 def digest(parts: Mapping[str, Any]) -> str:

@@ -10,12 +10,19 @@ from convergence.dimensions import RATIO, Bounds, Units
 from convergence.errors import Fault
 from convergence.tomlfile import TomlFile
 
-Thing = Literal["quantity", "case"]
-EXAMPLES = {"quantity": "peak_stress", "case": "side_pull"}
-KEEPERS = {"quantity": "ladder", "case": "folder of a run"}
+Thing = Literal["quantity", "case", "boundary", "support", "load"]
+EXAMPLES = {
+    "quantity": "peak_stress",
+    "case": "side_pull",
+    "boundary": "bore",
+    "support": "wall",
+    "load": "pull",
+}
+KEEPERS = {"quantity": "ladder", "case": "folder of a run", "boundary": "mesh"}
 RESERVED = {
     "quantity": ("h", "cells", "nodes", "dofs", "seconds", "memory"),
     "case": ("levels", "figures", "companion"),
+    "boundary": ("rest",),
 }
 ASSUMED_TOLERANCE = 0.05
 
@@ -46,12 +53,12 @@ TOLERANCE_KEYS = tuple(parameter.name for parameter in parameters(tolerances))
 
 
 def name_fault(name: str, where: str, thing: Thing) -> Fault | None:
-    """Return what is wrong with the name of a quantity or a case, which is also that of a folder."""
+    """Return what is wrong with the name of a table; that of a case is also the name of a folder."""
     right = f"use letters, digits, _ and -, such as {EXAMPLES[thing]}"
     plain = thing == "quantity" or re.fullmatch(r"[\w-]+", name)
     if not name.strip() or "." in name or name != name.strip() or not plain:
         return Fault(where, f"not a name for a {thing}", right, name)
-    if name.lower() in RESERVED[thing]:
+    if name.lower() in RESERVED.get(thing, ()):
         return Fault(where, f"a name the {KEEPERS[thing]} keeps for itself", right, name)
     return None
 

@@ -10,6 +10,8 @@ import numpy as np
 
 from convergence.corner import Corner
 from convergence.coverage import Coverage
+from convergence.mapped import MappedField
+from convergence.statics import Balance
 
 if TYPE_CHECKING:
     import pandas as pd
@@ -118,13 +120,14 @@ class Yield:
 class Facts:
     """What is known beside the ladder: the model's theory and the limits of linear analysis.
 
-    `size` is the largest extent of the part; `corners` is None where the model is not known; `covered`
+    `size` is the largest extent of the part; `corners` is None where the model is not known, `all_corners`
+    False where supports are not known, and corners that they make may be missing; `covered`
     has the singular corners within the reach of each quantity; `unexamined` and `doubtful` say the same of
     corners on which theory is silent; `components` what a stress is, `regions` the one it is confined to,
     "" where none; `yields` the yield strengths by region, of a table under ""; `intervals` the stated
     (low, high) per name, NaN where there is none; `units` the unit of each quantity; `growing` the range of
     the order of those whose levels show growth without limit; `sides` has 1 where the limit is never below a
-    value, -1 where it is never above.
+    value, -1 where it is never above; `balance` is that of printed loads and reactions, None without them.
     """
 
     degree: int | None = None
@@ -142,6 +145,8 @@ class Facts:
     units: Mapping[str, str] = field(default_factory=dict)
     sides: Mapping[str, int] = field(default_factory=dict)
     growing: Mapping[str, tuple[float, float]] = field(default_factory=dict)
+    all_corners: bool = True
+    balance: Balance | None = None
 
     @property
     def exponent(self) -> float | None:
@@ -227,6 +232,7 @@ class Findings:
     checks: tuple[Check, ...]
     verdicts: Mapping[str, Verdict]
     companion: Companion | None = None
+    mapped: tuple[MappedField, ...] = ()
 
     @property
     def all_sound(self) -> bool:

@@ -1,6 +1,7 @@
 """The tables of a study file, each bound to a function; the faults of all of them are gathered."""
 
 from collections.abc import Callable, Iterable, Mapping
+from pathlib import Path
 from typing import Any, TypeVar
 
 from convergence.bind import bind
@@ -10,6 +11,7 @@ from convergence.quantity_tables import Thing, name_fault
 from convergence.tomlfile import TomlFile
 
 T = TypeVar("T")
+BODY_TABLES = ("material", "boundaries", "supports", "loads")  # of a study on meshes of files
 
 
 class Sections:
@@ -24,6 +26,12 @@ class Sections:
         at = keys if keys in self.file.lines else keys[:-1]
         self.faults.append(Fault(self.file.where(*at), what, right, found))
 
+    def refuse(self, what: str, *names: str) -> None:
+        """Keep a fault for each of some tables that is there; `what` ends before its name."""
+        for name in names:
+            if name in self.file.data:
+                self.fault((name,), f"{what} {name}", f"remove [{name}]")
+
     def keep(self, found: T, faults: Iterable[Fault]) -> T:
         """Keep faults and hand on what came with them."""
         self.faults += faults
@@ -36,6 +44,12 @@ class Sections:
             return found
         self.fault((section,), "not a table", f"write [{section}] and its keys below", found)
         return {}
+
+    def beside(self, file: str) -> Path:
+        """Return the path of a file that the study names; a copy of the study has a copy beside it."""
+        path = self.file.path.parent / file
+        copy = self.file.path.parent / Path(file).name
+        return copy if copy.exists() and not path.exists() else path
 
     def bound(
         self,

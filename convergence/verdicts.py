@@ -82,7 +82,7 @@ def _may_grow(quantity: Quantity, found: Interval, facts: Facts) -> bool:
 
     What is no stress has a limit as a rule: there the levels must show growth.
     """
-    if facts.corners is not None or found.growth == "excluded":
+    if (facts.corners is not None and facts.all_corners) or found.growth == "excluded":
         return False
     if quantity.kind not in STRESS_KINDS and found.growth != "shown":
         return False

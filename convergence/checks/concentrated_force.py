@@ -20,7 +20,7 @@ def record(solution: Solution) -> dict[str, float]:
 
 def concentrated_force(ladder: Ladder, facts: Facts) -> Check:
     """Pass where no displacement or energy depends on a force that acts on a point."""
-    if facts.corners is None:
+    if facts.corners is None or not facts.all_corners:
         return not_applicable("concentrated_force", "The model is not known, nor what acts on its points.")
     spoils = {}
     for name, corners in facts.covered.items():

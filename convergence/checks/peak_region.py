@@ -29,6 +29,9 @@ def peak_region(ladder: Ladder, facts: Facts) -> Check:
                 f"{weakest.exponent - 1.0:.3g} by theory and passes every value on finer meshes; leave it "
                 "out by `boundary`, or by `near` and `radius`"
             )
+    if not spoils and not facts.all_corners:
+        finding = "The supports are not known: where they end, stress may have no limit."
+        return not_applicable("peak_region", finding)
     if not spoils:
         return Check("peak_region", True, "No stress is asked for where the model has a singular corner.")
     finding = "; ".join(f"{name}: {reason}" for name, reason in spoils.items())

@@ -14,7 +14,9 @@ from convergence.checks._growth import Growth, growth, growth_words
 from convergence.checks._instead import Instead, instead
 from convergence.checks._ladder import not_applicable
 from convergence.corner import Corner
+from convergence.corners.given_edges import path_nodes
 from convergence.corners.singular_corners import singular_corners
+from convergence.fem.given_part import GivenPart
 from convergence.fem.mesh import Mesh
 from convergence.fem.recovery import cell_volumes, element_energy
 from convergence.fem.solid_mesh import edge_nodes
@@ -47,6 +49,8 @@ def record(solution: Solution) -> dict[str, float]:
 
 def _nodes(mesh: Mesh, corner: Corner) -> np.ndarray:
     """Return the nodes at a corner or along an edge."""
+    if isinstance(mesh.part, GivenPart) and len(corner.points) > 1:
+        return path_nodes(mesh, corner)
     if isinstance(mesh.part, SolidPart) and len(corner.points) > 1:
         return edge_nodes(mesh.part, mesh.counts, mesh.degree, corner.points)
     return np.array([mesh.vertices[name] for name in corner.points])
@@ -63,7 +67,8 @@ def singular_peak(ladder: Ladder, facts: Facts) -> Check:
         if reason:
             spoils[name] = reason
     if not spoils:
-        return Check("singular_peak", True, "No stress sits on a singular corner or grows without limit.")
+        which = "singular corner" if facts.all_corners else "re-entrant corner of the outline"
+        return Check("singular_peak", True, f"No stress sits on a {which} or grows without limit.")
     finding = "; ".join(f"{name}: {reason}" for name, reason in spoils.items())
     return Check("singular_peak", False, finding, spoils, leads_to="singular")
 
@@ -73,7 +78,7 @@ def _reason(ladder: Ladder, facts: Facts, name: str) -> str:
     if corner is not None:
         found = growth(ladder.h, ladder.column(f"singular_peak.{corner.name}"))
         return f"{_at_corner(corner, found)}; {_report(corner, instead(ladder, facts, name))}"
-    if facts.corners is None and name in facts.growing:
+    if (facts.corners is None or not facts.all_corners) and name in facts.growing:
         return _by_itself(*facts.growing[name])
     return ""
 

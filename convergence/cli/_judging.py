@@ -1,41 +1,45 @@
 """What `judge` is given: a table, a study or the folder of a run; a ladder and its judgement."""
 
-from collections.abc import Mapping
+import sys
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 from pathlib import Path
+from typing import TYPE_CHECKING
 
+from convergence.case_folders import case_folders
 from convergence.cli._folder import LADDER, STUDY, default_folder, same_study
-from convergence.columns import bare_quantities, kind_of
+from convergence.cli._said import Said
+from convergence.columns import bare_quantities
 from convergence.dimensions import SYSTEMS, Units
 from convergence.errors import Fault, InputError, nearest
+from convergence.fields import Fields
 from convergence.intake.ladder_file import is_ladder_file, read_ladder
 from convergence.intake.table import read_table
-from convergence.results import Companion, Facts, Findings, Kind, Ladder
+from convergence.record import NOTHING, Record
+from convergence.results import Companion, Facts, Findings, Ladder
 from convergence.study import Study, load
+from convergence.textfile import MOST_BYTES
 
-
-@dataclass(frozen=True)
-class Said:
-    """What the command line says of bare tables; None where it says nothing."""
-
-    kinds: Mapping[str, Kind]
-    degree: int | None = None
-    tolerance: float | None = None
-    dimension: int | None = None
-
-    @property
-    def anything(self) -> bool:
-        return bool(self.kinds) or (self.degree, self.tolerance, self.dimension) != (None, None, None)
+if TYPE_CHECKING:
+    from convergence.bodies.pointwise import PointwiseMap
 
 
 @dataclass(frozen=True)
 class Judged:
-    """A judged ladder and what its report needs."""
+    """A judged ladder and what its report needs; `fields` are those of result files, to be drawn.
+
+    `maps` judge every node of result files, where that is asked for; `record` is what the analyst states,
+    `inputs` are the files that were read.
+    """
 
     findings: Findings
     name: str
     units: Units
     study_text: str
+    fields: tuple[Fields, ...] = ()
+    maps: "tuple[PointwiseMap, ...]" = ()
+    record: Record = NOTHING
+    inputs: tuple[Path, ...] = ()
 
     @property
     def all_sound(self) -> bool:
@@ -63,14 +67,17 @@ class JudgedCases:
 
 
 def judge_saved(study: Study, folder: Path) -> Judged | JudgedCases:
-    """Judge the ladder of a study in the folder of its run, or those of all its cases."""
+    """Judge the table of a study or its ladder in the folder of its run, or those of all its cases."""
+    if study.fields:
+        return _judged_fields(study)
     if not study.cases:
         return _judged_ladder(study, folder)
     cases: dict[str, Judged] = {}
     faults: list[Fault] = []
+    places = case_folders(study.cases)
     for name, case in study.cases.items():
         try:
-            cases[name] = _judged_ladder(case, folder / name)
+            cases[name] = _judged_ladder(case, folder / places[name])
         except InputError as error:
             faults += error.faults
     if faults:
@@ -83,8 +90,34 @@ def _judged_ladder(study: Study, folder: Path) -> Judged:
     return _judged(study, _solved(study, folder), _solved(second, folder) if second else None)
 
 
+def _judged_fields(study: Study) -> Judged:
+    """Judge the result files of a study."""
+    from convergence.field_levels import field_ladder
+    from convergence.field_map import field_map, summaries
+    from convergence.judgement import facts_of, judge
+
+    found = field_ladder(study)
+    facts = facts_of(found.study)
+    findings = judge(found.ladder, found.study.quantities, facts, study.title)
+    spec = study.fields.map if study.fields else None
+    if spec is None:
+        return Judged(
+            findings, study.name, study.units, study.text, found.fields, (), study.record, study.inputs
+        )
+    known = facts.corners is not None and facts.all_corners
+    maps = field_map(spec, found.ladder.h, found.pieces, facts.corners or (), known)
+    whole = len(found.fields) == len(found.ladder.levels)
+    points = found.fields[-1].points if whole else None
+    findings = replace(findings, mapped=summaries(maps, study.units, points))
+    return Judged(
+        findings, study.name, study.units, study.text, found.fields, maps, study.record, study.inputs
+    )
+
+
 def _solved(study: Study, folder: Path) -> Ladder:
-    """Return the ladder of a study in the folder of its run."""
+    """Return the ladder of a study: that of its table, or the one in the folder of its run."""
+    if study.table:
+        return study.table
     path = folder / study.subfolder / LADDER
     if not path.is_file():
         raise InputError([Fault(str(path), "nothing solved yet", f"meshassay run {study.file}")])
@@ -99,11 +132,28 @@ def _judged(study: Study, ladder: Ladder, second: Ladder | None) -> Judged:
         companion = Companion(second, study.companion.quantities, study.companion.cells)
         ladder = replace(ladder, remarks=ladder.remarks + second.remarks)
     findings = judge(ladder, study.quantities, facts_of(study), study.title, companion)
-    return Judged(findings, study.name, study.units, study.text)
+    return Judged(findings, study.name, study.units, study.text, record=study.record, inputs=study.inputs)
+
+
+def judge_paths(paths: Sequence[Path], said: Said) -> list[Judged | JudgedCases]:
+    """Judge all inputs; `InputError` has the faults of all."""
+    judged: list[Judged | JudgedCases] = []
+    faults: list[Fault] = []
+    for path in paths:
+        try:
+            judged.append(judge_path(path, said))
+        except InputError as error:
+            faults += error.faults
+    if faults:
+        raise InputError(faults)
+    return judged
 
 
 def judge_path(path: Path, said: Said) -> Judged | JudgedCases:
-    """Judge a table, a study or the folder of a run; nothing is solved."""
+    """Judge a table (- is standard input), a study or the folder of a run; nothing is solved."""
+    if str(path) == "-":
+        place = replace(said.place, content=sys.stdin.buffer.read(MOST_BYTES + 1))
+        return _judged_table(Path("standard input"), replace(said, place=place))
     if path.is_dir():
         return _judged_study(_study_of(path), path, said)
     if path.suffix.lower() == ".toml":
@@ -118,28 +168,36 @@ def _study_of(folder: Path) -> Study:
     whole = full.parent / STUDY
     if whole.is_file() and not (folder / STUDY).is_file():
         cases = load(whole, name=full.parent.name).cases
-        if full.name in cases:
-            return cases[full.name]
+        for name, place in case_folders(cases).items():
+            if full.name == place:
+                return cases[name]
     return load(folder / STUDY, name=full.name)
 
 
 def _judged_study(study: Study, folder: Path, said: Said) -> Judged | JudgedCases:
     if said.anything:
-        what = "--kind, --degree, --tolerance and --dimension are for bare tables"
+        what = "--kind, --degree and the other options on tables are for bare tables"
         raise InputError([Fault(str(study.file), what, "write them in the study")])
-    if study.table:
-        return _judged(study, study.table, study.companion.table if study.companion else None)
     return judge_saved(study, folder)
 
 
-def _judged_table(path: Path, said: Said) -> Judged:
+def _judged_table(path: Path, said: Said) -> Judged | JudgedCases:
+    if said.place.content is None and is_ladder_file(path):
+        ladder = _without_records(read_ladder(path))
+        return _judged_bare(replace(ladder, source=str(path)), {}, said, path, path.stem)
+    found = read_table(path, said.place, case=said.case, dimension=said.dimension or 2)
+    if not found.case_column:
+        return _judged_bare(found.ladders[""], found.units, said, path, path.stem)
+    cases = {
+        name: _judged_bare(ladder, found.units, said, path, f"{path.stem}: {name}")
+        for name, ladder in found.ladders.items()
+    }
+    return JudgedCases(path.stem, path.stem, "", cases, found.meaning())
+
+
+def _judged_bare(ladder: Ladder, units: Mapping[str, str], said: Said, path: Path, title: str) -> Judged:
     from convergence.judgement import judge
 
-    if is_ladder_file(path):
-        ladder = _without_records(read_ladder(path))
-        ladder, units = replace(ladder, source=str(path)), dict[str, str]()
-    else:
-        ladder, units = read_table(path, dimension=said.dimension or 2)
     quantities = bare_quantities(ladder, units, kinds=said.kinds, degree=said.degree, relative=said.tolerance)
     names = [quantity.name for quantity in quantities]
     unknown = [name for name in said.kinds if name not in names]
@@ -148,8 +206,8 @@ def _judged_table(path: Path, said: Said) -> Judged:
             Fault(f"--kind {name}", f"{path} has no such column", nearest(name, names)) for name in unknown
         )
     facts = Facts(degree=said.degree, dimension=said.dimension or 2, kinds=said.kinds)
-    findings = judge(ladder, quantities, facts, path.stem)
-    return Judged(findings, path.stem, SYSTEMS["consistent"], "")
+    findings = judge(ladder, quantities, facts, title)
+    return Judged(findings, path.stem, SYSTEMS["consistent"], "", inputs=(path,))
 
 
 def _without_records(ladder: Ladder) -> Ladder:
@@ -162,35 +220,3 @@ def _without_records(ladder: Ladder) -> Ladder:
         for level in ladder.levels
     )
     return replace(ladder, levels=levels)
-
-
-def kinds_of(words: tuple[str, ...]) -> dict[str, Kind]:
-    """Return NAME -> kind from words NAME=KIND."""
-    kinds: dict[str, Kind] = {}
-    faults: list[Fault] = []
-    for word in words:
-        name, sign, kind = word.rpartition("=")
-        if not sign or not name:
-            faults.append(Fault(f"--kind {word}", "not NAME=KIND", "e.g. --kind deflection=displacement"))
-            continue
-        try:
-            kinds[name] = kind_of(name, kind)
-        except InputError as error:
-            faults += error.faults
-    if faults:
-        raise InputError(faults)
-    return kinds
-
-
-def tolerance_of(word: str | None) -> float | None:
-    """Return 0.05 for "5%" and "0.05"; `InputError` where it is neither."""
-    if word is None:
-        return None
-    percent = word.strip().endswith("%")
-    try:
-        value = float(word.strip().removesuffix("%")) / (100.0 if percent else 1.0)
-    except ValueError:
-        value = float("nan")
-    if not 0.0 < value < float("inf"):
-        raise InputError([Fault("--tolerance", "not a tolerance", "write e.g. 5% or 0.05", word)])
-    return value

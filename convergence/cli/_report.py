@@ -1,28 +1,46 @@
 """The reports of what was judged, in a folder."""
 
 import sys
+from collections.abc import Mapping, Sequence
 from datetime import date
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
+import click
+
+from convergence.case_folders import case_folders
 from convergence.cli._judging import Judged, JudgedCases
+from convergence.statics import Balance
 
 if TYPE_CHECKING:
+    from convergence.comparison import Comparison
+    from convergence.report.forms import Forms
     from convergence.report.pictures import Draw
 
 
-def report(judged: Judged | JudgedCases, folder: Path, draw_all: "Draw | None" = None) -> Path:
-    """Write the report into the folder, those of cases into theirs within it; return the page.
+def report(
+    judged: Judged | JudgedCases,
+    folder: Path,
+    *,
+    draw_all: "Draw | None" = None,
+    forms: "Forms | None" = None,
+    day: str = "",
+) -> list[Path]:
+    """Write the report into the folder, those of cases into theirs within it; return its forms.
 
-    `draw_all` draws the figures, one by one where None.
+    `draw_all` draws the figures, one by one where None; `forms` are HTML alone where None; `day` is the
+    date that stands in it, today where "".
     """
-    folder.mkdir(parents=True, exist_ok=True)
+    from convergence.report.forms import HTML
+
+    chosen, day = forms or HTML, day or date.today().isoformat()
     if isinstance(judged, Judged):
-        return _report(judged, folder, draw_all)
+        return _report(judged, folder, draw_all, chosen, day)
     from convergence.report.cases_page import write_cases
 
+    places = case_folders(judged.cases)
     for name, case in judged.cases.items():
-        report(case, folder / name, draw_all)
+        report(case, folder / places[name], draw_all=draw_all, forms=chosen, day=day)
     return write_cases(
         judged.findings,
         folder,
@@ -31,25 +49,55 @@ def report(judged: Judged | JudgedCases, folder: Path, draw_all: "Draw | None" =
         study_text=judged.study_text,
         study_name=judged.name,
         command=_command(),
-        date=date.today().isoformat(),
+        date=day,
+        forms=chosen,
     )
 
 
-def _report(judged: Judged, folder: Path, draw_all: "Draw | None") -> Path:
+def _report(judged: Judged, folder: Path, draw_all: "Draw | None", forms: "Forms", day: str) -> list[Path]:
     from convergence.report.document import write_report
     from convergence.report.pictures import one_by_one
 
+    if judged.maps:
+        from convergence.bodies.write_fields import write_fields
+        from convergence.report.sections_map import MAP
+
+        folder.mkdir(parents=True, exist_ok=True)
+        write_fields(folder / MAP, judged.maps)
     return write_report(
         judged.findings,
         folder,
-        fields=_fields(folder, len(judged.findings.ladder.levels)),
+        fields=judged.fields or _fields(folder, len(judged.findings.ladder.levels)),
         units=judged.units,
         study_text=judged.study_text,
         study_name=judged.name,
         command=_command(),
-        date=date.today().isoformat(),
+        date=day,
         draw_all=draw_all or one_by_one,
+        record=judged.record,
+        inputs=judged.inputs,
+        forms=forms,
     )
+
+
+def report_balances(found: Mapping[str, Balance], folder: Path, name: str) -> list[Path]:
+    """Write the report of a printout into the folder; return its forms."""
+    from convergence.report.balance_page import write_balances
+
+    return write_balances(found, folder, name=name, command=_command(), date=date.today().isoformat())
+
+
+def report_comparisons(found: "Mapping[str, Comparison]", folder: Path, title: str) -> list[Path]:
+    """Write the report of a comparison into the folder; return its forms."""
+    from convergence.report.comparison_page import write_comparisons
+
+    return write_comparisons(found, folder, title=title, command=_command(), date=date.today().isoformat())
+
+
+def say_where(written: Sequence[Path], as_json: bool) -> None:
+    """Say where the forms of a report are, beside JSON on the other stream."""
+    for path in written:
+        click.echo(f"Report: {path}", err=as_json)
 
 
 def _command() -> str:

@@ -24,7 +24,11 @@ def show_json(judged: Sequence[Judged | JudgedCases]) -> None:
         judge_object(one.findings) if isinstance(one, Judged) else cases_object(one.findings)
         for one in judged
     ]
-    content = objects[0] if len(objects) == 1 else objects
+    show_object(objects[0] if len(objects) == 1 else objects)
+
+
+def show_object(content: object) -> None:
+    """Print anything as JSON."""
     click.echo(json.dumps(content, indent=2, ensure_ascii=False, allow_nan=False))
 
 
@@ -46,7 +50,7 @@ def show_cases(judged: JudgedCases) -> None:
     from convergence.report._words import next_step, overall_cases
     from convergence.report.terminal import CASE_COLUMNS, case_rows
 
-    screen, cases = _screen(), judged.findings
+    screen, cases = terminal(), judged.findings
     table = Table(box=None, pad_edge=False, header_style="bold")
     for column in ("quantity", *CASE_COLUMNS):
         table.add_column(column, overflow="fold")
@@ -63,6 +67,8 @@ def show_cases(judged: JudgedCases) -> None:
         _show_reasons(screen, f"{quantity.name}, {worst}", verdict, next_step(verdict))
     screen.print(Text(overall_cases(cases)))
     lines = [line for one in cases.values() for line in [*coverage_lines(one), *_remarks(one)]]
+    sources = {one.ladder.source for one in cases.values()}
+    lines += [f"Ladder: {source}" for source in sources if len(sources) == 1]
     for line in dict.fromkeys(lines):
         screen.print(Text(line))
 
@@ -82,7 +88,7 @@ def _remarks(findings: Findings) -> list[str]:
     return [*(f"Remark: {remark}." for remark in findings.ladder.remarks), *assumptions(findings)]
 
 
-def _screen() -> "Console":
+def terminal() -> "Console":
     """Return the terminal, or a page of fixed width where there is none."""
     from rich.console import Console
 
@@ -101,7 +107,7 @@ def show_table(findings: Findings, *, methods: bool = False) -> None:
     from convergence.report._trust import coverage_lines
     from convergence.report.terminal import COLUMNS, summary_rows
 
-    screen = _screen()
+    screen = terminal()
     table = Table(box=None, pad_edge=False, header_style="bold")
     for name in ("quantity", "verdict", "value", "best estimate", "order / theory"):
         table.add_column(name, overflow="fold")
@@ -119,7 +125,7 @@ def show_table(findings: Findings, *, methods: bool = False) -> None:
     if methods:
         for row in rows:
             _show_methods(screen, findings, row["quantity"])
-    for line in [*coverage_lines(findings), *_remarks(findings)]:
+    for line in [*coverage_lines(findings), *_remarks(findings), f"Ladder: {findings.ladder.source}"]:
         screen.print(Text(line))
 
 

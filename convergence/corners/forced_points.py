@@ -12,11 +12,12 @@ from collections.abc import Iterator
 import numpy as np
 
 from convergence.fem.element import Shape
+from convergence.fem.given_part import GivenPart
 from convergence.fem.held import boundary_nodes, held_by
 from convergence.fem.load_vector import load_vector
 from convergence.fem.loads import PointForce, rigid_motions
-from convergence.fem.mesh import mesh
-from convergence.fem.problem import ElasticSupport, Problem, Support
+from convergence.fem.mesh import Mesh, mesh
+from convergence.fem.problem import AnyPart, ElasticSupport, Problem, Support
 from convergence.fem.strain import unknowns
 
 NEGLIGIBLE = 1e-3  # of the sum of all nodal forces; more than a coarse mesh errs on curved boundaries
@@ -34,8 +35,7 @@ def forced_points(problem: Problem) -> dict[str, str]:
 def _reacting(problem: Problem, supports: list[Support]) -> Iterator[str]:
     """Yield the points whose reaction is not zero by equilibrium, from the forces on the coarsest mesh."""
     part = problem.part
-    shape: Shape = "hexahedron" if part.dimension == 3 else "quadrilateral"
-    coarse = mesh(part, part.divisions(size=None, divisions=1), shape=shape, degree=2)
+    coarse = _coarsest(part)
     motions = rigid_motions(coarse.nodes / part.size)
     if problem.kind == "axisymmetric":
         motions = motions[1:2]  # a ring can only move along its axis
@@ -55,6 +55,14 @@ def _reacting(problem: Problem, supports: list[Support]) -> Iterator[str]:
             determined = np.linalg.norm(alone) > INDEPENDENT
             if not determined or abs(alone @ resultant) > scale * (alone @ alone):
                 yield str(support.point)
+
+
+def _coarsest(part: AnyPart) -> Mesh:
+    """Return the coarsest mesh of a part."""
+    if isinstance(part, GivenPart):
+        return mesh(part, {0: 0}, shape=part.meshes[0].shape, degree=part.meshes[0].degree)
+    shape: Shape = "hexahedron" if part.dimension == 3 else "quadrilateral"
+    return mesh(part, part.divisions(size=None, divisions=1), shape=shape, degree=2)
 
 
 def _beyond(others: np.ndarray, own: np.ndarray) -> np.ndarray:

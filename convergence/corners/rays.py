@@ -17,6 +17,7 @@ from convergence.corners.bonded import wedge_exponents
 from convergence.corners.fans import Face, Fan
 from convergence.corners.sides import Conditions, conditions
 from convergence.corners.sites import Site, sites
+from convergence.fem.given_part import GivenPart
 from convergence.fem.problem import AnyPart, Problem
 from convergence.fem.rod_part import RodPart
 
@@ -186,4 +187,5 @@ def _thickness(part: AnyPart, start: np.ndarray, way: np.ndarray) -> float:
 def _holds(part: AnyPart, start: np.ndarray, steps: np.ndarray, way: np.ndarray) -> np.ndarray:
     """Return which places of a line lie in the part."""
     assert not isinstance(part, RodPart)
-    return part.contains((start + np.multiply.outer(steps, way)).T)
+    holds = part.encloses if isinstance(part, GivenPart) else part.contains
+    return holds((start + np.multiply.outer(steps, way)).T)

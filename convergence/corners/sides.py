@@ -1,16 +1,20 @@
 """What the supports of a problem make of its faces: free, roller or clamped."""
 
+from collections.abc import Iterator
 from dataclasses import dataclass
 
 import numpy as np
 
 from convergence.corners.fans import Face
+from convergence.corners.given_sites import facet_key, facet_places
 from convergence.corners.sites import face_key
+from convergence.fem.given_part import GivenPart
 from convergence.fem.part import Part
 from convergence.fem.problem import AnyPart, Problem, Support
 from convergence.fem.rod_part import RodPart
 
 FLAT = 1e-9  # of the part's size
+FLAT_GIVEN = 1e-6  # files have single precision at times
 COORDINATES = ("x", "y", "z")
 
 
@@ -29,8 +33,9 @@ class Conditions:
         """
         held, part = self.held.get(face, set()), self.problem.part
         places = _places(part, face)
-        flat = {c for c, row in zip(COORDINATES, places, strict=False) if np.ptp(row) < FLAT * part.size}
-        on_axis = self.problem.kind == "axisymmetric" and np.abs(places[0]).max() < FLAT * part.size
+        near = (FLAT_GIVEN if isinstance(part, GivenPart) else FLAT) * part.size
+        flat = {c for c, row in zip(COORDINATES, places, strict=False) if np.ptp(row) < near}
+        on_axis = self.problem.kind == "axisymmetric" and np.abs(places[0]).max() < near
         if not held and not on_axis:
             return "free"
         if held in ({"normal"}, set()) or (len(held) == 1 and held <= flat):
@@ -46,15 +51,26 @@ def conditions(problem: Problem) -> Conditions:
     for support in problem.supports:
         if isinstance(support, Support) and support.boundary is not None:
             components = {c for c in (*COORDINATES, "normal") if getattr(support, c) is not None}
-            for face in part.boundaries[support.boundary]:
-                held.setdefault(face_key(part, face), set()).update(components)
+            for face in _faces(part, support.boundary):
+                held.setdefault(face, set()).update(components)
     return Conditions(problem, held)
+
+
+def _faces(part: AnyPart, boundary: str) -> Iterator[Face]:
+    assert not isinstance(part, RodPart)
+    if isinstance(part, GivenPart):
+        for group in part.boundaries[boundary]:
+            yield from (facet_key(part.finest, facet) for facet in group.T)
+    else:
+        yield from (face_key(part, face) for face in part.boundaries[boundary])
 
 
 def _places(part: AnyPart, face: Face) -> np.ndarray:
     """Return places (D, n) on a face: its ends and middles."""
     steps, (names, number) = np.array([0.0, 0.5, 1.0]), face
     assert not isinstance(part, RodPart)
+    if isinstance(part, GivenPart):
+        return facet_places(part.finest, face)
     if isinstance(part, Part):
         return _along(part, names, steps)
     if len(names) == 2:

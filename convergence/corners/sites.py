@@ -11,6 +11,9 @@ from dataclasses import dataclass
 import numpy as np
 
 from convergence.corners.fans import Face, Fan, Wedge, fans
+from convergence.corners.given_edges import given_edges
+from convergence.corners.given_sites import given_fans
+from convergence.fem.given_part import GivenPart
 from convergence.fem.material import Material
 from convergence.fem.part import EdgeName, Part
 from convergence.fem.problem import AnyPart
@@ -33,7 +36,10 @@ class Site:
 
 
 def sites(part: AnyPart, materials: Materials) -> Iterator[Site]:
-    """Yield every point of a plane part, every edge of a solid part, those inside too; nothing of a rod."""
+    """Yield every point of a plane part, every edge of a solid part, those inside too; nothing of a rod.
+
+    Of a solid that is given by its meshes edges inside, where materials meet, are not.
+    """
     if isinstance(part, SolidPart):
         edges = {frozenset(edge): edge for edge in part.plan.families}.values()
         for layer in range(part.layers):
@@ -42,6 +48,14 @@ def sites(part: AnyPart, materials: Materials) -> Iterator[Site]:
         for plane in range(len(part.planes)):
             for edge in edges:
                 yield from _plan_edge(part, materials, edge, plane)
+    elif isinstance(part, GivenPart):
+        if part.dimension == 3:
+            for one in given_edges(part, materials):
+                yield Site(one.points, one.path, one.middle, one.fan)
+        else:
+            for name, fan in given_fans(part, materials):
+                at = np.array(part.points[name])
+                yield Site((name,), at[None], at, fan)
     elif isinstance(part, Part):
         for name, place in part.points.items():
             for fan in fans(_plane_wedges(part, materials, name, range(len(part.blocks)))):

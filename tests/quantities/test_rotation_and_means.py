@@ -72,7 +72,7 @@ def test_a_rigid_turn_is_found_exactly(element: tuple[str, int], ladder_of: Call
     moved = Solution(
         solution.problem,
         solution.mesh,
-        solution.stiffness,
+        solution.assembled,
         solution.load,
         np.array(turned).T.ravel(),
         solution.held,

@@ -204,7 +204,7 @@ def test_a_solid_that_turns() -> None:
     turn = np.radians([0.1, -0.2, 0.3])
     unknowns = np.cross(turn, solution.mesh.nodes.T).ravel()
     moved = Solution(
-        solution.problem, solution.mesh, solution.stiffness, solution.load, unknowns, solution.held
+        solution.problem, solution.mesh, solution.assembled, solution.load, unknowns, solution.held
     )
     for component, exact in zip("xyz", (0.1, -0.2, 0.3), strict=True):
         for where in ({"boundary": "right"}, {"at": (20.0, 5.0, 10.0)}):

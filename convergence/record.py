@@ -1,0 +1,69 @@
+"""[record] of a study: what the report of an analysis must say and only the analyst knows."""
+
+import dataclasses
+from dataclasses import dataclass
+from typing import Annotated
+
+from convergence.sections import Sections
+
+RECORD = "record"
+
+
+@dataclass(frozen=True)
+class Record:
+    """What the analyst states, in words; "" where nothing."""
+
+    analyst: str = ""
+    checker: str = ""
+    purpose: str = ""
+    criteria: str = ""
+    drawing: str = ""
+    idealisation: str = ""
+    coordinates: str = ""
+    material_source: str = ""
+    load_source: str = ""
+    hand_values: str = ""
+    restraint: str = ""
+    software: str = ""
+    independent_check: str = ""
+    tests: str = ""
+    sensitivity: str = ""
+    conclusion: str = ""
+    archive: str = ""
+
+    def stated(self) -> dict[str, str]:
+        """Return what is stated, by key."""
+        return {key: words for key, words in dataclasses.asdict(self).items() if words}
+
+
+def record(
+    *,
+    analyst: Annotated[str, "who made the analysis"] = "",
+    checker: Annotated[str, "who checked it"] = "",
+    purpose: Annotated[str, "what is decided with it"] = "",
+    criteria: Annotated[str, "what is accepted, fixed before the runs"] = "",
+    drawing: Annotated[str, "drawing or model of the geometry, with its revision"] = "",
+    idealisation: Annotated[str, "what was left out or simplified, symmetry"] = "",
+    coordinates: Annotated[str, "coordinate systems and signs"] = "",
+    material_source: Annotated[str, "where the material data are from"] = "",
+    load_source: Annotated[str, "where the loads are from"] = "",
+    hand_values: Annotated[str, "loads and reactions by hand"] = "",
+    restraint: Annotated[str, "why the supports hold the part and no more than that"] = "",
+    software: Annotated[str, "another solver that was used, its version and its verification"] = "",
+    independent_check: Annotated[str, "hand calculation, exact solution or second model"] = "",
+    tests: Annotated[str, "comparison with tests"] = "",
+    sensitivity: Annotated[str, "what uncertain inputs change"] = "",
+    conclusion: Annotated[str, "the analyst's conclusion, its limits, what was not resolved"] = "",
+    archive: Annotated[str, "where files are kept"] = "",
+) -> Record:
+    """Return the record."""
+    return Record(**{name: words for name, words in locals().items()})
+
+
+NOTHING = Record()
+
+
+def read_record(sections: Sections) -> Record:
+    """Read [record]; an empty one where the study has none."""
+    found = sections.bound(record, sections.table(RECORD), RECORD) if RECORD in sections.file.data else {}
+    return record(**found) if found else NOTHING
