@@ -19,7 +19,7 @@ class Interval:
     value. `order` is that of the last three levels; the order of the error law lies from `order_low` to
     `order_high`. `growth`: whether the levels show, allow or exclude that there is no limit. `lost` is the
     number of levels without a value; `flaw` says why there is no interval, "" where there is one; `companion`
-    what a second ladder says and `side` on which side of the values the limit is known to be, "" where nothing.
+    what a second ladder says and `side` on which side of the values the limit is known to be, "" for nothing.
     """
 
     value: float

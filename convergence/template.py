@@ -26,12 +26,12 @@ def study_template(model: str) -> str:
         f"# {about}",
         f"# Run it with: meshassay run {model}.toml",
         "",
-        f"title = {_toml(about.rstrip('.'))}",
-        _line(f"units = {_toml(UNITS)}", f"one of: {'; '.join(SYSTEMS)}"),
-        *_section("model", function, given=materials, first={"name": model}),
+        f"title = {toml(about.rstrip('.'))}",
+        line(f"units = {toml(UNITS)}", f"one of: {'; '.join(SYSTEMS)}"),
+        *section("model", function, given=materials, first={"name": model}),
         *_cases(parameters(function, materials)),
-        *(line for name in materials for line in _section(name, material)),
-        *_section("ladder", ladder, first={"divisions": 2}),
+        *(row for name in materials for row in section(name, material)),
+        *section("ladder", ladder, first={"divisions": 2}),
         "",
         "# A second ladder of the same model with other cells narrows the intervals where the two meet.",
         "# [companion]",
@@ -42,18 +42,18 @@ def study_template(model: str) -> str:
     ]
     for name, table in wanted.items():
         lines += ["", f"[quantities.{_key(name)}]"]
-        lines += [f"{key} = {_toml(value)}" for key, value in table.items()]
+        lines += [f"{key} = {toml(value)}" for key, value in table.items()]
     return "\n".join(lines) + "\n"
 
 
-def _section(
+def section(
     name: str, function: Callable[..., Any], given: Iterable[str] = (), first: Mapping[str, Any] | None = None
 ) -> list[str]:
     """Return a table with every parameter, those in `first` on top with the values given there."""
     found = {parameter.name: parameter for parameter in parameters(function, given)}
     lines = ["", f"[{name}]"]
     for key, value in (first or {}).items():
-        lines.append(_line(f"{key} = {_toml(value)}", _about(found.pop(key)) if key in found else ""))
+        lines.append(line(f"{key} = {toml(value)}", _about(found.pop(key)) if key in found else ""))
     return lines + [_parameter(parameter) for parameter in found.values()]
 
 
@@ -66,15 +66,15 @@ def _cases(known: Iterable[Parameter]) -> list[str]:
         "",
         "# Load cases: each says what differs from [model], loads only. They are solved together.",
         "# [cases.half_load]",
-        f"# {load.name} = {_toml(0.5 * load.default)}",
+        f"# {load.name} = {toml(0.5 * load.default)}",
     ]
 
 
 def _parameter(parameter: Parameter) -> str:
     if parameter.default in (None, "", REQUIRED):
         state = "to be filled in" if parameter.default is REQUIRED else "optional"
-        return _line(f"# {parameter.name} =", f"{state}: {_about(parameter)}")
-    return _line(f"{parameter.name} = {_toml(parameter.default)}", _about(parameter))
+        return line(f"# {parameter.name} =", f"{state}: {_about(parameter)}")
+    return line(f"{parameter.name} = {toml(parameter.default)}", _about(parameter))
 
 
 def _about(parameter: Parameter) -> str:
@@ -82,15 +82,17 @@ def _about(parameter: Parameter) -> str:
     return f"{parameter.doc}; {wanted}" if parameter.doc else wanted
 
 
-def _line(text: str, comment: str) -> str:
+def line(text: str, comment: str) -> str:
+    """Return a line of a study with its comment, those of a table one below the other."""
     return f"{text:<{WIDTH}}  # {comment}" if comment else text
 
 
-def _toml(value: Any) -> str:
+def toml(value: Any) -> str:
+    """Return a value as TOML writes it."""
     if isinstance(value, tuple | list):
-        return f"[{', '.join(_toml(item) for item in value)}]"
+        return f"[{', '.join(toml(item) for item in value)}]"
     return json.dumps(value, ensure_ascii=False) if isinstance(value, str | bool) else repr(value)
 
 
 def _key(name: str) -> str:
-    return name if re.fullmatch(r"[A-Za-z0-9_-]+", name) else _toml(name)
+    return name if re.fullmatch(r"[A-Za-z0-9_-]+", name) else toml(name)

@@ -34,9 +34,9 @@ class TomlFile:
         return str(self.path) if line is None else f"{self.path}:{line}: {'.'.join(path)}"
 
 
-def read_toml(path: Path) -> TomlFile:
-    """Read a file; `InputError` where it is missing, no text, empty or not TOML."""
-    text = read_text(path, "a study file (.toml)").replace("\r\n", "\n")
+def read_toml(path: Path, text: str = "") -> TomlFile:
+    """Read a file, or a text in its place; `InputError` where it is missing, no text, empty or not TOML."""
+    text = text or read_text(path, "a study file (.toml)").replace("\r\n", "\n")
     try:
         data = tomllib.loads(text)
     except tomllib.TOMLDecodeError as error:

@@ -99,7 +99,7 @@ absolute_tolerance = -1
             '[quantities." "]',
             "s.toml:24: quantities. : not a name for a quantity, got ' '; ",
         ),
-        ("[model]", "[table]\nfile = 'a.csv'\n[model]", "s.toml: both [model] and [table]; give either "),
+        ("[model]", "[table]\nfile = 'a.csv'\n[model]", "s.toml: both [model] and [table]; give one of "),
     ],
 )
 def test_a_fault_of_a_model_study(tmp_path: Path, old: str, new: str, message: str) -> None:
@@ -115,8 +115,8 @@ def test_a_fault_of_a_model_study(tmp_path: Path, old: str, new: str, message: s
             "title = 3\n",
             [
                 "s.toml:1: title: not a text, got 3; give a text",
-                's.toml: neither [model] nor [table]; give either [model] with name = "..." '
-                'or [table] with file = "..."',
+                "s.toml: nothing to judge; give one of [model] with name, [table] with file, "
+                "[meshes] or [fields] with files = [...]",
             ],
         ),
         (
@@ -135,8 +135,9 @@ def test_a_fault_of_a_model_study(tmp_path: Path, old: str, new: str, message: s
         (
             '[table]\nfile = "none.csv"\n[ladder]\n',
             [
-                "s.toml:3: ladder: a table study has no ladder of its own; remove [ladder]",
-                "none.csv: no such file; give the path of a table (.csv)",
+                "s.toml:3: ladder: a table has levels in rows, cases in a column: it has no ladder; "
+                "remove [ladder]",
+                "none.csv: no such file; give the path of a table (.csv, .xlsx, .ods)",
             ],
         ),
         ("[table]\n", ["s.toml:1: table: the key 'file' is missing; add file = a text"]),

@@ -9,7 +9,7 @@ import click
 @click.argument("first", type=click.Path(path_type=Path))
 @click.argument("second", type=click.Path(path_type=Path))
 @click.option("--match", "matches", multiple=True, metavar="FIRST=SECOND", help="Quantities of other names.")
-@click.option("--revisions", is_flag=True, help="Two revisions of a part: state the change with its interval.")
+@click.option("--revisions", is_flag=True, help="Two revisions of a part: state the change.")
 @click.option("--kind", "kinds", multiple=True, metavar="NAME=KIND", help="What a column of bare tables is.")
 @click.option(
     "--degree", "degrees", multiple=True, type=click.IntRange(1, 10), help="Of the elements; twice for both."

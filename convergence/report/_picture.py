@@ -1,15 +1,17 @@
 """A drawn figure as SVG and PNG, and the one way to draw it; matplotlib is loaded here only."""
 
 import gc
-import html
 import io
-import re
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterable, Iterator, Sequence
 from contextlib import contextmanager
 from dataclasses import dataclass
-from typing import TYPE_CHECKING, Any
+from pathlib import Path
+from typing import TYPE_CHECKING, Any, Literal
+from warnings import catch_warnings, filterwarnings
 
 import numpy as np
+
+from convergence.textfile import write_bytes, write_text
 
 if TYPE_CHECKING:
     from matplotlib.figure import Figure
@@ -48,12 +50,20 @@ STYLE: dict[str, Any] = {
     "text.parse_math": False,
 }
 DOTS_PER_INCH = 180
+LEVELS = "levels"  # gid of the artist whose marks have hints
 COMPRESSION = 3  # of PNG, up to 9: more takes time and saves little
+
+
+Axis = Literal["", "value", "error"]
 
 
 @dataclass(frozen=True)
 class Picture:
-    """One figure: file stem, its words (alt, caption), SVG text, PNG bytes, inches."""
+    """One figure: file stem, its words (alt, caption), SVG text, PNG bytes, inches.
+
+    `hints` say what each mark of the artist `LEVELS` stands for. Figures of one quantity on its `axis` of
+    values or of errors are two views of the same levels.
+    """
 
     name: str
     alt: str
@@ -61,17 +71,18 @@ class Picture:
     svg: str
     png: bytes
     width: float
-
-    def inline(self) -> str:
-        """Return the SVG as it stands inside a page: no prolog, own ids, a name for screen readers."""
-        body = self.svg[self.svg.index("<svg") :]
-        body = re.sub(r"<metadata>.*?</metadata>", "", body, flags=re.DOTALL)
-        body = re.sub(r'(\bid="|url\(#|href="#)', rf"\g<1>{self.name}-", body)
-        return body.replace("<svg ", f'<svg role="img" aria-label="{html.escape(self.alt)}" ', 1).strip()
+    hints: tuple[str, ...] = ()
+    axis: Axis = ""
 
 
 def draw(
-    name: str, size: tuple[float, float], alt: str, caption: str, paint: Callable[["Figure"], None]
+    name: str,
+    size: tuple[float, float],
+    alt: str,
+    caption: str,
+    paint: Callable[["Figure"], None],
+    hints: Iterable[str] = (),
+    axis: Axis = "",
 ) -> Picture:
     """Let `paint` fill a new figure of `size` inches and return it in both formats.
 
@@ -80,14 +91,11 @@ def draw(
     with _no_collections():
         svg, png = _drawn(name, size, paint)
     svg = svg.replace("'DejaVu Sans'", "'DejaVu Sans', Verdana, sans-serif")
-    return Picture(name, alt, caption, svg, png, size[0])
+    return Picture(name, alt, caption, svg, png, size[0], tuple(hints), axis)
 
 
 def get_ready() -> None:
     """Load what drawing needs ahead of the first figure."""
-    import matplotlib.backends.backend_agg
-    import matplotlib.backends.backend_svg
-    import matplotlib.figure
     import PIL.Image  # noqa: F401
 
 
@@ -112,7 +120,8 @@ def _drawn(name: str, size: tuple[float, float], paint: Callable[["Figure"], Non
     from PIL import Image
 
     settings: Any = {**STYLE, "svg.hashsalt": name}
-    with matplotlib.rc_context(settings):
+    with matplotlib.rc_context(settings), catch_warnings():
+        filterwarnings("ignore", message="Glyph")  # a sign that the font lacks; as text of the SVG it stays
         figure = Figure(figsize=size, dpi=DOTS_PER_INCH)
         canvas: Any = FigureCanvasAgg(figure)
         paint(figure)
@@ -134,3 +143,15 @@ def _lay_out(figure: "Figure") -> None:
         for _ in range(2 if titled else 1):
             engine.execute(figure)
         figure.set_layout_engine("none")
+
+
+def write_figures(folder: Path, pictures: Sequence[Picture]) -> None:
+    """Write every picture in both formats; figures of an earlier run that are not drawn any more go."""
+    folder.mkdir(parents=True, exist_ok=True)
+    for picture in pictures:
+        write_text(folder / f"{picture.name}.svg", picture.svg)
+        write_bytes(folder / f"{picture.name}.png", picture.png)
+    kept = {picture.name for picture in pictures}
+    for path in folder.iterdir():
+        if path.suffix in (".svg", ".png") and path.stem not in kept:
+            path.unlink()

@@ -1,22 +1,33 @@
 """The page of a study with load cases: one matrix of all verdicts, the largest values, the cases' reports."""
 
-import json
 from collections.abc import Mapping
 from pathlib import Path
 from urllib.parse import quote
 
+from convergence.case_folders import case_folders
 from convergence.envelope import Envelope, envelope, worst_first
-from convergence.report import _words, html, records
-from convergence.report.html import Html, text
+from convergence.report import _words, records
+from convergence.report.content import (
+    Block,
+    Bullets,
+    Cell,
+    Document,
+    Heading,
+    Paragraph,
+    Section,
+    Table,
+    Words,
+    mark,
+)
+from convergence.report.forms import HTML, Forms, write_document
 from convergence.report.sections_closing import caution_section, trace_section
 from convergence.report.sections_statement import never_covered
 from convergence.results import Findings, Quantity
-from convergence.textfile import write_text
 
 ENVELOPE = ("quantity", "largest", "unit", "in case", "interval of the absolute value", "verdict")
 NOTE = (
-    "Worst case first: value on the finest mesh and half-width. All cases were solved on the same meshes,"
-    " each was judged by itself; a value leads to its evidence."
+    "Worst case first: value on the finest mesh and half-width. Each case was judged by itself; a value leads"
+    " to its evidence."
 )
 LARGEST = (
     "The largest absolute value of all cases, with its sign. The interval holds it whichever case it belongs"
@@ -34,49 +45,41 @@ def write_cases(
     study_name: str,
     command: str,
     date: str,
-) -> Path:
-    """Write report.html and findings.json of all cases; return the path of the page.
+    forms: Forms = HTML,
+) -> list[Path]:
+    """Write the forms and findings.json of all cases; return the paths of the forms.
 
-    The report of a case stands in the folder of its name beside them; `loads` says what they differ in.
+    The report of a case stands in its folder (`case_folders`) beside them; `loads` says what they differ in.
     """
     quantities = next(iter(cases.values())).quantities
     largest = {quantity.name: envelope(cases, quantity.name) for quantity in quantities}
     facts = {"study": study_name, "command": command, "date": date}
+    sources = {findings.ladder.source for findings in cases.values()}
+    if len(sources) == 1:
+        facts["ladder"] = sources.pop()
     sections = [
-        ("statement", "Statement", _statement(cases, quantities)),
-        ("largest", "Largest values", _largest(cases, quantities, largest)),
-        ("cases", "Cases", _cases(cases, loads)),
-        ("caution", "Caution", caution_section()),
-        ("trace", "Traceability", trace_section(facts, study_text)),
+        _statement(cases, quantities),
+        _largest(cases, quantities, largest),
+        _cases(cases, loads),
+        caution_section(),
+        trace_section(facts, study_text),
     ]
-    page = html.page(
-        title,
-        [(anchor, name) for anchor, name, _ in sections],
-        html.header(title, f"Discretization error of {study_name}. {date}"),
-        *(part for _, _, part in sections),
-    )
     record = {"title": title, **records.cases_object(cases), "versions": records.versions()}
-    text_of = json.dumps(record, indent=2, ensure_ascii=False, allow_nan=False)
-    write_text(folder / "findings.json", f"{text_of}\n")
-    path = folder / "report.html"
-    write_text(path, page)
-    return path
+    document = Document(title, f"Discretization error of {study_name}. {date}", sections)
+    return write_document(document, folder, ("findings.json", record), date, forms)
 
 
-def _statement(cases: Mapping[str, Findings], quantities: tuple[Quantity, ...]) -> Html:
-    order = worst_first(cases)
-    rows = [
-        [text(q.name), text(q.unit), *(_cell(case, cases[case], q) for case in order)] for q in quantities
+def _statement(cases: Mapping[str, Findings], quantities: tuple[Quantity, ...]) -> Section:
+    order, places = worst_first(cases), case_folders(cases)
+    rows = [[q.name, q.unit, *(_cell(places[case], cases[case], q) for case in order)] for q in quantities]
+    blocks: list[Block] = [
+        Paragraph(_words.overall_cases(cases), "overall"),
+        Table("Every quantity in every case", ("quantity", "unit", *order), rows, "matrix"),
+        Paragraph(NOTE, "tiny"),
+        Heading("Not covered"),
+        Bullets(_not_covered({case: cases[case] for case in order})),
     ]
-    return html.section(
-        "statement",
-        "Statement",
-        html.paragraph(_words.overall_cases(cases), "overall"),
-        html.table("Every quantity in every case", ("quantity", "unit", *order), rows, "matrix"),
-        html.paragraph(NOTE, "tiny"),
-        html.element("h3", {}, text("Not covered")),
-        html.bullets(_not_covered({case: cases[case] for case in order})),
-    )
+    return Section("statement", "Statement", "Statement", blocks)
 
 
 def _not_covered(cases: Mapping[str, Findings]) -> list[str]:
@@ -92,17 +95,16 @@ def _not_covered(cases: Mapping[str, Findings]) -> list[str]:
     return [*items, *checks, *remarks]
 
 
-def _cell(case: str, findings: Findings, quantity: Quantity) -> Html:
+def _cell(place: str, findings: Findings, quantity: Quantity) -> Cell:
     verdict = findings.verdicts[quantity.name]
-    address = _page(case, _words.anchor(findings, quantity))
-    value = html.element("a", {"href": address}, text(_words.value_text(verdict)))
-    return html.join(html.element("div", {}, html.badge(verdict.word)), html.element("div", {}, value))
+    address = _page(place, _words.anchor(findings, quantity))
+    return (mark(verdict.word), Words(_words.value_text(verdict), to=address))
 
 
 def _largest(
     cases: Mapping[str, Findings], quantities: tuple[Quantity, ...], largest: Mapping[str, Envelope]
-) -> Html:
-    rows = []
+) -> Section:
+    rows: list[list[Cell]] = []
     for quantity in quantities:
         found = largest[quantity.name]
         verdict = cases[found.case].verdicts[quantity.name]
@@ -112,26 +114,23 @@ def _largest(
             found.case,
             _words.span_text(found),
         )
-        rows.append([text(quantity.name), *(text(cell) for cell in cells), html.badge(found.word)])
-    return html.section(
-        "largest",
-        "Largest values",
-        html.table("Envelope of all cases", ENVELOPE, rows, "statement"),
-        html.paragraph(LARGEST, "tiny"),
-    )
+        rows.append([quantity.name, *cells, mark(found.word)])
+    blocks: list[Block] = [
+        Table("Envelope of all cases", ENVELOPE, rows, "statement"),
+        Paragraph(LARGEST, "tiny"),
+    ]
+    return Section("largest", "Largest values", "Largest values", blocks)
 
 
-def _cases(cases: Mapping[str, Findings], loads: Mapping[str, str]) -> Html:
-    rows = []
+def _cases(cases: Mapping[str, Findings], loads: Mapping[str, str]) -> Section:
+    rows: list[list[Cell]] = []
+    places = case_folders(cases)
     for case in worst_first(cases):
-        link = html.element("a", {"href": _page(case, "statement")}, text(case))
-        rows.append([link, text(loads[case]), text(_words.overall(cases[case]))])
-    return html.section(
-        "cases",
-        "Cases",
-        html.table("The reports of the cases", ("case", "loads", "conclusion"), rows, "words"),
-    )
+        link = Words(case, to=_page(places[case], "statement"))
+        rows.append([link, loads[case], _words.overall(cases[case])])
+    table = Table("The reports of the cases", ("case", "loads", "conclusion"), rows, "words")
+    return Section("cases", "Cases", "Cases", [table])
 
 
-def _page(case: str, anchor: str) -> str:
-    return f"{quote(case)}/report.html#{anchor}"
+def _page(place: str, anchor: str) -> str:
+    return f"{quote(place)}/report.html#{anchor}"

@@ -1,5 +1,7 @@
 """Growth of a singular quantity, with no limit because there is none, and the field beside its corner."""
 
+import math
+from itertools import compress
 from typing import TYPE_CHECKING
 
 import numpy as np
@@ -8,7 +10,8 @@ from convergence import numbers
 from convergence.checks._field import Field, blamed, field_of
 from convergence.fem.stress import component
 from convergence.report._axes import bracket, cell_size_axis, log_ticks, middle
-from convergence.report._picture import BLUE, GREEN, GREY, INK, RED, Picture, draw
+from convergence.report._level_words import level_hints
+from convergence.report._picture import BLUE, GREEN, GREY, INK, LEVELS, RED, Picture, draw
 from convergence.results import Facts, Ladder, Quantity
 
 if TYPE_CHECKING:
@@ -39,7 +42,7 @@ def growth_figure(
             if name in powers:
                 label = f"{name}: h^({numbers.compact(powers[name], 3)})"
                 axes.plot(fine, size[-1] * (fine / h[-1]) ** powers[name], line, color=colour, label=label)
-        axes.plot(h, size, "o", color=INK, label="levels", zorder=4)
+        axes.plot(h, size, "o", color=INK, label="levels", zorder=4, gid=LEVELS)
         log_ticks(axes, float(size.min()) / 1.15, float(size.max()) * 1.25)
         axes.set_ylabel(f"|{middle(quantity.name)}|{bracket(quantity.unit)}")
         axes.set_title("No limit exists: the mesh sets this value", color=RED, loc="left")
@@ -48,7 +51,8 @@ def growth_figure(
     caption = "Both axes logarithmic. A straight rise means growth by the same factor with every refinement."
     grown = ", ".join(f"{name} h^({numbers.compact(power, 3)})" for name, power in powers.items())
     alt = f"{quantity.name} grows without limit as cells shrink; {grown or 'one level only'}"
-    return draw(stem, (5.2, 4.1), alt, caption, paint)
+    hints = compress(level_hints(ladder, quantity, math.nan), drawn)
+    return draw(stem, (5.2, 4.1), alt, caption, paint, hints)
 
 
 def _powers(h: np.ndarray, size: np.ndarray, exponent: float | None) -> dict[str, float]:

@@ -1,13 +1,16 @@
 """Error against the cell size on log axes, beside the slopes of theory and of the data."""
 
 import math
+from itertools import compress
 from typing import TYPE_CHECKING
 
 import numpy as np
 
 from convergence import numbers
+from convergence.report import _words
 from convergence.report._axes import bracket, cell_size_axis, log_ticks
-from convergence.report._picture import BLUE, GREY, INK, Picture, draw
+from convergence.report._level_words import level_hints
+from convergence.report._picture import BLUE, GREY, INK, LEVELS, Picture, draw
 from convergence.report._slopes import slope_words, slopes
 from convergence.results import Ladder, Quantity, Verdict
 
@@ -37,7 +40,7 @@ def error_figure(
         h, error = ladder.h[drawn], errors[drawn]
         _believed(axes, h[-1], error[-1], verdict)
         slopes(axes, h[-1], error[-1], _orders(verdict))
-        axes.plot(h, error, "o", color=INK, label="levels", zorder=4)
+        axes.plot(h, error, "o", color=INK, label="levels", zorder=4, gid=LEVELS)
         low, high = float(error.min()) / 2.5, float(error.max()) * 1.8
         if low < verdict.tolerance < high * 30:
             high = max(high, 1.3 * verdict.tolerance)
@@ -50,7 +53,12 @@ def error_figure(
     if limited:
         caption += " The best estimate is made from the same levels and is no independent witness."
     alt = f"{what} of {quantity.name} against the cell size; {slope_words(_orders(verdict))}"
-    return draw(stem, (5.2, 4.1), alt, caption, paint)
+    said = level_hints(ladder, quantity, verdict.uncertainty)
+    hints = [
+        f"{hint}; {what} {_words.with_unit(numbers.significant(error, 3), quantity.unit)}"
+        for hint, error in compress(zip(said, errors, strict=True), drawn)
+    ]
+    return draw(stem, (5.2, 4.1), alt, caption, paint, hints, "error")
 
 
 def _believed(axes: "Axes", h: float, error: float, verdict: Verdict) -> None:

@@ -1,13 +1,15 @@
 """A quantity against the cell size: levels, curve, best estimate of the limit, interval and tolerance."""
 
 import math
+from itertools import compress
 from typing import TYPE_CHECKING
 
 import numpy as np
 
 from convergence import numbers
 from convergence.report._axes import bracket, cell_size_axis, middle, value_ticks
-from convergence.report._picture import BLUE, GREEN, GREY, INK, RED, Picture, draw
+from convergence.report._level_words import level_hints
+from convergence.report._picture import BLUE, GREEN, GREY, INK, LEVELS, RED, Picture, draw
 from convergence.results import Companion, Ladder, Quantity, Verdict
 
 if TYPE_CHECKING:
@@ -44,16 +46,15 @@ def value_figure(
         _interval(axes, verdict)
         if not math.isnan(order):
             _curve(axes, verdict.limit, ladder.h[known][-1], values[known][-1], order)
-        axes.plot(ladder.h[known], values[known], "o", color=INK, label="levels", zorder=4)
+        axes.plot(ladder.h[known], values[known], "o", color=INK, label="levels", zorder=4, gid=LEVELS)
         if companion:
             _companion(axes, companion, second)
         value_ticks(axes, low, high)
         axes.set_ylabel(f"{middle(quantity.name)}{bracket(quantity.unit)}")
         figure.legend(loc="outside lower center", ncols=3)
 
-    caption = "Value on every level."
-    if missing := int((~known).sum()):
-        caption = f"Value; {numbers.several(missing, 'level')} without one."
+    missing = numbers.several(int((~known).sum()), "level")
+    caption = "Value on every level." if known.all() else f"Value; {missing} without one."
     if companion:
         caption += f" Squares: the companion ladder of {companion.cells}."
     if not math.isnan(verdict.low):
@@ -65,7 +66,8 @@ def value_figure(
     caption += "".join(f" The {part} lies partly outside the picture." for part in cut)
     levels = numbers.several(int(known.sum()), "level")
     alt = f"{quantity.name} against the cell size on {levels}; verdict {verdict.word}"
-    return draw(stem, (5.2, 4.1), alt, caption, paint)
+    hints = level_hints(ladder, quantity, verdict.uncertainty)
+    return draw(stem, (5.2, 4.1), alt, caption, paint, compress(hints, known), "value")
 
 
 def _companion(axes: "Axes", companion: Companion, values: np.ndarray) -> None:

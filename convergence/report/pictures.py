@@ -9,10 +9,13 @@ from typing import Any
 from convergence.dimensions import Units
 from convergence.fields import Fields
 from convergence.histories.table import outcomes
+from convergence.mapped import MappedField
 from convergence.report import _scene
 from convergence.report._picture import Picture
+from convergence.report.figures_balance import balance_figure
 from convergence.report.figures_error import error_map, norm_figure
 from convergence.report.figures_growth import field_figure, growth_figure
+from convergence.report.figures_map import map_figure
 from convergence.report.figures_mesh import mesh_figure
 from convergence.report.figures_order import error_figure
 from convergence.report.figures_standing import standing_figure
@@ -27,15 +30,20 @@ Draw = Callable[[Sequence[Figure]], list[Picture | None]]
 
 @dataclass(frozen=True)
 class Pictures:
-    """What was drawn: by quantity, the meshes and the stress where there are fields, the errors."""
+    """What was drawn: by quantity; meshes and stress where there are fields; errors; maps; a balance."""
 
     by_quantity: dict[str, list[Picture]]
     fields: list[Picture]
     errors: list[Picture]
+    maps: list[Picture]
+    balance: list[Picture]
 
     @property
     def all(self) -> list[Picture]:
-        return [picture for group in self.by_quantity.values() for picture in group] + self.fields + self.errors
+        return [picture for group in self._groups() for picture in group]
+
+    def _groups(self) -> list[list[Picture]]:
+        return [*self.by_quantity.values(), self.fields, self.errors, self.maps, self.balance]
 
 
 def one_by_one(figures: Sequence[Figure]) -> list[Picture | None]:
@@ -47,10 +55,11 @@ def pictures(findings: Findings, fields: Sequence[Fields], units: Units, draw_al
     """Return the pictures of a report; `fields` as `write_report` has them."""
     stem = stems([quantity.name for quantity in findings.quantities])
     groups = [_of_quantity(findings, quantity, stem[quantity.name]) for quantity in findings.quantities]
-    groups += _of_fields(findings, fields, units)
+    groups += [*_of_fields(findings, fields, units), _of_maps(findings, fields), _of_balance(findings)]
     drawn = iter(draw_all([figure for group in groups for figure in group]))
-    *by_quantity, meshes, errors = ([p for p in islice(drawn, len(group)) if p] for group in groups)
-    return Pictures(dict(zip(stem, by_quantity, strict=True)), meshes, errors)
+    found = [[p for p in islice(drawn, len(group)) if p] for group in groups]
+    *by_quantity, meshes, errors, maps, balance = found
+    return Pictures(dict(zip(stem, by_quantity, strict=True)), meshes, errors, maps, balance)
 
 
 def stems(names: Sequence[str]) -> dict[str, str]:
@@ -101,6 +110,22 @@ def _of_fields(findings: Findings, fields: Sequence[Fields], units: Units) -> li
     stress: Figure = (stress_figure, (fields[-1], turned, findings, units.stress, finest))
     error: Figure = (error_map, (fields[-1], turned, units, finest))
     return [[meshes, stress], errors if exact else [error, *errors]]
+
+
+def _of_maps(findings: Findings, fields: Sequence[Fields]) -> list[Figure]:
+    """Return the maps of the intervals at all nodes, where the finest mesh is drawn."""
+    drawn = [one for one in findings.mapped if len(one.relative)]
+    turned = _scene.turn(fields[-1]) if drawn else None
+    return [(map_figure, (fields[-1], turned, one, f"map-{stem}")) for one, stem in _stemmed(drawn)]
+
+
+def _stemmed(drawn: Sequence[MappedField]) -> list[tuple[MappedField, str]]:
+    return list(zip(drawn, stems([one.name for one in drawn]).values(), strict=True))
+
+
+def _of_balance(findings: Findings) -> list[Figure]:
+    balance = findings.facts.balance
+    return [] if balance is None else [(balance_figure, ("equilibrium", balance))]
 
 
 def _mesh_name(drawn: int, levels: int) -> str:

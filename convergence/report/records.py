@@ -12,7 +12,9 @@ from convergence.coverage import Coverage
 from convergence.envelope import envelope
 from convergence.report._trust import half_width
 from convergence.report.sections_instead import instead_objects
+from convergence.report.sections_map import mapped_object
 from convergence.results import Check, Companion, Estimate, Findings, Level, Quantity, Verdict
+from convergence.statics import Balance, finding
 
 PACKAGES = ("numpy", "scipy", "scikit-fem")
 
@@ -143,6 +145,33 @@ def _check(check: Check) -> dict[str, Any]:
     }
 
 
+def balance_object(balance: Balance | None) -> dict[str, Any] | None:
+    """Return the balance of printed loads and reactions, None where there are none."""
+    if balance is None:
+        return None
+    rows = {
+        one.name: {
+            "loads": one.loads,
+            "reactions": one.reactions,
+            "missing": one.missing,
+            "measured_by": one.scale,
+            "share": _number(one.share),
+            "rounding": one.rounding,
+            "outcome": one.word,
+        }
+        for one in balance.components
+    }
+    return {
+        "passed": balance.passed,
+        "finding": finding(balance),
+        "worst": balance.worst.name,
+        "about": list(balance.about),
+        "tolerance": balance.tolerance,
+        "units": {"force": balance.printout.force_unit, "length": balance.printout.length_unit},
+        "components": rows,
+    }
+
+
 def _facts(findings: Findings) -> dict[str, Any]:
     facts = findings.facts
     corners = None if facts.corners is None else [asdict(corner) for corner in facts.corners]
@@ -178,6 +207,8 @@ def findings_object(findings: Findings) -> dict[str, Any]:
         "table": [_level(level) for level in findings.ladder.levels],
         "companion": _companion(findings.companion),
         "checks": [_check(check) for check in findings.checks],
+        "balance": balance_object(findings.facts.balance),
         "facts": _facts(findings),
+        "map": {field.name: mapped_object(field) for field in findings.mapped},
         "versions": versions(),
     }

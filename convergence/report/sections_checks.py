@@ -1,33 +1,25 @@
 """What was checked beside the convergence of the numbers, passed or not."""
 
 from convergence import numbers
-from convergence.report import _words, html
-from convergence.report.html import Html, text
+from convergence.report import _words
+from convergence.report.content import Block, Details, Paragraph, Section, Table
 from convergence.results import Check, Findings
 
 OUTCOMES = {True: "passed", False: "FAILED", None: "no statement"}
 
 
-def checks_section(findings: Findings) -> Html:
+def checks_section(findings: Findings) -> Section:
     """Return the table of checks and, on demand, their numbers on every level."""
-    if not findings.checks:
-        return html.section("checks", "Checks", html.paragraph("No check was made on this ladder."))
-    rows = [
-        [
-            text(_words.plain(check.name)),
-            text(OUTCOMES[check.passed]),
-            text(check.finding),
-            text(_spoils(check)),
+    blocks: list[Block] = [Paragraph("No check was made on this ladder.")]
+    if findings.checks:
+        rows = [
+            (_words.plain(check.name), OUTCOMES[check.passed], check.finding, _spoils(check))
+            for check in findings.checks
         ]
-        for check in findings.checks
-    ]
-    head = ("check", "outcome", "finding", "what it spoils")
-    return html.section(
-        "checks",
-        "Checks",
-        html.table("Checks on this ladder", head, rows, "words"),
-        *(_numbers(check) for check in findings.checks if check.values),
-    )
+        head = ("check", "outcome", "finding", "what it spoils")
+        blocks = [Table("Checks on this ladder", head, rows, "words")]
+        blocks += [_numbers(check) for check in findings.checks if check.values]
+    return Section("checks", "Checks", "Checks", blocks)
 
 
 def _spoils(check: Check) -> str:
@@ -39,14 +31,13 @@ def _spoils(check: Check) -> str:
     return "; ".join(parts) or "no quantity"
 
 
-def _numbers(check: Check) -> Html:
+def _numbers(check: Check) -> Details:
     """Return a check's numbers, one column a level."""
     count = max(len(row) for row in check.values.values())
     rows = [
-        [text(name), *(text(numbers.significant(value, 4)) for value in row)]
-        + [text("")] * (count - len(row))
+        [name, *(numbers.significant(value, 4) for value in row), *[""] * (count - len(row))]
         for name, row in check.values.items()
     ]
     head = ("number", *(f"level {n}" for n in range(1, count + 1)))
     title = f"Numbers of the check: {_words.plain(check.name)}"
-    return html.details(title, html.table(title, head, rows))
+    return Details(title, [Table(title, head, rows)])

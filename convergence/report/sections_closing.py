@@ -1,9 +1,11 @@
 """The end of the document: caution, and what it takes to get the same numbers again."""
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
+from hashlib import file_digest, sha256
+from pathlib import Path
 
-from convergence.report import html, records
-from convergence.report.html import Html, text
+from convergence.report import records
+from convergence.report.content import Block, Bullets, Details, Section, Table, Verbatim
 
 CAUTION = (
     "The discretization error is one part of the uncertainty of a result. It says how far the numbers are"
@@ -14,18 +16,25 @@ CAUTION = (
 )
 
 
-def caution_section() -> Html:
+def caution_section() -> Section:
     """Return what the document must not be taken for."""
-    return html.section("caution", "Caution", html.bullets(CAUTION))
+    return Section("caution", "Caution", "Caution", [Bullets(CAUTION)])
 
 
-def trace_section(facts: Mapping[str, str], study_text: str) -> Html:
+def digests(study_text: str, inputs: Sequence[Path]) -> dict[str, str]:
+    """Return the SHA-256 of the study and of every file that was read and is still there."""
+    found = {"SHA-256 of the study": sha256(study_text.encode()).hexdigest()} if study_text else {}
+    for path in inputs:
+        if path.is_file():
+            with path.open("rb") as file:
+                found[f"SHA-256 of {path.name}"] = file_digest(file, "sha256").hexdigest()
+    return found
+
+
+def trace_section(facts: Mapping[str, str], study_text: str) -> Section:
     """Return facts such as command and date, the versions and the study itself."""
-    rows = [[text(name), text(value)] for name, value in {**facts, **records.versions()}.items()]
-    study = html.element("pre", {"tabindex": "0"}, text(study_text))
-    return html.section(
-        "trace",
-        "Traceability",
-        html.table("How to get these numbers again", ("what", "which"), rows, "words"),
-        html.details("The study as it was read", study) if study_text else Html(""),
-    )
+    rows = list({**facts, **records.versions()}.items())
+    blocks: list[Block] = [Table("How to get these numbers again", ("what", "which"), rows, "words")]
+    if study_text:
+        blocks.append(Details("The study as it was read", [Verbatim(study_text)]))
+    return Section("trace", "Traceability", "Traceability", blocks)

@@ -5,22 +5,22 @@ from typing import Any
 
 from convergence import numbers
 from convergence.checks._instead import Instead, instead, missing
-from convergence.report import html
-from convergence.report.html import Html, text
+from convergence.report.content import Block, Cell, Paragraph, Table, mark
 from convergence.results import Findings, Quantity
 
 TOLERANCE = 0.05  # where the quantity has none relative to its value
 HEAD = ("instead", "finest mesh", "best estimate", "interval", "verdict")
 
 
-def instead_part(findings: Findings, quantity: Quantity) -> Html:
+def instead_part(findings: Findings, quantity: Quantity) -> list[Block]:
     """Return the table of a quantity that stands on a singular corner, nothing for others."""
     found = instead(findings.ladder, findings.facts, quantity.name)
     absent = missing(findings.ladder, findings.facts, quantity.name)
     accepted = tolerance(quantity)
     caption = f"What to report instead (verdict at a tolerance of {numbers.plain_percent(accepted)})"
-    table = html.table(caption, HEAD, [_row(one, accepted) for one in found]) if found else Html("")
-    return html.join(table, *(html.paragraph(sentence, "tiny") for sentence in absent))
+    rows = [_row(one, accepted) for one in found]
+    table: list[Block] = [Table(caption, HEAD, rows)] if rows else []
+    return [*table, *(Paragraph(sentence, "tiny") for sentence in absent)]
 
 
 def tolerance(quantity: Quantity) -> float:
@@ -44,11 +44,13 @@ def instead_objects(findings: Findings, quantity: Quantity) -> list[dict[str, An
     ]
 
 
-def _row(one: Instead, accepted: float) -> list[Html]:
+def _row(one: Instead, accepted: float) -> list[Cell]:
     finest, best = (
-        numbers.NONE if math.isnan(number) else f"{numbers.rounded(number, one.half_width)} {one.unit}".strip()
+        numbers.NONE
+        if math.isnan(number)
+        else f"{numbers.rounded(number, one.half_width)} {one.unit}".strip()
         for number in (one.value, one.limit)
     )
     low, high = numbers.outward(one.low, one.high, one.limit, one.half_width)
     reach = numbers.NONE if low == numbers.NONE else f"{low} to {high}"
-    return [*map(text, (one.label, finest, best, reach)), html.badge(one.word(accepted))]
+    return [one.label, finest, best, reach, mark(one.word(accepted))]

@@ -2,9 +2,9 @@
 
 from convergence import numbers, rooms
 from convergence.histories.laws import FALLING, SCATTERS
-from convergence.histories.table import Table
-from convergence.report import _trust, _words, html
-from convergence.report.html import Html, text
+from convergence.histories.table import Table as Bank
+from convergence.report import _trust, _words
+from convergence.report.content import Block, Details, Paragraph, Section, Table, Words
 from convergence.results import Findings
 
 HEAD = ("quantities", "levels", "known", "measured coverage", "bank ladders", "half-width / true error")
@@ -20,20 +20,19 @@ ROUNDING = (
 )
 
 
-def found_section(findings: Findings, bank: Table) -> Html:
+def found_section(findings: Findings, bank: Bank) -> Section:
     """Return how the interval is found, with this study's numbers, and the methods beside it."""
-    return html.section(
-        "interval",
-        "How the interval is found",
-        *(html.paragraph(lines) for lines in (_belief(bank), _stretch(bank), NOT_COVERED)),
-        _coverages(findings),
-        html.details("Families of the bank", html.paragraph(_families(bank))),
-        html.paragraph(ROUNDING, "tiny"),
-        _sources(findings),
-    )
+    blocks: list[Block] = [
+        *(Paragraph(lines) for lines in (_belief(bank), _stretch(bank), NOT_COVERED)),
+        *_coverages(findings),
+        Details("Families of the bank", [Paragraph(_families(bank))]),
+        Paragraph(ROUNDING, "tiny"),
+        *_sources(findings),
+    ]
+    return Section("interval", "Interval", "How the interval is found", blocks)
 
 
-def _belief(bank: Table) -> str:
+def _belief(bank: Bank) -> str:
     orders = f"{numbers.compact(FALLING[0], 2)} to {numbers.compact(FALLING[-1], 2)}"
     scatters = f"{numbers.compact(100 * SCATTERS[0], 2)} to {numbers.compact(100 * SCATTERS[-1], 3)} %"
     return (
@@ -47,7 +46,7 @@ def _belief(bank: Table) -> str:
     )
 
 
-def _stretch(bank: Table) -> str:
+def _stretch(bank: Bank) -> str:
     return (
         "The half-width is that of the central 70 % of the belief, times a stretch fitted to the true errors"
         " of the bank so that 95 % of its intervals hold the limit on meshes of every source. The stretch"
@@ -58,7 +57,7 @@ def _stretch(bank: Table) -> str:
     )
 
 
-def _make_up(bank: Table) -> str:
+def _make_up(bank: Bank) -> str:
     made = bank.made_of
     return (
         f"{numbers.count(made['sub_ladders'])} of two to seven levels, out of"
@@ -66,38 +65,38 @@ def _make_up(bank: Table) -> str:
     )
 
 
-def _families(bank: Table) -> str:
+def _families(bank: Bank) -> str:
     return f"{', '.join(_words.plain(family) for family in bank.made_of['families'])}."
 
 
-def _coverages(findings: Findings) -> Html:
+def _coverages(findings: Findings) -> list[Block]:
     """Return the measured coverage of this study's intervals, a row for each that differs."""
     rows = [
-        [
-            text(", ".join(names)),
-            text(_trust.levels_text(coverage)),
-            text(_trust.KNOWN[coverage.knowledge]),
-            text(_trust.share_text(coverage)),
-            text(numbers.count(coverage.cases)),
-            text(numbers.compact(coverage.ratio, 2)),
-        ]
+        (
+            ", ".join(names),
+            _trust.levels_text(coverage),
+            _trust.KNOWN[coverage.knowledge],
+            _trust.share_text(coverage),
+            numbers.count(coverage.cases),
+            numbers.compact(coverage.ratio, 2),
+        )
         for coverage, names in _trust.by_coverage(findings).items()
     ]
     caption = (
         "Measured coverage with its 95 % binomial interval, and the median of half-width over true error of"
         " the finest value"
     )
-    return html.table(caption, HEAD, rows, "words") if rows else Html("")
+    return [Table(caption, HEAD, rows, "words")] if rows else []
 
 
-def _sources(findings: Findings) -> Html:
+def _sources(findings: Findings) -> list[Block]:
     """Return every method that was used with what it is and its published source."""
     known = rooms.shelf("estimators")
     used = dict.fromkeys(name for estimates in findings.estimates.values() for name in estimates)
     rows = []
     for name in used:
         source = str(rooms.beside("estimators", name, "SOURCE") or "") if name in known else ""
-        title = html.element("span", {"id": f"method-{name}"}, text(_words.plain(name)))
-        rows.append([title, text(known.get(name, "")), text(source or numbers.NONE)])
+        title = Words(_words.plain(name), anchor=f"method-{name}")
+        rows.append((title, known.get(name, ""), source or numbers.NONE))
     caption = "Published methods, shown beside the interval for comparison: it is not made from them"
-    return html.table(caption, ("method", "what it is", "source"), rows, "words") if rows else Html("")
+    return [Table(caption, ("method", "what it is", "source"), rows, "words")] if rows else []

@@ -2,8 +2,18 @@
 
 import math
 
-from convergence.report import _trust, _words, html
-from convergence.report.html import Html, text
+from convergence.report import _trust, _words
+from convergence.report.content import (
+    Block,
+    Bullets,
+    Cell,
+    Heading,
+    Paragraph,
+    Section,
+    Table,
+    Words,
+    mark,
+)
 from convergence.results import Findings, Quantity
 
 HEAD = ("quantity", "value", "interval, best estimate", "unit", "uncertainty", "tolerance", "verdict")
@@ -13,37 +23,32 @@ HALVES = (
 )
 
 
-def statement_section(findings: Findings, length: str) -> Html:
+def statement_section(findings: Findings, length: str) -> Section:
     """Return conclusion, table of verdicts, one quotable sentence each, limits of the statement."""
-    sentences = [
-        html.element("blockquote", {}, html.paragraph(_words.statement(findings, quantity, length)))
-        for quantity in findings.quantities
-    ]
+    quantities = findings.quantities
+    sentences = [Paragraph(_words.statement(findings, quantity, length), "quote") for quantity in quantities]
     rows = [_row(findings, quantity) for quantity in findings.quantities]
-    return html.section(
-        "statement",
-        "Statement",
-        html.paragraph(_words.overall(findings), "overall"),
-        html.element("h3", {}, text("Not covered")),
-        html.bullets(_not_covered(findings)),
-        html.element("h3", {}, text("Each quantity")),
-        html.table("Values on the finest mesh and best estimates of their limits", HEAD, rows, "statement"),
-        html.paragraph(HALVES, "tiny"),
+    blocks: list[Block] = [
+        Paragraph(_words.overall(findings), "overall"),
+        Heading("Not covered"),
+        Bullets(_not_covered(findings)),
+        Heading("Each quantity"),
+        Table("Values on the finest mesh and best estimates of their limits", HEAD, rows, "statement"),
+        Paragraph(HALVES, "tiny"),
         *sentences,
-    )
+    ]
+    return Section("statement", "Statement", "Statement", blocks)
 
 
-def _row(findings: Findings, quantity: Quantity) -> list[Html]:
+def _row(findings: Findings, quantity: Quantity) -> list[Cell]:
     verdict = findings.verdicts[quantity.name]
     width, accepted = _words.precision_text(quantity, verdict)
     if verdict.word == "singular":
         width = "none"
-    link = html.element("a", {"href": f"#{_words.anchor(findings, quantity)}"}, text(quantity.name))
+    name = Words(quantity.name, to=f"#{_words.anchor(findings, quantity)}")
     both = (_words.interval_text(verdict), _trust.best_text(verdict))
-    lines = (html.element("div", {}, text(one)) for one in dict.fromkeys(both))
-    cells = (text(cell) for cell in (quantity.unit, width, accepted))
-    value = text(_words.value_text(verdict))
-    return [link, value, html.join(*lines), *cells, html.badge(verdict.word)]
+    reach = tuple(dict.fromkeys(both))
+    return [name, _words.value_text(verdict), reach, quantity.unit, width, accepted, mark(verdict.word)]
 
 
 def _not_covered(findings: Findings) -> list[str]:

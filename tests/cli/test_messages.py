@@ -7,7 +7,7 @@ import pytest
 
 from convergence import climbing
 from convergence.cli import main
-from convergence.cli._judging import tolerance_of
+from convergence.cli._said import tolerance_of
 from convergence.errors import InputError, SolvingError
 from convergence.results import Level
 
@@ -45,8 +45,8 @@ def call(capsys: pytest.CaptureFixture[str], *arguments: str) -> tuple[int, str,
         (["judge", "."], "study.toml: no such file; give the path of a study file (.toml)\n"),
         (
             ["judge", "none.csv", "missing.csv"],
-            "none.csv: no such file; give the path of a table (.csv)\n"
-            "missing.csv: no such file; give the path of a table (.csv)\n",
+            "none.csv: no such file; give the path of a table (.csv, .xlsx, .ods)\n"
+            "missing.csv: no such file; give the path of a table (.csv, .xlsx, .ods)\n",
         ),
         (
             ["judge", "good.csv", "--kind", "length=displacment"],
@@ -66,7 +66,7 @@ def call(capsys: pytest.CaptureFixture[str], *arguments: str) -> tuple[int, str,
         ),
         (
             ["judge", "patch.toml", "--degree", "2"],
-            "patch.toml: --kind, --degree, --tolerance and --dimension are for bare tables; "
+            "patch.toml: --kind, --degree and the other options on tables are for bare tables; "
             "write them in the study\n",
         ),
     ],

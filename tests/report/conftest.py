@@ -1,7 +1,7 @@
 """Made-up findings and fields for the report: an L-shaped bracket and ladders with chosen behaviour."""
 
 import math
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 
 import numpy as np
 import pytest
@@ -10,9 +10,12 @@ from convergence.corner import Corner
 from convergence.coverage import Coverage
 from convergence.dimensions import SYSTEMS, Units
 from convergence.fields import Fields
+from convergence.report.as_html import as_html
+from convergence.report.content import Block, Document, Section
 from convergence.results import Check, Estimate, Facts, Findings, Ladder, Level, Quantity, Verdict
 
 NAN = math.nan
+Said = Section | Sequence[Block]
 COVERAGE = Coverage("kind and degree", 5, 2140, 2057, 0.9521, 0.9690, 3.1)
 Map = Callable[[np.ndarray, np.ndarray, np.ndarray], tuple[np.ndarray, ...]]
 
@@ -236,3 +239,14 @@ def drilled_of() -> Callable[[int], Fields]:
 @pytest.fixture(scope="session", name="angle")
 def angle_of() -> Callable[[int], Fields]:
     return angle
+
+
+@pytest.fixture(scope="session")
+def on_page() -> Callable[[Said], str]:
+    """How a section, or its blocks, stand on the page, from after its title."""
+
+    def of(said: Said) -> str:
+        section = said if isinstance(said, Section) else Section("", "", "", said)
+        return as_html(Document("", "", [section])).partition("</h2>")[2]
+
+    return of

@@ -59,10 +59,11 @@ class Reader(HTMLParser):
 
 
 def write(findings: Findings, folder: Path, fields: list[Fields], units: Units) -> Path:
-    return write_report(
+    (page,) = write_report(
         findings, folder, fields=fields, units=units, study_text='title = "<i>Bracket</i>"',
         study_name="bracket", command="meshassay run studies/bracket.toml", date="2031-05-02",
     )  # fmt: skip
+    return page
 
 
 @pytest.fixture(scope="module")
@@ -96,7 +97,7 @@ def test_what_is_left_in_the_folder(folder: Path) -> None:
 
 def test_page_is_well_formed_and_stands_alone(page: Reader) -> None:
     assert page.misnested == [] and page.open == []
-    assert "script" not in page.tags and "link" not in page.tags
+    assert page.tags.count("script") == 1 and "link" not in page.tags
     outside = [to for to in page.references if not to.startswith(("#", "data:image/png;base64,"))]
     assert outside == []
 
@@ -119,8 +120,10 @@ def test_what_the_user_wrote_is_escaped(page: Reader) -> None:
 
 def test_statement_comes_first_with_its_limits(page: Reader) -> None:
     order = [
-        "1 of 4 quantities is sound", "Not covered", "On 5 meshes", "Levels from coarse to fine",
-        "Checks on this ladder", "How the interval is found", "is one part of the uncertainty",
+        "1 of 4 quantities is sound", "Not covered", "On 5 meshes",
+        "Where each point of the record stands",
+        "Levels from coarse to fine", "Checks on this ladder",
+        "Any candidate for the limit", "is one part of the uncertainty",
         "How to get these numbers again",
     ]  # fmt: skip
     places = [page.text.index(words) for words in order]

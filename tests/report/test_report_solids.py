@@ -47,13 +47,13 @@ def test_a_place_moves_with_the_part_and_a_hidden_one_is_told(findings: Findings
     assert all(f">{axis}</text>" in picture.svg for axis in "xyz")
 
 
-def test_a_singular_edge_is_a_line_with_its_ends(findings: Findings, cube: Solid) -> None:
+def test_a_singular_edge_is_a_line_with_its_ends(findings: Findings, cube: Solid, on_page) -> None:
     corner = replace(findings.facts.corners[0], path=((0.0, 1.0, 0.0), (0.0, 1.0, 1.0)))  # type: ignore[index]
     told = findings_of(findings, {}, (corner,))
     picture = stress_figure(cube(3), VIEW, told, "MPa")
     assert "1 singular edge banded" in picture.alt
     assert "surface" in picture.caption and "tubes around them" in picture.caption
-    assert "from (0, 1, 0) to (0, 1, 1)" in stress_section(told, picture)
+    assert "from (0, 1, 0) to (0, 1, 1)" in on_page(stress_section(told, picture))
 
 
 def test_colours_end_outside_the_tube_around_a_singular_edge(findings: Findings, cube: Solid) -> None:

@@ -62,13 +62,12 @@ def test_two_levels_are_for_orientation(findings: Findings, verdict_of: Callable
     )
 
 
-def test_an_order_below_zero_is_explained(findings: Findings) -> None:
+def test_an_order_below_zero_is_explained(findings: Findings, on_page) -> None:
     grows = replace(findings.verdicts["fillet_stress"], order_low=-0.25)
     for verdicts, said in ((findings.verdicts, False), ({**findings.verdicts, "fillet_stress": grows}, True)):
-        page = quantities_section(
-            replace(findings, verdicts=verdicts), {q.name: [] for q in findings.quantities}, "mm"
-        )
-        assert ("below zero it would grow without limit" in page) == said
+        pictures = {q.name: [] for q in findings.quantities}
+        page = quantities_section(replace(findings, verdicts=verdicts), pictures, "mm")
+        assert ("below zero it would grow without limit" in on_page(page)) == said
 
 
 def test_coverage_is_said_once_where_it_is_the_same(findings: Findings) -> None:
@@ -79,20 +78,19 @@ def test_coverage_is_said_once_where_it_is_the_same(findings: Findings) -> None:
     assert [re.findall(r"\((\w+)\)", line) for line in lines] == [["fillet_stress"], ["tip_deflection"]]
 
 
-def test_an_interval_without_a_measured_coverage_is_named(findings: Findings) -> None:
-    assert "No coverage was measured" not in statement_section(findings, "mm")
+def test_an_interval_without_a_measured_coverage_is_named(findings: Findings, on_page) -> None:
+    assert "No coverage was measured" not in on_page(statement_section(findings, "mm"))
     flat = replace(findings.verdicts["fillet_stress"], coverage=None)
     changed = replace(findings, verdicts={**findings.verdicts, "fillet_stress": flat})
-    assert "No coverage was measured for intervals such as that of fillet_stress." in statement_section(
-        changed, "mm"
-    )
+    page = on_page(statement_section(changed, "mm"))
+    assert "No coverage was measured for intervals such as that of fillet_stress." in page
 
 
-def test_how_the_interval_is_found_fits_half_a_page(findings: Findings) -> None:
+def test_how_the_interval_is_found_fits_half_a_page(findings: Findings, on_page) -> None:
     """Half a page of A4 in 10.5 point holds 22 lines of 16 words beside a heading and a small table."""
     even = np.ones((len(COURSES), len(SCATTERS)))
     made = {"date": "2031-05-02", "families": ["arm", "bar"], "ladders": 3120, "sub_ladders": 12_345}
-    page = found_section(findings, Table(made, {"": even}, even, {}, {}, {}, {}))
+    page = on_page(found_section(findings, Table(made, {"": even}, even, {}, {}, {}, {})))
     paragraphs = re.findall(r"<p>(.*?)</p>", page)
     assert len(" ".join(paragraphs).split()) < 22 * 16
     for words in ("12,345 of two", "2 families", "0.1 to 6", "3 to 200 %", "left out", "Not covered"):
