@@ -9,6 +9,7 @@ import numpy as np
 
 ROUND_OFF = 1e-10
 BISECTIONS = 200
+LARGEST_ORDER, KNOWN_ORDERS = 30.0, 12_000  # of many ladders at once; an even number leaves out 0
 
 
 def noise_floor(f: np.ndarray, resolution: float = 0.0) -> float:
@@ -66,6 +67,23 @@ def observed_order(h: np.ndarray, f: np.ndarray) -> float:
         else:
             high = middle
     return 0.5 * (low + high)
+
+
+def observed_orders(h: np.ndarray, f: np.ndarray) -> np.ndarray:
+    """Return the observed orders (n,) of ladders f (levels, n) over the same sizes, as `observed_order`.
+
+    They are interpolated between known ones, to 1e-5, and cut at ±`LARGEST_ORDER`.
+    """
+    h3, h2, h1 = (float(size) for size in h[-3:])
+    e32, e21 = f[-2] - f[-3], f[-1] - f[-2]
+    known = np.linspace(-LARGEST_ORDER, LARGEST_ORDER, KNOWN_ORDERS)
+    usable = np.isfinite(e32) & np.isfinite(e21) & (e32 != 0.0) & (e21 != 0.0)
+    orders = np.full(usable.shape, math.nan)
+    for same_sign in (True, False):
+        own = usable & ((e32 > 0.0) == (e21 > 0.0) if same_sign else (e32 > 0.0) != (e21 > 0.0))
+        told = [_log_ratio(p, math.log(h2 / h1), math.log(h3 / h2), same_sign) for p in known]
+        orders[own] = np.interp(np.log(np.abs(e32[own])) - np.log(np.abs(e21[own])), told, known)
+    return orders
 
 
 def behaviour(h: np.ndarray, f: np.ndarray, noise: float = 0.0) -> str:

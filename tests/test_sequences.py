@@ -9,7 +9,14 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from convergence.sequences import behaviour, noise_floor, observed_order, unusable
+from convergence.sequences import (
+    LARGEST_ORDER,
+    behaviour,
+    noise_floor,
+    observed_order,
+    observed_orders,
+    unusable,
+)
 
 FAMILIES = json.loads((Path(__file__).parent / "reference" / "extrapolation_families.json").read_text())
 H = np.array([4.0, 2.0, 1.0])
@@ -100,6 +107,17 @@ def test_only_the_three_finest_levels_count() -> None:
 )
 def test_behaviour(f: list[float], expected: str) -> None:
     assert behaviour(H[3 - len(f) :], np.array(f)) == expected
+
+
+@pytest.mark.parametrize("h", [H, np.array([2.5, 1.3, 1.0])])
+def test_orders_of_many_ladders_are_those_of_each(h: np.ndarray) -> None:
+    """Linear interpolation over steps of 0.005 of a smooth function is off by less than 1e-5."""
+    random = np.random.default_rng(7)
+    f = random.normal(size=(3, 400)) * 10.0 ** random.uniform(-2.0, 2.0, (3, 400))
+    f[:, 0], f[1, 1], f[0, 2] = 1.0, np.nan, f[1, 2]
+    one_by_one = np.clip([observed_order(h, one) for one in f.T], -LARGEST_ORDER, LARGEST_ORDER)
+    assert observed_orders(h, f) == pytest.approx(one_by_one, abs=1e-5, nan_ok=True)
+    assert np.isnan(observed_orders(h, f)[:3]).all()
 
 
 def test_behaviour_takes_the_ratios_into_account() -> None:

@@ -10,6 +10,7 @@ import json
 import os
 import subprocess
 import sys
+import tempfile
 import time
 from collections.abc import Callable
 from pathlib import Path
@@ -19,7 +20,7 @@ from convergence.bench.cases import CASES
 from convergence.bench.page import Pair, Solo, write
 from convergence.bench.peers import MISSING
 
-RECOVERED = "triangles"
+RECOVERED, MAPPED = "triangles", "tetrahedra"
 
 
 def child(module: str, *arguments: str) -> dict[str, Any]:
@@ -70,7 +71,15 @@ def solo(chosen: Callable[[str], int], count: int) -> Solo:
         recoveries=[child("ours", RECOVERED, finest, "recovery", "iteration") for _ in range(count)],
         runs=[child("runs", finest) for _ in range(count)],
         compiled=compiled,
+        maps=[mapped(chosen(MAPPED)) for _ in range(count)],
+        held=child("map_coverage")["rows"],
     )
+
+
+def mapped(levels: int) -> tuple[dict[str, Any], dict[str, Any]]:
+    """Return our solution of a series of files, and their pointwise map."""
+    with tempfile.TemporaryDirectory() as folder:
+        return child("maps", "solve", folder, str(levels)), child("maps", "judge", folder)
 
 
 def main() -> None:

@@ -30,7 +30,8 @@ def triad() -> float:
 
 def iteration(solution: Solution) -> dict[str, Any]:
     """Return the seconds of an iteration and those its bytes would take at the triad's speed."""
-    grid = Multigrid(solution.mesh, solution.stiffness, solution.held)
+    assert solution.assembled is not None
+    grid = Multigrid(solution.mesh, solution.assembled, solution.held)
     start = time.perf_counter()
     outcome = grid.solve(solution.load, solution.held.values)
     seconds = (time.perf_counter() - start) / (outcome.iterations + 1)

@@ -50,11 +50,16 @@ class Pair:
 
 @dataclass(frozen=True)
 class Solo:
-    """What is measured of ours alone; `compiled` has the case, a study with numba and one without."""
+    """What is measured of ours alone; `compiled` has the case, a study with numba and one without.
+
+    `maps` have the solution that a pointwise map is made of, and the map; `held` its coverage, by field.
+    """
 
     recoveries: Sequence[Mapping[str, Any]]
     runs: Sequence[Mapping[str, Any]]
     compiled: Sequence[tuple[str, Mapping[str, Any], Mapping[str, Any]]]
+    maps: Sequence[tuple[Mapping[str, Any], Mapping[str, Any]]]
+    held: Sequence[Mapping[str, Any]]
 
 
 def write(folder: Path, load: str, pairs: Sequence[Pair], growth: Sequence[Pair], solo: Solo) -> None:
@@ -68,7 +73,7 @@ def write(folder: Path, load: str, pairs: Sequence[Pair], growth: Sequence[Pair]
     text += _line(COLUMNS) + _line(["---"] * len(COLUMNS))
     text += "".join(_row(group) for group in groups.values())
     text += _recovery(solo.recoveries) + _bandwidth(solo.recoveries) + _runs(solo.runs)
-    text += _compiled(solo.compiled)
+    text += _compiled(solo.compiled) + _maps(solo.maps) + _held(solo.held)
     text += "\n![Seconds over unknowns](performance-growth.svg)\n\n![Peak memory](performance-memory.svg)\n"
     (folder / "performance.md").write_text(text, encoding="utf-8")
     name = pairs[0].name
@@ -129,6 +134,33 @@ def _compiled(compiled: Sequence[tuple[str, Mapping[str, Any], Mapping[str, Any]
         ratios = [plain["lived"] / fast["lived"] for case, fast, plain in compiled if case == name]
         text += f" {name} {median(ratios):.2f} [{min(ratios):.2f} … {max(ratios):.2f}];"
     return text.rstrip(";") + ".\n"
+
+
+def _maps(maps: Sequence[tuple[Mapping[str, Any], Mapping[str, Any]]]) -> str:
+    solving, whole = median(own["seconds"] for own, _ in maps), median(found["lived"] for _, found in maps)
+    ratio = median(found["lived"] / own["seconds"] for own, found in maps)
+    steps = ", ".join(
+        f"{name} {median(found[name] for _, found in maps):.1f}"
+        for name in ("reading", "recovery", "judging", "writing")
+    )
+    peak = max(found["peak"] for _, found in maps)
+    return (
+        f"\nA pointwise map of {maps[0][1]['nodes']:,} nodes of quadratic tetrahedra, of three result files, "
+        f"stress recovered, in a process of its own: {whole:.1f} s ({steps}), {ratio:.2f} of the "
+        f"{solving:.1f} s of our own mesh, assembly and solution of the finest, and {peak:.2f} GB at most.\n"
+    )
+
+
+def _held(rows: Sequence[Mapping[str, Any]]) -> str:
+    held, nodes = sum(row["held"] for row in rows), sum(row["nodes"] for row in rows)
+    least = min(rows, key=lambda row: float(row["held"] / row["nodes"]))
+    models = ", ".join(dict.fromkeys(row["model"].replace("_", " ") for row in rows))
+    return (
+        f"\nOf {nodes:,} known limits at nodes, three levels of ratio 1.5, {held / nodes:.1%} lie in their "
+        f"interval ({models}; linear and quadratic cells); the least of a field on one kind of cells is "
+        f"{least['held'] / least['nodes']:.1%}, {least['field'].replace('_', ' ')} of the "
+        f"{least['model'].replace('_', ' ')}, {least['shape']}s of degree {least['degree']}.\n"
+    )
 
 
 def _plots(folder: Path, pairs: Sequence[Pair]) -> None:

@@ -30,11 +30,17 @@ def evidence(h: np.ndarray, f: np.ndarray, limits: np.ndarray) -> np.ndarray:
 
 
 def _absolute_moment(z: np.ndarray, order: int) -> np.ndarray:
-    """Return E|Z + z|^order of a standard normal Z by the recurrences of its even and odd moments."""
-    signed = [erf(z / np.sqrt(2.0)), z]
-    density = np.exp(-0.5 * z**2) / np.sqrt(2.0 * np.pi)
-    even = [np.ones_like(z), z * signed[0] + 2.0 * density]
-    for k in range(2, order + 1):
-        even.append(z * signed[k - 1] + (k - 1) * even[k - 2])
-        signed.append(z * even[k - 1] + (k - 1) * signed[k - 2])
-    return np.asarray(even[order])
+    """Return E|Z + z|^order of a standard normal Z by the recurrence of every second moment.
+
+    The moments with a sign, E sgn(Z + z) |Z + z|^k, run beside it.
+    """
+    if order % 2 == 0:
+        absolute, signed, start = np.ones_like(z), z, 2
+    else:
+        step = erf(z / np.sqrt(2.0))
+        absolute = z * step + 2.0 * (np.exp(-0.5 * z**2) / np.sqrt(2.0 * np.pi))
+        signed, start = z * absolute + step, 3
+    for k in range(start, order + 1, 2):
+        absolute = z * signed + (k - 1) * absolute
+        signed = z * absolute + k * signed
+    return np.asarray(absolute)
