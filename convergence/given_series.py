@@ -62,12 +62,15 @@ def _refined(series: Refined) -> GivenPart:
 
 
 def remarks_on(found: Sequence[FileMesh]) -> tuple[str, ...]:
-    """Return what was done to the files, each thing once with the names of its files."""
+    """Return what was done to the files, each thing once with the names of its files and their counts."""
     files: dict[str, list[str]] = {}
     for mesh in found:
         for remark in mesh.remarks:
-            files.setdefault(remark, []).append(mesh.path.name)
-    return tuple(f"{', '.join(names)}: {remark}" for remark, names in files.items())
+            what, colon, count = remark.rpartition(": ")
+            counted = bool(colon) and count.isdigit()
+            name = f"{mesh.path.name} {count}" if counted else mesh.path.name
+            files.setdefault(what if counted else remark, []).append(name)
+    return tuple(f"{what}: {', '.join(names)}" for what, names in files.items())
 
 
 def _given(sections: Sections, found: FileMesh, picks: Mapping[str, Pick]) -> GivenMesh | None:
