@@ -8,7 +8,7 @@ from convergence.errors import Fault, InputError, nearest
 from convergence.report.forms import Form, Forms
 
 
-def forms_of(words: str, template: Path | None) -> Forms:
+def forms_of(words: str, template: Path | None = None) -> Forms:
     """Return the forms of words such as "html,pdf"; `InputError` names every unknown one."""
     known: dict[str, Form] = {form: form for form in get_args(Form)}
     asked = [word.strip().lower() for word in words.split(",")]

@@ -80,18 +80,22 @@ def _report(judged: Judged, folder: Path, draw_all: "Draw | None", forms: "Forms
     )
 
 
-def report_balances(found: Mapping[str, Balance], folder: Path, name: str) -> list[Path]:
+def report_balances(found: Mapping[str, Balance], folder: Path, name: str, forms: "Forms") -> list[Path]:
     """Write the report of a printout into the folder; return its forms."""
     from convergence.report.balance_page import write_balances
 
-    return write_balances(found, folder, name=name, command=_command(), date=date.today().isoformat())
+    day = date.today().isoformat()
+    return write_balances(found, folder, name=name, command=_command(), date=day, forms=forms)
 
 
-def report_comparisons(found: "Mapping[str, Comparison]", folder: Path, title: str) -> list[Path]:
+def report_comparisons(
+    found: "Mapping[str, Comparison]", folder: Path, title: str, forms: "Forms"
+) -> list[Path]:
     """Write the report of a comparison into the folder; return its forms."""
     from convergence.report.comparison_page import write_comparisons
 
-    return write_comparisons(found, folder, title=title, command=_command(), date=date.today().isoformat())
+    day = date.today().isoformat()
+    return write_comparisons(found, folder, title=title, command=_command(), date=day, forms=forms)
 
 
 def say_where(written: Sequence[Path], as_json: bool) -> None:

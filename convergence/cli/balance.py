@@ -20,6 +20,7 @@ if TYPE_CHECKING:
 @click.option("--decimal", type=click.Choice(["point", "comma"]), help="Sign of the decimals of the table.")
 @click.option("--json", "as_json", is_flag=True, help="Print the sums as JSON.")
 @click.option("--out", type=click.Path(path_type=Path), help="Write a report into this folder.")
+@click.option("--as", "forms", default="html", metavar="html,pdf,docx", help="Forms of the report (html).")
 def balance(
     file: Path,
     about: str | None,
@@ -29,6 +30,7 @@ def balance(
     decimal: "Decimals | None",
     as_json: bool,
     out: Path | None,
+    forms: str,
 ) -> int:
     """Balance FILE, a table (text or workbook) with one row a load or a reaction.
 
@@ -36,6 +38,7 @@ def balance(
     Exit code 0 if every load case balances, 1 if one does not or the printed digits cannot tell.
     """
     from convergence.cli._balanced import point_of, show_balances
+    from convergence.cli._forms import forms_of
     from convergence.cli._said import tolerance_of
     from convergence.cli._show import show_object
     from convergence.errors import Fault, InputError, Unsuitable
@@ -43,7 +46,7 @@ def balance(
     from convergence.intake.force_table import read_force_table
     from convergence.statics import ACCEPTED, balances
 
-    point, accepted = point_of(about), tolerance_of(tolerance)
+    point, accepted, chosen = point_of(about), tolerance_of(tolerance), forms_of(forms)
     try:
         found = balances(read_force_table(file, Place(sheet, area, decimal)), point, accepted or ACCEPTED)
     except Unsuitable as error:
@@ -59,5 +62,5 @@ def balance(
     if out:
         from convergence.cli._report import report_balances, say_where
 
-        say_where(report_balances(found, out, file.stem), as_json)
+        say_where(report_balances(found, out, file.stem, chosen), as_json)
     return 0 if all(one.passed for one in found.values()) else 1

@@ -17,6 +17,7 @@ import click
 @click.option("--dimension", type=click.Choice([2, 3]), help="Dimension, where sizes follow from counts.")
 @click.option("--json", "as_json", is_flag=True, help="Print the comparison as JSON.")
 @click.option("--out", type=click.Path(path_type=Path), help="Write a report into this folder.")
+@click.option("--as", "forms", default="html", metavar="html,pdf,docx", help="Forms of the report (html).")
 def compare(
     first: Path,
     second: Path,
@@ -27,14 +28,17 @@ def compare(
     dimension: int | None,
     as_json: bool,
     out: Path | None,
+    forms: str,
 ) -> int:
     """Compare FIRST and SECOND, each a table, a study or the folder of a run; nothing is solved.
 
     Quantities are matched by name. Exit code 0 if the intervals of all of them meet.
     """
     from convergence.cli import _comparing
+    from convergence.cli._forms import forms_of
     from convergence.cli._show import show_object
 
+    chosen = forms_of(forms)
     match = _comparing.matches_of(matches)
     said = _comparing.said_of(kinds, match, degrees, dimension)
     found = _comparing.compare_paths((first, second), said, match, revisions)
@@ -48,5 +52,5 @@ def compare(
         from convergence.cli._report import report_comparisons, say_where
 
         title = f"{first.name} and {second.name}"
-        say_where(report_comparisons(found, out, title), as_json)
+        say_where(report_comparisons(found, out, title, chosen), as_json)
     return 0 if all(one.all_meet for one in found.values()) else 1

@@ -16,6 +16,7 @@ KINDS = ("plane stress", "plane strain", "axisymmetric", "solid")
 @click.option("--thickness", type=float, help="Thickness of a plane part, 1 if not given.")
 @click.option("--units", default="mm, N, MPa", show_default=True, help="Consistent units of the files.")
 @click.option("--out", type=click.Path(path_type=Path), help="Write a report into this folder.")
+@click.option("--as", "forms", default="html", metavar="html,pdf,docx", help="Forms of the report (html).")
 @click.option("--study", "as_study", is_flag=True, help="Print a study file instead, to be added to.")
 @click.option("--json", "as_json", is_flag=True, help="Print the findings as JSON.")
 def fields(
@@ -26,6 +27,7 @@ def fields(
     thickness: float | None,
     units: str,
     out: Path | None,
+    forms: str,
     as_study: bool,
     as_json: bool,
 ) -> int:
@@ -51,22 +53,24 @@ def fields(
     if as_study:
         click.echo(study, nl=False)
         return 0
-    return _judged(study, out, as_json)
+    return _judged(study, out, forms, as_json)
 
 
-def _judged(study: str, out: Path | None, as_json: bool) -> int:
+def _judged(study: str, out: Path | None, forms: str, as_json: bool) -> int:
+    from convergence.cli._forms import forms_of
     from convergence.cli._judging import judge_saved
     from convergence.cli._report import report, say_where
     from convergence.cli._show import show, show_json
     from convergence.study import load
 
+    chosen = forms_of(forms)
     judged = judge_saved(load(Path("fields.toml"), text=study), Path())
     if as_json:
         show_json([judged])
     else:
         show(judged)
     if out:
-        say_where(report(judged, out), as_json)
+        say_where(report(judged, out, forms=chosen), as_json)
     return 0 if judged.all_sound else 1
 
 

@@ -13,6 +13,7 @@ if TYPE_CHECKING:
 @click.argument("inputs", nargs=-1, required=True, type=click.Path(path_type=Path))
 @click.option("--json", "as_json", is_flag=True, help="Print one object, an array for several inputs.")
 @click.option("--out", type=click.Path(path_type=Path), help="Write a report into this folder.")
+@click.option("--as", "forms", default="html", metavar="html,pdf,docx", help="Forms of the report (html).")
 @click.option(
     "--explain", "explained", multiple=True, metavar="NAME", help="Tell why a verdict is what it is."
 )
@@ -28,6 +29,7 @@ def judge(
     inputs: tuple[Path, ...],
     as_json: bool,
     out: Path | None,
+    forms: str,
     explained: tuple[str, ...],
     kinds: tuple[str, ...],
     degree: int | None,
@@ -45,10 +47,12 @@ def judge(
     """
     from convergence.cli import _judging, _said
     from convergence.cli._explain import explain, require_known
+    from convergence.cli._forms import forms_of
     from convergence.cli._report import report, say_where
     from convergence.cli._show import show, show_json
     from convergence.intake._raw_table import Place
 
+    chosen = forms_of(forms)
     place = Place(sheet, area, decimal)
     said = _said.Said(
         _said.kinds_of(kinds), degree, _said.tolerance_of(tolerance), dimension, place, case_column
@@ -64,5 +68,5 @@ def judge(
             explain(explained, one)
         if out:
             folder = out if len(judged) == 1 else out / one.name
-            say_where(report(one, folder), as_json)
+            say_where(report(one, folder, forms=chosen), as_json)
     return 0 if all(one.all_sound for one in judged) else 1

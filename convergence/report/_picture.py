@@ -147,6 +147,8 @@ def _lay_out(figure: "Figure") -> None:
 
 def write_figures(folder: Path, pictures: Sequence[Picture]) -> None:
     """Write every picture in both formats; figures of an earlier run that are not drawn any more go."""
+    if not pictures and not folder.exists():
+        return
     folder.mkdir(parents=True, exist_ok=True)
     for picture in pictures:
         write_text(folder / f"{picture.name}.svg", picture.svg)

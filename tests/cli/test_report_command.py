@@ -68,3 +68,11 @@ def test_a_key_that_is_none_of_the_record(tmp_path, capsys) -> None:
     (tmp_path / "pin.toml").write_text(STUDY.replace("checker", "cheker"), encoding="utf-8")
     assert outcome(["judge", str(tmp_path / "pin.toml")]) == 2
     assert "record.cheker: unknown key; did you mean 'checker'?" in capsys.readouterr().err
+
+
+def test_a_bare_table_in_other_forms(tmp_path, capsys) -> None:
+    (tmp_path / "pin.csv").write_text(TABLE, encoding="utf-8")
+    outcome(["judge", str(tmp_path / "pin.csv"), "--out", str(tmp_path / "out"), "--as", "docx,pdf"])
+    assert sorted(path.suffix for path in (tmp_path / "out").glob("report.*")) == [".docx", ".pdf"]
+    assert outcome(["judge", str(tmp_path / "pin.csv"), "--as", "odt"]) == 2
+    assert "--as: unknown form, got 'odt'" in capsys.readouterr().err
