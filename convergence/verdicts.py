@@ -6,6 +6,7 @@ from collections.abc import Mapping
 from convergence import numbers
 from convergence.checks._corner import STRESS_KINDS
 from convergence.corner import Corner
+from convergence.histories.table import LEAST_EXPONENT
 from convergence.intervals import Interval
 from convergence.next_mesh import Next, next_mesh
 from convergence.results import Facts, Ladder, Quantity, Verdict, VerdictWord
@@ -68,7 +69,7 @@ def _word(
 ) -> VerdictWord:
     if "singular" in spoiled:
         return "singular"
-    if spoiled or found.flaw or found.levels < 3 or _may_grow(quantity, found, facts):
+    if spoiled or found.flaw or found.levels < 3 or _may_grow(quantity, found, facts) or _is_slow(facts):
         return "unproven"
     if found.half_width <= tolerance:
         return "sound"
@@ -87,6 +88,11 @@ def _may_grow(quantity: Quantity, found: Interval, facts: Facts) -> bool:
     if quantity.kind not in STRESS_KINDS and found.growth != "shown":
         return False
     return found.half_width > SETTLED * abs(found.value)
+
+
+def _is_slow(facts: Facts) -> bool:
+    """Return whether a corner of the model makes values converge more slowly than is calibrated."""
+    return facts.exponent is not None and facts.exponent < LEAST_EXPONENT
 
 
 def _nothing_to_relate(quantity: Quantity, found: Interval) -> bool:
@@ -134,6 +140,11 @@ def _why_unproven(quantity: Quantity, found: Interval, tolerance: float, facts: 
         return [
             "The levels do not tell slow convergence from growth without limit (a singular place): add a "
             "finer level, or say whether a corner, a point force or a support's end is near."
+        ]
+    if _is_slow(facts):
+        return [
+            f"The model's weakest corner has the exponent {facts.exponent:.3g}: values that converge so"
+            " slowly are not calibrated. Give the corner its real radius, or show that another model agrees."
         ]
     if found.half_width <= tolerance:
         return []

@@ -295,3 +295,13 @@ def test_another_unit_gives_the_same_word(values: list, scale: float, relative: 
     assert moved.word == plain.word or tie or near_equal or small
     if not (near_equal or small):
         assert moved.uncertainty == pytest.approx(abs(scale) * plain.uncertainty, rel=1e-5, nan_ok=True)
+
+
+@pytest.mark.parametrize(("exponent", "word"), [(0.46, "sound"), (0.44, "unproven")])
+def test_slower_than_is_calibrated(exponent: float, word: str) -> None:
+    """A corner below the exponents of the bank leaves everything unproven, with the reason."""
+    found = of(fixed(1.0), facts=Facts(corners=(replace(CORNER, exponent=exponent),)), relative=0.05)
+    assert found.word == word
+    assert any("values that converge so slowly are not calibrated" in one for one in found.reasons) == (
+        word == "unproven"
+    )

@@ -16,6 +16,7 @@ from convergence.calibration.making import made_bank
 from convergence.calibration.page import write_page
 
 MISSING = "calibration: NGSolve is not installed; install it with: pip install -e '.[dev]'"
+FAILED = "calibration: no bank, as these cases failed: {}; the others are kept in out/bank"
 
 
 def say(line: str) -> None:
@@ -33,7 +34,10 @@ def main() -> None:
     if chosen.bank:
         if importlib.util.find_spec("ngsolve") is None:
             raise SystemExit(MISSING)
-        write_bank(made_bank(say))
+        made, failed = made_bank(say)
+        if failed:
+            raise SystemExit(FAILED.format(", ".join(failed)))
+        write_bank(made)
     ladders = read_bank()
     found = calibrate(ladders, chosen.date, say)
     write_calibrated(found)

@@ -23,14 +23,15 @@ from convergence.calibration.left_out import (
     all_weights,
     finite,
     outcomes,
+    told_as,
     told_left_out,
 )
 from convergence.calibration.promises import promises
-from convergence.calibration.sub_ladders import sub_ladders
+from convergence.calibration.sub_ladders import SubLadder, sub_ladders
 from convergence.checks._corner import STRESS_KINDS
 from convergence.coverage import WITH_COMPANION, Companion, Coverage, Knowledge
-from convergence.histories.calibrated import LEAST_TO_SHOW
-from convergence.histories.table import OUTCOMES, TABLE, as_table
+from convergence.histories.calibrated import LEAST_TO_SHOW, read
+from convergence.histories.table import LEAST_EXPONENT, OUTCOMES, TABLE, Table, as_table
 from convergence.histories.width import MOST_LEVELS
 
 FALSE_ALARM = 0.015
@@ -41,14 +42,23 @@ DIGITS = 4
 
 @dataclass(frozen=True, eq=False)
 class Calibrated:
-    """The table as it is written, and every outcome by what was known."""
+    """The table as it is written, and every outcome by what was known.
+
+    `aside` are those of ladders the table is not made for, judged with it.
+    """
 
     table: Mapping[str, Any]
     outcomes: Mapping[Knowledge, Sequence[Outcome]]
+    aside: Mapping[Knowledge, Sequence[Outcome]]
 
 
 def calibrate(ladders: Sequence[KnownLadder], made: date, say: Callable[[str], None]) -> Calibrated:
-    """Fit weights and stretches to all families, and judge each family without it."""
+    """Fit weights and stretches to all families, and judge each family without it.
+
+    Ladders of parts with a corner of an exponent below LEAST_EXPONENT have no part in it.
+    """
+    slow = [ladder for ladder in ladders if is_slow(ladder)]
+    ladders = [ladder for ladder in ladders if not is_slow(ladder)]
     subs = sub_ladders(ladders, MOST)
     say(f"{len(subs)} sub-ladders of {len(ladders)} ladders")
     bank = [weighed(sub) for sub in subs]
@@ -84,7 +94,24 @@ def calibrate(ladders: Sequence[KnownLadder], made: date, say: Callable[[str], N
     table["coverage"][WITH_COMPANION] = together
     say("promises of the next mesh")
     table["next_mesh"] = {name: asdict(one) for name, one in promises(ladders, as_table(table)).items()}
-    return Calibrated(table, judged)
+    return Calibrated(table, judged, kept_aside(sub_ladders(slow, MOST), as_table(table)))
+
+
+def is_slow(ladder: KnownLadder) -> bool:
+    """Return whether a part has a corner that makes its values converge more slowly than is calibrated."""
+    return ladder.exponent is not None and ladder.exponent < LEAST_EXPONENT
+
+
+def kept_aside(subs: Sequence[SubLadder], taught: Table) -> dict[Knowledge, list[Outcome]]:
+    """Return the interval of sub-ladders with a limit, by a table that they have no part in."""
+    found: dict[Knowledge, list[Outcome]] = {}
+    for known in KNOWLEDGE:
+        found[known] = []
+        for sub in subs:
+            if not sub.of.singular:
+                one = read(sub.h, sub.f, *told_as(known, sub), taught)
+                found[known].append(Outcome(sub, one.low, one.high, float("nan")))
+    return found
 
 
 def write_calibrated(found: Calibrated, table: Path = TABLE, rows: Path = OUTCOMES) -> None:

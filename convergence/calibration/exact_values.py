@@ -82,6 +82,7 @@ def _samples(problem: Problem, arguments: Mapping[str, Any], coarser: int) -> np
     if isinstance(part, RodPart):
         return np.array([part.stations[0] + (part.stations[-1] - part.stations[0]) * line])
     plan = part.plan if isinstance(part, SolidPart) else part
+    assert isinstance(plan, Part)
     if "boundary" in arguments:
         found = [plan.edge(*edge, line) for edge in plan.boundaries[arguments["boundary"]]]
     else:

@@ -1,32 +1,48 @@
-"""The bank made anew: every drawn case meshed and solved, every mapped one, in two processes.
+"""The bank made anew: every drawn case meshed and solved, every mapped one, two at a time.
 
-Needs NGSolve with Netgen (`pip install -e .[dev]`). Takes about an hour on two processors that are free.
+Each is solved in a process of its own and kept on disk: what was interrupted goes on, unless a source has
+changed that the numbers may depend on. Needs NGSolve with Netgen (`pip install -e .[dev]`). Takes about an
+hour on two processors that are free.
 """
 
+import hashlib
 import importlib
 import multiprocessing
 from collections.abc import Callable
+from multiprocessing.pool import ThreadPool
 from pathlib import Path
 from typing import Any
 
+from convergence.calibration.bank import read_bank, write_bank
 from convergence.calibration.known_ladder import KnownLadder
 
+KEPT = Path("out", "bank")
+PACKAGE = Path(__file__).parents[1]
+SOURCES = ("calibration", "corners", "fem", "models", "quantities")
 FAMILIES = Path(__file__).with_name("families")
 MAPPED = "mapped"
 PROCESSES = 2
 Task = tuple[str, int]
 
 
-def made_bank(say: Callable[[str], None]) -> list[KnownLadder]:
-    """Return all ladders, always in the same order; `say` takes a line for each case."""
-    tasks = _tasks()
+def made_bank(say: Callable[[str], None], kept: Path = KEPT) -> tuple[list[KnownLadder], list[str]]:
+    """Return all ladders, always in the same order, and the cases that failed; `say` takes a line for each.
+
+    What is finished is kept in a folder of `kept` for the next call.
+    """
+    folder, tasks = kept / _fingerprint(), _tasks()
+    folder.mkdir(parents=True, exist_ok=True)
     found: list[KnownLadder] = []
-    with multiprocessing.get_context("spawn").Pool(PROCESSES, maxtasksperchild=1) as pool:
-        for number, ladders in enumerate(pool.imap(_ladders, tasks), start=1):
+    failed: list[str] = []
+    with ThreadPool(PROCESSES) as pool:
+        paths = pool.imap(lambda task: _finished(task, folder), tasks)
+        for number, path in enumerate(paths, start=1):
+            ladders = read_bank(path) if path.exists() else []
             found += ladders
-            made = f"{ladders[0].family}, {ladders[0].case}: {len(ladders)} ladders"
-            say(f"case {number} of {len(tasks)}: {made}")
-    return found
+            made = f"{ladders[0].family}, {ladders[0].case}: {len(ladders)} ladders" if ladders else "FAILED"
+            say(f"case {number} of {len(tasks)}: {path.name.split('.')[0]}: {made}")
+            failed += [] if ladders else [path.name.split(".")[0]]
+    return found, failed
 
 
 def family_names() -> list[str]:
@@ -56,12 +72,37 @@ def _tasks() -> list[Task]:
     return [(name, number) for name, count in counts.items() for number in range(count)]
 
 
+def _fingerprint() -> str:
+    """Return what changes with any source that the numbers may depend on."""
+    files = sorted(path for room in SOURCES for path in (PACKAGE / room).rglob("*.py"))
+    return hashlib.sha256(b"".join(path.read_bytes() for path in files)).hexdigest()[:12]
+
+
+def _finished(task: Task, folder: Path) -> Path:
+    """Return the path of a case's ladders, solved unless they are there; there is no file where it failed."""
+    path = folder / "{} {}.csv.gz".format(*task)
+    if not path.exists():
+        process = multiprocessing.get_context("spawn").Process(target=_make, args=(task, path))
+        process.start()
+        process.join()
+    return path
+
+
+def _make(task: Task, path: Path) -> None:
+    begun = path.with_suffix(".part")
+    write_bank(_ladders(task), begun)
+    begun.rename(path)
+
+
 def _ladders(task: Task) -> list[KnownLadder]:
     name, number = task
     if name == MAPPED:
         from convergence.calibration.mapped_ladders import mapped_ladders
 
         return list(mapped_ladders(mapped_cases()[number]))
+    import ngsolve
+
     from convergence.calibration.drawn_ladders import drawn_ladders
 
+    ngsolve.SetNumThreads(1)  # a second would wait for the processor that the other process has
     return list(drawn_ladders(name, drawn_cases(name)[number]))

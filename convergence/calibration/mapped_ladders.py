@@ -23,6 +23,7 @@ from convergence.corners.singular_corners import singular_corners
 from convergence.dimensions import Located
 from convergence.errors import SolvingError, Unsuitable
 from convergence.fem.element import Shape
+from convergence.fem.given_part import GivenPart
 from convergence.fem.mesh import Mesh, count_nodes, mesh
 from convergence.fem.part import Part, finer
 from convergence.fem.problem import AnyPart, Problem
@@ -119,6 +120,7 @@ def _plans(case: MappedCase, part: AnyPart, degree: int) -> dict[str, tuple[floa
 
 
 def _counts(case: MappedCase, part: AnyPart, factor: float) -> dict[int, int]:
+    assert not isinstance(part, GivenPart)
     return finer(part.divisions(size=None, divisions=case.divisions), factor, 1)
 
 

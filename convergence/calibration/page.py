@@ -40,6 +40,7 @@ def write_page(folder: Path, found: Calibrated, ladders: Sequence[KnownLadder]) 
         _coverage(of, all_of),
         _answers(all_of),
         _companion(found),
+        _aside(found),
         _growth(found),
         _promises(found.table.get("next_mesh", {})),
         _short(of),
@@ -50,7 +51,7 @@ def write_page(folder: Path, found: Calibrated, ladders: Sequence[KnownLadder]) 
 
 
 def _bank(ladders: Sequence[KnownLadder], found: Calibrated) -> str:
-    outcomes = found.outcomes["nothing"]
+    outcomes = [*found.outcomes["nothing"], *found.aside["nothing"]]
     head = ("family", "parts", "ladders", "judged", "singular", "meshes", "cells", "degree", "dimension")
     rows = [_family(row) for row in family_rows(ladders, outcomes)]
     counts = [
@@ -187,6 +188,20 @@ def _stated(answers: Sequence[Answer]) -> list[str]:
     share = _marked(numbers.percent(count.share, AIM), count.share < AIM)
     widths = [_width(width, COMPANION_WIDTH) for width in (count.own, count.finest)]
     return [f"{count.cases:,}", f"{share} ({low} to {high})", *widths]
+
+
+def _aside(found: Calibrated) -> str:
+    """Return coverage and widths on the parts that the table is not made for."""
+    rows = []
+    for known, judged_aside in found.aside.items():
+        for levels in sorted({min(one.sub.levels, MOST_LEVELS) for one in judged_aside}):
+            own = [one for one in judged_aside if min(one.sub.levels, MOST_LEVELS) == levels]
+            rows.append([known, LEVELS[levels], *_stated([ours_of(one) for one in own])])
+    families = sorted({one.sub.of.family.replace("_", " ") for one in found.aside["nothing"]})
+    exponents = [one.sub.of.exponent for one in found.aside["nothing"] if one.sub.of.exponent is not None]
+    text = prose.aside(families, min(exponents), max(exponents)) if exponents else ""
+    head = ("known", "levels", "cases", "covers", "U/e best", "U/e finest")
+    return "\n".join([text, _table(head, rows)]) if rows else ""
 
 
 def _promises(next_mesh: Mapping[str, Mapping[str, Any]]) -> str:

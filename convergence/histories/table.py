@@ -21,6 +21,7 @@ from convergence.histories.promise import Promise
 
 TABLE = Path(__file__).with_name("table.json")
 OUTCOMES = Path(__file__).with_name("outcomes.csv.gz")
+LEAST_EXPONENT = 0.45  # of a corner; what converges more slowly is not calibrated
 CAUTION = 0.35  # evidence of n levels counts with the power (3 / n)^CAUTION
 HIGHEST_DEGREE = 2
 

@@ -7,7 +7,7 @@ import pytest
 from scipy.stats import binomtest
 
 from convergence.calibration.binomial import binomial_interval
-from convergence.calibration.calibrate import Calibrated
+from convergence.calibration.calibrate import Calibrated, is_slow
 from convergence.calibration.groups import SOURCE, groups
 from convergence.calibration.growth import Called, called
 from convergence.calibration.left_out import KNOWLEDGE, Outcome
@@ -109,15 +109,17 @@ def test_the_page_says_what_was_counted(packaged, tmp_path: Path) -> None:
         },
         "growth": dict.fromkeys(KNOWLEDGE, ABOVE),
     }
+    aside = [one for one in made if is_slow(one.sub.of) and not one.sub.of.singular]
     for folder in (tmp_path / "one", tmp_path / "two"):
         folder.mkdir()
-        write_page(folder, Calibrated(table, same(made)), ladders)
+        write_page(folder, Calibrated(table, same(made), same(aside)), ladders)
     page = (tmp_path / "one" / "calibration.md").read_text(encoding="utf-8")
     assert f"Made 2026-01-02 from {len(ladders):,} ladders of {len(names)} families" in page
     three = [one for one in made if one.sub.levels == 3 and not one.sub.of.singular]
     share = np.mean([one.is_covered for one in three])
     assert f"| bare table | 3 levels | {len(three):,} | 100 % | {100.0 * share:.1f} % |" in page
     assert all(name.replace("_", " ") in page for name in names)
+    assert "below 0.45 have no part in the table (glued sleeve, held corner: " in page
     files = {file.name for file in (tmp_path / "one").iterdir()}
     plots = {f"calibration-{name}.svg" for name in ("coverage", "errors", "widths")}
     assert files == {"calibration.md"} | plots and all(f"({name})" in page for name in plots)

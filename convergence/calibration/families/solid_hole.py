@@ -84,7 +84,7 @@ def _flat_void() -> DrawnCase:
         name="flat void in a forged pin",
         kind="solid",
         shape=_named(Box(Pnt(0, 0, 0), Pnt(30, 26, 20)) - void),
-        size=10.0,
+        size=10.3,
         held=HELD,
         tractions={"end_z": (0.0, 0.0, 60.0)},
         levels=6,

@@ -35,7 +35,7 @@ def _bent_pin() -> DrawnCase:
         name="stepped pin under a strap",
         kind="solid",
         shape=shape,
-        size=10.5,
+        size=10.8,
         held={
             "middle": {"x": 0.0},
             "neutral": {"x": 0.0, "z": 0.0},
