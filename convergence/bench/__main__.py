@@ -57,7 +57,7 @@ def measured(name: str, levels: int, method: str, pairs: int) -> list[Pair]:
 
 
 def solo(chosen: Callable[[str], int], count: int) -> Solo:
-    """Return what is measured of ours alone, `count` times each; numba's share in turns with and without."""
+    """Return what is measured of ours alone, `count` times each, the map once; numba in turns."""
     finest = str(chosen(RECOVERED))
     compiled = []
     if importlib.util.find_spec("numba") is not None:
@@ -71,7 +71,7 @@ def solo(chosen: Callable[[str], int], count: int) -> Solo:
         recoveries=[child("ours", RECOVERED, finest, "recovery", "iteration") for _ in range(count)],
         runs=[child("runs", finest) for _ in range(count)],
         compiled=compiled,
-        maps=[mapped(chosen(MAPPED)) for _ in range(count)],
+        maps=[mapped(chosen(MAPPED))],
         held=child("map_coverage")["rows"],
     )
 

@@ -28,6 +28,7 @@ SURFACE = {
     "membrane": "membrane stress along {way} through the thickness at the corner (t = {t})",
     "bending": "bending stress along {way} through the thickness at the corner (t = {t})",
 }
+THROUGH = ("membrane", "bending")  # integrated through the corner
 NEAREST_PLACES, LEAST_PLACES, LEAST_LEVELS = 3, 2, 3
 
 
@@ -151,8 +152,23 @@ def _beside(ladder: Ladder, facts: Facts, name: str, corner: Corner) -> Iterator
             t = _with_unit(ladder.levels[-1].values[column], ladder.h_unit)
             shown = f"({way.replace('_', ', ')})" if "_" in way else way
             for key, label in SURFACE.items():
-                values = ladder.column(f"{before}{key}")
-                yield _one(facts, name, f"{way}.{key}", label.format(way=shown, t=t), values)
+                values, of = ladder.column(f"{before}{key}"), f"{way}.{key}"
+                doubt = _slowness(ladder, facts, f"{name}: {of}", values, corner) if key in THROUGH else 0.0
+                yield _one(facts, name, of, label.format(way=shown, t=t), values, doubt=doubt)
+
+
+def _slowness(ladder: Ladder, facts: Facts, key: str, values: np.ndarray, corner: Corner) -> float:
+    """Return how far the middle of an interval is from where the order λ of theory leads the last two levels.
+
+    What is integrated through a corner converges with λ (the stress there grows like r^(λ-1)), more slowly
+    than nearly all that the interval is calibrated on.
+    """
+    low, high = facts.intervals.get(key, (np.nan, np.nan))
+    if len(values) < LEAST_LEVELS or not np.isfinite([*values[-2:], low, high]).all():
+        return 0.0
+    gain = float(ladder.h[-2] / ladder.h[-1]) ** corner.exponent - 1.0
+    limit = float(values[-1] + (values[-1] - values[-2]) / gain)
+    return abs(limit - 0.5 * (low + high))
 
 
 def _one(
