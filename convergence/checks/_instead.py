@@ -164,7 +164,8 @@ def _slowness(ladder: Ladder, facts: Facts, key: str, values: np.ndarray, corner
     than nearly all that the interval is calibrated on.
     """
     low, high = facts.intervals.get(key, (np.nan, np.nan))
-    if len(values) < LEAST_LEVELS or not np.isfinite([*values[-2:], low, high]).all():
+    known = corner.exponent > 0.0 and bool(np.isfinite([*values[-2:], low, high]).all())
+    if len(values) < LEAST_LEVELS or not known:
         return 0.0
     gain = float(ladder.h[-2] / ladder.h[-1]) ** corner.exponent - 1.0
     limit = float(values[-1] + (values[-1] - values[-2]) / gain)
