@@ -1,6 +1,5 @@
 """The tables of a study on result files of another solver: files, names of fields, what is measured."""
 
-import hashlib
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from pathlib import Path
@@ -37,6 +36,7 @@ from convergence.given_series import alike, given_of, remarks_on
 from convergence.ladder_spec import LadderSpec
 from convergence.results import Quantity
 from convergence.sections import BODY_TABLES, Sections
+from convergence.textfile import digest_of
 
 SECTION = "fields"
 Count = Annotated[int, Bounds(0, 8, closed=True)]
@@ -190,7 +190,7 @@ def _parts(
     return {
         "version": __version__,
         "units": unit_system,
-        "files": [hashlib.sha256(each.path.read_bytes()).hexdigest() for each in found],
+        "files": [digest_of(each.path) for each in found],
         "tables": {name: sections.table(name) for name in names},
         "kind": kind,
     }

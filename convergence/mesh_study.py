@@ -1,6 +1,5 @@
 """The tables of a study on meshes of real parts: files, supports, loads, cases, what is measured."""
 
-import hashlib
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
 from pathlib import Path
@@ -27,6 +26,7 @@ from convergence.ladder_spec import Formulation, LadderSpec, Levels
 from convergence.measured import Measured, read_measured
 from convergence.results import Quantity
 from convergence.sections import Sections
+from convergence.textfile import digest_of
 
 SECTION = "meshes"
 REFINED = 4  # levels, where none are said
@@ -110,7 +110,7 @@ def read_mesh_study(sections: Sections, unit_system: str) -> MeshStudy | None:
     parts = {
         "version": __version__,
         "units": unit_system,
-        "files": [hashlib.sha256(path.read_bytes()).hexdigest() for path in paths],
+        "files": [digest_of(path) for path in paths],
         "materials": {name: found.constants() for name, found in problem.materials.items()},
         "tables": {name: sections.table(name) for name in ("boundaries", "supports", "loads")},
         "meshes": [kind, spec.thickness, spec.formulation, spec.degree, spec.merge],

@@ -1,39 +1,13 @@
 """[record] of a study: what the report of an analysis must say and only the analyst knows."""
 
-import dataclasses
-from dataclasses import dataclass
+from collections.abc import Mapping
 from typing import Annotated
 
 from convergence.sections import Sections
 
 RECORD = "record"
-
-
-@dataclass(frozen=True)
-class Record:
-    """What the analyst states, in words; "" where nothing."""
-
-    analyst: str = ""
-    checker: str = ""
-    purpose: str = ""
-    criteria: str = ""
-    drawing: str = ""
-    idealisation: str = ""
-    coordinates: str = ""
-    material_source: str = ""
-    load_source: str = ""
-    hand_values: str = ""
-    restraint: str = ""
-    software: str = ""
-    independent_check: str = ""
-    tests: str = ""
-    sensitivity: str = ""
-    conclusion: str = ""
-    archive: str = ""
-
-    def stated(self) -> dict[str, str]:
-        """Return what is stated, by key."""
-        return {key: words for key, words in dataclasses.asdict(self).items() if words}
+Record = Mapping[str, str]  # what the analyst states, in words, by key
+NOTHING: Record = {}
 
 
 def record(
@@ -56,14 +30,10 @@ def record(
     conclusion: Annotated[str, "the analyst's conclusion, its limits, what was not resolved"] = "",
     archive: Annotated[str, "where files are kept"] = "",
 ) -> Record:
-    """Return the record."""
-    return Record(**{name: words for name, words in locals().items()})
-
-
-NOTHING = Record()
+    """Return what is stated."""
+    return {key: words for key, words in locals().items() if words}
 
 
 def read_record(sections: Sections) -> Record:
-    """Read [record]; an empty one where the study has none."""
-    found = sections.bound(record, sections.table(RECORD), RECORD) if RECORD in sections.file.data else {}
-    return record(**found) if found else NOTHING
+    """Read [record]; nothing where the study has none."""
+    return sections.read(record, RECORD) or NOTHING

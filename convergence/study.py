@@ -14,7 +14,7 @@ from convergence.fem.problem import Problem
 from convergence.ladder_spec import LadderSpec
 from convergence.model_study import ModelStudy, digest, material_tables, read_materials, read_model
 from convergence.printed_balance import EQUILIBRIUM, printed_balances
-from convergence.record import NOTHING, RECORD, Record, read_record
+from convergence.record import RECORD, Record, read_record
 from convergence.results import Ladder, Quantity
 from convergence.sections import BODY_TABLES, Sections
 from convergence.statics import Balance
@@ -69,7 +69,7 @@ class Study:
     remarks: tuple[str, ...] = ()
     acting: str = ""
     fields: "FieldStudy | None" = None
-    record: Record = NOTHING
+    record: Record = field(default_factory=dict)
 
     @property
     def cells(self) -> str:

@@ -1,6 +1,5 @@
 """The tables of a table study: the ladder, what its columns are, and the table of a companion ladder."""
 
-import hashlib
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
 from pathlib import Path
@@ -12,6 +11,7 @@ from convergence.errors import listing, nearest
 from convergence.intake.table import Tables, table
 from convergence.results import Ladder, Quantity
 from convergence.sections import Sections
+from convergence.textfile import digest_of
 
 
 @dataclass(frozen=True)
@@ -32,8 +32,12 @@ class TableStudy:
 
     def parts(self, case: str = "") -> dict[str, Any]:
         """Return everything that changes a number of the ladder of a case."""
-        content = hashlib.sha256(self.file.read_bytes()).hexdigest()
-        return {"table": content, "said": {**self.said, "file": ""}, "columns": self.columns, "case": case}
+        return {
+            "table": digest_of(self.file),
+            "said": {**self.said, "file": ""},
+            "columns": self.columns,
+            "case": case,
+        }
 
 
 def read_table_study(sections: Sections, units: Units) -> TableStudy | None:

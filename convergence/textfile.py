@@ -1,6 +1,7 @@
-"""Files: texts read with one clear message for each way to fail, everything written atomically."""
+"""Files: texts read with one clear message for each way to fail, everything written atomically; digests."""
 
 import difflib
+from hashlib import file_digest
 from pathlib import Path
 
 from convergence.errors import Fault, InputError
@@ -39,6 +40,12 @@ def read_bytes(path: Path, wanted: str) -> bytes:
     if not raw:
         raise InputError([Fault(where, "the file is empty", instead)])
     return raw
+
+
+def digest_of(path: Path) -> str:
+    """Return the SHA-256 of a file."""
+    with path.open("rb") as file:
+        return file_digest(file, "sha256").hexdigest()
 
 
 def write_text(path: Path, text: str) -> None:

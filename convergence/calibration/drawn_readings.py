@@ -1,4 +1,4 @@
-"""The readings of solid cases in one line each: `Reading`s under the names of their measures."""
+"""Readings in one line each: `Reading`s under the names of their measures."""
 
 import math
 
@@ -27,9 +27,10 @@ def section_force(label: str, boundary: str, component: str) -> Reading:
     return Reading(label, "resultant", "section_force", {"boundary": boundary, "component": component})
 
 
-def stress(label: str, at: Place, component: str, way: Way = "nodal") -> Reading:
+def stress(label: str, at: Place, component: str, way: Way = "nodal", *, singular: bool = False) -> Reading:
     """Read a stress at a place."""
-    return Reading(label, "point_stress", "stress", {"at": at, "component": component, "way": way})
+    arguments = {"at": at, "component": component, "way": way}
+    return Reading(label, "point_stress", "stress", arguments, singular)
 
 
 def peak(
@@ -52,4 +53,14 @@ def linearised(label: str, start: Place, end: Place, component: str) -> tuple[Re
     return (
         Reading(f"{label} membrane", "point_stress", "line_stress", {**line, "part": "membrane"}),
         Reading(f"{label} bending", "point_stress", "line_stress", {**line, "part": "bending"}),
+    )
+
+
+def held_corner_readings(corner: Place, radius: float, component: str) -> tuple[Reading, ...]:
+    """Read what has no limit: the stress at a held corner, its peaks within a radius, that of the part."""
+    return (
+        stress("corner", corner, component, singular=True),
+        peak("corner nodal", "von_mises", near=corner, radius=radius, singular=True),
+        peak("corner gauss", "first_principal", "gauss", corner, radius, singular=True),
+        peak("all direct", "von_mises", "direct", singular=True),
     )

@@ -23,10 +23,9 @@ def point_of(words: str | None) -> tuple[float, ...] | None:
 
 def show_balances(found: Mapping[str, Balance]) -> None:
     """Print the sums of every case, the worst first, what they say and how they are measured."""
-    from rich.table import Table
     from rich.text import Text
 
-    from convergence.cli._show import terminal
+    from convergence.cli._show import columns, terminal
     from convergence.report.balance_page import overall, worst_first
     from convergence.report.sections_balance import HEAD, balance_rows, measure_text
     from convergence.statics import finding
@@ -34,9 +33,7 @@ def show_balances(found: Mapping[str, Balance]) -> None:
     screen = terminal()
     for case in worst_first(found):
         balance = found[case]
-        table = Table(box=None, pad_edge=False, header_style="bold")
-        for column in HEAD:
-            table.add_column(column, overflow="fold")
+        table = columns(HEAD)
         for row in balance_rows(balance):
             table.add_row(*(Text(cell) for cell in row[:-1]), Text(row[-1], COLOURS[row[-1]]))
         screen.print(Text(case or balance.printout.source, "bold"))

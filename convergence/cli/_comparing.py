@@ -72,18 +72,15 @@ def _cases(found: Mapping[str, object]) -> str:
 
 def show_comparisons(found: "Mapping[str, Comparison]") -> None:
     """Print the outcome of every quantity and what follows from it."""
-    from rich.table import Table
     from rich.text import Text
 
-    from convergence.cli._show import terminal
+    from convergence.cli._show import columns, terminal
     from convergence.report._compared import overall, remarks, sentence
     from convergence.report.comparison_page import HEAD, compared_rows
 
     screen = terminal()
     for case, comparison in found.items():
-        table = Table(box=None, pad_edge=False, header_style="bold")
-        for column in HEAD:
-            table.add_column(column, overflow="fold")
+        table = columns(HEAD)
         for name, word, *rest in compared_rows(comparison):
             table.add_row(Text(name), Text(word, COLOURS[word]), *(Text(cell) for cell in rest))
         screen.print(Text(f"{case}: " * bool(case) + " | ".join(comparison.names), "bold"))

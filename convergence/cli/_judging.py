@@ -2,7 +2,7 @@
 
 import sys
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass, field, replace
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -15,7 +15,7 @@ from convergence.errors import Fault, InputError, nearest
 from convergence.fields import Fields
 from convergence.intake.ladder_file import is_ladder_file, read_ladder
 from convergence.intake.table import read_table
-from convergence.record import NOTHING, Record
+from convergence.record import Record
 from convergence.results import Companion, Facts, Findings, Ladder
 from convergence.study import Study, load
 from convergence.textfile import MOST_BYTES
@@ -38,7 +38,7 @@ class Judged:
     study_text: str
     fields: tuple[Fields, ...] = ()
     maps: "tuple[PointwiseMap, ...]" = ()
-    record: Record = NOTHING
+    record: Record = field(default_factory=dict)
     inputs: tuple[Path, ...] = ()
 
     @property

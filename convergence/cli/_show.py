@@ -11,6 +11,7 @@ from convergence.results import Findings, Verdict
 
 if TYPE_CHECKING:
     from rich.console import Console
+    from rich.table import Table
 
 COLOURS = {"sound": "green", "refine": "yellow", "singular": "red", "unproven": "magenta"}
 PLAIN_WIDTH = 80
@@ -42,7 +43,6 @@ def show(judged: Judged | JudgedCases, *, methods: bool = False) -> None:
 
 def show_cases(judged: JudgedCases) -> None:
     """Print every quantity in every case and the largest value of all; why the worst one is not sound."""
-    from rich.table import Table
     from rich.text import Text
 
     from convergence.envelope import worst_case
@@ -51,9 +51,7 @@ def show_cases(judged: JudgedCases) -> None:
     from convergence.report.terminal import CASE_COLUMNS, case_rows
 
     screen, cases = terminal(), judged.findings
-    table = Table(box=None, pad_edge=False, header_style="bold")
-    for column in ("quantity", *CASE_COLUMNS):
-        table.add_column(column, overflow="fold")
+    table = columns(("quantity", *CASE_COLUMNS))
     quantities = next(iter(cases.values())).quantities
     for quantity in quantities:
         for number, (case, word, value) in enumerate(case_rows(cases, quantity.name)):
@@ -96,21 +94,28 @@ def terminal() -> "Console":
     return screen if screen.is_terminal else Console(highlight=False, width=PLAIN_WIDTH)
 
 
+def columns(names: Sequence[str]) -> "Table":
+    """Return a table without lines whose cells are folded where they are too long."""
+    from rich.table import Table
+
+    table = Table(box=None, pad_edge=False, header_style="bold")
+    for name in names:
+        table.add_column(name, overflow="fold")
+    return table
+
+
 def show_table(findings: Findings, *, methods: bool = False) -> None:
     """Print the verdicts, and why some are not sound; no colour where this is no terminal.
 
     `methods` adds what each method says of each quantity.
     """
-    from rich.table import Table
     from rich.text import Text
 
     from convergence.report._trust import coverage_lines
     from convergence.report.terminal import COLUMNS, summary_rows
 
     screen = terminal()
-    table = Table(box=None, pad_edge=False, header_style="bold")
-    for name in ("quantity", "verdict", "value", "best estimate", "order / theory"):
-        table.add_column(name, overflow="fold")
+    table = columns(("quantity", "verdict", "value", "best estimate", "order / theory"))
     rows = [dict(zip(COLUMNS, row, strict=True)) for row in summary_rows(findings)]
     for row in rows:
         verdict = Text(row["verdict"], COLOURS.get(row["verdict"], ""))
@@ -131,7 +136,6 @@ def show_table(findings: Findings, *, methods: bool = False) -> None:
 
 def _show_methods(screen: "Console", findings: Findings, name: str) -> None:
     """Print what each method says of a quantity."""
-    from rich.table import Table
     from rich.text import Text
 
     from convergence.report.terminal import METHOD_COLUMNS, method_rows
@@ -142,9 +146,7 @@ def _show_methods(screen: "Console", findings: Findings, name: str) -> None:
         return
     what = "published methods for comparison, half-width about the finest value"
     screen.print(Text(f"\n{name}: {what}"))
-    table = Table(box=None, pad_edge=False)
-    for column in METHOD_COLUMNS:
-        table.add_column(column, overflow="fold")
+    table = columns(METHOD_COLUMNS)
     for row in found:
         table.add_row(*(Text(cell) for cell in row))
     screen.print(table)

@@ -200,22 +200,21 @@ class _Writer:
             column.width = int(self._room() * share)
             for cell in column.cells:
                 cell.width = column.width
-        self._row(made.rows[0], table.head, table.kind, bold=True)
+        self._row(made.rows[0], table.head, table, bold=True)
         made.rows[0]._tr.get_or_add_trPr().append(tag("tblHeader"))
         for row, cells in zip(list(made.rows)[1:], table.rows, strict=True):
-            self._row(row, cells, table.kind)
+            self._row(row, cells, table)
         for row in made.rows:
             row._tr.get_or_add_trPr().append(tag("cantSplit"))
         self.file.add_paragraph()
 
-    def _row(self, row: Any, cells: Sequence[Cell], kind: str, bold: bool = False) -> None:
+    def _row(self, row: Any, cells: Sequence[Cell], table: Table, bold: bool = False) -> None:
         from docx.enum.text import WD_ALIGN_PARAGRAPH
         from docx.shared import Pt
 
         for x, (place, cell) in enumerate(zip(row.cells, cells, strict=True)):
             paragraph = place.paragraphs[0]
-            left = x == 0 or kind in ("words", "matrix") or (kind == "methods" and x == len(cells) - 1)
-            paragraph.alignment = WD_ALIGN_PARAGRAPH.LEFT if left else WD_ALIGN_PARAGRAPH.RIGHT
+            paragraph.alignment = WD_ALIGN_PARAGRAPH.LEFT if table.is_words(x) else WD_ALIGN_PARAGRAPH.RIGHT
             paragraph.paragraph_format.space_after = Pt(0)
             for number, words in enumerate(lines(cell)):
                 if number:

@@ -114,16 +114,14 @@ def _block(block: Block, anchors: set[str]) -> dict[str, Any]:
 
 
 def _table(table: Table, anchors: set[str]) -> dict[str, Any]:
-    last = len(table.head) - 1
     columns = list(zip(table.head, *table.rows, strict=True))
-    in_words = table.kind in ("words", "matrix")
     ends_in_words = table.kind in ("words", "methods")
     return {
         "kind": "table",
         "caption": _plain(table.caption),
         "head": [_plain(name) for name in table.head],
         "rows": [[_cell(cell, anchors) for cell in row] for row in table.rows],
-        "left": [x == 0 or in_words or (x == last and ends_in_words) for x in range(last + 1)],
+        "left": [table.is_words(x) for x in range(len(table.head))],
         "shares": [_share(column) if ends_in_words else 0 for column in columns],
     }
 

@@ -64,6 +64,11 @@ class Table:
     rows: Sequence[Sequence[Cell]]
     kind: str = ""
 
+    def is_words(self, column: int) -> bool:
+        """Return whether a column holds words, which begin at its left side; numbers end at its right one."""
+        ends_in_words = self.kind == "methods" and column == len(self.head) - 1
+        return column == 0 or self.kind in ("words", "matrix") or ends_in_words
+
 
 @dataclass(frozen=True)
 class Figures:

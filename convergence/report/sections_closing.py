@@ -1,11 +1,12 @@
 """The end of the document: caution, and what it takes to get the same numbers again."""
 
 from collections.abc import Mapping, Sequence
-from hashlib import file_digest, sha256
+from hashlib import sha256
 from pathlib import Path
 
 from convergence.report import records
 from convergence.report.content import Block, Bullets, Details, Section, Table, Verbatim
+from convergence.textfile import digest_of
 
 CAUTION = (
     "The discretization error is one part of the uncertainty of a result. It says how far the numbers are"
@@ -26,8 +27,7 @@ def digests(study_text: str, inputs: Sequence[Path]) -> dict[str, str]:
     found = {"SHA-256 of the study": sha256(study_text.encode()).hexdigest()} if study_text else {}
     for path in inputs:
         if path.is_file():
-            with path.open("rb") as file:
-                found[f"SHA-256 of {path.name}"] = file_digest(file, "sha256").hexdigest()
+            found[f"SHA-256 of {path.name}"] = digest_of(path)
     return found
 
 

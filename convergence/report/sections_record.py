@@ -49,12 +49,11 @@ LACKING = "to be supplied by the analyst: {keys} of [record] in the study"
 def record_section(record: Record, sections: Sequence[Section]) -> Section:
     """Return what the analyst states and where each point of a record stands among the sections."""
     blocks: list[Block] = []
-    stated = record.stated()
-    if stated:
-        rows = [(_words.plain(key), words) for key, words in stated.items()]
+    if record:
+        rows = [(_words.plain(key), words) for key, words in record.items()]
         blocks.append(Table("Stated by the analyst, not checked here", ("what", "in words"), rows, "words"))
     titles = {section.anchor: section.title for section in sections}
-    rows_of_points = [_row(number, point, stated, titles) for number, point in enumerate(POINTS, start=1)]
+    rows_of_points = [_row(number, point, record, titles) for number, point in enumerate(POINTS, start=1)]
     blocks.append(
         Table("Where each point of the record stands", ("point", "in this document"), rows_of_points, "words")
     )
@@ -62,7 +61,7 @@ def record_section(record: Record, sections: Sequence[Section]) -> Section:
     return Section("record", "Record", "Record of the analysis", blocks)
 
 
-def _row(number: int, point: Point, stated: dict[str, str], titles: dict[str, str]) -> Sequence[Cell]:
+def _row(number: int, point: Point, stated: Record, titles: dict[str, str]) -> Sequence[Cell]:
     where: list[str | Words] = [
         Words(titles[a], to=f"#{a}", paged=True) for a in point.anchors if a in titles
     ]

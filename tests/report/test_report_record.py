@@ -1,16 +1,15 @@
 """The record of an analysis: every point stands somewhere or is asked of the analyst."""
 
-import dataclasses
-
-from convergence.record import NOTHING, Record
+from convergence.bind import parameters
+from convergence.record import NOTHING, Record, record
 from convergence.report.content import Section, Table, Words, lines
 from convergence.report.sections_record import POINTS, record_section
 
 SECTIONS = [Section(name, name, f"Title of {name}", []) for name in ("statement", "checks", "quantities")]
 
 
-def tables(record: Record, sections: list[Section]) -> list[Table]:
-    return [block for block in record_section(record, sections).blocks if isinstance(block, Table)]
+def tables(stated: Record, sections: list[Section]) -> list[Table]:
+    return [block for block in record_section(stated, sections).blocks if isinstance(block, Table)]
 
 
 def texts(table: Table, row: int) -> list[str]:
@@ -36,7 +35,7 @@ def test_links_lead_to_sections_that_are_there() -> None:
 
 
 def test_what_is_stated_is_shown_and_no_longer_asked_for() -> None:
-    stated, points = tables(Record(purpose="release", tests="load test of 2030"), SECTIONS)
+    stated, points = tables(record(purpose="release", tests="load test of 2030"), SECTIONS)
     assert [(row[0], row[1]) for row in stated.rows] == [
         ("purpose", "release"),
         ("tests", "load test of 2030"),
@@ -55,10 +54,10 @@ def test_a_point_without_a_place() -> None:
 
 
 def test_every_key_of_the_record_belongs_to_a_point() -> None:
-    keys = {field.name for field in dataclasses.fields(Record)}
+    keys = {parameter.name for parameter in parameters(record)}
     assert keys == {key for point in POINTS for key in point.keys}
 
 
 def test_an_analyst_may_write_anything() -> None:
-    (stated, _) = tables(Record(conclusion="<b>fit</b>"), SECTIONS)
+    (stated, _) = tables(record(conclusion="<b>fit</b>"), SECTIONS)
     assert stated.rows[0][1] == "<b>fit</b>" and not isinstance(stated.rows[0][1], Words)

@@ -6,9 +6,15 @@ displacements converge with an order of twice it, below 1.
 """
 
 import math
-from typing import Any
 
 from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading, outline
+from convergence.calibration.drawn_readings import (
+    displacement,
+    held_corner_readings,
+    mean_displacement,
+    section_force,
+    stress,
+)
 from convergence.corners.williams import weakest_exponent
 
 Place = tuple[float, float]
@@ -91,19 +97,23 @@ def _case(
         materials={"": material},
         corners=(corner, tip, (tip[0], above), (radius, -glued), low, high),
         exponent=weakest_exponent(opening, ("clamped", "free"), kappa=3.0 - 4.0 * material.poisson),
-        readings=(*_whole(tip, low, high), *_fields(radius, width, above), *_corner(corner, 0.7 * glued)),
+        readings=(
+            *_whole(tip, low, high),
+            *_fields(radius, width, above),
+            *held_corner_readings(corner, 0.7 * glued, "xx"),
+        ),
     )
 
 
 def _whole(tip: Place, low: Place, high: Place) -> tuple[Reading, ...]:
     return (
         Reading("energy", "energy", "energy"),
-        Reading("tip x", "displacement", "displacement", {"at": tip, "component": "x"}),
-        Reading("tip y", "displacement", "displacement", {"at": tip, "component": "y"}),
-        Reading("outer x", "displacement", "mean_displacement", {"boundary": "outer", "component": "x"}),
-        Reading("free y", "displacement", "mean_displacement", {"boundary": "free", "component": "y"}),
+        displacement("tip x", tip, "x"),
+        displacement("tip y", tip, "y"),
+        mean_displacement("outer x", "outer", "x"),
+        mean_displacement("free y", "free", "y"),
         Reading("turn", "rotation", "rotation", {"start": low, "end": high}),
-        Reading("glue force", "resultant", "section_force", {"boundary": "glue", "component": "y"}),
+        section_force("glue force", "glue", "y"),
         Reading("held", "reaction", "reaction", {"boundary": "glue", "component": "x"}),
     )
 
@@ -112,30 +122,9 @@ def _fields(radius: float, width: float, above: float) -> tuple[Reading, ...]:
     line = {"start": (radius, 0.4 * above), "end": (radius + width, 0.4 * above), "component": "yy"}
     ahead, inside = (radius + 0.2 * width, 0.15 * above), (radius + 0.55 * width, 0.1 * above)
     return (
-        Reading("by corner", "point_stress", "stress", {"at": ahead, "component": "von_mises"}),
-        Reading("outer hoop", "point_stress", "stress", {"at": (radius + width, 0.0), "component": "zz"}),
-        Reading(
-            "inside", "point_stress", "stress", {"at": inside, "component": "von_mises", "way": "direct"}
-        ),
+        stress("by corner", ahead, "von_mises"),
+        stress("outer hoop", (radius + width, 0.0), "zz"),
+        stress("inside", inside, "von_mises", "direct"),
         Reading("membrane", "point_stress", "line_stress", {**line, "part": "membrane"}),
         Reading("bending", "point_stress", "line_stress", {**line, "part": "bending"}),
-    )
-
-
-def _corner(corner: Place, radius: float) -> tuple[Reading, ...]:
-    """Return what has no limit."""
-    near: dict[str, Any] = {"near": corner, "radius": radius}
-    return (
-        Reading("corner", "point_stress", "stress", {"at": corner, "component": "xx"}, singular=True),
-        Reading("corner nodal", "peak_stress", "peak", {"component": "von_mises", **near}, singular=True),
-        Reading(
-            "corner gauss",
-            "peak_stress",
-            "peak",
-            {"component": "first_principal", "way": "gauss", **near},
-            singular=True,
-        ),
-        Reading(
-            "all direct", "peak_stress", "peak", {"component": "von_mises", "way": "direct"}, singular=True
-        ),
     )

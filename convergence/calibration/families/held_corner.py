@@ -11,6 +11,14 @@ from typing import Any
 from netgen.occ import Circle
 
 from convergence.calibration.drawn_case import DrawnCase, DrawnKind, Elastic, Reading, outline
+from convergence.calibration.drawn_readings import (
+    displacement,
+    held_corner_readings,
+    mean_displacement,
+    peak,
+    section_force,
+    stress,
+)
 from convergence.corners.williams import weakest_exponent
 
 Place = tuple[float, float]
@@ -91,7 +99,12 @@ def _case(
         body=body,
         corners=(INNER, tip, (-left, tip[1]), (-left, -depth), (weld, -depth), (weld, 0.0)),
         exponent=weakest_exponent(opening, ("clamped", "free"), kappa=_kappa(kind, material.poisson)),
-        readings=(*_whole(tip, left, depth), *_fields(weld, depth), *_eye(left, depth), *_corner()),
+        readings=(
+            *_whole(tip, left, depth),
+            *_fields(weld, depth),
+            *_eye(left, depth),
+            *held_corner_readings(INNER, 13.0, "yy"),
+        ),
     )
 
 
@@ -122,13 +135,13 @@ def _whole(tip: Place, left: float, depth: float) -> tuple[Reading, ...]:
     """Return energy, displacements, a rotation and forces: all converge slowly."""
     return (
         Reading("energy", "energy", "energy"),
-        Reading("tip x", "displacement", "displacement", {"at": tip, "component": "x"}),
-        Reading("tip y", "displacement", "displacement", {"at": tip, "component": "y"}),
-        Reading("left y", "displacement", "mean_displacement", {"boundary": "left", "component": "y"}),
-        Reading("free x", "displacement", "mean_displacement", {"boundary": "free", "component": "x"}),
+        displacement("tip x", tip, "x"),
+        displacement("tip y", tip, "y"),
+        mean_displacement("left y", "left", "y"),
+        mean_displacement("free x", "free", "x"),
         Reading("turn", "rotation", "rotation", {"start": (-left, tip[1]), "end": tip}),
-        Reading("weld force", "resultant", "section_force", {"boundary": "weld", "component": "y"}),
-        Reading("weld shear", "resultant", "section_force", {"boundary": "weld", "component": "x"}),
+        section_force("weld force", "weld", "y"),
+        section_force("weld shear", "weld", "x"),
     )
 
 
@@ -136,41 +149,18 @@ def _fields(weld: float, depth: float) -> tuple[Reading, ...]:
     line = {"start": (0.25 * weld, 0.0), "end": (0.25 * weld, -depth), "component": "xx"}
     ahead, inside = (-0.2 * depth, -0.15 * depth), (0.4 * weld, -0.45 * depth)
     return (
-        Reading("by corner", "point_stress", "stress", {"at": ahead, "component": "von_mises"}),
-        Reading("weld stress", "point_stress", "stress", {"at": (0.55 * weld, 0.0), "component": "yy"}),
-        Reading(
-            "inside", "point_stress", "stress", {"at": inside, "component": "von_mises", "way": "direct"}
-        ),
+        stress("by corner", ahead, "von_mises"),
+        stress("weld stress", (0.55 * weld, 0.0), "yy"),
+        stress("inside", inside, "von_mises", "direct"),
         Reading("membrane", "point_stress", "line_stress", {**line, "part": "membrane"}),
         Reading("bending", "point_stress", "line_stress", {**line, "part": "bending"}),
     )
 
 
 def _eye(left: float, depth: float) -> tuple[Reading, ...]:
-    near = {"near": _eye_at(left, depth), "radius": 1.4 * EYE}
+    eye, reach = _eye_at(left, depth), 1.4 * EYE
     return (
-        Reading("eye nodal", "peak_stress", "peak", {"component": "von_mises", **near}),
-        Reading(
-            "eye direct", "peak_stress", "peak", {"component": "first_principal", "way": "direct", **near}
-        ),
-        Reading("eye gauss", "peak_stress", "peak", {"component": "von_mises", "way": "gauss", **near}),
-    )
-
-
-def _corner() -> tuple[Reading, ...]:
-    """Return what has no limit."""
-    near: dict[str, Any] = {"near": INNER, "radius": 13.0}
-    return (
-        Reading("corner", "point_stress", "stress", {"at": INNER, "component": "yy"}, singular=True),
-        Reading("corner nodal", "peak_stress", "peak", {"component": "von_mises", **near}, singular=True),
-        Reading(
-            "corner gauss",
-            "peak_stress",
-            "peak",
-            {"component": "first_principal", "way": "gauss", **near},
-            singular=True,
-        ),
-        Reading(
-            "all direct", "peak_stress", "peak", {"component": "von_mises", "way": "direct"}, singular=True
-        ),
+        peak("eye nodal", "von_mises", near=eye, radius=reach),
+        peak("eye direct", "first_principal", "direct", eye, reach),
+        peak("eye gauss", "von_mises", "gauss", eye, reach),
     )
