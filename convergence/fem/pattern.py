@@ -10,7 +10,9 @@ from dataclasses import dataclass
 import numpy as np
 from scipy import sparse
 
-PIECE = 50_000  # nodes whose rows are ordered at once, to save memory
+from convergence.fem.workers import workers
+
+PIECE = 100_000  # neighbours of the nodes whose rows are ordered at once: they stay in the cache
 
 
 def pairs(nodes: int) -> tuple[np.ndarray, np.ndarray]:
@@ -33,31 +35,45 @@ class Pattern:
         """Return the blocks (D columns, D rows, neighbours) of the sum of cells' (D, D, pairs, m)."""
         dimension = len(blocks)
         total = np.empty((dimension, dimension, len(self.neighbours)))
-        for row, column in np.ndindex(dimension, dimension):
+
+        def add(row: int, column: int) -> None:
             parts = np.concatenate([blocks[row, column].ravel(), blocks[column, row].ravel()])
             total[column, row] = self.sums @ parts
+
+        with workers() as pool:
+            list(pool.map(lambda place: add(*place), np.ndindex(dimension, dimension)))
         return total
 
     def matrix(self, blocks: np.ndarray) -> sparse.csr_matrix:
         """Return the matrix of blocks as `summed`; unknowns are interleaved, D at each node."""
         dimension, nodes, count = len(blocks), len(self.indptr) - 1, len(self.neighbours)
-        places = np.tile(self.neighbours, dimension)
-        starts = [self.indptr[:-1] + row * count for row in range(dimension)]
-        ends = np.concatenate([*starts, [dimension * count]]).astype(np.int32)
-        order = np.arange(dimension * nodes, dtype=np.int32).reshape(dimension, nodes).T
         entries = np.empty((dimension * count, dimension))
         indices = np.empty(entries.shape, dtype=np.int32)
-        for column, values in enumerate(blocks.reshape(dimension, -1)):
-            by_row = sparse.csr_array((values, places, ends), shape=(dimension * nodes, nodes))
-            for first in range(0, nodes, PIECE):
-                rows = by_row[order[first : first + PIECE].ravel()]
-                at = slice(dimension * self.indptr[first], dimension * self.indptr[first] + rows.nnz)
-                entries[at, column] = rows.data
-                indices[at, column] = dimension * rows.indices + column
-        lengths = np.repeat(dimension * np.diff(self.indptr), dimension)
-        rows_end = np.concatenate([[0], np.cumsum(lengths)]).astype(np.int32)
+        lengths = np.diff(self.indptr)
+        step = max(1, PIECE * nodes // max(1, count))
+
+        def fill(first: int) -> None:
+            begin, end = self.indptr[first], self.indptr[min(first + step, nodes)]
+            order = _by_rows(lengths[first : first + step], dimension)
+            at = slice(dimension * begin, dimension * end)
+            for column, values in enumerate(blocks):
+                entries[at, column] = values[:, begin:end].ravel()[order]
+            columns = np.tile(dimension * self.neighbours[begin:end], dimension)[order]
+            indices[at] = columns[:, None] + np.arange(dimension, dtype=np.int32)
+
+        with workers() as pool:
+            list(pool.map(fill, range(0, nodes, step)))
+        ends = np.concatenate([[0], np.cumsum(np.repeat(dimension * lengths, dimension))]).astype(np.int32)
         size = dimension * nodes
-        return sparse.csr_matrix((entries.ravel(), indices.ravel(), rows_end), shape=(size, size))
+        return sparse.csr_matrix((entries.ravel(), indices.ravel(), ends), shape=(size, size))
+
+
+def _by_rows(lengths: np.ndarray, dimension: int) -> np.ndarray:
+    """Return the places of the neighbours of each node, `dimension` times, in `dimension` lists of all."""
+    rows = np.repeat(lengths, dimension)
+    ends, starts = np.cumsum(rows), np.cumsum(lengths) - lengths
+    starts = starts[:, None] + lengths.sum() * np.arange(dimension)
+    return np.asarray(np.repeat(starts.ravel() - (ends - rows), rows) + np.arange(ends[-1]))
 
 
 def pattern(cell_nodes: np.ndarray, nodes: int) -> Pattern:
