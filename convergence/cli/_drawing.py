@@ -1,8 +1,9 @@
-"""A second process that draws half of the figures; it gets ready while the levels are solved."""
+"""A second process that draws figures beside this one; it gets ready while the levels are solved."""
 
 import signal
 from collections.abc import Iterator, Sequence
-from contextlib import contextmanager
+from concurrent.futures import ThreadPoolExecutor
+from contextlib import contextmanager, suppress
 from multiprocessing import get_context
 from multiprocessing.connection import Connection
 from typing import TYPE_CHECKING
@@ -35,34 +36,37 @@ def drawing(unknowns: int) -> Iterator["Draw | None"]:
 
 
 def _draw_what_comes(from_the_first: Connection) -> None:
-    """Draw lists of figures until the first process is gone; None stands for what cannot be drawn."""
+    """Draw figures until the first process is gone; the answers stand in lists, empty ones for failures."""
     from convergence.report import _picture, pictures
 
     _picture.get_ready()
     while True:
         try:
-            figures = from_the_first.recv()
+            figure = from_the_first.recv()
         except EOFError:
             return
         try:
-            drawn: list[Picture | None] | None = pictures.one_by_one(figures)
+            drawn = pictures.one_by_one([figure])
         except Exception:
-            drawn = None
+            drawn = []
         from_the_first.send(drawn)
 
 
 def _shared(second: Connection, figures: Sequence["Figure"]) -> list["Picture | None"]:
-    """Draw every other figure here; all of them where the second process fails."""
+    """Draw figures in both processes, each the next one left; all of them here where the second fails."""
     from convergence.report.pictures import one_by_one
 
-    drawn: list[Picture | None] = [None] * len(figures)
-    try:
-        second.send(figures[1::2])
-        drawn[::2] = one_by_one(figures[::2])
-        others = second.recv()
-    except (OSError, EOFError):
-        others = None
-    if others is None:
-        return one_by_one(figures)
-    drawn[1::2] = others
-    return drawn
+    drawn: dict[int, list[Picture | None]] = {}
+    numbers = iter(range(len(figures)))
+
+    def elsewhere() -> None:
+        with suppress(OSError, EOFError):
+            for number in numbers:
+                second.send(figures[number])
+                drawn[number] = second.recv()
+
+    with ThreadPoolExecutor(1) as beside:
+        beside.submit(elsewhere)
+        for number in numbers:
+            drawn[number] = one_by_one([figures[number]])
+    return [(drawn.get(number) or one_by_one([figures[number]]))[0] for number in range(len(figures))]

@@ -112,9 +112,9 @@ def _kirsch(radius: float, tension: float, kind: PlaneKind, material: Material) 
         return scale * np.array([ux, uy])
 
     def stress(x: np.ndarray, y: np.ndarray) -> np.ndarray:
-        q, angle = radius**2 / (x**2 + y**2), np.arctan2(y, x)
-        cos2, sin2 = np.cos(2 * angle), np.sin(2 * angle)
-        cos4, sin4 = np.cos(4 * angle), np.sin(4 * angle)
+        squared = x**2 + y**2
+        q, cos2, sin2 = radius**2 / squared, (x**2 - y**2) / squared, 2 * x * y / squared
+        cos4, sin4 = cos2**2 - sin2**2, 2 * sin2 * cos2
         xx = 1 - q * (1.5 * cos2 + cos4) + 1.5 * q**2 * cos4
         yy = -q * (0.5 * cos2 - cos4) - 1.5 * q**2 * cos4
         xy = -q * (0.5 * sin2 + sin4) + 1.5 * q**2 * sin4
