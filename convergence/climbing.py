@@ -10,6 +10,7 @@ import numpy as np
 
 from convergence import numbers
 from convergence.errors import Fault, InputError, SolvingError
+from convergence.fem.acting import acting
 from convergence.fem.display import MOST_FACES, display, faces
 from convergence.fem.first_guess import first_guess
 from convergence.fem.given_part import GivenPart
@@ -22,7 +23,7 @@ from convergence.intake.ladder_file import read_ladder, write_ladder
 from convergence.ladder_spec import LadderSpec
 from convergence.measuring import measured, records
 from convergence.memory import allowed_memory, peak_memory, reset_peak
-from convergence.results import Ladder, Level
+from convergence.results import NOT_SOLVED, Ladder, Level
 from convergence.study import Study
 
 LADDER = "ladder.csv"
@@ -83,7 +84,7 @@ def climb(study: Study, folder: Path, budget: Budget = NO_LIMIT) -> Iterator[Lev
 def _ended(number: int, dofs: int, why: str, companion: str) -> tuple[str, ...]:
     """Return the remark on a ladder that ends before a level; SolvingError where nothing can be judged."""
     whose = f"of the {companion} " if companion else ""
-    what = f"level {number + 1} {whose}({numbers.count(dofs)} unknowns) is not solved: {why}"
+    what = f"level {number + 1} {whose}({numbers.count(dofs)} unknowns) {NOT_SOLVED}: {why}"
     if companion:
         return (what,)
     if number == 0:
@@ -177,7 +178,8 @@ def _level(
             values[name] = measured(study.quantities, solution, study.file.name) | records(solution)
             (folders[name] / "levels").mkdir(parents=True, exist_ok=True)
             if number == 0 or faces(meshed) <= MOST_FACES:
-                display(solution).save(level_file(folders[name], number))
+                drawn = replace(display(solution), forces=acting(solution))
+                drawn.save(level_file(folders[name], number))
             np.save(_unknowns_file(folders[name], number), solution.unknowns)
     except SolvingError as error:
         raise SolvingError(f"level {number + 1}: {error}") from error

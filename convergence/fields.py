@@ -1,12 +1,31 @@
 """What a level leaves for the figures: its mesh, displacement, stress and error, as plain arrays."""
 
 import io
+from collections.abc import Mapping
 from dataclasses import asdict, dataclass
 from pathlib import Path
+from typing import Any
 
 import numpy as np
 
 from convergence.textfile import write_bytes
+
+FORCES = "forces."  # before the names of a file's arrays that are those of `Forces`
+
+
+@dataclass(frozen=True)
+class Forces:
+    """What acts on a part: one column for each boundary or point with a load, and each support.
+
+    is_load (k,); names (k,); place (D, k) the middle of the boundary; force (D, k); moment (1 or 3, k) about
+    that place, (0, k) of rods and rings. Of a ring the forces are those all around.
+    """
+
+    is_load: np.ndarray
+    names: np.ndarray
+    place: np.ndarray
+    force: np.ndarray
+    moment: np.ndarray
 
 
 @dataclass(frozen=True)
@@ -21,6 +40,8 @@ class Fields:
     Of a solid, points and displacement are (3, n) and only the surface is kept: cells are its faces,
     counter-clockwise seen from outside, edges the mesh lines on it, boundary the segments of the part's own
     sharp edges, error that of the cell behind each face.
+
+    `forces` is None where nothing was solved here.
     """
 
     points: np.ndarray
@@ -30,15 +51,21 @@ class Fields:
     displacement: np.ndarray
     von_mises: np.ndarray
     error: np.ndarray
+    forces: Forces | None = None
 
     def save(self, path: Path) -> None:
         """Write atomically as .npz."""
         packed = io.BytesIO()
-        np.savez_compressed(packed, **asdict(self))
+        arrays: dict[str, Any] = asdict(self)
+        forces: Mapping[str, np.ndarray] = arrays.pop("forces") or {}
+        arrays |= {f"{FORCES}{name}": array for name, array in forces.items()}
+        np.savez_compressed(packed, **arrays)
         write_bytes(path, packed.getvalue())
 
 
 def load_fields(path: Path) -> Fields:
     """Read what `Fields.save` wrote."""
     with np.load(path) as data:
-        return Fields(**{name: data[name] for name in data.files})
+        arrays = {name: data[name] for name in data.files}
+    acting = {name.removeprefix(FORCES): arrays.pop(name) for name in list(arrays) if name.startswith(FORCES)}
+    return Fields(**arrays, forces=Forces(**acting) if acting else None)

@@ -6,9 +6,11 @@ hand. NaN prints as "none".
 
 import math
 from decimal import ROUND_CEILING, ROUND_FLOOR, ROUND_HALF_EVEN, Decimal
+from typing import Literal
 
 NONE = "none"
 MOST_DIGITS = 17  # tells any two doubles apart
+DecimalMark = Literal["point", "comma"]
 Scale = tuple[tuple[float, str], ...]
 TIME: Scale = ((3600.0, "h"), (60.0, "min"), (1.0, "s"))  # in seconds
 MEMORY: Scale = ((1e6, "TB"), (1e3, "GB"), (1.0, "MB"))  # in MB

@@ -29,6 +29,7 @@ Kind = Literal[
     "unknown",
 ]
 COST = ("h", "cells", "dofs", "seconds", "memory")
+NOT_SOLVED = "is not solved"  # in the remark on a level that would not fit
 
 
 @dataclass(frozen=True)
@@ -64,6 +65,11 @@ class Ladder:
     @property
     def h(self) -> np.ndarray:
         return np.array([level.h for level in self.levels], dtype=float)
+
+    @property
+    def unsolved(self) -> tuple[str, ...]:
+        """Return the remarks on levels that were asked for and not solved."""
+        return tuple(remark for remark in self.remarks if NOT_SOLVED in remark)
 
     def column(self, name: str) -> np.ndarray:
         """Return one number per level, NaN where a level has none."""

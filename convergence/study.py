@@ -18,7 +18,7 @@ from convergence.record import RECORD, Record, read_record
 from convergence.results import Ladder, Quantity
 from convergence.sections import BODY_TABLES, Sections
 from convergence.statics import Balance
-from convergence.study_head import DEFAULT_SYSTEM, read_head
+from convergence.study_head import DEFAULT_SYSTEM, Head, read_head
 from convergence.table_study import TableStudy, read_table_study
 from convergence.tomlfile import read_toml
 
@@ -41,13 +41,13 @@ class Study:
     `fingerprint` changes with all that changes a number of a level. `cases` are studies that differ in
     their loads only: they are what is solved and judged. `companion` is the same study on a second ladder,
     kept in the `subfolder` of a run. `balance` is that of loads and reactions another solver printed, in
-    `printout`; `record` what the analyst states.
+    `printout`; `head` is what stands above the tables, `record` what the analyst states.
     """
 
     file: Path
     name: str
     title: str
-    unit_system: str
+    head: Head
     units: Units
     quantities: tuple[Quantity, ...]
     materials: Mapping[str, Material]
@@ -108,12 +108,12 @@ def load(path: Path, *, name: str = "", text: str = "") -> Study:
     sections = Sections(read_toml(path, text), SYSTEMS[DEFAULT_SYSTEM])
     data = sections.file.data
     needed = () if {"meshes", "fields"} & set(data) else material_tables(sections)
-    title, system = read_head(sections, (*SECTIONS, *needed, *(("map",) if "fields" in data else ())))
+    head = read_head(sections, (*SECTIONS, *needed, *(("map",) if "fields" in data else ())))
     blank = Study(
         file=path,
         name=name or path.stem,
-        title=title or name or path.stem,
-        unit_system=system,
+        title=head.title or name or path.stem,
+        head=head,
         units=sections.units,
         quantities=(),
         materials=read_materials(sections, needed),
@@ -136,7 +136,7 @@ def load(path: Path, *, name: str = "", text: str = "") -> Study:
 
 
 def _model_study(sections: Sections, blank: Study) -> Study:
-    found = read_model(sections, blank.materials, blank.unit_system)
+    found = read_model(sections, blank.materials, blank.head.units)
     study = _on_ladder(blank, found)
     if found.companion is None:
         return study
@@ -189,7 +189,7 @@ def _mesh_study(sections: Sections, blank: Study) -> Study:
     from convergence.mesh_study import read_mesh_study
 
     sections.refuse("the meshes of files are the levels: they have no", "ladder", "companion")
-    found = read_mesh_study(sections, blank.unit_system)
+    found = read_mesh_study(sections, blank.head.units)
     if found is None:
         return blank
     study = _on_meshes(blank, found)
@@ -204,7 +204,7 @@ def _field_study(sections: Sections, blank: Study) -> Study:
     from convergence.field_study import read_field_study
 
     sections.refuse("a study of result files has no", "ladder", "companion", "cases")
-    found = read_field_study(sections, blank.unit_system)
+    found = read_field_study(sections, blank.head.units)
     if found is None:
         return blank
     return replace(_on_meshes(blank, found), fields=found)

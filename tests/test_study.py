@@ -28,7 +28,7 @@ def changed(folder: Path, old: str, new: str) -> Study:
 def test_a_model_study(tmp_path: Path) -> None:
     study = load(write(tmp_path, CYLINDER))
     assert (study.name, study.title) == ("s", "Barrel of the luffing cylinder")
-    assert study.unit_system == "mm, N, MPa" and study.model == "thick_cylinder"
+    assert study.head.units == "mm, N, MPa" and study.model == "thick_cylinder"
     assert study.arguments is not None and study.arguments["inner_radius"] == 25.0
     assert study.arguments["outer_radius"] == 45.0
     assert study.ladder is not None

@@ -1,6 +1,6 @@
 """What `compare` is given, two ladders judged alike, and the comparison on the screen."""
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -38,12 +38,8 @@ def said_of(
     return Said(known, first, None, dimension), Said(theirs, second, None, dimension)
 
 
-def compare_paths(
-    paths: tuple[Path, Path], said: tuple[Said, Said], match: Mapping[str, str], revisions: bool
-) -> "dict[str, Comparison]":
-    """Judge both and compare them by load case, under "" where there is none."""
-    from convergence.comparison import compare
-
+def judge_both(paths: tuple[Path, Path], said: tuple[Said, Said]) -> list[Judged | JudgedCases]:
+    """Judge both; `InputError` has the faults of both."""
     judged: list[Judged | JudgedCases] = []
     faults: list[Fault] = []
     bare = [not path.is_dir() and path.suffix.lower() != ".toml" for path in paths]
@@ -54,6 +50,18 @@ def compare_paths(
             faults += error.faults
     if faults:
         raise InputError(faults)
+    return judged
+
+
+def compare_judged(
+    judged: Sequence[Judged | JudgedCases],
+    paths: tuple[Path, Path],
+    match: Mapping[str, str],
+    revisions: bool,
+) -> "dict[str, Comparison]":
+    """Compare what was judged by load case, under "" where there is none."""
+    from convergence.comparison import compare
+
     first, second = ({"": one.findings} if isinstance(one, Judged) else one.findings for one in judged)
     common = [case for case in first if case in second]
     if not common:

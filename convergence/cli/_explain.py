@@ -7,11 +7,8 @@ from convergence.cli._show import terminal
 from convergence.errors import Fault, InputError, nearest
 
 
-def require_known(names: Sequence[str], judged: Sequence[Judged | JudgedCases]) -> None:
-    """Raise `InputError` for every name that none of what was judged has."""
-    known = [
-        quantity.name for each in judged for _, one in _each(each) for quantity in one.findings.quantities
-    ]
+def require_known(names: Sequence[str], known: Sequence[str]) -> None:
+    """Raise `InputError` for every name that is no quantity's."""
     faults = [
         Fault("--explain", "no such quantity", nearest(name, dict.fromkeys(known)), name)
         for name in names
@@ -19,6 +16,11 @@ def require_known(names: Sequence[str], judged: Sequence[Judged | JudgedCases]) 
     ]
     if faults:
         raise InputError(faults)
+
+
+def names_of(judged: Sequence[Judged | JudgedCases]) -> list[str]:
+    """Return the names of all quantities that were judged."""
+    return [q.name for each in judged for _, one in _each(each) for q in one.findings.quantities]
 
 
 def explain(names: Sequence[str], judged: Judged | JudgedCases) -> None:

@@ -5,11 +5,15 @@ from pathlib import Path
 from typing import get_args
 
 from convergence.errors import Fault, InputError, nearest
+from convergence.numbers import DecimalMark
 from convergence.report.forms import Form, Forms
 
 
-def forms_of(words: str, template: Path | None = None) -> Forms:
-    """Return the forms of words such as "html,pdf"; `InputError` names every unknown one."""
+def forms_of(words: str, mark: DecimalMark | None, template: Path | None = None) -> Forms:
+    """Return the forms of words such as "html,pdf" with the decimal mark that is asked for.
+
+    `InputError` names every unknown one.
+    """
     known: dict[str, Form] = {form: form for form in get_args(Form)}
     asked = [word.strip().lower() for word in words.split(",")]
     faults = [
@@ -21,7 +25,7 @@ def forms_of(words: str, template: Path | None = None) -> Forms:
         faults.append(Fault("--template", "a template without docx", "add docx to --as", str(template)))
     if faults:
         raise InputError(faults)
-    return Forms(tuple(dict.fromkeys(known[word] for word in asked)), template)
+    return Forms(tuple(dict.fromkeys(known[word] for word in asked)), template, mark)
 
 
 def date_of(word: str | None) -> str:

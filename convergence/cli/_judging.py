@@ -15,6 +15,7 @@ from convergence.errors import Fault, InputError, nearest
 from convergence.fields import Fields
 from convergence.intake.ladder_file import is_ladder_file, read_ladder
 from convergence.intake.table import read_table
+from convergence.numbers import DecimalMark
 from convergence.record import Record
 from convergence.results import Companion, Facts, Findings, Ladder
 from convergence.study import Study, load
@@ -29,7 +30,8 @@ class Judged:
     """A judged ladder and what its report needs; `fields` are those of result files, to be drawn.
 
     `maps` judge every node of result files, where that is asked for; `record` is what the analyst states,
-    `inputs` are the files that were read.
+    `inputs` are the files that were read, `kept` is the folder with the levels of its run, `decimal_mark`
+    the one that the study asks for.
     """
 
     findings: Findings
@@ -40,6 +42,8 @@ class Judged:
     maps: "tuple[PointwiseMap, ...]" = ()
     record: Record = field(default_factory=dict)
     inputs: tuple[Path, ...] = ()
+    kept: Path | None = None
+    decimal_mark: DecimalMark = "point"
 
     @property
     def all_sound(self) -> bool:
@@ -48,13 +52,14 @@ class Judged:
 
 @dataclass(frozen=True)
 class JudgedCases:
-    """The judged load cases of a study; `loads` says what they differ in."""
+    """The judged load cases of a study; `loads` says what they differ in, `decimal_mark` as in `Judged`."""
 
     title: str
     name: str
     study_text: str
     cases: Mapping[str, Judged]
     loads: Mapping[str, str]
+    decimal_mark: DecimalMark = "point"
 
     @property
     def all_sound(self) -> bool:
@@ -68,6 +73,10 @@ class JudgedCases:
 
 def judge_saved(study: Study, folder: Path) -> Judged | JudgedCases:
     """Judge the table of a study or its ladder in the folder of its run, or those of all its cases."""
+    return replace(_judged_whole(study, folder), decimal_mark=study.head.report_decimal)
+
+
+def _judged_whole(study: Study, folder: Path) -> Judged | JudgedCases:
     if study.fields:
         return _judged_fields(study)
     if not study.cases:
@@ -87,7 +96,8 @@ def judge_saved(study: Study, folder: Path) -> Judged | JudgedCases:
 
 def _judged_ladder(study: Study, folder: Path) -> Judged:
     second = study.companion
-    return _judged(study, _solved(study, folder), _solved(second, folder) if second else None)
+    judged = _judged(study, _solved(study, folder), _solved(second, folder) if second else None)
+    return judged if study.table else replace(judged, kept=folder)
 
 
 def _judged_fields(study: Study) -> Judged:

@@ -2,6 +2,7 @@
 
 import sys
 from collections.abc import Mapping, Sequence
+from dataclasses import replace
 from datetime import date
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
@@ -16,6 +17,8 @@ if TYPE_CHECKING:
     from convergence.comparison import Comparison
     from convergence.report.forms import Forms
     from convergence.report.pictures import Draw
+
+WHOLE = "../report.html"  # the report of all load cases, seen from the folder of one
 
 
 def report(
@@ -34,13 +37,15 @@ def report(
     from convergence.report.forms import HTML
 
     chosen, day = forms or HTML, day or date.today().isoformat()
+    chosen = replace(chosen, decimal_mark=chosen.decimal_mark or judged.decimal_mark)
     if isinstance(judged, Judged):
-        return _report(judged, folder, draw_all, chosen, day)
+        return _report(judged, folder, draw_all, chosen, day, "")
     from convergence.report.cases_page import write_cases
 
     places = case_folders(judged.cases)
     for name, case in judged.cases.items():
-        report(case, folder / places[name], draw_all=draw_all, forms=chosen, day=day)
+        _report(case, folder / places[name], draw_all, chosen, day, WHOLE)
+    first = next(iter(judged.cases.values()))
     return write_cases(
         judged.findings,
         folder,
@@ -50,11 +55,15 @@ def report(
         study_name=judged.name,
         command=_command(),
         date=day,
+        record=first.record,
+        inputs=first.inputs,
         forms=chosen,
     )
 
 
-def _report(judged: Judged, folder: Path, draw_all: "Draw | None", forms: "Forms", day: str) -> list[Path]:
+def _report(
+    judged: Judged, folder: Path, draw_all: "Draw | None", forms: "Forms", day: str, up: str
+) -> list[Path]:
     from convergence.report.document import write_report
     from convergence.report.pictures import one_by_one
 
@@ -67,7 +76,7 @@ def _report(judged: Judged, folder: Path, draw_all: "Draw | None", forms: "Forms
     return write_report(
         judged.findings,
         folder,
-        fields=judged.fields or _fields(folder, len(judged.findings.ladder.levels)),
+        fields=judged.fields or _fields(judged),
         units=judged.units,
         study_text=judged.study_text,
         study_name=judged.name,
@@ -77,6 +86,7 @@ def _report(judged: Judged, folder: Path, draw_all: "Draw | None", forms: "Forms
         record=judged.record,
         inputs=judged.inputs,
         forms=forms,
+        up=up,
     )
 
 
@@ -108,9 +118,11 @@ def _command() -> str:
     return "meshassay " + " ".join(sys.argv[1:])
 
 
-def _fields(folder: Path, levels: int) -> list[Any]:
+def _fields(judged: Judged) -> list[Any]:
     """Return the fields of the levels that are kept beside the ladder, coarse to fine."""
     from convergence.fields import load_fields
 
-    paths = sorted((folder / "levels").glob("level-*.npz"), key=lambda path: int(path.stem[6:]))
-    return [load_fields(path) for path in paths[:levels]]
+    if judged.kept is None:
+        return []
+    paths = sorted((judged.kept / "levels").glob("level-*.npz"), key=lambda path: int(path.stem[6:]))
+    return [load_fields(path) for path in paths[: len(judged.findings.ladder.levels)]]

@@ -5,6 +5,9 @@ from typing import TYPE_CHECKING
 
 import click
 
+from convergence.cli._options import report_decimal
+from convergence.numbers import DecimalMark
+
 if TYPE_CHECKING:
     from convergence.intake._notation import Decimals
 
@@ -21,6 +24,7 @@ if TYPE_CHECKING:
 @click.option("--json", "as_json", is_flag=True, help="Print the sums as JSON.")
 @click.option("--out", type=click.Path(path_type=Path), help="Write a report into this folder.")
 @click.option("--as", "forms", default="html", metavar="html,pdf,docx", help="Forms of the report (html).")
+@report_decimal
 def balance(
     file: Path,
     about: str | None,
@@ -31,6 +35,7 @@ def balance(
     as_json: bool,
     out: Path | None,
     forms: str,
+    mark: DecimalMark | None,
 ) -> int:
     """Balance FILE, a table (text or workbook) with one row a load or a reaction.
 
@@ -46,7 +51,7 @@ def balance(
     from convergence.intake.force_table import read_force_table
     from convergence.statics import ACCEPTED, balances
 
-    point, accepted, chosen = point_of(about), tolerance_of(tolerance), forms_of(forms)
+    point, accepted, chosen = point_of(about), tolerance_of(tolerance), forms_of(forms, mark)
     try:
         found = balances(read_force_table(file, Place(sheet, area, decimal)), point, accepted or ACCEPTED)
     except Unsuitable as error:

@@ -1,8 +1,12 @@
 """`meshassay compare`: whether two ladders of one part agree, or what a revision changes."""
 
+from dataclasses import replace
 from pathlib import Path
 
 import click
+
+from convergence.cli._options import report_decimal
+from convergence.numbers import DecimalMark
 
 
 @click.command()
@@ -18,6 +22,7 @@ import click
 @click.option("--json", "as_json", is_flag=True, help="Print the comparison as JSON.")
 @click.option("--out", type=click.Path(path_type=Path), help="Write a report into this folder.")
 @click.option("--as", "forms", default="html", metavar="html,pdf,docx", help="Forms of the report (html).")
+@report_decimal
 def compare(
     first: Path,
     second: Path,
@@ -29,6 +34,7 @@ def compare(
     as_json: bool,
     out: Path | None,
     forms: str,
+    mark: DecimalMark | None,
 ) -> int:
     """Compare FIRST and SECOND, each a table, a study or the folder of a run; nothing is solved.
 
@@ -38,10 +44,11 @@ def compare(
     from convergence.cli._forms import forms_of
     from convergence.cli._show import show_object
 
-    chosen = forms_of(forms)
+    chosen = forms_of(forms, mark)
     match = _comparing.matches_of(matches)
     said = _comparing.said_of(kinds, match, degrees, dimension)
-    found = _comparing.compare_paths((first, second), said, match, revisions)
+    both = _comparing.judge_both((first, second), said)
+    found = _comparing.compare_judged(both, (first, second), match, revisions)
     if as_json:
         from convergence.report.comparison_page import comparisons_object
 
@@ -52,5 +59,6 @@ def compare(
         from convergence.cli._report import report_comparisons, say_where
 
         title = f"{first.name} and {second.name}"
+        chosen = replace(chosen, decimal_mark=chosen.decimal_mark or both[0].decimal_mark)
         say_where(report_comparisons(found, out, title, chosen), as_json)
     return 0 if all(one.all_meet for one in found.values()) else 1

@@ -5,6 +5,9 @@ from pathlib import Path
 
 import click
 
+from convergence.cli._options import report_decimal
+from convergence.numbers import DecimalMark
+
 KINDS = ("plane stress", "plane strain", "axisymmetric", "solid")
 
 
@@ -17,6 +20,7 @@ KINDS = ("plane stress", "plane strain", "axisymmetric", "solid")
 @click.option("--units", default="mm, N, MPa", show_default=True, help="Consistent units of the files.")
 @click.option("--out", type=click.Path(path_type=Path), help="Write a report into this folder.")
 @click.option("--as", "forms", default="html", metavar="html,pdf,docx", help="Forms of the report (html).")
+@report_decimal
 @click.option("--study", "as_study", is_flag=True, help="Print a study file instead, to be added to.")
 @click.option("--json", "as_json", is_flag=True, help="Print the findings as JSON.")
 def fields(
@@ -28,6 +32,7 @@ def fields(
     units: str,
     out: Path | None,
     forms: str,
+    mark: DecimalMark | None,
     as_study: bool,
     as_json: bool,
 ) -> int:
@@ -53,17 +58,17 @@ def fields(
     if as_study:
         click.echo(study, nl=False)
         return 0
-    return _judged(study, out, forms, as_json)
+    return _judged(study, out, forms, mark, as_json)
 
 
-def _judged(study: str, out: Path | None, forms: str, as_json: bool) -> int:
+def _judged(study: str, out: Path | None, forms: str, mark: DecimalMark | None, as_json: bool) -> int:
     from convergence.cli._forms import forms_of
     from convergence.cli._judging import judge_saved
     from convergence.cli._report import report, say_where
     from convergence.cli._show import show, show_json
     from convergence.study import load
 
-    chosen = forms_of(forms)
+    chosen = forms_of(forms, mark)
     judged = judge_saved(load(Path("fields.toml"), text=study), Path())
     if as_json:
         show_json([judged])

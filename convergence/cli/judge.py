@@ -5,6 +5,9 @@ from typing import TYPE_CHECKING
 
 import click
 
+from convergence.cli._options import report_decimal
+from convergence.numbers import DecimalMark
+
 if TYPE_CHECKING:
     from convergence.intake._notation import Decimals
 
@@ -14,6 +17,7 @@ if TYPE_CHECKING:
 @click.option("--json", "as_json", is_flag=True, help="Print one object, an array for several inputs.")
 @click.option("--out", type=click.Path(path_type=Path), help="Write a report into this folder.")
 @click.option("--as", "forms", default="html", metavar="html,pdf,docx", help="Forms of the report (html).")
+@report_decimal
 @click.option(
     "--explain", "explained", multiple=True, metavar="NAME", help="Tell why a verdict is what it is."
 )
@@ -30,6 +34,7 @@ def judge(
     as_json: bool,
     out: Path | None,
     forms: str,
+    mark: DecimalMark | None,
     explained: tuple[str, ...],
     kinds: tuple[str, ...],
     degree: int | None,
@@ -46,19 +51,19 @@ def judge(
     options on tables are for bare tables; a study states them itself.
     """
     from convergence.cli import _judging, _said
-    from convergence.cli._explain import explain, require_known
+    from convergence.cli._explain import explain, names_of, require_known
     from convergence.cli._forms import forms_of
     from convergence.cli._report import report, say_where
     from convergence.cli._show import show, show_json
     from convergence.intake._raw_table import Place
 
-    chosen = forms_of(forms)
+    chosen = forms_of(forms, mark)
     place = Place(sheet, area, decimal)
     said = _said.Said(
         _said.kinds_of(kinds), degree, _said.tolerance_of(tolerance), dimension, place, case_column
     )
     judged = _judging.judge_paths(inputs, said)
-    require_known(explained, judged)
+    require_known(explained, names_of(judged))
     if as_json:
         show_json(judged)
     for number, one in enumerate(judged):

@@ -96,12 +96,16 @@ class Solution:
 
     def reaction(self, support: str, about: tuple[float, ...] | None = None) -> np.ndarray:
         """Return force and moment of a support on the part, as `resultant`."""
+        return self.resultant(self.reactions_of(support), about)
+
+    def reactions_of(self, support: str) -> np.ndarray:
+        """Return the nodal forces of one support on the part."""
         if support in self.foundations:
-            return self.resultant(-(self.foundations[support] @ self.unknowns), about)
+            return np.asarray(-(self.foundations[support] @ self.unknowns))
         turned = self.held.turned(self.holding)
         forces = np.zeros_like(turned)
         forces[self.held.by_support[support]] = turned[self.held.by_support[support]]
-        return self.resultant(self.held.back(forces), about)
+        return self.held.back(forces)
 
     def resultant(self, forces: np.ndarray, about: tuple[float, ...] | None = None) -> np.ndarray:
         """Return force and moment about a point (the origin) of interleaved nodal forces.

@@ -1,7 +1,9 @@
 """Axes that all figures share: cell size with its levels, values with honest ticks."""
 
+import itertools
 import math
-from collections.abc import Sequence
+import unicodedata
+from collections.abc import Mapping, Sequence
 from typing import TYPE_CHECKING
 
 import numpy as np
@@ -13,6 +15,8 @@ if TYPE_CHECKING:
     from matplotlib.axes import Axes
 
 
+# points on the page: from the coarsest to the finest level in the narrowest axes, a character, between labels
+SHORTEST, CHARACTER, BETWEEN = 185.0, 5.0, 5.0
 # steps of a decade on a log axis, each up to so many decades
 STEPS = ((1.0, math.inf), (1.5, 1.3), (2.0, 2.5), (3.0, 1.3), (5.0, 2.5), (7.0, 1.3))
 
@@ -24,13 +28,12 @@ def cell_size_axis(axes: "Axes", ladder: Ladder, unit: str) -> None:
     axes.set_xscale("log")
     axes.set_xlim(h.max() * pad, h.min() / pad**2)
     axes.set_xlabel(f"cell size h{bracket(unit)}, finer to the right")
-    ticks = _apart([float(value) for value in h])
-    _fix(axes, "x", ticks, [numbers.compact(value, 3) for value in ticks])
-    cells = {level.h: level.cells for level in ladder.levels if level.cells > 0}
-    shown = [value for value in ticks if value in cells]
-    if shown:
+    ticks = _apart({float(value): numbers.compact(float(value), 3) for value in h})
+    _fix(axes, "x", list(ticks), list(ticks.values()))
+    cells = _apart({level.h: _cells(level.cells) for level in ladder.levels if level.cells > 0})
+    if cells:
         top = axes.secondary_xaxis("top")
-        top.set_xticks(shown, [_cells(cells[value]) for value in shown])
+        top.set_xticks(list(cells), list(cells.values()))
         top.minorticks_off()
         top.set_xlabel("cells")
 
@@ -39,14 +42,18 @@ def _cells(number: int) -> str:
     return numbers.count(number) if number < 1_000_000 else f"{numbers.compact(number / 1e6, 3)} M"
 
 
-def _apart(values: Sequence[float]) -> list[float]:
-    """Return the values, finest first, that leave room for a label between them on a log axis."""
-    ordered = sorted(set(values))
-    room = 0.11 * math.log(ordered[-1] / ordered[0])
-    kept = ordered[:1]
+def _apart(labels: Mapping[float, str]) -> dict[float, str]:
+    """Return the labels by value, finest first, that leave room between them on a log axis."""
+    ordered = sorted(value for value in labels if math.isfinite(value) and value > 0)
+    if not ordered:
+        return {}
+    length = SHORTEST / (math.log(ordered[-1] / ordered[0]) or 1.0)
+    kept = {ordered[0]: labels[ordered[0]]}
     for value in ordered[1:]:
-        if math.log(value / kept[-1]) >= room:
-            kept.append(value)
+        last = next(reversed(kept))
+        needed = 0.5 * CHARACTER * (len(kept[last]) + len(labels[value])) + BETWEEN
+        if length * math.log(value / last) >= needed:
+            kept[value] = labels[value]
     return kept
 
 
@@ -90,8 +97,20 @@ def bracket(unit: str) -> str:
 
 
 def middle(name: str, most: int = 42) -> str:
-    """Shorten a long name in the middle, where names differ least."""
-    if len(name) <= most:
+    """Shorten a long name in the middle, where names differ least, to the width of `most` common letters."""
+    if sum(map(_width, name)) <= most:
         return name
-    half = (most - 1) // 2
-    return f"{name[:half]}…{name[-half:]}"
+    half = (most - 1) / 2
+    return f"{_beginning(name, half)}…{_beginning(name[::-1], half)[::-1]}"
+
+
+def _beginning(name: str, most: float) -> str:
+    widths = itertools.accumulate(map(_width, name))
+    return name[: sum(1 for _ in itertools.takewhile(lambda width: width <= most, widths))]
+
+
+def _width(letter: str) -> float:
+    """Return about how wide a letter is, in common ones."""
+    if unicodedata.east_asian_width(letter) in "WF":
+        return 2.0
+    return 1.7 if letter in "MW@%mw" else 1.2 if letter.isupper() else 1.0

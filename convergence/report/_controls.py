@@ -6,10 +6,10 @@ from collections.abc import Iterator, Sequence
 from convergence.report._markup import element, text
 from convergence.report.content import Cell, Document, Heading, Section, Table, lines, pictures_of
 
-FILTERED = ("statement", "matrix")  # kinds of tables whose rows have verdicts
+FILTERED = ("statement", "matrix", "words")  # kinds of tables whose rows have verdicts
 KEYS = (  # what each key does, and for what it is needed
     ("n p", "next, previous section", "sections"),
-    ("j k", "next, previous quantity", "parts"),
+    ("j k", "next, previous part", "parts"),
     ("x", "axis of the figures", "figures"),
     ("← →", "along the levels of a figure", "figures"),
     ("1 … 9", "a verdict on or off", "filter"),
@@ -19,8 +19,9 @@ KEYS = (  # what each key does, and for what it is needed
 
 
 def contents(document: Document) -> str:
-    """Return links to the sections and, inside them, to the parts that have a verdict."""
-    items = [_item(section) for section in document.sections]
+    """Return links to the sections and, inside them, to the parts that have a verdict; first the way up."""
+    up = [element("li", {}, element("a", {"href": document.up}, "All cases"))] if document.up else []
+    items = [*up, *(_item(section) for section in document.sections)]
     return element("nav", {"aria-label": "Contents"}, element("ul", {}, *items))
 
 
@@ -45,7 +46,7 @@ def controls(document: Document) -> str:
         {"class": "controls", "role": "region", "aria-label": "View", "hidden": ""},
         *filtered,
         page,
-        element("p", {"role": "status"}, ""),
+        element("div", {"class": "note"}, element("p", {"role": "status"}, ""), _reset()),
         element("p", {"class": "keys"}, f"Keys: {keys}."),
     )
 
@@ -105,6 +106,10 @@ def _verdicts(document: Document) -> Counter[tuple[str, str]]:
 
 def _marks(row: Sequence[Cell]) -> Iterator[tuple[str, str]]:
     return ((line.text, line.look) for cell in row for line in lines(cell) if line.look)
+
+
+def _reset() -> str:
+    return element("button", {"type": "button", "data-reset": "", "hidden": ""}, "show all")
 
 
 def _switch(what: str, word: str, on: bool) -> str:

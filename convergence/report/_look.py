@@ -32,9 +32,10 @@ nav a[aria-current] { box-shadow: 0 3px 0 -1px var(--ink); }
 .controls { display: flex; flex-wrap: wrap; gap: .5rem 1.3rem; align-items: center; max-width: 66rem;
   margin: 0 auto; padding: .6rem 1.25rem 0; font-size: .8rem; color: var(--soft); }
 .controls p { margin: 0; max-width: none; }
+.note { display: flex; flex-wrap: wrap; gap: .35rem .8rem; align-items: center; color: var(--ink); }
 [role=group]:has(> button) { display: flex; flex-wrap: wrap; gap: .35rem; align-items: center; }
 .axis { font-size: .8rem; color: var(--soft); margin: 1.2rem 0 .6rem; }
-button { font-size: .8rem; line-height: 1.5; padding: 0 .6rem; cursor: pointer; color: var(--ink);
+button { font-size: .8rem; min-height: 1.5rem; padding: 0 .6rem; cursor: pointer; color: var(--ink);
   background: none; border: 1px solid var(--soft); border-radius: 3px; }
 button[aria-pressed=true]:not(.verdict) { background: var(--ink); border-color: var(--ink);
   color: var(--paper); }
@@ -83,6 +84,7 @@ table.statement tbody th, table.matrix tbody th { min-width: 9.5rem; max-width: 
 figure { margin: 1rem 0; min-width: 0; } .pictures figure { margin: 0; }
 .card { background: #fff; border: 1px solid var(--line); border-radius: 4px; padding: .5rem; }
 .card svg { display: block; width: 100%; height: auto; }
+.card path, .card use, .card image { pointer-events: none; }
 .level { outline: none; } .ring { fill: transparent; stroke-width: 1.6; }
 .level:hover .ring, .level:focus .ring { stroke: #0072b2; }
 .hint { position: fixed; z-index: 3; max-width: min(24rem, calc(100vw - 1rem)); padding: .25rem .6rem;
@@ -92,11 +94,24 @@ figcaption { color: var(--soft); font-size: .86rem; margin-top: .4rem; max-width
 .number { font-weight: 600; }
 details { margin: .4rem 0; } summary { cursor: pointer; color: var(--soft); font-size: .9rem; }
 pre { background: var(--tint); padding: .8rem 1rem; overflow-x: auto; font-size: .8rem; line-height: 1.4; }
-@media screen { table:not([class]) td { white-space: nowrap; } table.words td:nth-child(n+3),
+@media screen { td a, tbody th a { display: inline-block; min-height: 1.5rem; line-height: 1.5rem; }
+  .scroll { --shade: light-dark(#0000001c, #ffffff24); background:
+    linear-gradient(to right, var(--paper) 50%, transparent) local,
+    linear-gradient(to left, var(--paper) 50%, transparent) right local,
+    linear-gradient(to right, var(--shade), transparent),
+    linear-gradient(to left, var(--shade), transparent) right;
+    background-size: 2rem 100%, 2rem 100%, .7rem 100%, .7rem 100%; background-repeat: no-repeat; }
+  table:not([class]) td { white-space: nowrap; } table.words td:nth-child(n+3),
   table.methods td:last-child { min-width: 15rem; }
   .filtered, [data-axis=value] figure[data-axis=error],
   [data-axis=error] figure[data-axis=value] { display: none; }
   section:last-child { min-height: calc(100vh - var(--bar)); } }
+@media screen and (max-width: 40rem) { table.words tbody th { min-width: 4.5rem; }
+  table.words td:last-child { min-width: 11.5rem; }
+  table.words td:nth-child(3):last-child { min-width: 7.5rem; } }
+@media screen and (max-width: 83.99rem) { .note:has(button:not([hidden])) { position: fixed; z-index: 2;
+  right: .5rem; bottom: .5rem; padding: .4rem .7rem; background: var(--paper); border-radius: 3px;
+  border: 1px solid var(--soft); } }
 @media screen and (max-width: 60rem) { table { font-size: .78rem; } th, td { padding-right: .6rem; } }
 @media screen and (hover: none) and (pointer: coarse) { .keys, [data-switch=keys] { display: none; } }
 @media screen and (min-width: 84rem) { :root { --bar: 1rem; }
@@ -112,7 +127,7 @@ pre { background: var(--tint); padding: .8rem 1rem; overflow-x: auto; font-size:
   nav a[aria-current] { box-shadow: none; border-color: var(--ink); color: var(--ink); font-weight: 600; }
   .controls { flex-direction: column; align-items: stretch; gap: .6rem; margin: 0;
     padding: .9rem 1.25rem 1rem; border-top: 1px solid var(--line); }
-  main { width: 100%; padding: 1.5rem 2rem 5rem; } }
+  main { width: 100%; max-width: 78rem; padding: 1.5rem 2rem 5rem; } .pictures { max-width: 66rem; } }
 @page { margin: 16mm 14mm 18mm; @bottom-right { content: counter(page); font-size: 8pt; } }
 @media print { :root, :root[data-scheme] { color-scheme: light; }
   .side, .axis, .skip, .hint { display: none; } :focus-visible { outline: none; }

@@ -19,18 +19,19 @@
   // verdicts: what has none but those that are off is hidden, on the screen only
   const filters = all("[data-show]");
   const note = document.querySelector("[role=status]");
-  const count = (items, what) => {
-    const hidden = items.filter((item) => item.classList.contains("filtered")).length;
-    return items.length && hidden ? [`${hidden} of ${items.length} ${what}`] : [];
-  };
+  const reset = document.querySelector("[data-reset]");
+  const parts = all(".part");
+  const told = parts.length ? parts : all("tr[data-verdict]");
   const filter = () => {
     const off = filters.filter((button) => !isPressed(button)).map((button) => button.dataset.show);
     for (const item of all("[data-verdict]")) {
       const words = item.dataset.verdict.split("|");
       item.classList.toggle("filtered", words.every((word) => off.includes(word)));
     }
-    const hidden = [...count(all(".part"), "quantities"), ...count(all("tr[data-verdict]"), "rows")];
-    note.textContent = hidden.length ? `Hidden: ${hidden.join(", ")}.` : "";
+    const shown = told.filter((item) => !item.classList.contains("filtered")).length;
+    note.textContent = off.length ? `${shown} of ${told.length} shown` : "";
+    if (!off.length && document.activeElement === reset) filters[0].focus();
+    reset.hidden = !off.length;
   };
   const turnFilter = (button) => {
     if (!button) return;
@@ -70,7 +71,7 @@
     next.focus({ preventScroll: true });
   };
   const bar = document.querySelector("nav");
-  const links = all("nav a");
+  const links = all("nav a[href^='#']");
   const targets = links.map((link) => document.getElementById(link.hash.slice(1)));
   const showPlace = () => {
     const at = targets.findLastIndex((item) => isSeen(item) && edge(item) <= 40);
@@ -81,7 +82,7 @@
     bar.scrollTo(link.offsetLeft - bar.clientWidth / 2, link.offsetTop - bar.clientHeight / 2);
   };
 
-  // what a level is, at the pointer or the focus; arrows go from level to level
+  // what a mark of a figure is, at the pointer or the focus; arrows go from mark to mark
   const hint = document.createElement("div");
   hint.className = "hint";
   hint.setAttribute("role", "tooltip");
@@ -154,6 +155,7 @@
     const button = target.closest("button");
     if (button?.dataset.show) turnFilter(button);
     else if (button?.dataset.axisOf) showAxis(button.dataset.axisOf, button);
+    else if (button === reset) showAll();
     else if (button === dark) turnScheme();
     else if (button === keys) turnKeys();
   });

@@ -17,6 +17,7 @@ if TYPE_CHECKING:
     from matplotlib.figure import Figure
 
 BLUE, RED, GREEN, GREY, INK = "#0072b2", "#d55e00", "#00795a", "#6b6b6b", "#1a1a1a"
+RED_TEXT = "#a84800"  # RED as dark as text must be: WCAG 2.1, success criterion 1.4.3
 
 STYLE: dict[str, Any] = {
     "font.family": "DejaVu Sans",
@@ -50,19 +51,20 @@ STYLE: dict[str, Any] = {
     "text.parse_math": False,
 }
 DOTS_PER_INCH = 180
-LEVELS = "levels"  # gid of the artist whose marks have hints
+LEVELS = "levels"  # beginning of the gid of artists whose marks have hints
 COMPRESSION = 3  # of PNG, up to 9: more takes time and saves little
 
 
 Axis = Literal["", "value", "error"]
+Rewrite = Callable[[str], str]
 
 
 @dataclass(frozen=True)
 class Picture:
     """One figure: file stem, its words (alt, caption), SVG text, PNG bytes, inches.
 
-    `hints` say what each mark of the artist `LEVELS` stands for. Figures of one quantity on its `axis` of
-    values or of errors are two views of the same levels.
+    `hints` say what each mark of the artists `LEVELS` stands for, in the order in which they are drawn.
+    Figures of one quantity on its `axis` of values or of errors are two views of the same levels.
     """
 
     name: str
@@ -83,13 +85,15 @@ def draw(
     paint: Callable[["Figure"], None],
     hints: Iterable[str] = (),
     axis: Axis = "",
+    comma: Rewrite | None = None,
 ) -> Picture:
     """Let `paint` fill a new figure of `size` inches and return it in both formats.
 
+    `comma` rewrites what is written in the figure, not alt, caption and hints, which are the document's.
     The same input gives the same bytes: no date, ids salted by the name only.
     """
     with _no_collections():
-        svg, png = _drawn(name, size, paint)
+        svg, png = _drawn(name, size, paint, comma)
     svg = svg.replace("'DejaVu Sans'", "'DejaVu Sans', Verdana, sans-serif")
     return Picture(name, alt, caption, svg, png, size[0], tuple(hints), axis)
 
@@ -111,7 +115,9 @@ def _no_collections() -> Iterator[None]:
             gc.enable()
 
 
-def _drawn(name: str, size: tuple[float, float], paint: Callable[["Figure"], None]) -> tuple[str, bytes]:
+def _drawn(
+    name: str, size: tuple[float, float], paint: Callable[["Figure"], None], comma: Rewrite | None
+) -> tuple[str, bytes]:
     """Return SVG and PNG of a figure, laid out once for both."""
     import matplotlib
     from matplotlib.backends.backend_agg import FigureCanvasAgg
@@ -125,6 +131,8 @@ def _drawn(name: str, size: tuple[float, float], paint: Callable[["Figure"], Non
         figure = Figure(figsize=size, dpi=DOTS_PER_INCH)
         canvas: Any = FigureCanvasAgg(figure)
         paint(figure)
+        if comma:
+            _rewrite(figure, comma)
         _lay_out(figure)
         vector, pixels = io.StringIO(), io.BytesIO()
         canvas.draw()
@@ -133,6 +141,12 @@ def _drawn(name: str, size: tuple[float, float], paint: Callable[["Figure"], Non
         canvas = FigureCanvasSVG(figure)
         canvas.print_svg(vector, metadata={"Date": None, "Creator": None})
     return vector.getvalue(), pixels.getvalue()
+
+
+def _rewrite(figure: "Figure", comma: Rewrite) -> None:
+    from convergence.report._drawn_text import rewrite_text
+
+    rewrite_text(figure, comma)
 
 
 def _lay_out(figure: "Figure") -> None:

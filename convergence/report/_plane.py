@@ -8,9 +8,10 @@ import numpy as np
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
     from matplotlib.cm import ScalarMappable
-    from matplotlib.colors import Normalize
+    from matplotlib.colors import Colormap, Normalize
 
 PAGE_WIDTH = 9.4
+LEAST_WIDTH = 5.6  # inches of a picture with words in it: on paper narrower ones share a line, and shrink
 INK_OF_EDGES, INK_OF_OUTLINE, TINT = "#27425c", "#444444", "#d9d9d9"
 CLOSEST_EDGES = 2.5  # points on the page; closer ones print as a black patch
 
@@ -42,6 +43,11 @@ def panel(shape: float, most_width: float = 7.6, most_height: float = 4.6) -> tu
     return width, width / shape
 
 
+def points_per_length(points: np.ndarray, width: float) -> float:
+    """Return how many points of the page a length is, on a panel of that width in inches."""
+    return 72 * width / max(float(np.ptp(points[0])), 1e-300)
+
+
 def triangles(cells: np.ndarray) -> np.ndarray:
     """Return (t, 3) triangles; a quadrilateral becomes two, the second ones behind the first."""
     if len(cells) == 3:
@@ -53,7 +59,7 @@ def edge_length(points: np.ndarray, edges: np.ndarray, width: float) -> float:
     """Return the median length of an edge in points on a panel of that width in inches."""
     ends = points[:2, edges[[0, -1]]]
     length = float(np.median(np.hypot(*(ends[:, 0] - ends[:, 1]))))
-    return length * 72 * width / max(float(np.ptp(points[0])), 1e-300)
+    return length * points_per_length(points, width)
 
 
 def too_dense(points: np.ndarray, edges: np.ndarray, width: float) -> bool:
@@ -91,7 +97,12 @@ def tint(axes: "Axes", points: np.ndarray, boundary: np.ndarray) -> None:
 
 
 def nodal(
-    axes: "Axes", points: np.ndarray, cells: np.ndarray, values: np.ndarray, cmap: str, norm: "Normalize"
+    axes: "Axes",
+    points: np.ndarray,
+    cells: np.ndarray,
+    values: np.ndarray,
+    cmap: "str | Colormap",
+    norm: "Normalize",
 ) -> "ScalarMappable":
     """Draw values at the nodes as colours, linear in each triangle."""
     from matplotlib.tri import Triangulation
@@ -103,7 +114,12 @@ def nodal(
 
 
 def cellwise(
-    axes: "Axes", points: np.ndarray, cells: np.ndarray, values: np.ndarray, cmap: str, norm: "Normalize"
+    axes: "Axes",
+    points: np.ndarray,
+    cells: np.ndarray,
+    values: np.ndarray,
+    cmap: "str | Colormap",
+    norm: "Normalize",
 ) -> "ScalarMappable":
     """Draw one value a cell as colours, with no seams between the cells."""
     flat = triangles(cells)
@@ -115,7 +131,7 @@ def cellwise(
 def outline(axes: "Axes", points: np.ndarray, boundary: np.ndarray, line: str, ink: str) -> None:
     """Draw the boundary segments; they are chained, so that dashes run on from one to the next."""
     for chain in _chains(boundary):
-        axes.plot(*points[:, chain], line, color=ink, linewidth=0.8, zorder=2)
+        axes.plot(*points[:, chain], line, color=ink, linewidth=0.8, zorder=2, solid_capstyle="round")
 
 
 def _chains(boundary: np.ndarray) -> list[list[int]]:

@@ -13,7 +13,7 @@ from convergence.report._sight import Sight
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
     from matplotlib.cm import ScalarMappable
-    from matplotlib.colors import Normalize
+    from matplotlib.colors import Colormap, Normalize
 
 DOTS_PER_INCH = 200  # of a solid's surface
 INK_ON_COLOURS = "#a0a0a0"  # for lines across a solid's surface: readable on the dark and the bright end
@@ -58,7 +58,18 @@ def mesh(axes: "Axes", drawn: Scene, width: float) -> None:
         outline(axes, drawn, _plane.INK_OF_OUTLINE)
 
 
-def nodal(axes: "Axes", drawn: Scene, values: np.ndarray, cmap: str, norm: "Normalize") -> "ScalarMappable":
+def plain(axes: "Axes", drawn: Scene) -> None:
+    """Draw the tinted part with its outline."""
+    if drawn.seen:
+        _space.grey(axes, drawn.seen)
+    else:
+        _plane.tint(axes, drawn.points, drawn.field.boundary)
+    outline(axes, drawn, _plane.INK_OF_OUTLINE)
+
+
+def nodal(
+    axes: "Axes", drawn: Scene, values: np.ndarray, cmap: "str | Colormap", norm: "Normalize"
+) -> "ScalarMappable":
     """Draw values at the nodes (n,) as colours."""
     if drawn.seen:
         return _space.image(axes, drawn.seen, drawn.seen.nodal(values), cmap, norm)
@@ -66,7 +77,7 @@ def nodal(axes: "Axes", drawn: Scene, values: np.ndarray, cmap: str, norm: "Norm
 
 
 def cellwise(
-    axes: "Axes", drawn: Scene, values: np.ndarray, cmap: str, norm: "Normalize"
+    axes: "Axes", drawn: Scene, values: np.ndarray, cmap: "str | Colormap", norm: "Normalize"
 ) -> "ScalarMappable":
     """Draw one value a cell (m,) as colours; of a solid, one a face of its surface."""
     if drawn.seen:

@@ -11,7 +11,7 @@ from convergence.report._sight import Sight, sight
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
-    from matplotlib.colors import Normalize
+    from matplotlib.colors import Colormap, Normalize
     from matplotlib.image import AxesImage
 
 # towards the eye, the four from above first; y is up on the page, as in pictures of plane parts
@@ -74,7 +74,9 @@ def _normals(corners: np.ndarray) -> np.ndarray:
     return np.cross(a, b, axis=0)
 
 
-def image(axes: "Axes", seen: Sight, pixels: np.ndarray, cmap: str, norm: "Normalize") -> "AxesImage":
+def image(
+    axes: "Axes", seen: Sight, pixels: np.ndarray, cmap: "str | Colormap", norm: "Normalize"
+) -> "AxesImage":
     """Draw values in the pixels of a sight."""
     return axes.imshow(
         np.ma.masked_invalid(pixels), origin="lower", extent=seen.extent, cmap=cmap, norm=norm, zorder=0

@@ -32,7 +32,7 @@ POLICY = (
     "default-src 'none'; img-src data:; style-src 'unsafe-inline'; script-src 'sha256-{}';"
     " base-uri 'none'; form-action 'none'"
 )
-REACH = 9  # radius around a level that answers to the pointer, in points of the figure
+REACH, CROWDED = (9, 4), 60  # radius around a mark that answers to the pointer, less where there are many
 LONGEST_WORD = 40  # characters; longer ones may be broken anywhere
 MARK = re.compile(r'<use [^>]*\bx="([-\d.]+)" y="([-\d.]+)"[^>]*/>')
 
@@ -103,7 +103,8 @@ def _block(block: Block, numbers: Numbers) -> str:
             mark = [] if block.mark is None else [_words(block.mark)]
             return element("h3", {"id": block.anchor} if block.anchor else {}, text(block.text), *mark)
         case Paragraph(kind="quote"):
-            return element("blockquote", {}, element("p", {}, text(block.text)))
+            spoken = [block.verdict] if block.verdict else []
+            return element("blockquote", tagged(spoken), element("p", {}, text(block.text)))
         case Paragraph():
             return element("p", {"class": block.kind} if block.kind else {}, text(block.text))
         case Bullets():
@@ -191,18 +192,24 @@ def _inline(picture: Picture) -> str:
     body = re.sub(r'(\bid="|url\(#|href="#)', rf"\g<1>{picture.name}-", body)
     role = "group" if picture.hints else "img"
     body = body.replace("<svg ", f'<svg role="{role}" aria-label="{attribute(picture.alt)}" ', 1).strip()
-    return _hinted(body, f'<g id="{picture.name}-{LEVELS}">', picture.hints)
+    return _hinted(body, f'<g id="{picture.name}-{LEVELS}', picture.hints) if picture.hints else body
 
 
 def _hinted(svg: str, start: str, hints: Sequence[str]) -> str:
-    """Return the SVG with a hint at each mark of the group that begins with `start`."""
-    before, found, after = svg.partition(start)
-    marks, end, rest = after.partition("</g>")
+    """Return the SVG with a hint at each mark of the groups that begin with `start`, in their order.
+
+    Where not all marks were drawn there is no hint: none may stand at the mark of another.
+    """
+    before, *groups = svg.split(start)
+    parts = [group.partition("</g>") for group in groups]
+    if sum(len(MARK.findall(marks)) for marks, _, _ in parts) != len(hints):
+        return svg
     texts = iter(hints)
+    reach = str(REACH[len(hints) > CROWDED])
 
     def hint(mark: re.Match[str]) -> str:
-        ring = {"class": "ring", "cx": mark[1], "cy": mark[2], "r": str(REACH)}
+        ring = {"class": "ring", "cx": mark[1], "cy": mark[2], "r": reach}
         title = element("title", {}, attribute(next(texts)))
         return element("g", {"class": "level", "role": "img"}, title, mark[0], element("circle", ring))
 
-    return before + found + MARK.sub(hint, marks, count=len(hints)) + end + rest if hints else svg
+    return start.join([before, *(MARK.sub(hint, marks) + end + rest for marks, end, rest in parts)])

@@ -2,11 +2,14 @@
 
 import json
 import tempfile
-from collections.abc import Iterator, Sequence
+from collections.abc import Sequence
 from pathlib import Path
 from typing import Any
 
+from convergence.report._columns import bands, is_narrow, shares
+from convergence.report._picture import Picture
 from convergence.report.content import (
+    FOOT,
     Block,
     Bullets,
     Cell,
@@ -18,50 +21,73 @@ from convergence.report.content import (
     Table,
     Verbatim,
     Words,
+    anchors_of,
     lines,
     pictures_of,
 )
 
 PAGE = Path(__file__).with_name("_page.typ")
 LONGEST_WORD = 18  # characters; longer ones may be broken
-LONGEST_TITLE = 90
-SHORT, LONG = 18, 250  # characters of a cell of words: never broken into lines; as many as count
+ROOM, ROOM_OF_TWO, HIGHEST = (
+    170,
+    82,
+    150,
+)  # mm: between the margins, for each of two pictures; how high one is
+WIDEST, NARROW = 6.7, 5.5  # inches: pictures that fill the page, or half of it
+WHOLE, WHOLE_SIZE = 10, 3000  # rows and characters of a table that is not parted
+SHORT, LONG = 22, 250  # characters of a cell of words: never broken into lines; as many as count
 BREAK = "\N{ZERO WIDTH SPACE}"
 
 
 def as_pdf(document: Document) -> bytes:
-    """Return the file; the same document gives the same bytes."""
+    """Return the file; the same document gives the same bytes.
+
+    Signs that the fonts of the figures lack (emoji, Chinese) are set in a font of the machine, if it has one.
+    """
     import typst
 
+    fonts = _fonts()
     with tempfile.TemporaryDirectory() as folder:
         root = Path(folder)
-        for picture in pictures_of(document):
-            (root / f"{picture.name}.svg").write_text(picture.svg, encoding="utf-8")
-        (root / "content.json").write_text(json.dumps(_document(document)), encoding="utf-8")
+        texts = {f"{picture.name}.svg": picture.svg for picture in pictures_of(document)}
+        texts["content.json"] = json.dumps(_document(document), ensure_ascii=False)
+        for name, text in texts.items():
+            (root / name).write_text(text, encoding="utf-8")
         page = root / PAGE.name
         page.write_bytes(PAGE.read_bytes())
         made: bytes = typst.compile(
-            str(page), root=str(root), font_paths=[_fonts()], ignore_system_fonts=True, timestamp=0
+            str(page),
+            root=str(root),
+            font_paths=[str(fonts)],
+            ignore_system_fonts=_is_covered("".join(texts.values()), fonts),
+            timestamp=0,
         )
         return made
 
 
-def _fonts() -> str:
+def _fonts() -> Path:
     """Return the folder of the fonts of the figures, which come with matplotlib."""
     import matplotlib
 
-    return str(Path(matplotlib.get_data_path()) / "fonts" / "ttf")
+    return Path(matplotlib.get_data_path()) / "fonts" / "ttf"
+
+
+def _is_covered(text: str, fonts: Path) -> bool:
+    """Return whether the fonts of the figures have all signs of a text."""
+    from matplotlib.ft2font import FT2Font
+
+    drawn = {ord(sign) for sign in set(text) if not sign.isspace() and sign.isprintable()}
+    return drawn <= FT2Font(str(fonts / "DejaVuSans.ttf")).get_charmap().keys()
 
 
 def _document(document: Document) -> dict[str, Any]:
-    anchors = {section.anchor for section in document.sections} | set(_anchors(document))
-    title = document.title if len(document.title) <= LONGEST_TITLE else document.title[:LONGEST_TITLE] + "…"
+    anchors = anchors_of(document)
     return {
         "name": document.title,
         "title": _plain(document.title),
-        "running": _plain(title),
+        "running": _plain(document.running),
         "about": _plain(document.about),
-        "foot": "Discretization error is one part of the uncertainty of a result.",
+        "foot": FOOT,
         "sections": [
             {
                 "anchor": section.anchor,
@@ -71,17 +97,6 @@ def _document(document: Document) -> dict[str, Any]:
             for section in document.sections
         ],
     }
-
-
-def _anchors(document: Document) -> Iterator[str]:
-    """Yield what can be led to beside sections."""
-    for section in document.sections:
-        for block in section.blocks:
-            if isinstance(block, Heading) and block.anchor:
-                yield block.anchor
-            if isinstance(block, Table):
-                cells = (cell for row in block.rows for cell in row)
-                yield from (words.anchor for cell in cells for words in lines(cell) if words.anchor)
 
 
 def _block(block: Block, anchors: set[str]) -> dict[str, Any]:
@@ -96,40 +111,68 @@ def _block(block: Block, anchors: set[str]) -> dict[str, Any]:
         case Table():
             return _table(block, anchors)
         case Figures():
-            drawn = [
-                {
-                    "file": f"{picture.name}.svg",
-                    "alt": picture.alt,
-                    "caption": _plain(picture.caption),
-                    "width": picture.width,
-                }
-                for picture in block.pictures
-            ]
-            return {"kind": "figures", "pictures": drawn}
+            return _figures(block.pictures)
         case Verbatim():
-            return {"kind": "verbatim", "lines": [_plain(line) for line in block.text.splitlines()]}
+            columns = block.columns() if block.is_narrow else [(block.text,)]
+            parts = [[[_plain(line) for line in text.splitlines()] for text in row] for row in columns]
+            return {"kind": "verbatim", "parts": parts}
         case Details():
             inner = [_block(each, anchors) for each in block.blocks]
-            return {"kind": "details", "summary": _plain(block.summary), "blocks": inner}
+            summary = "" if block.is_captioned else _plain(block.summary)
+            return {"kind": "details", "summary": summary, "blocks": inner}
+
+
+def _figures(pictures: Sequence[Picture]) -> dict[str, Any]:
+    """Return pictures two in a row; one that is wide has the room of both."""
+    is_wide = len(pictures) == 1 and pictures[0].width > NARROW
+    room = ROOM if is_wide else ROOM_OF_TWO
+    drawn = [
+        {
+            "file": f"{picture.name}.svg",
+            "alt": picture.alt,
+            "caption": _plain(picture.caption),
+            "share": min(
+                1.0, picture.width / WIDEST if is_wide else 1.0, HIGHEST / (room * _tallness(picture))
+            ),
+        }
+        for picture in pictures
+    ]
+    rows = [drawn[at : at + 2] for at in range(0, len(drawn), 2)]
+    return {"kind": "figures", "wide": is_wide, "rows": rows}
+
+
+def _tallness(picture: Picture) -> float:
+    """Return height over width of a picture, from the head of its PNG."""
+    width, height = (int.from_bytes(picture.png[at : at + 4]) for at in (16, 20))
+    return height / width
 
 
 def _table(table: Table, anchors: set[str]) -> dict[str, Any]:
-    columns = list(zip(table.head, *table.rows, strict=True))
-    ends_in_words = table.kind in ("words", "methods")
+    parts = bands(table)
+    size = sum(len(words.text) for row in table.rows for cell in row for words in lines(cell))
     return {
         "kind": "table",
         "caption": _plain(table.caption),
-        "head": [_plain(name) for name in table.head],
-        "rows": [[_cell(cell, anchors) for cell in row] for row in table.rows],
-        "left": [table.is_words(x) for x in range(len(table.head))],
-        "shares": [_share(column) if ends_in_words else 0 for column in columns],
+        "whole": len(parts) * len(table.rows) <= WHOLE and size <= WHOLE_SIZE,
+        "bands": [
+            {
+                "head": [_plain(name) for name in part.head],
+                "rows": [[_cell(cell, anchors) for cell in row] for row in part.rows],
+                "left": [part.is_words(x) for x in range(len(part.head))],
+                "shares": _shares(part),
+            }
+            for part in parts
+        ],
     }
 
 
-def _share(column: Sequence[Cell]) -> float:
-    """Return the share of the width that a column of words has, 0 for one that is as wide as its words."""
-    longest = max(len(words.text) for cell in column for words in lines(cell))
-    return 0 if longest <= SHORT else min(longest, LONG) ** 0.5
+def _shares(table: Table) -> list[float]:
+    """Return the share of each column of the width that is left, 0 for one that is as wide as its words."""
+    columns = list(zip(table.head, *table.rows, strict=True))
+    if table.kind in ("words", "methods"):
+        longest = [max(len(words.text) for cell in column for words in lines(cell)) for column in columns]
+        return [0 if length <= SHORT else min(length, LONG) ** 0.5 for length in longest]
+    return [0] * len(columns) if is_narrow(table) else shares(table)
 
 
 def _cell(cell: Cell, anchors: set[str]) -> list[dict[str, Any]]:

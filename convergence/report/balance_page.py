@@ -5,6 +5,7 @@ from pathlib import Path
 from typing import Any
 
 from convergence.report import records
+from convergence.report._decimal_comma import given_names
 from convergence.report._picture import Picture
 from convergence.report._words import sentence
 from convergence.report.content import (
@@ -16,6 +17,7 @@ from convergence.report.content import (
     Paragraph,
     Section,
     Table,
+    Words,
     mark,
 )
 from convergence.report.figures_balance import balance_figure
@@ -25,14 +27,17 @@ from convergence.report.sections_balance import LOOKS, balance_part
 from convergence.report.sections_closing import caution_section, trace_section
 from convergence.statics import SEVERITY, Balance, finding
 
+CASE = "case-"  # what the id of a case's part begins with
+
 
 def write_balances(
     found: Mapping[str, Balance], folder: Path, *, name: str, command: str, date: str, forms: Forms = HTML
 ) -> list[Path]:
     """Write the forms, balance.json and figures/ into the folder; return the paths of the forms."""
+    names = _given(found, name)
     stem = stems([f"{case or name} balance" for case in found])
     drawn = {
-        case: balance_figure(one, balance)
+        case: balance_figure(one, balance, forms.comma(names))
         for one, (case, balance) in zip(stem.values(), found.items(), strict=True)
     }
     order = worst_first(found)
@@ -46,7 +51,13 @@ def write_balances(
     title = f"Equilibrium of {name}"
     record = {**balances_object(found), "versions": records.versions()}
     document = Document(title, f"Loads and reactions of {source}. {date}", sections)
-    return write_document(document, folder, ("balance.json", record), date, forms)
+    return write_document(document, folder, ("balance.json", record), date, forms, names)
+
+
+def _given(found: Mapping[str, Balance], name: str) -> frozenset[str]:
+    """Return what the table names: itself, load cases, loads and reactions."""
+    rows = {row for balance in found.values() for row in balance.actions.names}
+    return given_names([], "", [name, next(iter(found.values())).printout.source, *found, *rows])
 
 
 def balances_object(found: Mapping[str, Balance]) -> dict[str, Any]:
@@ -80,7 +91,7 @@ def overall(found: Mapping[str, Balance]) -> str:
 
 def _statement(found: Mapping[str, Balance], order: list[str]) -> Section:
     rows: list[list[Cell]] = [
-        [case or "all rows", mark(word, LOOKS[word]), finding(found[case])]
+        [_to(case, order), mark(word, LOOKS[word]), finding(found[case])]
         for case, word in ((case, found[case].worst.word) for case in order)
     ]
     remarks = next(iter(found.values())).printout.remarks
@@ -96,8 +107,14 @@ def _parts(
     found: Mapping[str, Balance], order: list[str], drawn: Mapping[str, Picture | None]
 ) -> list[Block]:
     parts: list[Block] = []
-    for case in order:
+    for number, case in enumerate(order, start=1):
         if case:
-            parts.append(Heading(case))
+            word = found[case].worst.word
+            parts.append(Heading(case, f"{CASE}{number}", mark(word, LOOKS[word])))
         parts += balance_part(found[case], drawn[case])
     return parts
+
+
+def _to(case: str, order: list[str]) -> Cell:
+    """Return the name of a case, which leads to its part."""
+    return Words(case, to=f"#{CASE}{1 + order.index(case)}") if case else "all rows"

@@ -1,12 +1,14 @@
 """The page of a study with load cases: one matrix of all verdicts, the largest values, the cases' reports."""
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from pathlib import Path
 from urllib.parse import quote
 
 from convergence.case_folders import case_folders
 from convergence.envelope import Envelope, envelope, worst_first
+from convergence.record import NOTHING, Record
 from convergence.report import _words, records
+from convergence.report._decimal_comma import given_names
 from convergence.report.content import (
     Block,
     Bullets,
@@ -20,7 +22,8 @@ from convergence.report.content import (
     mark,
 )
 from convergence.report.forms import HTML, Forms, write_document
-from convergence.report.sections_closing import caution_section, trace_section
+from convergence.report.sections_closing import caution_section, digests, trace_section
+from convergence.report.sections_record import record_section
 from convergence.report.sections_statement import never_covered
 from convergence.results import Findings, Quantity
 
@@ -45,11 +48,14 @@ def write_cases(
     study_name: str,
     command: str,
     date: str,
+    record: Record = NOTHING,
+    inputs: Sequence[Path] = (),
     forms: Forms = HTML,
 ) -> list[Path]:
     """Write the forms and findings.json of all cases; return the paths of the forms.
 
     The report of a case stands in its folder (`case_folders`) beside them; `loads` says what they differ in.
+    `record` is what the analyst states, `inputs` are the files that were read.
     """
     quantities = next(iter(cases.values())).quantities
     largest = {quantity.name: envelope(cases, quantity.name) for quantity in quantities}
@@ -57,6 +63,7 @@ def write_cases(
     sources = {findings.ladder.source for findings in cases.values()}
     if len(sources) == 1:
         facts["ladder"] = sources.pop()
+    facts |= digests(study_text, inputs)
     sections = [
         _statement(cases, quantities),
         _largest(cases, quantities, largest),
@@ -64,9 +71,13 @@ def write_cases(
         caution_section(),
         trace_section(facts, study_text),
     ]
-    record = {"title": title, **records.cases_object(cases), "versions": records.versions()}
+    sections.insert(
+        1, record_section(record, sections, Words("The reports of the cases", to="#cases", paged=True))
+    )
+    content = {"title": title, **records.cases_object(cases), "versions": records.versions()}
     document = Document(title, f"Discretization error of {study_name}. {date}", sections)
-    return write_document(document, folder, ("findings.json", record), date, forms)
+    names = given_names(cases.values(), study_text, [title, study_name, *cases])
+    return write_document(document, folder, ("findings.json", content), date, forms, names)
 
 
 def _statement(cases: Mapping[str, Findings], quantities: tuple[Quantity, ...]) -> Section:

@@ -1,6 +1,7 @@
 """The page of a comparison: which quantities of two ladders meet, and where they part."""
 
 from collections.abc import Mapping, Sequence
+from itertools import count
 from pathlib import Path
 from typing import Any
 
@@ -8,6 +9,7 @@ from convergence import numbers
 from convergence.comparison import Compared, Comparison
 from convergence.report import _trust, _words, records
 from convergence.report._compared import LOOKS, apart_text, comparison_object, overall, remarks, sentence
+from convergence.report._decimal_comma import DecimalComma, given_names
 from convergence.report._picture import Picture
 from convergence.report.content import (
     Block,
@@ -19,6 +21,7 @@ from convergence.report.content import (
     Paragraph,
     Section,
     Table,
+    Words,
     mark,
 )
 from convergence.report.figures_comparison import comparison_figure
@@ -41,18 +44,22 @@ def write_comparisons(
 
     `found` is by load case, "" where there are none.
     """
-    parts = [block for case, one in found.items() for block in _case(case, one)]
+    both = [findings for one in found.values() for findings in one.findings]
+    names = given_names(both, "", [title, *found, *(name for one in found.values() for name in one.names)])
+    comma = forms.comma(names)
+    anchors = _anchors(found)
+    parts = [block for case, one in found.items() for block in _case(case, one, anchors[case], comma)]
     first = next(iter(found.values()))
     facts = {"first": first.names[0], "second": first.names[1], "command": command, "date": date}
     sections = [
-        _statement(found),
+        _statement(found, anchors),
         Section("quantities", "Quantities", "Quantities", parts),
         caution_section(),
         trace_section(facts, ""),
     ]
     record = {**comparisons_object(found), "versions": records.versions()}
     document = Document(title, f"{' and '.join(first.names)} side by side. {date}", sections)
-    return write_document(document, folder, ("comparison.json", record), date, forms)
+    return write_document(document, folder, ("comparison.json", record), date, forms, names)
 
 
 def comparisons_object(found: Mapping[str, Comparison]) -> dict[str, Any]:
@@ -73,11 +80,18 @@ def compared_rows(found: Comparison) -> list[tuple[str, ...]]:
     ]
 
 
-def _statement(found: Mapping[str, Comparison]) -> Section:
+def _anchors(found: Mapping[str, Comparison]) -> dict[str, list[str]]:
+    """Return the ids of the parts of the quantities of each case."""
+    numbered = count(1)
+    return {case: [f"quantity-{next(numbered)}" for _ in one.compared] for case, one in found.items()}
+
+
+def _statement(found: Mapping[str, Comparison], anchors: Mapping[str, list[str]]) -> Section:
     parts: list[Block] = []
     for case, comparison in found.items():
         rows: list[list[Cell]] = [
-            [name, mark(word, LOOKS[word]), *rest] for name, word, *rest in compared_rows(comparison)
+            [Words(name, to=f"#{anchor}"), mark(word, LOOKS[word]), *rest]
+            for anchor, (name, word, *rest) in zip(anchors[case], compared_rows(comparison), strict=True)
         ]
         first, second = comparison.names
         parts += [
@@ -89,20 +103,22 @@ def _statement(found: Mapping[str, Comparison]) -> Section:
     return Section("statement", "Statement", "Statement", [*parts, Paragraph(NOTE, "tiny")])
 
 
-def _case(case: str, found: Comparison) -> list[Block]:
+def _case(case: str, found: Comparison, anchors: Sequence[str], comma: DecimalComma | None) -> list[Block]:
     """Return the evidence of one load case."""
     stem = stems([f"{case} {one.first.name}".strip() for one in found.compared])
     drawn = [
-        comparison_figure(f"{name}-comparison", found, one)
+        comparison_figure(f"{name}-comparison", found, one, comma)
         for name, one in zip(stem.values(), found.compared, strict=True)
     ]
-    parts = [_quantity(found, one, picture) for one, picture in zip(found.compared, drawn, strict=True)]
-    return [*([Heading(case)] if case else []), *(block for part in parts for block in part)]
+    blocks: list[Block] = []
+    for anchor, one, picture in zip(anchors, found.compared, drawn, strict=True):
+        title = f"{case}: {one.first.name}" if case else one.first.name
+        blocks += [Heading(title, anchor, mark(one.word, LOOKS[one.word])), *_quantity(found, one, picture)]
+    return blocks
 
 
 def _quantity(found: Comparison, one: Compared, picture: Picture | None) -> list[Block]:
     return [
-        Heading(one.first.name, mark=mark(one.word, LOOKS[one.word])),
         Paragraph(sentence(one, found.revisions)),
         *([Figures([picture])] if picture else []),
         Table("What each ladder says", SIDES, _sides(found, one)),

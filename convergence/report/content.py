@@ -3,10 +3,16 @@
 Each form (`as_html`, `as_pdf`, `as_docx`) makes the text safe in its own way.
 """
 
+from bisect import bisect_left, bisect_right
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
+from itertools import accumulate
 
 from convergence.report._picture import Picture
+
+FOOT = "Discretization error is one part of the uncertainty of a result."
+LONGEST_LINE, LONGEST_COLUMN = 60, 40  # characters of a line, lines of a column, where two stand side by side
+LONGEST_RUNNING = 90  # characters of a title at the head of every page
 
 
 @dataclass(frozen=True)
@@ -14,7 +20,8 @@ class Words:
     """A run of text: `to` is where it leads (#anchor or a page), `anchor` what leads here.
 
     With a `look` it is a mark, framed as the verdict of that name. `paged` says on which page what it leads
-    to stands, where there are pages.
+    to stands, where there are pages. What is `given` was written by somebody else: its numbers stay as they
+    are.
     """
 
     text: str
@@ -22,6 +29,7 @@ class Words:
     anchor: str = ""
     look: str = ""
     paged: bool = False
+    given: bool = False
 
 
 Line = str | Words
@@ -39,10 +47,14 @@ class Heading:
 
 @dataclass(frozen=True)
 class Paragraph:
-    """Running text; `kind` is "", "overall" (the conclusion), "quote" or "tiny"."""
+    """Running text; `kind` is "", "overall" (the conclusion), "quote" or "tiny".
+
+    `verdict` is the word of the one quantity of which it speaks, "" where it speaks of all.
+    """
 
     text: str
     kind: str = ""
+    verdict: str = ""
 
 
 @dataclass(frozen=True)
@@ -83,6 +95,30 @@ class Verbatim:
 
     text: str
 
+    @property
+    def is_narrow(self) -> bool:
+        """Return whether it may stand in two columns on paper: few lines are longer than one of them."""
+        rows = self.text.splitlines()
+        long = sum(len(row) > LONGEST_LINE for row in rows)
+        return 5 * long <= len(rows) and max(map(_height, rows), default=0) <= LONGEST_COLUMN
+
+    def columns(self) -> list[tuple[str, str]]:
+        """Return the text in pairs of columns of like height, each pair for a page at most."""
+        pairs: list[tuple[str, str]] = []
+        rows = self.text.splitlines()
+        while rows:
+            ends = list(accumulate(map(_height, rows)))
+            last = max(1, bisect_right(ends, 2 * LONGEST_COLUMN))
+            middle = bisect_left(ends, ends[last - 1] / 2) + 1
+            pairs.append(("\n".join(rows[:middle]), "\n".join(rows[middle:last])))
+            rows = rows[last:]
+        return pairs
+
+
+def _height(line: str) -> int:
+    """Return how many lines a line takes in a column."""
+    return max(1, -(-len(line) // LONGEST_LINE))
+
 
 @dataclass(frozen=True)
 class Details:
@@ -90,6 +126,12 @@ class Details:
 
     summary: str
     blocks: Sequence["Block"]
+
+    @property
+    def is_captioned(self) -> bool:
+        """Return whether its caption says what the summary does: on paper once is enough."""
+        first = self.blocks[0]
+        return isinstance(first, Table) and first.caption == self.summary
 
 
 Block = Heading | Paragraph | Bullets | Table | Figures | Verbatim | Details
@@ -107,11 +149,22 @@ class Section:
 
 @dataclass(frozen=True)
 class Document:
-    """A title, what the document is about in a line, and its sections."""
+    """A title, what the document is about in a line, and its sections.
+
+    `up` is the address of the document of all load cases, of which this one is a case.
+    """
 
     title: str
     about: str
     sections: Sequence[Section]
+
+    @property
+    def running(self) -> str:
+        """Return the title as it stands at the head of every page."""
+        whole = len(self.title) <= LONGEST_RUNNING
+        return self.title if whole else f"{self.title[:LONGEST_RUNNING]}…"
+
+    up: str = ""
 
 
 def mark(word: str, look: str = "") -> Words:
@@ -131,3 +184,14 @@ def pictures_of(document: Document) -> Iterator[Picture]:
         for block in section.blocks:
             if isinstance(block, Figures):
                 yield from block.pictures
+
+
+def anchors_of(document: Document) -> set[str]:
+    """Return every place of the document that can be led to."""
+    found = {section.anchor for section in document.sections}
+    for block in (block for section in document.sections for block in section.blocks):
+        if isinstance(block, Heading):
+            found.add(block.anchor)
+        if isinstance(block, Table):
+            found.update(words.anchor for row in block.rows for cell in row for words in lines(cell))
+    return found - {""}

@@ -7,6 +7,7 @@ import numpy as np
 
 from convergence import numbers
 from convergence.report import _trust, _words
+from convergence.report._level_words import level_values
 from convergence.results import Findings, Quantity, Verdict
 
 
@@ -21,6 +22,7 @@ def explanation(findings: Findings, name: str) -> list[str]:
         *_places(findings, name),
         *_checks(findings, name),
         *map(_words.sentence, verdict.reasons),
+        *_compared(quantity, verdict),
         f"Verdict: {verdict.word}; next: {_words.next_step(verdict, findings.ladder.h_unit)}.",
     ]
 
@@ -28,12 +30,8 @@ def explanation(findings: Findings, name: str) -> list[str]:
 def _values(findings: Findings, quantity: Quantity) -> Iterator[str]:
     ladder = findings.ladder
     values = ladder.column(quantity.name)
-    moves = np.abs(np.diff(values))
-    moves = moves[np.isfinite(moves) & (moves > 0.0)]
-    printed = 20.0 * ladder.resolution.get(quantity.name, 0.0)
-    step = max(float(moves.min()) if moves.size else abs(float(values[-1])) * 1e-3, printed)
     sizes = ", ".join(numbers.compact(float(h), 4) for h in ladder.h)
-    shown = ", ".join(numbers.rounded(float(value), step) for value in values)
+    shown = ", ".join(level_values(ladder, quantity, findings.verdicts[quantity.name].uncertainty))
     yield f"{numbers.several(len(values), 'level')}, h = {_words.with_unit(sizes, ladder.h_unit)}."
     yield f"Values: {_words.with_unit(shown, quantity.unit)}."
     if len(values) > 1:
@@ -58,6 +56,19 @@ def _interval(quantity: Quantity, verdict: Verdict) -> Iterator[str]:
     yield f"Interval ({known}): {_words.with_unit(reach, quantity.unit)}, best estimate {best}."
     if verdict.coverage:
         yield _trust.coverage_text(verdict)
+
+
+def _compared(quantity: Quantity, verdict: Verdict) -> Iterator[str]:
+    """Yield how far the interval reaches from the finest value, beside what is accepted."""
+    if not (math.isfinite(verdict.uncertainty) and math.isfinite(verdict.tolerance)):
+        return
+    shown, accepted = numbers.both_sides(verdict.uncertainty, verdict.tolerance)
+    finest, width, limit = (
+        _words.with_unit(number, quantity.unit) for number in (_words.finest_text(verdict), shown, accepted)
+    )
+    side = "within" if verdict.uncertainty <= verdict.tolerance else "more than"
+    reach = f"From {finest} on the finest mesh to the far end of the interval: {width}"
+    yield f"{reach}, {side} the accepted {limit}."
 
 
 def _places(findings: Findings, name: str) -> Iterator[str]:

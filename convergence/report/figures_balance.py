@@ -5,10 +5,11 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from convergence import numbers
+from convergence.report import _arrows
 from convergence.report._axes import bracket, middle
-from convergence.report._picture import BLUE, GREY, RED, Picture, draw
+from convergence.report._picture import GREY, LEVELS, Picture, Rewrite, draw
 from convergence.report._words import with_unit
-from convergence.statics import Actions, Balance, moment_unit
+from convergence.statics import COMPONENTS, Actions, Balance, moment_unit
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -19,10 +20,10 @@ NARROWEST = 0.4  # view over the widest one
 MOST_LABELS = 10
 MOST_DRAWN = 500
 RADIUS = 0.05  # of a moment's arrow over the extent of the points
-LOOKS = {True: ("loads", BLUE, "tail"), False: ("reactions", RED, "tip")}
+VIEWS = {(0, 2): (0, 0), (1, 2): (0, 1), (0, 1): (1, 0)}  # of a solid, with their places in the figure
 
 
-def balance_figure(stem: str, balance: Balance) -> Picture | None:
+def balance_figure(stem: str, balance: Balance, comma: Rewrite | None = None) -> Picture | None:
     """Return the figure of one load case, None where its table has no points."""
     if "Mz" not in balance.printout.components:
         return None
@@ -40,13 +41,36 @@ def balance_figure(stem: str, balance: Balance) -> Picture | None:
         figure.legend(handles, labels, loc="outside lower center", ncols=3)
 
     force = with_unit(numbers.compact(largest, 4), balance.printout.force_unit)
-    caption = f"Loads start at their points, reactions end there; an arrow of {force} is the longest one."
+    caption = (
+        "Loads (filled) start at their points, reactions (hollow) end there;"
+        f" an arrow of {force} is the longest one."
+    )
     if np.any(actions.moment):
         caption += " Round arrows: moments, not to scale."
     if len(actions.names) > MOST_LABELS:
         caption += f" {_how_many(len(actions.names), len(balance.actions.names))}, without their names."
     alt = f"Loads and reactions{f' of {balance.case}' if balance.case else ''}: {balance.worst.word}"
-    return draw(stem, (7.0, 6.6) if solid else (5.2, 4.4), alt, caption, paint)
+    hints = _hints(balance, actions) * (len(VIEWS) if solid else 1)
+    return draw(stem, (7.0, 6.6) if solid else (5.2, 4.4), alt, caption, paint, hints, comma=comma)
+
+
+def _hints(balance: Balance, actions: Actions) -> list[str]:
+    """Return what stands at each point: whose it is, forces and moments that are not zero, the place."""
+    printout = balance.printout
+    units = [printout.force_unit] * 3 + [moment_unit(printout)] * 3
+    hints = []
+    for row, name in enumerate(actions.names):
+        parts = [*actions.force[:, row], *actions.moment[:, row]]
+        said = [
+            f"{part} {with_unit(numbers.compact(float(size), 5), unit)}"
+            for part, size, unit in zip(COMPONENTS, parts, units, strict=True)
+            if size
+        ]
+        place = ", ".join(numbers.compact(float(x), 5) for x in actions.point[: printout.dimension, row])
+        what = f"{'load' if actions.is_load[row] else 'reaction'} {name}".strip()
+        at = with_unit(f"({place})", printout.length_unit)
+        hints.append(f"{what}: {', '.join(said) or 'zero'}; at {at}")
+    return hints
 
 
 def _largest(actions: Actions) -> Actions:
@@ -79,8 +103,7 @@ def _panels(figure: "Figure", wide: np.ndarray, solid: bool) -> list[tuple["Axes
         return [(figure.add_subplot(), (0, 1))]
     x, y, z = wide
     grid = figure.add_gridspec(2, 2, width_ratios=(x, y), height_ratios=(z, y))
-    places = {(0, 2): (0, 0), (1, 2): (0, 1), (0, 1): (1, 0)}
-    return [(figure.add_subplot(grid[place]), view) for view, place in places.items()]
+    return [(figure.add_subplot(grid[place]), view) for view, place in VIEWS.items()]
 
 
 def _paint_view(
@@ -89,15 +112,11 @@ def _paint_view(
     unit = balance.printout.length_unit
     points, arrows = actions.point[list(view)], all_arrows[list(view)]
     axes.set_aspect("equal", adjustable="box")
-    axes.plot(*points, "o", color=GREY, markersize=3.0, zorder=3)
+    axes.plot(*points, "o", color=GREY, markersize=3.0, zorder=3, gid=f"{LEVELS}-{view[0]}{view[1]}")
     axes.plot(*[balance.about[k] for k in view], "+", color="black", markersize=10, label="point of moments")
-    for load, (label, colour, pivot) in LOOKS.items():
+    for load, (label, *_) in _arrows.LOOKS.items():
         rows = (actions.is_load == load) & np.any(arrows != 0.0, axis=0)
-        axes.quiver(
-            *points[:, rows], *arrows[:, rows], angles="xy", scale_units="xy", scale=1.0, units="inches",
-            width=0.022, headwidth=5.0, headlength=7.0, headaxislength=6.0, color=colour, pivot=pivot,
-            label=label, zorder=4,
-        )  # fmt: skip
+        _arrows.straight(axes, points[:, rows], arrows[:, rows], load, label)
     _moments(axes, actions, view, moment_unit(balance.printout))
     if len(actions.names) <= MOST_LABELS:
         _names(axes, actions, points, arrows)
@@ -107,20 +126,15 @@ def _paint_view(
 
 def _moments(axes: "Axes", actions: Actions, view: tuple[int, int], unit: str) -> None:
     """Mark the moments about the axis towards the reader, with their values where there is room."""
-    from matplotlib.patches import FancyArrowPatch
-
     towards = 3 - sum(view)
     sense = -1.0 if view == (0, 2) else 1.0  # x to the right and z up have -y towards the reader
     for row in np.flatnonzero(actions.moment[towards]):
         moment = actions.moment[towards, row]
         x, y = actions.point[list(view), row].tolist()
-        colour = LOOKS[bool(actions.is_load[row])][1]
-        start = np.sign(sense * moment) * RADIUS * _extent(actions)
-        turned = FancyArrowPatch(
-            (x + start, y), (x - start, y), connectionstyle=f"arc3,rad={np.sign(start):.0f}",
-            arrowstyle="-|>", mutation_scale=9.0, color=colour, shrinkA=0.0, shrinkB=0.0, zorder=5,
-        )  # fmt: skip
-        axes.add_patch(turned)
+        colour = _arrows.LOOKS[bool(actions.is_load[row])][1]
+        radius, up = RADIUS * _extent(actions), np.sign(sense * moment)
+        arms = np.array((radius, 0.0)), np.array((0.0, radius * up))
+        _arrows.round_about(axes, np.array((x, y)), *arms, bool(actions.is_load[row]))
         if len(actions.names) <= MOST_LABELS:
             size = with_unit(numbers.compact(abs(moment), 4), unit)
             axes.annotate(size, (x, y), (12, 4), textcoords="offset points", color=colour, fontsize=8)
@@ -133,5 +147,10 @@ def _names(axes: "Axes", actions: Actions, points: np.ndarray, arrows: np.ndarra
         if name and np.any(arrows[:, row]):
             end = points[:, row] + (arrows[:, row] if load else -arrows[:, row])
             axes.annotate(
-                middle(name, 24), end, (4, -8), textcoords="offset points", fontsize=8, color=LOOKS[load][1]
+                middle(name, 24),
+                end,
+                (4, -8),
+                textcoords="offset points",
+                fontsize=8,
+                color=_arrows.LOOKS[load][1],
             )

@@ -9,9 +9,11 @@ import numpy as np
 from convergence import numbers
 from convergence.checks._field import Field, blamed, field_of
 from convergence.fem.stress import component
+from convergence.report import _words
 from convergence.report._axes import bracket, cell_size_axis, log_ticks, middle
-from convergence.report._level_words import level_hints
-from convergence.report._picture import BLUE, GREEN, GREY, INK, LEVELS, RED, Picture, draw
+from convergence.report._level_words import level_hints, lost_hints
+from convergence.report._levels import mark_lost, rejected_words
+from convergence.report._picture import BLUE, GREEN, GREY, INK, LEVELS, RED, RED_TEXT, Picture, Rewrite, draw
 from convergence.results import Facts, Ladder, Quantity
 
 if TYPE_CHECKING:
@@ -19,7 +21,12 @@ if TYPE_CHECKING:
 
 
 def growth_figure(
-    stem: str, quantity: Quantity, ladder: Ladder, length: str, exponent: float | None
+    stem: str,
+    quantity: Quantity,
+    ladder: Ladder,
+    length: str,
+    exponent: float | None,
+    comma: Rewrite | None = None,
 ) -> Picture | None:
     """Return the figure of |value| on log axes, None where no level has a value other than zero.
 
@@ -43,16 +50,18 @@ def growth_figure(
                 label = f"{name}: h^({numbers.compact(powers[name], 3)})"
                 axes.plot(fine, size[-1] * (fine / h[-1]) ** powers[name], line, color=colour, label=label)
         axes.plot(h, size, "o", color=INK, label="levels", zorder=4, gid=LEVELS)
+        mark_lost(axes, ladder.h, values)
         log_ticks(axes, float(size.min()) / 1.15, float(size.max()) * 1.25)
         axes.set_ylabel(f"|{middle(quantity.name)}|{bracket(quantity.unit)}")
-        axes.set_title("No limit exists: the mesh sets this value", color=RED, loc="left")
+        axes.set_title("No limit exists: the mesh sets this value", color=RED_TEXT, loc="left")
         figure.legend(loc="outside lower center", ncols=3)
 
     caption = "Both axes logarithmic. A straight rise means growth by the same factor with every refinement."
+    caption += rejected_words(values, ladder, has_interval=False)
     grown = ", ".join(f"{name} h^({numbers.compact(power, 3)})" for name, power in powers.items())
     alt = f"{quantity.name} grows without limit as cells shrink; {grown or 'one level only'}"
-    hints = compress(level_hints(ladder, quantity, math.nan), drawn)
-    return draw(stem, (5.2, 4.1), alt, caption, paint, hints)
+    hints = [*lost_hints(ladder, quantity), *compress(level_hints(ladder, quantity, math.nan), drawn)]
+    return draw(stem, (5.2, 4.1), alt, caption, paint, hints, comma=comma)
 
 
 def _powers(h: np.ndarray, size: np.ndarray, exponent: float | None) -> dict[str, float]:
@@ -65,7 +74,9 @@ def _powers(h: np.ndarray, size: np.ndarray, exponent: float | None) -> dict[str
     return powers
 
 
-def field_figure(stem: str, quantity: Quantity, ladder: Ladder, facts: Facts) -> Picture | None:
+def field_figure(
+    stem: str, quantity: Quantity, ladder: Ladder, facts: Facts, comma: Rewrite | None = None
+) -> Picture | None:
     """Return the figure of the von Mises stress over the distance from the corner, a line a level.
 
     None where no corner is to blame, or the levels did not record its field.
@@ -88,7 +99,7 @@ def field_figure(stem: str, quantity: Quantity, ladder: Ladder, facts: Facts) ->
             axes.plot(
                 r, stress[:, level], "-", color=GREY, alpha=0.3 + 0.5 * level / stress.shape[1], label=label
             )
-        axes.plot(r, stress[:, -1], "o-", color=INK, label="finest level")
+        axes.plot(r, stress[:, -1], "o-", color=INK, label="finest level", gid=LEVELS)
         if field.clean:
             slope = stress[field.clean - 1, -1] * (r / r[field.clean - 1]) ** (corner.exponent - 1.0)
             axes.plot(r, slope, "--", color=GREEN, label=f"corner theory: r^({corner.exponent - 1.0:.3f})")
@@ -99,9 +110,21 @@ def field_figure(stem: str, quantity: Quantity, ladder: Ladder, facts: Facts) ->
         axes.set_title("Levels agree outside the polluted core", color=BLUE, loc="left")
         figure.legend(loc="outside lower center", ncols=2)
 
+    hints = [
+        f"{_words.with_unit(numbers.compact(distance, 4), length)} from the corner; finest level"
+        f" {_words.with_unit(numbers.significant(finest, 4), quantity.unit)}; {word}"
+        for distance, finest, word in zip(r, stress[:, -1], _clean_words(field), strict=True)
+    ]
     words = field.pollution(length)
     caption = f"Stress on a ray from the corner into the body, both axes logarithmic: {words}."
-    return draw(stem, (5.2, 4.1), f"Stress over the distance from {corner.name}; {words}", caption, paint)
+    alt = f"Stress over the distance from {corner.name}; {words}"
+    return draw(stem, (5.2, 4.1), alt, caption, paint, hints, comma=comma)
+
+
+def _clean_words(field: Field) -> list[str]:
+    """Return for every place whether the last two levels agree there."""
+    polluted = len(field.distances) - field.clean
+    return ["agrees with the level before"] * field.clean + ["polluted"] * polluted
 
 
 def _border(field: Field) -> float:

@@ -8,14 +8,20 @@ import numpy as np
 from convergence import numbers
 from convergence.fields import Fields
 from convergence.report import _plane, _scene
-from convergence.report._picture import Picture, draw
+from convergence.report._picture import Picture, Rewrite, draw
 from convergence.results import Ladder
 
 if TYPE_CHECKING:
     from matplotlib.figure import Figure
 
 
-def mesh_figure(fields: Sequence[Fields], turned: np.ndarray, ladder: Ladder, length: str) -> Picture:
+TITLE, TALLEST = 0.35, 8.0  # inches: of a panel's title, and of a figure, which would shrink on a page
+MOST_COLUMNS = 5
+
+
+def mesh_figure(
+    fields: Sequence[Fields], turned: np.ndarray, ladder: Ladder, length: str, comma: Rewrite | None = None
+) -> Picture:
     """Return one panel a level; `fields` belong to the coarsest levels of the ladder, in its order.
 
     `turned` is the rotation (D, D) to the page.
@@ -23,9 +29,9 @@ def mesh_figure(fields: Sequence[Fields], turned: np.ndarray, ladder: Ladder, le
     pages = [turned @ field.points for field in fields]
     whole = _scene.on_page(turned, pages)
     shape = _plane.shape_of(whole)
-    columns = min(len(fields), 1 if shape > 3.5 else 2 if shape > 1.8 else 3 if shape > 0.6 else 5)
+    columns = _columns(shape, len(fields))
     rows = -(-len(fields) // columns)
-    width, height = _plane.panel(shape, (_plane.PAGE_WIDTH - 0.4) / columns, 3.4)
+    width, height = _panel(shape, columns)
     levels = ladder.levels[: len(fields)]
     dense = [_plane.too_dense(page, field.edges, width) for page, field in zip(pages, fields, strict=True)]
 
@@ -45,5 +51,20 @@ def mesh_figure(fields: Sequence[Fields], turned: np.ndarray, ladder: Ladder, le
     if len(levels) < len(ladder.levels):
         caption += f" The levels from {len(levels) + 1} on are too fine to be drawn."
     alt = f"Meshes of {numbers.several(len(fields), 'level')} from coarse to fine in the same view and scale"
-    size = (max(width, 1.9) * columns + 0.4, rows * (height + 0.35) + 0.1)
-    return draw("meshes", size, alt, caption, paint)
+    size = (max(width, 1.9) * columns + 0.4, rows * (height + TITLE) + 0.1)
+    return draw("meshes", size, alt, caption, paint, comma=comma)
+
+
+def _panel(shape: float, columns: int) -> tuple[float, float]:
+    return _plane.panel(shape, (_plane.PAGE_WIDTH - 0.4) / columns, 3.4)
+
+
+def _columns(shape: float, count: int) -> int:
+    """Return how many panels of a shape stand side by side: more where the figure would be too tall."""
+    fewest = 1 if shape > 3.5 else 2 if shape > 1.8 else 3 if shape > 0.6 else MOST_COLUMNS
+    fits = (
+        columns
+        for columns in range(fewest, MOST_COLUMNS)
+        if -(-count // columns) * (_panel(shape, columns)[1] + TITLE) <= TALLEST
+    )
+    return min(count, next(fits, MOST_COLUMNS))

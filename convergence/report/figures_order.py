@@ -9,8 +9,9 @@ import numpy as np
 from convergence import numbers
 from convergence.report import _words
 from convergence.report._axes import bracket, cell_size_axis, log_ticks
-from convergence.report._level_words import level_hints
-from convergence.report._picture import BLUE, GREY, INK, LEVELS, Picture, draw
+from convergence.report._level_words import level_hints, lost_hints
+from convergence.report._levels import mark_levels, rejected_words
+from convergence.report._picture import BLUE, GREY, Picture, Rewrite, draw
 from convergence.report._slopes import slope_words, slopes
 from convergence.results import Ladder, Quantity, Verdict
 
@@ -20,7 +21,7 @@ if TYPE_CHECKING:
 
 
 def error_figure(
-    stem: str, quantity: Quantity, verdict: Verdict, ladder: Ladder, length: str
+    stem: str, quantity: Quantity, verdict: Verdict, ladder: Ladder, length: str, comma: Rewrite | None = None
 ) -> Picture | None:
     """Return the figure, None where no difference beyond round-off is left to draw.
 
@@ -40,7 +41,7 @@ def error_figure(
         h, error = ladder.h[drawn], errors[drawn]
         _believed(axes, h[-1], error[-1], verdict)
         slopes(axes, h[-1], error[-1], _orders(verdict))
-        axes.plot(h, error, "o", color=INK, label="levels", zorder=4, gid=LEVELS)
+        mark_levels(axes, ladder.h, np.where(drawn, errors, np.nan), values)
         low, high = float(error.min()) / 2.5, float(error.max()) * 1.8
         if low < verdict.tolerance < high * 30:
             high = max(high, 1.3 * verdict.tolerance)
@@ -50,15 +51,16 @@ def error_figure(
         figure.legend(loc="outside lower center", ncols=2)
 
     caption = f"Size of the {what}, both axes logarithmic: a constant order is a straight line."
+    caption += rejected_words(values, ladder)
     if limited:
         caption += " The best estimate is made from the same levels and is no independent witness."
     alt = f"{what} of {quantity.name} against the cell size; {slope_words(_orders(verdict))}"
     said = level_hints(ladder, quantity, verdict.uncertainty)
-    hints = [
+    hints = lost_hints(ladder, quantity) + [
         f"{hint}; {what} {_words.with_unit(numbers.significant(error, 3), quantity.unit)}"
         for hint, error in compress(zip(said, errors, strict=True), drawn)
     ]
-    return draw(stem, (5.2, 4.1), alt, caption, paint, hints, "error")
+    return draw(stem, (5.2, 4.1), alt, caption, paint, hints, "error", comma=comma)
 
 
 def _believed(axes: "Axes", h: float, error: float, verdict: Verdict) -> None:

@@ -12,7 +12,7 @@ from convergence.histories import calibrated
 from convergence.histories.width import MOST_LEVELS
 from convergence.report import _trust, _words
 from convergence.report._axes import log_ticks
-from convergence.report._picture import BLUE, GREY, INK, RED, Picture, draw
+from convergence.report._picture import BLUE, GREY, INK, LEVELS, RED, Picture, Rewrite, draw
 from convergence.results import Ladder, Quantity, Verdict
 
 if TYPE_CHECKING:
@@ -111,7 +111,12 @@ def _like(quantity: Quantity, coverage: Coverage, bank: np.ndarray) -> tuple[np.
 
 
 def standing_figure(
-    stem: str, quantity: Quantity, verdict: Verdict, ladder: Ladder, bank: np.ndarray
+    stem: str,
+    quantity: Quantity,
+    verdict: Verdict,
+    ladder: Ladder,
+    bank: np.ndarray,
+    comma: Rewrite | None = None,
 ) -> Picture | None:
     """Return the figure, None where the quantity has no calibrated interval."""
     found = standing(quantity, verdict, ladder, bank)
@@ -125,7 +130,7 @@ def standing_figure(
         log_ticks(axes, *SHARES)
         _band(axes, found)
         _dots(axes, found)
-        axes.set_xlabel("half-width / span of the values: regular ladders left, irregular ones right")
+        axes.set_xlabel("half-width / span of the values: regular left, irregular right")
         axes.set_ylabel("true error / half-width")
         n, k = found.nearest, found.covered
         share = numbers.percent(k / n, _trust.AIM)
@@ -138,7 +143,19 @@ def standing_figure(
         f" others {OTHERS} at most. A cross is an interval that missed its limit."
     )
     alt = f"True error over half-width of bank ladders against their regularity; {found.words()}"
-    return draw(stem, (5.2, 4.1), alt, caption, paint)
+    return draw(stem, (5.2, 4.1), alt, caption, paint, _hints(found), comma=comma)
+
+
+def _hints(found: Standing) -> list[str]:
+    """Return what the marks of the nearest stand for, the covered ones first as they are drawn."""
+    held = found.share[: found.nearest] <= 1.0
+    return [
+        f"number {1 + place} of the {found.nearest} nearest: half-width"
+        f" {numbers.compact(found.regularity[place], 2)} of the span of its values, true error"
+        f" {numbers.beside_limit(float(found.share[place]), 1.0, digits=2)} of the half-width; {word}"
+        for word, rows in (("covered", held), ("missed", ~held))
+        for place in np.flatnonzero(rows)
+    ]
 
 
 def _band(axes: "Axes", found: Standing) -> None:
@@ -158,17 +175,26 @@ def _dots(axes: "Axes", found: Standing) -> None:
     others = n + np.argsort(found.regularity[n:], kind="stable")
     step = np.unique(np.linspace(0, max(len(others) - 1, 0), OTHERS).astype(int))
     others = others[step] if count > n else others
-    _marks(axes, found, others, "other ladders", (PALE, GREY), 2.2)
-    _marks(axes, found, np.arange(n), "most like this one", (INK, RED), 3.2)
+    _marks(axes, found, others, "other ladders", (PALE, GREY), 2.2, False)
+    _marks(axes, found, np.arange(n), "most like this one", (INK, RED), 3.2, True)
 
 
 def _marks(
-    axes: "Axes", found: Standing, drawn: np.ndarray, what: str, colours: tuple[str, str], size: float
+    axes: "Axes",
+    found: Standing,
+    drawn: np.ndarray,
+    what: str,
+    colours: tuple[str, str],
+    size: float,
+    hinted: bool,
 ) -> None:
     """Draw some ladders: a dot where the limit is covered, a cross where it is missed."""
     x, y = found.regularity[drawn], np.clip(found.share[drawn], *SHARES)
     held, dot, cross = y <= 1.0, *colours
+    covered, missed = (f"{LEVELS}-{word}" if hinted else None for word in ("covered", "missed"))
     if held.any():
-        axes.plot(x[held], y[held], "o", color=dot, markersize=size, mew=0, label=f"{what}, covered")
+        label = f"{what}, covered"
+        axes.plot(x[held], y[held], "o", color=dot, markersize=size, mew=0, label=label, gid=covered)
     if not held.all():
-        axes.plot(x[~held], y[~held], "x", color=cross, markersize=5.0, zorder=4, label=f"{what}, missed")
+        label = f"{what}, missed"
+        axes.plot(x[~held], y[~held], "x", color=cross, markersize=5.0, zorder=4, label=label, gid=missed)

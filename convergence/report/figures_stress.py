@@ -9,10 +9,10 @@ import numpy as np
 from convergence import numbers
 from convergence.corner import Corner
 from convergence.fields import Fields
-from convergence.report import _plane, _scene
+from convergence.report import _plane, _scene, _words
 from convergence.report._axes import bracket
-from convergence.report._marks import Deformed, Peak, hatch, mark, peaks, top
-from convergence.report._picture import Picture, draw
+from convergence.report._marks import Deformed, Peak, hatch, mark, peaks, singular, top
+from convergence.report._picture import Picture, Rewrite, draw
 from convergence.results import Findings
 
 if TYPE_CHECKING:
@@ -22,7 +22,12 @@ FINEST = "the finest mesh"
 
 
 def stress_figure(
-    field: Fields, turned: np.ndarray, findings: Findings, stress: str, mesh: str = FINEST
+    field: Fields,
+    turned: np.ndarray,
+    findings: Findings,
+    stress: str,
+    mesh: str = FINEST,
+    comma: Rewrite | None = None,
 ) -> Picture:
     """Return the figure for a mesh, called `mesh`, turned to the page by a rotation (D, D).
 
@@ -49,14 +54,29 @@ def stress_figure(
             _scene.outline(axes, part.drawn, _scene.ink_on_colours(part.drawn))
         _scene.ghost(axes, _scene.scene(field, still, width))
         hatch(axes, part, corners)
-        mark(axes, part, marks)
+        mark(axes, part, marks, _plane.points_per_length(page, width))
         _scene.frame(axes, turned, page)
 
-    size = (max(width + 1.5, 4.5), max(height + 0.4 + 0.2 * len(marks), 2.6))
-    place, how = _singular(corners)
-    singular = numbers.several(len(corners), f"singular {place}")
-    alt = f"Von Mises stress on the deformed part, {mesh}; {singular} {how}"
-    return draw("stress", size, alt, _caption(len(turned) == 3, factor, corners, marks, mesh), paint)
+    size = (max(width + 1.5, _plane.LEAST_WIDTH), max(height + 0.4 + 0.2 * len(marks), 2.6))
+    place, how = singular(corners)
+    places = numbers.several(len(corners), f"singular {place}")
+    alt = f"Von Mises stress on the deformed part, {mesh}; {places} {how}"
+    caption = _caption(len(turned) == 3, factor, corners, marks, mesh)
+    return draw("stress", size, alt, caption, paint, _hints(findings, marks), comma=comma)
+
+
+def _hints(findings: Findings, marks: Sequence[Peak]) -> list[str]:
+    """Return for each place of peak quantities their values on the finest mesh and where it is."""
+    units = {quantity.name: quantity.unit for quantity in findings.quantities}
+    return [
+        f"{peak.number}: "
+        + ", ".join(
+            f"{name} {_words.with_unit(_words.finest_text(findings.verdicts[name]), units[name])}"
+            for name in peak.names
+        )
+        + f"; at ({', '.join(numbers.compact(x, 4) for x in peak.place)})"
+        for peak in marks
+    ]
 
 
 def deformation_factor(field: Fields) -> float:
@@ -67,22 +87,16 @@ def deformation_factor(field: Fields) -> float:
     return max(1.0, _plane.round_factor(0.06 * _plane.size_of(field.points) / largest))
 
 
-def _singular(corners: Sequence[Corner]) -> tuple[str, str]:
-    """Return what the singular places are, and how they are drawn."""
-    edges = any(len(corner.path) > 1 for corner in corners)
-    return ("edge", "banded") if edges else ("corner", "hatched")
-
-
 def _caption(solid: bool, factor: float, corners: Sequence[Corner], marks: Sequence[Peak], mesh: str) -> str:
     times = numbers.at_step(factor, factor)
     scale = "at true scale" if factor == 1.0 else f"deformation drawn {times} times as large"
     where = f"the surface of {mesh}" if solid else mesh
     caption = f"Recovered von Mises stress on {where}, {scale}; dashed: the undeformed outline."
     if corners:
-        place, how = _singular(corners)
+        place, how = singular(corners)
         around = "tubes around them" if place == "edge" else "the discs"
         caption += (
             f" {how.capitalize()}: singular {place}s, where stress has no limit; the colours end at the"
             f" largest stress outside {around}."
         )
-    return caption + (" Marks: places of peak quantities on the finest mesh." if marks else "")
+    return caption + (" Numbers: places of peak quantities on the finest mesh." if marks else "")

@@ -1,15 +1,15 @@
 """A quantity against the cell size: levels, curve, best estimate of the limit, interval and tolerance."""
 
 import math
-from itertools import compress
 from typing import TYPE_CHECKING
 
 import numpy as np
 
 from convergence import numbers
 from convergence.report._axes import bracket, cell_size_axis, middle, value_ticks
-from convergence.report._level_words import level_hints
-from convergence.report._picture import BLUE, GREEN, GREY, INK, LEVELS, RED, Picture, draw
+from convergence.report._level_words import best_hint, known_hints, lost_hints
+from convergence.report._levels import mark_levels, rejected_words
+from convergence.report._picture import BLUE, GREEN, GREY, INK, LEVELS, RED, Picture, Rewrite, draw
 from convergence.results import Companion, Ladder, Quantity, Verdict
 
 if TYPE_CHECKING:
@@ -26,6 +26,7 @@ def value_figure(
     ladder: Ladder,
     length: str,
     companion: Companion | None = None,
+    comma: Rewrite | None = None,
 ) -> Picture | None:
     """Return the figure, None where no level has a value."""
     values = ladder.column(quantity.name)
@@ -46,15 +47,25 @@ def value_figure(
         _interval(axes, verdict)
         if not math.isnan(order):
             _curve(axes, verdict.limit, ladder.h[known][-1], values[known][-1], order)
-        axes.plot(ladder.h[known], values[known], "o", color=INK, label="levels", zorder=4, gid=LEVELS)
+        mark_levels(axes, ladder.h, values, values)
         if companion:
             _companion(axes, companion, second)
         value_ticks(axes, low, high)
         axes.set_ylabel(f"{middle(quantity.name)}{bracket(quantity.unit)}")
         figure.legend(loc="outside lower center", ncols=3)
 
-    missing = numbers.several(int((~known).sum()), "level")
-    caption = "Value on every level." if known.all() else f"Value; {missing} without one."
+    there = numbers.several(int(known.sum()), "level")
+    caption = "Value on every level." if known.all() else f"Value on {there}."
+    caption += rejected_words(values, ladder) + _caption(verdict, companion, enlarged, order)
+    caption += "".join(f" The {part} lies partly outside the picture." for part in cut)
+    alt = f"{quantity.name} against the cell size on {there}; verdict {verdict.word}"
+    hints = _hints(quantity, verdict, ladder, companion, enlarged)
+    return draw(stem, (5.2, 4.1), alt, caption, paint, hints, "value", comma=comma)
+
+
+def _caption(verdict: Verdict, companion: Companion | None, enlarged: bool, order: float) -> str:
+    """Return what the marks and lines are, each sentence with a blank before it."""
+    caption = ""
     if companion:
         caption += f" Squares: the companion ladder of {companion.cells}."
     if not math.isnan(verdict.low):
@@ -63,18 +74,27 @@ def value_figure(
         caption += " Right: enlarged, the dot is the finest value."
     if not math.isnan(order):
         caption += f" Curve: best estimate plus a power of the cell size, {numbers.order(order)} fits best."
-    caption += "".join(f" The {part} lies partly outside the picture." for part in cut)
-    levels = numbers.several(int(known.sum()), "level")
-    alt = f"{quantity.name} against the cell size on {levels}; verdict {verdict.word}"
-    hints = level_hints(ladder, quantity, verdict.uncertainty)
-    return draw(stem, (5.2, 4.1), alt, caption, paint, compress(hints, known), "value")
+    return caption
+
+
+def _hints(
+    quantity: Quantity, verdict: Verdict, ladder: Ladder, companion: Companion | None, enlarged: bool
+) -> list[str]:
+    """Return what the marks stand for: levels, companion, best estimate; enlarged the last level and it."""
+    lost = lost_hints(ladder, quantity)
+    levels = known_hints(ladder, quantity, verdict.uncertainty)
+    second = known_hints(companion.ladder, quantity, math.nan) if companion else []
+    best = [best_hint(verdict, quantity.unit)] if math.isfinite(verdict.limit) else []
+    again = [levels[-1], *best] if enlarged else []
+    return [*lost, *levels, *(f"companion, {hint}" for hint in second), *best, *again]
 
 
 def _companion(axes: "Axes", companion: Companion, values: np.ndarray) -> None:
     h = companion.ladder.h
     coarse, fine = axes.get_xlim()
     axes.set_xlim(max([coarse, *(1.1 * h)]), min([fine, *(h / 1.4)]))
-    axes.plot(h, values, "s", color=INK, markerfacecolor="none", label="companion", zorder=4)
+    gid = f"{LEVELS}-companion"
+    axes.plot(h, values, "s", color=INK, markerfacecolor="none", label="companion", zorder=4, gid=gid)
 
 
 def _view(values: np.ndarray, verdict: Verdict) -> tuple[float, float, list[str]]:
@@ -115,7 +135,8 @@ def _best(axes: "Axes", verdict: Verdict, x: float) -> None:
     """Draw the best estimate with its interval at x, a share of the width."""
     across, ends = axes.get_yaxis_transform(), [verdict.low, verdict.high]
     axes.plot([x, x], ends, "_-", color=GREEN, lw=1.2, ms=9.0, zorder=5, transform=across)
-    axes.plot([x], [verdict.limit], "D", color=GREEN, ms=5.0, zorder=5, transform=across)
+    gid = f"{LEVELS}-best-{x:g}"
+    axes.plot([x], [verdict.limit], "D", color=GREEN, ms=5.0, zorder=5, transform=across, gid=gid)
 
 
 def _two(figure: "Figure") -> tuple["Axes", "Axes"]:
@@ -135,7 +156,8 @@ def _enlarge(axes: "Axes", verdict: Verdict) -> None:
     for sign in (-1, 1):
         axes.axhline(verdict.value + sign * verdict.tolerance, color=GREY, linestyle=(0, (1, 2)))
     _best(axes, verdict, 0.7)
-    axes.plot([0.3], [verdict.value], "o", color=INK, zorder=4, transform=axes.get_yaxis_transform())
+    across = axes.get_yaxis_transform()
+    axes.plot([0.3], [verdict.value], "o", color=INK, zorder=4, transform=across, gid=f"{LEVELS}-finest")
     value_ticks(axes, min(ends) - room, max(ends) + room)
     axes.set_xticks([])
     axes.set_xlabel("enlarged")

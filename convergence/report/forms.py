@@ -6,6 +6,8 @@ from dataclasses import dataclass
 from pathlib import Path
 from typing import Any, Literal
 
+from convergence.numbers import DecimalMark
+from convergence.report._decimal_comma import DecimalComma, with_decimal_comma
 from convergence.report._picture import write_figures
 from convergence.report.as_docx import as_docx
 from convergence.report.as_html import as_html
@@ -19,22 +21,39 @@ NAME = "report"
 
 @dataclass(frozen=True)
 class Forms:
-    """Which forms are written; `template` is a Word file whose styles are used."""
+    """Which forms are written; `template` is a Word file whose styles are used.
+
+    `decimal_mark` is that of documents and figures; None where nobody said: a point.
+    """
 
     names: tuple[Form, ...] = ("html",)
     template: Path | None = None
+    decimal_mark: DecimalMark | None = None
+
+    def comma(self, names: frozenset[str]) -> DecimalComma | None:
+        """Return what puts commas into a text but for names, None where a point is written."""
+        return DecimalComma(names) if self.decimal_mark == "comma" else None
 
 
 HTML = Forms()
 
 
 def write_document(
-    document: Document, folder: Path, record: tuple[str, Mapping[str, Any]], date: str, forms: Forms
+    document: Document,
+    folder: Path,
+    record: tuple[str, Mapping[str, Any]],
+    date: str,
+    forms: Forms,
+    names: frozenset[str] = frozenset(),
 ) -> list[Path]:
     """Write a folder; return the paths of the forms. `record` is the name and content of the JSON file.
 
+    `names` were given by somebody: where a decimal comma is written, their points stay.
+
     Each file is replaced as a whole, the forms last; figures that are not drawn any more go.
     """
+    comma = forms.comma(names)
+    document = with_decimal_comma(document, comma) if comma else document
     folder.mkdir(parents=True, exist_ok=True)
     write_figures(folder / "figures", list(pictures_of(document)))
     name, content = record

@@ -3,16 +3,21 @@
 import re
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
+from functools import partial
 from itertools import islice
 from typing import Any
+
+import numpy as np
 
 from convergence.dimensions import Units
 from convergence.fields import Fields
 from convergence.histories.table import outcomes
 from convergence.mapped import MappedField
 from convergence.report import _scene
-from convergence.report._picture import Picture
+from convergence.report._acting import forces_of
+from convergence.report._picture import Picture, Rewrite
 from convergence.report.figures_balance import balance_figure
+from convergence.report.figures_equilibrium import equilibrium_figure
 from convergence.report.figures_error import error_map, norm_figure
 from convergence.report.figures_growth import field_figure, growth_figure
 from convergence.report.figures_map import map_figure
@@ -51,12 +56,22 @@ def one_by_one(figures: Sequence[Figure]) -> list[Picture | None]:
     return [function(*arguments) for function, arguments in figures]
 
 
-def pictures(findings: Findings, fields: Sequence[Fields], units: Units, draw_all: Draw) -> Pictures:
-    """Return the pictures of a report; `fields` as `write_report` has them."""
+def pictures(
+    findings: Findings, fields: Sequence[Fields], units: Units, draw_all: Draw, comma: Rewrite | None = None
+) -> Pictures:
+    """Return the pictures of a report; `fields` as `write_report` has them, `comma` as `draw` has it."""
     stem = stems([quantity.name for quantity in findings.quantities])
     groups = [_of_quantity(findings, quantity, stem[quantity.name]) for quantity in findings.quantities]
-    groups += [*_of_fields(findings, fields, units), _of_maps(findings, fields), _of_balance(findings)]
-    drawn = iter(draw_all([figure for group in groups for figure in group]))
+    turned = _scene.turn(fields[-1]) if fields else np.eye(2)
+    groups += [
+        *_of_fields(findings, fields, turned, units),
+        _of_maps(findings, fields, turned),
+        _of_balance(findings, fields, turned, units),
+    ]
+    figures = [figure for group in groups for figure in group]
+    if comma:
+        figures = [(partial(function, comma=comma), arguments) for function, arguments in figures]
+    drawn = iter(draw_all(figures))
     found = [[p for p in islice(drawn, len(group)) if p] for group in groups]
     *by_quantity, meshes, errors, maps, balance = found
     return Pictures(dict(zip(stem, by_quantity, strict=True)), meshes, errors, maps, balance)
@@ -97,35 +112,44 @@ def _exponent(findings: Findings, quantity: Quantity) -> float | None:
     return min((corner.exponent for corner in covered), default=findings.facts.exponent)
 
 
-def _of_fields(findings: Findings, fields: Sequence[Fields], units: Units) -> list[list[Figure]]:
+def _of_fields(
+    findings: Findings, fields: Sequence[Fields], turned: np.ndarray, units: Units
+) -> list[list[Figure]]:
     """Return the figures of the meshes and the stress, and those of the errors."""
     ladder = findings.ladder
     exact = ladder.column("energy_norm.estimated")[-1] < ROUND_OFF
     errors: list[Figure] = [] if exact else [(norm_figure, (ladder, findings.facts, ladder.h_unit))]
     if not fields:
         return [[], errors]
-    turned = _scene.turn(fields[-1])
+    corners = findings.facts.corners or ()
     finest = _mesh_name(len(fields), len(ladder.levels))
     meshes: Figure = (mesh_figure, (fields, turned, ladder, ladder.h_unit))
     stress: Figure = (stress_figure, (fields[-1], turned, findings, units.stress, finest))
-    error: Figure = (error_map, (fields[-1], turned, units, finest))
+    error: Figure = (error_map, (fields[-1], turned, units, finest, corners))
     return [[meshes, stress], errors if exact else [error, *errors]]
 
 
-def _of_maps(findings: Findings, fields: Sequence[Fields]) -> list[Figure]:
+def _of_maps(findings: Findings, fields: Sequence[Fields], turned: np.ndarray) -> list[Figure]:
     """Return the maps of the intervals at all nodes, where the finest mesh is drawn."""
     drawn = [one for one in findings.mapped if len(one.relative)]
-    turned = _scene.turn(fields[-1]) if drawn else None
-    return [(map_figure, (fields[-1], turned, one, f"map-{stem}")) for one, stem in _stemmed(drawn)]
+    corners = findings.facts.corners or ()
+    return [(map_figure, (fields[-1], turned, one, f"map-{stem}", corners)) for one, stem in _stemmed(drawn)]
 
 
 def _stemmed(drawn: Sequence[MappedField]) -> list[tuple[MappedField, str]]:
     return list(zip(drawn, stems([one.name for one in drawn]).values(), strict=True))
 
 
-def _of_balance(findings: Findings) -> list[Figure]:
-    balance = findings.facts.balance
-    return [] if balance is None else [(balance_figure, ("equilibrium", balance))]
+def _of_balance(
+    findings: Findings, fields: Sequence[Fields], turned: np.ndarray, units: Units
+) -> list[Figure]:
+    """Return the figure of printed loads and reactions, or that of our own."""
+    if findings.facts.balance is not None:
+        return [(balance_figure, ("equilibrium", findings.facts.balance))]
+    forces = forces_of(fields)
+    if forces is None:
+        return []
+    return [(equilibrium_figure, (fields, forces, turned, units))]
 
 
 def _mesh_name(drawn: int, levels: int) -> str:

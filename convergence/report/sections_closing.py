@@ -5,7 +5,7 @@ from hashlib import sha256
 from pathlib import Path
 
 from convergence.report import records
-from convergence.report.content import Block, Bullets, Details, Section, Table, Verbatim
+from convergence.report.content import Block, Bullets, Details, Section, Table, Verbatim, Words
 from convergence.textfile import digest_of
 
 CAUTION = (
@@ -33,7 +33,8 @@ def digests(study_text: str, inputs: Sequence[Path]) -> dict[str, str]:
 
 def trace_section(facts: Mapping[str, str], study_text: str) -> Section:
     """Return facts such as command and date, the versions and the study itself."""
-    rows = list({**facts, **records.versions()}.items())
+    known = {**facts, **records.versions()}
+    rows = [tuple(Words(words, given=True) for words in row) for row in known.items()]
     blocks: list[Block] = [Table("How to get these numbers again", ("what", "which"), rows, "words")]
     if study_text:
         blocks.append(Details("The study as it was read", [Verbatim(study_text)]))

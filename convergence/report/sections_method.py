@@ -97,6 +97,6 @@ def _sources(findings: Findings) -> list[Block]:
     for name in used:
         source = str(rooms.beside("estimators", name, "SOURCE") or "") if name in known else ""
         title = Words(_words.plain(name), anchor=f"method-{name}")
-        rows.append((title, known.get(name, ""), source or numbers.NONE))
+        rows.append((title, known.get(name, ""), Words(source or numbers.NONE, given=True)))
     caption = "Published methods, shown beside the interval for comparison: it is not made from them"
     return [Table(caption, ("method", "what it is", "source"), rows, "words")] if rows else []

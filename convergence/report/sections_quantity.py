@@ -72,7 +72,7 @@ def _levels(ladder: Ladder, quantity: Quantity, verdict: Verdict, length: str) -
         f"h [{length}]" if length else "h": [numbers.significant(level.h, 4) for level in ladder.levels],
         "cells": [numbers.count(level.cells) if level.cells > 0 else "" for level in ladder.levels],
         "unknowns": [numbers.count(level.dofs) if level.dofs > 0 else "" for level in ladder.levels],
-        f"value{unit}": level_values(values, verdict.uncertainty),
+        f"value{unit}": level_values(ladder, quantity, verdict.uncertainty),
         f"change{unit}": [numbers.significant(change, 3) for change in changes],
         "relative change": [
             numbers.percent(abs(change / value) if value else math.nan)

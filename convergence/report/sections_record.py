@@ -46,14 +46,20 @@ POINTS = (
 LACKING = "to be supplied by the analyst: {keys} of [record] in the study"
 
 
-def record_section(record: Record, sections: Sequence[Section]) -> Section:
-    """Return what the analyst states and where each point of a record stands among the sections."""
+def record_section(record: Record, sections: Sequence[Section], elsewhere: Words | None = None) -> Section:
+    """Return what the analyst states and where each point of a record stands among the sections.
+
+    `elsewhere` leads to other documents that have all sections.
+    """
     blocks: list[Block] = []
     if record:
-        rows = [(_words.plain(key), words) for key, words in record.items()]
+        rows = [(_words.plain(key), Words(words, given=True)) for key, words in record.items()]
         blocks.append(Table("Stated by the analyst, not checked here", ("what", "in words"), rows, "words"))
     titles = {section.anchor: section.title for section in sections}
-    rows_of_points = [_row(number, point, record, titles) for number, point in enumerate(POINTS, start=1)]
+    rows_of_points = [
+        _row(f"{number}. {point.asked}", point, record, titles, elsewhere)
+        for number, point in enumerate(POINTS, start=1)
+    ]
     blocks.append(
         Table("Where each point of the record stands", ("point", "in this document"), rows_of_points, "words")
     )
@@ -61,14 +67,18 @@ def record_section(record: Record, sections: Sequence[Section]) -> Section:
     return Section("record", "Record", "Record of the analysis", blocks)
 
 
-def _row(number: int, point: Point, stated: Record, titles: dict[str, str]) -> Sequence[Cell]:
+def _row(
+    asked: str, point: Point, stated: Record, titles: dict[str, str], elsewhere: Words | None
+) -> Sequence[Cell]:
     where: list[str | Words] = [
         Words(titles[a], to=f"#{a}", paged=True) for a in point.anchors if a in titles
     ]
+    if elsewhere and point.anchors:
+        where.append(elsewhere)
     given = [_words.plain(key) for key in point.keys if key in stated]
     lacking = [key for key in point.keys if key not in stated]
     if given:
         where.append(f"stated by the analyst: {', '.join(given)}")
     if lacking:
         where.append(LACKING.format(keys=", ".join(lacking)))
-    return (f"{number}. {point.asked}", tuple(where) or "not in this document")
+    return (asked, tuple(where) or "not in this document")

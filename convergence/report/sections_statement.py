@@ -26,7 +26,10 @@ HALVES = (
 def statement_section(findings: Findings, length: str) -> Section:
     """Return conclusion, table of verdicts, one quotable sentence each, limits of the statement."""
     quantities = findings.quantities
-    sentences = [Paragraph(_words.statement(findings, quantity, length), "quote") for quantity in quantities]
+    sentences = [
+        Paragraph(_words.statement(findings, one, length), "quote", findings.verdicts[one.name].word)
+        for one in quantities
+    ]
     rows = [_row(findings, quantity) for quantity in findings.quantities]
     blocks: list[Block] = [
         Paragraph(_words.overall(findings), "overall"),

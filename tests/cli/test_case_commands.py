@@ -153,3 +153,24 @@ def test_a_report_of_a_judged_folder(capsys: pytest.CaptureFixture[str]) -> None
     code, out, _ = call(capsys, "judge", "out/arm", "--out", "there")
     assert code == 0 and "Report: there/report.html" in out
     assert Path("there/lift/report.html").exists() and Path("there/drag/findings.json").exists()
+
+
+def test_the_page_of_all_cases_has_the_record_and_the_way_to_and_fro(
+    capsys: pytest.CaptureFixture[str],
+) -> None:
+    """What is stated once for all cases; a point that stands in the reports of the cases leads there."""
+    Path("stated.toml").write_text(STUDY + '[record]\nanalyst = "A. Initials"\n')
+    assert call(capsys, "run", "stated.toml")[0] in (0, 1)
+    page = Path("out/stated/report.html").read_text()
+    assert "Stated by the analyst, not checked here" in page and "A. Initials" in page
+    assert '<a href="#cases">The reports of the cases</a>' in page and "SHA-256 of the study" in page
+    case = Path("out/stated/lift/report.html").read_text()
+    assert '<a href="../report.html">All cases</a>' in case and "A. Initials" in case
+
+
+def test_a_report_elsewhere_shows_the_meshes_of_the_run(
+    capsys: pytest.CaptureFixture[str], tmp_path: Path
+) -> None:
+    call(capsys, "report", "out/arm", "--as", "html", "--out", str(tmp_path / "elsewhere"))
+    page = (tmp_path / "elsewhere" / "lift" / "report.html").read_text()
+    assert 'id="meshes"' in page and 'id="stress"' in page

@@ -33,6 +33,8 @@ def test_the_steps_have_the_numbers(table, capsys) -> None:
     assert "Interval (kind peak stress, degree 1):" in said and "Measured coverage of such intervals" in said
     assert "observed order 1.06." in said, "ln(7.5 / 3.6) / ln 2"
     assert "Accepted: 5 % of the value (assumed, none was given)" in said
+    assert "From 112.8 MPa on the finest mesh to the far end of the interval: " in said
+    assert "MPa, more than the accepted 5.64 MPa." in said, "5 % of 112.8"
     assert said.rstrip().endswith("next: refine in steps.")
 
 
@@ -46,6 +48,12 @@ def test_an_unknown_name_is_told_with_the_nearest(table, capsys) -> None:
     assert outcome(["judge", str(table), "--explain", "tip deflexion"]) == 2
     error = capsys.readouterr().err
     assert error == "--explain: no such quantity, got 'tip deflexion'; did you mean 'tip deflection'?\n"
+
+
+def test_a_run_tells_it_before_it_solves(tmp_path, capsys) -> None:
+    assert outcome(["run", "studies/tie_rod.toml", "--out", str(tmp_path), "--explain", "strech"]) == 2
+    assert "--explain: no such quantity, got 'strech'" in capsys.readouterr().err
+    assert not list(tmp_path.iterdir())
 
 
 def test_every_ladder_that_has_it(table, capsys) -> None:

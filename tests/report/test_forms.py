@@ -1,19 +1,19 @@
 """The three forms of one document: the same words, hostile ones too, and the same bytes twice."""
 
 import io
-import zipfile
 from pathlib import Path
 
-import docx
 import pypdf
 import pytest
 
-from convergence.errors import InputError
+from convergence.report import as_pdf as as_pdf_module
 from convergence.report._picture import draw
 from convergence.report.as_docx import as_docx
 from convergence.report.as_html import as_html
 from convergence.report.as_pdf import as_pdf
 from convergence.report.content import (
+    LONGEST_COLUMN,
+    LONGEST_LINE,
     Bullets,
     Details,
     Document,
@@ -107,25 +107,28 @@ def test_the_pdf_can_be_walked_through(pdf: bytes) -> None:
     assert any("/Annots" in page for page in reader.pages)
 
 
-def test_the_word_file_has_headings_captions_and_tables(word: bytes) -> None:
-    file = docx.Document(io.BytesIO(word))
-    styles = {paragraph.text: paragraph.style.name for paragraph in file.paragraphs}
-    assert styles["First section"] == "Heading 1" and styles["hook  sound"] == "Heading 2"
-    captions = [p._p.xpath("string()") for p in file.paragraphs if p.style.name == "Caption"]
-    assert captions == ["Table 1: Values", "Figure 1: What is seen.", "Table 2: Inner"]
-    assert [len(table.rows) for table in file.tables] == [2 + len(HOSTILE), 2]
-    assert file.tables[0].rows[0]._tr.xpath("./w:trPr/w:tblHeader"), "the head is repeated on every page"
-    (picture,) = file.inline_shapes
-    assert picture._inline.docPr.get("descr") == "alt & <b>"
-    links = file.element.xpath("//w:hyperlink/@w:anchor")
-    assert links == ["hook"] and "hook" in file.element.xpath("//w:bookmarkStart/@w:name")
+def test_signs_without_a_glyph_ask_for_other_fonts() -> None:
+    """What the fonts of the figures have stays with them, so that the same text looks alike everywhere."""
+    fonts = as_pdf_module._fonts()
+    assert as_pdf_module._is_covered("h = 3.25 mm ± 2 % → λ ≤ 1°, שלום, مرحبا\n\u200b", fonts)
+    assert not as_pdf_module._is_covered("crane 🏗", fonts)
+    assert not as_pdf_module._is_covered("吊", fonts)
 
 
-def test_the_word_file_has_every_word(word: bytes) -> None:
-    cells = [cell.text for row in docx.Document(io.BytesIO(word)).tables[0].rows for cell in row.cells]
-    for words in HOSTILE[:-1]:
-        assert cells.count(words) == 2
-    assert "bell\ufffd and null\ufffd" in cells, "what XML cannot hold"
+@pytest.mark.parametrize("count", [0, 1, 2, 37, 100, 101, 260])
+def test_a_listing_in_two_columns_is_whole(count: int) -> None:
+    """Read down the left column, then down the right one, pair by pair, it is the text; none too long."""
+    text = "\n".join(f"line {number}" for number in range(count))
+    columns = [column for pair in Verbatim(text).columns() for column in pair]
+    assert "\n".join(column for column in columns if column) == text
+    assert all(len(column.splitlines()) <= LONGEST_COLUMN for column in columns)
+
+
+def test_a_listing_of_long_lines_stays_in_one_column() -> None:
+    short, long = "a = 1", "b" * (LONGEST_LINE + 1)
+    assert Verbatim("\n".join([short] * 4 + [long])).is_narrow, "one line in five may be longer"
+    assert not Verbatim("\n".join([short] * 3 + [long])).is_narrow
+    assert not Verbatim("\n".join([short] * 9 + [long * LONGEST_COLUMN])).is_narrow, "no column holds it"
 
 
 def test_the_page_has_every_word_as_text(document: Document) -> None:
@@ -138,41 +141,6 @@ def test_the_same_bytes_twice(document: Document, pdf: bytes, word: bytes) -> No
     assert (
         as_pdf(document) == pdf and as_docx(document, DAY) == word and as_html(document) == as_html(document)
     )
-
-
-@pytest.fixture
-def template(tmp_path: Path) -> Path:
-    """A company's file: its own font of headings, a header, a cover, and no style for captions."""
-    file = docx.Document()
-    file.styles["Heading 1"].font.name = "Davit Sans"
-    file.sections[0].header.paragraphs[0].text = "Quayside Davits, form 12"
-    file.add_paragraph("Cover")
-    caption = file.styles["Caption"]
-    caption.element.getparent().remove(caption.element)
-    path = tmp_path / "company.docx"
-    file.save(path)
-    return path
-
-
-def test_a_company_template_keeps_its_looks(document: Document, template: Path) -> None:
-    file = docx.Document(io.BytesIO(as_docx(document, DAY, template)))
-    assert file.styles["Heading 1"].font.name == "Davit Sans"
-    assert file.sections[0].header.paragraphs[0].text == "Quayside Davits, form 12"
-    texts = [paragraph.text for paragraph in file.paragraphs]
-    assert texts[0] == "Cover" and "First section" in texts
-    assert any(p._p.xpath("string()") == "Table 1: Values" for p in file.paragraphs), "in a plain paragraph"
-
-
-@pytest.mark.parametrize("content", [None, b"", b"no archive", b"zip"])
-def test_what_is_no_template_is_refused(document: Document, tmp_path: Path, content: bytes | None) -> None:
-    path = tmp_path / "company.docx"
-    if content == b"zip":
-        with zipfile.ZipFile(path, "w") as archive:
-            archive.writestr("a.txt", "not a document")
-    elif content is not None:
-        path.write_bytes(content)
-    with pytest.raises(InputError, match="not a Word document"):
-        as_docx(document, DAY, path)
 
 
 def test_a_folder(document: Document, tmp_path: Path) -> None:

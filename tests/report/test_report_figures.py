@@ -15,7 +15,6 @@ from matplotlib.figure import Figure
 from convergence.fields import Fields
 from convergence.report import _plane
 from convergence.report._axes import middle
-from convergence.report._marks import peaks
 from convergence.report.figures_error import error_map, norm_figure
 from convergence.report.figures_growth import growth_figure
 from convergence.report.figures_order import error_figure
@@ -98,7 +97,10 @@ def test_missing_levels_and_a_wide_tolerance_are_named(
     verdict = verdict_of("unproven", value=300.01, tolerance=6.0, **NOTHING)
     picture = value_figure("v", STRESS, verdict, ladder, "mm")
     assert picture is not None
-    assert picture.caption == "Value; 1 level without one. The tolerance lies partly outside the picture."
+    assert picture.caption == (
+        "Value on 2 levels. Crosses on the axis: 1 level without a value. The tolerance lies partly outside"
+        " the picture."
+    )
 
 
 def test_without_a_limit_the_changes_are_drawn(
@@ -158,17 +160,6 @@ def test_quadrilaterals_are_split_without_loss(fields: list[Fields]) -> None:
     corners = fields[0].points[:, _plane.triangles(fields[0].cells)]
     a, b = corners[..., 1] - corners[..., 0], corners[..., 2] - corners[..., 0]
     assert math.isclose((a[0] * b[1] - a[1] * b[0]).sum() / 2, 0.75 * 120**2)
-
-
-def test_peaks_at_one_place_share_a_mark(findings: Findings) -> None:
-    assert [(peak.names, peak.place) for peak in peaks(findings, 2)] == [
-        ("fillet_stress", (62.0, 60.0)),
-        ("corner_stress", (60.0, 60.0)),
-    ]
-    level = findings.ladder.levels[-1]
-    moved = replace(level, values={**level.values, "fillet_stress.x": 60.0})
-    together = replace(findings, ladder=replace(findings.ladder, levels=(moved,)))
-    assert [peak.names for peak in peaks(together, 2)] == ["fillet_stress, corner_stress"]
 
 
 def test_long_names_are_shortened_in_the_middle() -> None:

@@ -37,8 +37,8 @@ def test_links_lead_to_sections_that_are_there() -> None:
 def test_what_is_stated_is_shown_and_no_longer_asked_for() -> None:
     stated, points = tables(record(purpose="release", tests="load test of 2030"), SECTIONS)
     assert [(row[0], row[1]) for row in stated.rows] == [
-        ("purpose", "release"),
-        ("tests", "load test of 2030"),
+        ("purpose", Words("release", given=True)),
+        ("tests", Words("load test of 2030", given=True)),
     ]
     assert texts(points, 0)[1:] == [
         "stated by the analyst: purpose",
@@ -60,4 +60,4 @@ def test_every_key_of_the_record_belongs_to_a_point() -> None:
 
 def test_an_analyst_may_write_anything() -> None:
     (stated, _) = tables(record(conclusion="<b>fit</b>"), SECTIONS)
-    assert stated.rows[0][1] == "<b>fit</b>" and not isinstance(stated.rows[0][1], Words)
+    assert stated.rows[0][1] == Words("<b>fit</b>", given=True)

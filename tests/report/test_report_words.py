@@ -1,13 +1,16 @@
 """Sentences and the rows of the table on screen, word for word."""
 
+import math
 from collections.abc import Callable
 from dataclasses import replace
 
+import numpy as np
 import pytest
 
 from convergence.report import _words
+from convergence.report._level_words import level_values
 from convergence.report.terminal import COLUMNS, summary_rows
-from convergence.results import Findings, Quantity, Verdict
+from convergence.results import Findings, Ladder, Quantity, Verdict
 
 STRESS = Quantity("s", unit="MPa", relative=0.02)
 
@@ -70,3 +73,16 @@ def test_overall(findings: Findings, verdict_of: Callable[..., Verdict]) -> None
     one = replace(findings, quantities=(STRESS,), verdicts={"s": verdict_of()})
     assert _words.overall(one) == "The one quantity is sound: the interval lies inside the tolerance."
     assert _words.overall(replace(findings, quantities=())) == "No quantity was judged."
+
+
+def test_values_of_levels_have_no_digit_that_was_not_printed_or_solved(
+    ladder_of: Callable[..., Ladder],
+) -> None:
+    """Printed to 0.01: half a unit is 0.005. Solved to 1e-10 of the value, twice as many digits as change."""
+    h, quantity = np.array([4.0, 2.0, 1.0]), Quantity("s")
+    ladder = ladder_of({"s": np.array([10.64, 10.16, 10.04])}, h)
+    assert level_values(ladder, quantity, math.nan) == ["10.640", "10.160", "10.040"]
+    printed = replace(ladder, resolution={"s": 0.005})
+    assert level_values(printed, quantity, math.nan) == ["10.64", "10.16", "10.04"]
+    noise = ladder_of({"s": 5000.0 + np.array([0.0, 1e-9, -1e-9])}, h)
+    assert level_values(noise, quantity, math.nan) == ["5000.00000000"] * 3
