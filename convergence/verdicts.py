@@ -124,8 +124,11 @@ def _reasons(
         reasons.append("The last three levels give the same value, to round-off or to its printed digits.")
     else:
         half = numbers.beside_limit(found.half_width, tolerance)
-        best, own = numbers.compact(found.limit, 6), numbers.compact(0.5 * (found.high - found.low), 2)
-        about = "" if found.side else f" ± {own}"
+        own = 0.5 * (found.high - found.low)
+        best, about = (
+            numbers.rounded(found.limit, own),
+            "" if found.side else f" ± {numbers.significant(own, 2)}",
+        )
         reasons.append(f"Half-width {half} about the finest value; best estimate of the limit {best}{about}.")
     return reasons + _about_tolerance(quantity, tolerance, ahead)
 

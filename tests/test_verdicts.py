@@ -222,7 +222,7 @@ def test_interval_order_and_coverage_are_handed_on() -> None:
     assert (said.observed_order, said.order_low, said.order_high) == (2.0, 1.5, 2.5)
     assert said.coverage is measured and not any("held the limit" in reason for reason in said.reasons)
     (line,) = (reason for reason in said.reasons if reason.startswith("Half-width"))
-    assert line.startswith("Half-width 3.00 about the finest value; best estimate of the limit 101 ± 2")
+    assert line.startswith("Half-width 3.00 about the finest value; best estimate of the limit 101.0 ± 2.0")
     assert of(found, {"singular": "why"}).coverage is None
 
 
