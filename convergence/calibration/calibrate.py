@@ -35,7 +35,7 @@ from convergence.histories.table import LEAST_EXPONENT, OUTCOMES, TABLE, Table, 
 from convergence.histories.width import MOST_LEVELS
 
 FALSE_ALARM = 0.015
-MISSED = 0.015
+MISSED = 0.01
 MOST = 300  # sub-ladders of a family
 DIGITS = 4
 

@@ -6,7 +6,7 @@ from typing import Any
 from convergence import numbers
 from convergence.calibration.make_up import LeftOut
 from convergence.calibration.promises import BOUNDED
-from convergence.calibration.stretches import ASKED, OF_A_KIND
+from convergence.calibration.stretches import ASKED
 from convergence.calibration.sub_ladders import BETTER_KNOWN, RATIOS
 from convergence.histories.laws import FALLING, SCATTERS
 from convergence.histories.table import LEAST_EXPONENT
@@ -21,10 +21,10 @@ growing laws that have no limit. The weights of the laws are learned from the ba
 (expectation-maximisation), by kind of quantity and degree where these are told. Summed over the laws this
 is a belief about the limit. Its median is the best estimate, half of its central {central} the unit of
 width. The unit is multiplied by exp(β·φ): φ are facts such as the spread of the belief, the last changes
-and the scatter; β is fitted by quantile regression to the true errors of the bank. A last (conformal)
-factor for each number of levels covers {asked} of every source of meshes, and at least {least_asked} of
-every kind of quantity and dimension with ladders enough. Shift and scale of the values change nothing;
-sizes count by their ratios.
+and the scatter; β is fitted by quantile regression to the true errors of the bank, in which families count
+the same, and kinds of quantity. A last (conformal) factor for each number of levels covers at least {asked}
+of every source of meshes, kind of quantity and dimension with ladders enough. Shift and scale of the values
+change nothing; sizes count by their ratios.
 
 Measured is by leaving out: a sub-ladder is judged with weights, β and factor that were fitted without its
 family.
@@ -163,7 +163,6 @@ def method() -> str:
         scatters=len(SCATTERS),
         central=numbers.plain_percent(CENTRAL),
         asked=numbers.plain_percent(ASKED),
-        least_asked=numbers.plain_percent(OF_A_KIND),
     )
 
 

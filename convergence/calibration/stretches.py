@@ -13,8 +13,7 @@ import numpy as np
 from convergence.calibration.sub_ladders import SubLadder, family_weights
 from convergence.histories.width import UNIT, half_width
 
-ASKED = 0.955
-OF_A_KIND = 0.93
+ASKED = 0.95
 REGRESSED = 0.955
 STEPS = 80
 NEAR = 1e-3
@@ -44,11 +43,10 @@ class Told:
 
 
 def fitted_stretch(known: Sequence[Told], names: Sequence[str]) -> Stretch:
-    """Return β by the names of the facts, the constant such that each source of meshes is covered as asked.
+    """Return β by the names of the facts.
 
-    Kinds of quantity and dimensions are covered a little less at least: a peak in a bare table cannot be told
-    from a smooth quantity. The constant comes from errors of families that had no part in the β they are held
-    against.
+    The constant is such that every source of meshes, kind of quantity and dimension is covered as asked. It
+    comes from errors of families that had no part in the β they are held against.
     """
     stretch, families = _regressed(known, names), np.array([one.sub.of.family for one in known])
     fold = np.unique(families, return_inverse=True)[1] % FOLDS
@@ -61,23 +59,29 @@ def fitted_stretch(known: Sequence[Told], names: Sequence[str]) -> Stretch:
     kinds = np.array([one.sub.of.kind for one in known])
     dimensions = np.array([one.sub.of.dimension for one in known])
     needed = [conformal(over, ASKED)]
-    for labels, asked, few in (
-        (sources, ASKED, FEW),
-        (kinds, OF_A_KIND, MANY),
-        (dimensions, OF_A_KIND, MANY),
-    ):
+    for labels, few in ((sources, FEW), (kinds, MANY), (dimensions, MANY)):
         groups = [over[labels == label] for label in np.unique(labels)]
-        needed += [conformal(group, asked) for group in groups if len(group) >= few]
+        needed += [conformal(group, ASKED) for group in groups if len(group) >= few]
     return {**stretch, "always": stretch["always"] + max(needed)}
 
 
 def _regressed(known: Sequence[Told], names: Sequence[str]) -> Stretch:
     rows = np.array([[one.facts.get(name, 0.0) for name in names] for one in known])
     ratios = np.array([one.miss / one.facts[UNIT] for one in known])
-    found = quantile_regression(
-        rows, np.log(np.maximum(ratios, LEAST_ERROR)), family_weights([one.sub.of.family for one in known])
-    )
+    found = quantile_regression(rows, np.log(np.maximum(ratios, LEAST_ERROR)), _weights(known))
     return dict(zip(names, found.tolist(), strict=True))
+
+
+def _weights(known: Sequence[Told]) -> np.ndarray:
+    """Return weights by which families count the same, and so do kinds of quantity with ladders enough."""
+    weights = family_weights([one.sub.of.family for one in known])
+    kinds, of, number = np.unique([one.sub.of.kind for one in known], return_inverse=True, return_counts=True)
+    shares = np.bincount(of, weights)
+    enough = number >= MANY
+    factors = np.ones(len(kinds))
+    if enough.any():
+        factors[enough] = shares[enough].mean() / shares[enough]
+    return np.asarray(weights * factors[of])
 
 
 def names_of(known: Sequence[Told], *, kinds: bool, degrees: bool) -> list[str]:
