@@ -38,7 +38,7 @@ ROOM_FOR_TWO = 130  # mm between the margins: with less, pictures stand one belo
 NARROW = 5.5  # inches: a picture that is no wider fills half a page
 GAP = 3  # mm at the right of each picture of two side by side
 GAP_AROUND = 6  # points above pictures, below tables
-HIGHEST = 0.6  # share of the height of a page that a picture takes
+HIGHEST = 0.5  # share of the height of a page that a picture takes
 WHOLE = 10  # rows of a table that is not parted
 
 

@@ -28,11 +28,8 @@ from convergence.report.content import (
 
 PAGE = Path(__file__).with_name("_page.typ")
 LONGEST_WORD = 18  # characters; longer ones may be broken
-ROOM, ROOM_OF_TWO, HIGHEST = (
-    170,
-    82,
-    150,
-)  # mm: between the margins, for each of two pictures; how high one is
+ROOM, ROOM_OF_TWO = 170, 82  # mm: between the margins, for each of two pictures
+HIGHEST = 125  # mm: how high a picture is, so that two find room on a page
 WIDEST, NARROW = 6.7, 5.5  # inches: pictures that fill the page, or half of it
 WHOLE, WHOLE_SIZE = 10, 3000  # rows and characters of a table that is not parted
 SHORT, LONG = 22, 250  # characters of a cell of words: never broken into lines; as many as count
