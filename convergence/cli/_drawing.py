@@ -53,11 +53,14 @@ def _draw_what_comes(from_the_first: Connection) -> None:
 
 
 def _shared(second: Connection, figures: Sequence["Figure"]) -> list["Picture | None"]:
-    """Draw figures in both processes, each the next one left; all of them here where the second fails."""
+    """Draw figures in both processes, each the last one left; all of them here where the second fails.
+
+    Meshes and maps stand last and take longest, so they are begun first.
+    """
     from convergence.report.pictures import one_by_one
 
     drawn: dict[int, list[Picture | None]] = {}
-    numbers = iter(range(len(figures)))
+    numbers = iter(reversed(range(len(figures))))
 
     def elsewhere() -> None:
         with suppress(OSError, EOFError):
