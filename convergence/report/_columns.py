@@ -7,6 +7,7 @@ from convergence.report.content import Cell, Table, lines
 
 A4_WIDTH = 108  # characters of the size of a table between the margins of our page
 SNUG, PADDING = 2, 3  # characters that the sides of a cell take at least, and where there is room
+WHOLE = 10  # rows of a table that is not parted by the end of a page
 LONGEST_WORD = 24  # characters; longer ones are broken
 
 

@@ -10,7 +10,7 @@ from pathlib import Path
 from typing import Any
 
 from convergence.report import _word_file, _word_styles
-from convergence.report._columns import A4_WIDTH, bands, shares
+from convergence.report._columns import A4_WIDTH, WHOLE, bands, shares
 from convergence.report._picture import Picture
 from convergence.report._word_fields import has_contents, put_contents, put_place, put_simple
 from convergence.report._word_parts import bookmark_name, clean, put_words, tag
@@ -35,11 +35,9 @@ PARAGRAPHS = {"": "Normal", "overall": "Intense Quote", "quote": "Quote", "tiny"
 LONGEST_TITLE, LONG_TITLE_SIZE = 120, 11  # characters; points of a longer one
 ROOM = 170  # mm between the margins of our page
 ROOM_FOR_TWO = 130  # mm between the margins: with less, pictures stand one below the other
-NARROW = 5.5  # inches: a picture that is no wider fills half a page
 GAP = 3  # mm at the right of each picture of two side by side
 GAP_AROUND = 6  # points above pictures, below tables
 HIGHEST = 0.5  # share of the height of a page that a picture takes
-WHOLE = 10  # rows of a table that is not parted
 
 
 def as_docx(document: Document, date: str, template: Path | None = None) -> bytes:
@@ -111,7 +109,7 @@ class _Writer:
             case Table():
                 self._table(block)
             case Figures():
-                self._figures(block.pictures)
+                self._figures(block)
             case Verbatim():
                 self._listing(block)
             case Details():
@@ -157,10 +155,10 @@ class _Writer:
         put_simple(paragraph, f"SEQ {what} \\* ARABIC", str(self.numbers[what]))
         paragraph.add_run(f": {clean(text)}")
 
-    def _figures(self, pictures: Sequence[Picture]) -> None:
+    def _figures(self, figures: Figures) -> None:
         """Write pictures two in a row, the caption of one without a neighbour at its side."""
-        is_wide = len(pictures) == 1 and pictures[0].width > NARROW
-        if is_wide or not self.has_two:
+        pictures = figures.pictures
+        if figures.is_wide or not self.has_two:
             for picture in pictures:
                 paragraph = self.file.add_paragraph()
                 paragraph.paragraph_format.keep_with_next = True

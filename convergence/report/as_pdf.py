@@ -2,11 +2,10 @@
 
 import json
 import tempfile
-from collections.abc import Sequence
 from pathlib import Path
 from typing import Any
 
-from convergence.report._columns import bands, is_narrow, shares
+from convergence.report._columns import WHOLE, bands, is_narrow, shares
 from convergence.report._picture import Picture
 from convergence.report.content import (
     FOOT,
@@ -30,8 +29,8 @@ PAGE = Path(__file__).with_name("_page.typ")
 LONGEST_WORD = 18  # characters; longer ones may be broken
 ROOM, ROOM_OF_TWO = 170, 82  # mm: between the margins, for each of two pictures
 HIGHEST = 125  # mm: how high a picture is, so that two find room on a page
-WIDEST, NARROW = 6.7, 5.5  # inches: pictures that fill the page, or half of it
-WHOLE, WHOLE_SIZE = 10, 3000  # rows and characters of a table that is not parted
+WIDEST = 6.7  # inches: a picture that fills the page
+WHOLE_SIZE = 3000  # characters of a table that is not parted
 SHORT, LONG = 22, 250  # characters of a cell of words: never broken into lines; as many as count
 BREAK = "\N{ZERO WIDTH SPACE}"
 
@@ -108,7 +107,7 @@ def _block(block: Block, anchors: set[str]) -> dict[str, Any]:
         case Table():
             return _table(block, anchors)
         case Figures():
-            return _figures(block.pictures)
+            return _figures(block)
         case Verbatim():
             columns = block.columns() if block.is_narrow else [(block.text,)]
             parts = [[[_plain(line) for line in text.splitlines()] for text in row] for row in columns]
@@ -119,9 +118,9 @@ def _block(block: Block, anchors: set[str]) -> dict[str, Any]:
             return {"kind": "details", "summary": summary, "blocks": inner}
 
 
-def _figures(pictures: Sequence[Picture]) -> dict[str, Any]:
+def _figures(figures: Figures) -> dict[str, Any]:
     """Return pictures two in a row; one that is wide has the room of both."""
-    is_wide = len(pictures) == 1 and pictures[0].width > NARROW
+    pictures, is_wide = figures.pictures, figures.is_wide
     room = ROOM if is_wide else ROOM_OF_TWO
     drawn = [
         {

@@ -12,6 +12,7 @@ from convergence.report._picture import Picture
 
 FOOT = "Discretization error is one part of the uncertainty of a result."
 LONGEST_LINE, LONGEST_COLUMN = 60, 40  # characters of a line, lines of a column, where two stand side by side
+NARROW = 5.5  # inches: a picture that is no wider fills half a page
 LONGEST_RUNNING = 90  # characters of a title at the head of every page
 
 
@@ -87,6 +88,11 @@ class Figures:
     """Pictures side by side where there is room."""
 
     pictures: Sequence[Picture]
+
+    @property
+    def is_wide(self) -> bool:
+        """Return whether they are a single picture that half a page is too narrow for."""
+        return len(self.pictures) == 1 and self.pictures[0].width > NARROW
 
 
 @dataclass(frozen=True)
