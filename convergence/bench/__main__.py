@@ -21,6 +21,7 @@ from convergence.bench.page import Pair, Solo, write
 from convergence.bench.peers import MISSING
 
 RECOVERED, MAPPED = "triangles", "tetrahedra"
+LEAST_RUNS = 7  # what a run adds is a difference of two times: it scatters most
 
 
 def child(module: str, *arguments: str) -> dict[str, Any]:
@@ -69,7 +70,7 @@ def solo(chosen: Callable[[str], int], count: int) -> Solo:
             ]
     return Solo(
         recoveries=[child("ours", RECOVERED, finest, "recovery", "iteration") for _ in range(count)],
-        runs=[child("runs", finest) for _ in range(count)],
+        runs=[child("runs", finest) for _ in range(max(count, LEAST_RUNS))],
         compiled=compiled,
         maps=[mapped(chosen(MAPPED))],
         held=child("map_coverage")["rows"],

@@ -32,7 +32,14 @@ def page(tmp_path: Path, solo: Solo) -> str:
 
 def test_ratios_are_medians_with_their_spread(tmp_path: Path) -> None:
     text = page(
-        tmp_path, Solo([RECOVERED], [RUN], [("triangles", OURS, OURS | {"lived": 5.0})], [MAPPED], HELD)
+        tmp_path,
+        Solo(
+            [RECOVERED],
+            [RUN, RUN | {"run": 5.0}, RUN | {"run": 8.0}],
+            [("triangles", OURS, OURS | {"lived": 5.0})],
+            [MAPPED],
+            HELD,
+        ),
     )
     assert (
         "| triangles | 5 | 1,000,000 | cholesky | 4.0 | 8.0 | 0.50 [0.25 … 1.00] | 0.90 | 1.80 | 0.50 |"
@@ -40,7 +47,7 @@ def test_ratios_are_medians_with_their_spread(tmp_path: Path) -> None:
     )
     assert "0.50 of the 2.0 s of that level" in text
     assert "100 ms, 2.0 times the 50 ms" in text
-    assert "a run adds 0.50 of the solving" in text
+    assert "a run adds 0.50 [0.25 … 1.00] of the solving, in the median of 3." in text
     assert "triangles 1.25 [1.25 … 1.25]" in text
     assert "1,080,793 nodes" in text and "0.50 of the 80.0 s" in text and "2.50 GB" in text
     assert (
