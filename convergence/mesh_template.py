@@ -14,7 +14,7 @@ from convergence.conditions import LOADS, SUPPORTS
 from convergence.fem.given_part import GivenMesh
 from convergence.fem.material import material
 from convergence.mesh_study import meshes
-from convergence.template import UNITS, line, section, toml
+from convergence.template import above_tables, line, section, toml
 
 AXES = ("x", "y", "z")
 WEIGHT = 7.7e-5  # of steel, in N/mm³
@@ -41,8 +41,7 @@ def mesh_template(path: Path) -> str:
             *(f"# {remark}." for remark in found.remarks),
             f"# Run it with: meshassay run {path.stem}.toml",
             "",
-            f"title = {toml(path.stem)}",
-            f"units = {toml(UNITS)}",
+            *above_tables(path.stem),
             *section("meshes", meshes, first={"file": path.name}),
             *section("material", material),
             *_regions(made.regions),

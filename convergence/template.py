@@ -10,8 +10,8 @@ from convergence.bind import REQUIRED, Parameter, parameters
 from convergence.dimensions import FORCE, MOMENT, STRESS, SYSTEMS
 from convergence.fem.material import material, material_names
 from convergence.ladder_spec import ladder
+from convergence.study_head import DEFAULT_SYSTEM, head
 
-UNITS = "mm, N, MPa"
 WIDTH = 30
 LOADS = (FORCE, STRESS, MOMENT)
 
@@ -26,8 +26,7 @@ def study_template(model: str) -> str:
         f"# {about}",
         f"# Run it with: meshassay run {model}.toml",
         "",
-        f"title = {toml(about.rstrip('.'))}",
-        line(f"units = {toml(UNITS)}", f"one of: {'; '.join(SYSTEMS)}"),
+        *above_tables(about.rstrip(".")),
         *section("model", function, given=materials, first={"name": model}),
         *_cases(parameters(function, materials)),
         *(row for name in materials for row in section(name, material)),
@@ -50,9 +49,18 @@ def section(
     name: str, function: Callable[..., Any], given: Iterable[str] = (), first: Mapping[str, Any] | None = None
 ) -> list[str]:
     """Return a table with every parameter, those in `first` on top with the values given there."""
+    return ["", f"[{name}]", *_keys(function, given, first or {})]
+
+
+def above_tables(title: str) -> list[str]:
+    """Return what stands above the tables of a study."""
+    return _keys(head, (), {"title": title, "units": DEFAULT_SYSTEM})
+
+
+def _keys(function: Callable[..., Any], given: Iterable[str], first: Mapping[str, Any]) -> list[str]:
     found = {parameter.name: parameter for parameter in parameters(function, given)}
-    lines = ["", f"[{name}]"]
-    for key, value in (first or {}).items():
+    lines = []
+    for key, value in first.items():
         lines.append(line(f"{key} = {toml(value)}", _about(found.pop(key)) if key in found else ""))
     return lines + [_parameter(parameter) for parameter in found.values()]
 
@@ -78,7 +86,7 @@ def _parameter(parameter: Parameter) -> str:
 
 
 def _about(parameter: Parameter) -> str:
-    wanted = parameter.wanted(SYSTEMS[UNITS])
+    wanted = parameter.wanted(SYSTEMS[DEFAULT_SYSTEM])
     return f"{parameter.doc}; {wanted}" if parameter.doc else wanted
 
 
