@@ -42,7 +42,7 @@ figures: $(READY) ## redraw the README's pictures from two studies: the lug and 
 	cp out/lug/figures/hole-peak-value.svg figures/lug-hole-peak.svg
 	cp out/bracket_sharp/figures/corner-stress-growth.svg figures/bracket-corner-growth.svg
 
-calibrate: $(READY) ## bank (an hour), table, figures/calibration.md; BANK=kept uses the packaged bank
+calibrate: $(READY) ## bank (an hour), table (16 GB), figures/calibration.md; BANK=kept uses the packaged bank
 	$(BIN)/python -m convergence.calibration $(if $(filter kept,$(BANK)),,--bank)
 
 bench: $(READY) ## measure speed and memory against NGSolve: figures/performance.md (alone on the machine)

@@ -52,9 +52,10 @@ def called(
 def _count(members: Sequence[Outcome], above: Mapping[str, float]) -> Called:
     shown = [one.sub.levels >= LEAST_TO_SHOW and one.growth >= above["shown"] for one in members]
     open_ones = [one for one, is_shown in zip(members, shown, strict=True) if not is_shown]
-    unproven = [one for one in open_ones if one.growth >= above["possible"] and not _is_settled(one)]
+    unproven = [one for one in open_ones if one.growth >= above["possible"] and not is_settled(one)]
     return Called(len(members), sum(shown), len(unproven))
 
 
-def _is_settled(one: Outcome) -> bool:
+def is_settled(one: Outcome) -> bool:
+    """Return whether an interval is so narrow that growth which is possible does not count."""
     return one.about_finest <= SETTLED * abs(float(one.sub.f[-1]))

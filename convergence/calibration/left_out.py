@@ -7,7 +7,7 @@ from typing import get_args
 import numpy as np
 
 from convergence.calibration.fit import Weighed, fitted_growth, fitted_weights
-from convergence.calibration.stretches import Stretch, Told, fitted_stretch, names_of
+from convergence.calibration.stretches import Stretch, Told, all_stretches
 from convergence.calibration.sub_ladders import SubLadder
 from convergence.coverage import Knowledge
 from convergence.histories.belief import Belief
@@ -93,14 +93,9 @@ def _told(
     return Told(one.sub, facts(belief, one.sub.h, one.sub.f, kind, degree), belief.limit), belief.growth
 
 
-def all_stretches(told: Sequence[Told], known: Knowledge) -> dict[str, Stretch]:
-    """Return β by number of levels."""
-    found = {}
-    for levels in sorted({levels_key(one.sub.levels) for one in told}):
-        of_these = [one for one in told if levels_key(one.sub.levels) == levels]
-        names = names_of(of_these, kinds=known != "nothing", degrees=known == "kind and degree")
-        found[levels] = fitted_stretch(of_these, names)
-    return found
+def stretches(told: Sequence[Told], known: Knowledge) -> dict[str, Stretch]:
+    """Return β by number of levels in a state of knowledge."""
+    return all_stretches(told, kinds=known != "nothing", degrees=known == "kind and degree")
 
 
 def outcomes(told: Sequence[tuple[Told, float]], known: Knowledge) -> list[Outcome]:
@@ -108,9 +103,9 @@ def outcomes(told: Sequence[tuple[Told, float]], known: Knowledge) -> list[Outco
     found = []
     for family in sorted({one.sub.of.family for one, _ in told}):
         others = [one for one, _ in told if one.sub.of.family != family and not one.sub.of.singular]
-        stretches = all_stretches(others, known)
+        fitted = stretches(others, known)
         for one, growth in told:
             if one.sub.of.family == family:
-                half = half_width(one.facts, stretches[levels_key(one.sub.levels)])
+                half = half_width(one.facts, fitted[levels_key(one.sub.levels)])
                 found.append(Outcome(one.sub, one.limit - half, one.limit + half, growth))
     return found

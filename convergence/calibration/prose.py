@@ -22,9 +22,10 @@ growing laws that have no limit. The weights of the laws are learned from the ba
 is a belief about the limit. Its median is the best estimate, half of its central {central} the unit of
 width. The unit is multiplied by exp(β·φ): φ are facts such as the spread of the belief, the last changes
 and the scatter; β is fitted by quantile regression to the true errors of the bank, in which families count
-the same, and kinds of quantity. A last (conformal) factor for each number of levels covers at least {asked}
-of every source of meshes, kind of quantity and dimension with ladders enough. Shift and scale of the values
-change nothing; sizes count by their ratios.
+the same, and kinds of quantity. A last (conformal) factor, one for three levels and more and one for two,
+covers at least {asked} of every source of meshes with every number of levels, of every kind of quantity and
+every dimension with ladders enough. Shift and scale of the values change nothing; sizes count by their
+ratios.
 
 Measured is by leaving out: a sub-ladder is judged with weights, β and factor that were fitted without its
 family.
@@ -96,12 +97,13 @@ GROWTH = """## Values without a limit
 The odds of growing against falling laws tell them. From four levels a stress is called singular where the
 odds pass the first of these numbers, and growth stays possible above the second: {odds}. They were set on
 the whole bank, judged with families left out, so that {alarm} of the stresses with a limit lie above the
-first and {missed} of the singular ones below the second. A bare table says nothing of corners, so a
-stress whose growth is possible is *unproven*, unless its half-width is below {settled} of its value. A
-model that is known is asked for its corners instead. Where growth is faster than any corner's (λ < 0.2) a
-value is left unproven rather than called singular; such are counted as singular here. "Neither" may be
-called sound or refine. Aims at four levels and more: at most 2 % of the singular are neither, and at most
-2 % of those with a limit are called singular; bold falls short.
+first, and {missed} of the singular ones below the second or with a narrow interval (no other lies below where
+the narrow ones alone are more). A bare table says nothing of corners, so a stress whose growth is possible is
+*unproven*, unless its half-width is below {settled} of its value. A model that is known is asked for its
+corners instead. Where growth is faster than any corner's (λ < 0.2) a value is left unproven rather than
+called singular; such are counted as singular here. "Neither" may be called sound or refine. Aims at four
+levels and more: at most 2 % of the singular are neither, and at most 2 % of those with a limit are called
+singular; bold falls short.
 """
 
 PROMISE = """## The next mesh
@@ -117,9 +119,10 @@ SHORT = """## What falls short
 Every group of these tables, for each state of knowledge, that is covered below 95 %, and then, from three
 levels, every one whose median U/e is above its aim, about either value. "Beyond chance": 95 % lies above
 the binomial interval. Misses: which family (in a family: which kind) has most of them, what coverage is
-without it, and how far a miss is off in the median. Widths: the error of the best estimate over that of
-the finest value in the median (near one, the levels tell little of the limit, and no narrow interval can
-hold it), and who is widest.
+without it, and how far a miss is off in the median. Widths: the central 95 % of the median U/e where as many
+families are drawn with replacement ("of other families": what the choice of families alone moves); the error
+of the best estimate over that of the finest value in the median (near one, the levels tell little of the
+limit, and no narrow interval can hold it), and who is widest.
 """
 
 REMARKS = """## What these numbers are not
@@ -128,6 +131,8 @@ REMARKS = """## What these numbers are not
   behind those facts were fitted without *their* family only: the family left out had a part in them.
 - Thresholds of growth, the choice of facts and constants such as the least size of a group that is covered by
   itself were made on the whole bank, some of them after earlier coverages had been seen.
+  One factor for three levels and more, in place of one for each number of levels, and 900 sub-ladders of a
+  family, in place of 300, are from such a second look.
 - The nested ladders are mostly similar meshes of mapped parts, which are the regular ones: look at the rows
   of drawn parts too.
 - Sub-ladders of a ladder share levels, and quantities of a part share meshes. The binomial intervals take

@@ -21,8 +21,9 @@ COVERED = (
     "a miss, half-widths",
 )
 FEW = 5  # below, no family is called the widest
+DRAWS = 500  # of families
 WIDE = (
-    *("group", "known", "U/e best", "U/e finest", "aim", "covers"),
+    *("group", "known", "U/e best", "of other families", "U/e finest", "aim", "covers"),
     *("error best / finest", "widest", "U/e there"),
 )
 
@@ -62,7 +63,8 @@ def wider(of: Sequence[Group]) -> list[Shortfall]:
         if not group.is_of_two_levels and max(count.own, count.finest) > aim:
             widths = [numbers.beside_limit(width, aim, 2) for width in (count.own, count.finest)]
             share = numbers.percent(count.share, AIM)
-            row = [_name(group), method, *widths, str(aim), share, *_widest(group, method)]
+            row = [_name(group), method, widths[0], _drawn(group, method), widths[1], str(aim), share]
+            row += _widest(group, method)
             found.append(Shortfall(group, method, row))
     return found
 
@@ -91,6 +93,20 @@ def _misses(group: Group, method: str) -> list[str]:
     without = numbers.percent(rest.share, AIM) if rest.cases else "none"
     off = np.median([abs(one.answers[method].share) for one in missed])
     return [f"{worst}, {number} of {len(missed)}", without, f"{off:.1f}"]
+
+
+def _drawn(group: Group, method: str) -> str:
+    """Return the central 95 % of the median U/e where as many families are drawn with replacement."""
+    ratios = dict[str, list[float]]()
+    for one in group.members:
+        ratios.setdefault(one.sub.of.family, []).append(one.answers[method].own)
+    if len(ratios) < FEW:
+        return "too few"
+    families, random = [np.array(own) for own in ratios.values()], np.random.default_rng(len(ratios))
+    draws = random.integers(len(families), size=(DRAWS, len(families)))
+    medians = [np.median(np.concatenate([families[of] for of in draw])) for draw in draws]
+    low, high = np.quantile(medians, (0.025, 0.975))
+    return f"{low:.1f} to {high:.1f}"
 
 
 def _widest(group: Group, method: str) -> list[str]:

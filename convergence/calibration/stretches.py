@@ -1,7 +1,7 @@
 """Stretch of the interval: quantile regression of true errors on the facts of belief and ladder.
 
 Koenker & Bassett 1978, Econometrica 46:33; Hunter & Lange 2000, J. Comput. Graph. Stat. 9:60, for the way to
-its minimum. Then one factor for each number of levels, so that every source of meshes is covered (split
+its minimum. Then one factor so that every source of meshes, kind of quantity and dimension is covered (split
 conformal: Vovk, Gammerman & Shafer 2005, Algorithmic Learning in a Random World, section 4.1).
 """
 
@@ -11,7 +11,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from convergence.calibration.sub_ladders import SubLadder, family_weights
-from convergence.histories.width import UNIT, half_width
+from convergence.histories.width import UNIT, half_width, levels_key
 
 ASKED = 0.95
 REGRESSED = 0.955
@@ -20,6 +20,7 @@ NEAR = 1e-3
 RIDGE = 20.0  # ladders that would stand for facts without effect
 LEAST_RIDGE = 1e-9  # keeps the effect of a fact that no ladder of a fold has at zero
 FOLDS = 6
+LEAST_LEVELS = "2"  # they cannot show an order, and have a constant of their own
 LEAST_ERROR = 1e-4
 FEW = 50
 MANY = 150  # in fewer ladders of a kind or dimension a handful of one family would decide
@@ -42,27 +43,57 @@ class Told:
         return abs(self.limit - self.sub.of.limit)
 
 
-def fitted_stretch(known: Sequence[Told], names: Sequence[str]) -> Stretch:
-    """Return β by the names of the facts.
+def all_stretches(known: Sequence[Told], *, kinds: bool, degrees: bool) -> dict[str, Stretch]:
+    """Return β by number of levels.
 
-    The constant is such that every source of meshes, kind of quantity and dimension is covered as asked. It
-    comes from errors of families that had no part in the β they are held against.
+    Their constants make sure that all ladders of three levels and more, and apart from them those of two, are
+    covered as asked: every source of meshes with every number of levels, every kind of quantity and every
+    dimension. They come from errors of families that had no part in the β they are held against.
     """
-    stretch, families = _regressed(known, names), np.array([one.sub.of.family for one in known])
+    levels = np.array([levels_key(one.sub.levels) for one in known])
+    found: dict[str, Stretch] = {}
+    over = np.empty(len(known))
+    for number in np.unique(levels).tolist():
+        at = np.flatnonzero(levels == number)
+        of_these = [known[place] for place in at.tolist()]
+        names = names_of(of_these, kinds=kinds, degrees=degrees)
+        found[number] = _regressed(of_these, names)
+        over[at] = _left_over(of_these, names)
+    for numbers in ({LEAST_LEVELS}, set(found) - {LEAST_LEVELS}):
+        at = np.flatnonzero(np.isin(levels, sorted(numbers)))
+        if len(at):
+            needed = _needed([known[place] for place in at.tolist()], over[at])
+            for number in numbers:
+                found[number]["always"] += needed
+    return found
+
+
+def _left_over(known: Sequence[Told], names: Sequence[str]) -> np.ndarray:
+    """Return the logarithm of error over half-width of each, by β of other families."""
+    families = np.array([one.sub.of.family for one in known])
     fold = np.unique(families, return_inverse=True)[1] % FOLDS
     over = np.empty(len(known))
     for number in range(FOLDS):
         others = _regressed([one for one, at in zip(known, fold, strict=True) if at != number], names)
         for place in np.flatnonzero(fold == number).tolist():
             over[place] = np.log(known[place].miss / half_width(known[place].facts, others))
-    sources = np.array([SIMILAR.get(one.sub.of.source, one.sub.of.source) for one in known])
-    kinds = np.array([one.sub.of.kind for one in known])
-    dimensions = np.array([one.sub.of.dimension for one in known])
-    needed = [conformal(over, ASKED)]
-    for labels, few in ((sources, FEW), (kinds, MANY), (dimensions, MANY)):
-        groups = [over[labels == label] for label in np.unique(labels)]
+    return over
+
+
+def _needed(known: Sequence[Told], over: np.ndarray) -> float:
+    """Return the least constant by which every group with ladders enough is covered."""
+    levels = [levels_key(one.sub.levels) for one in known]
+    sources = [
+        f"{SIMILAR.get(one.sub.of.source, one.sub.of.source)} {of}"
+        for one, of in zip(known, levels, strict=True)
+    ]
+    kinds = [one.sub.of.kind for one in known]
+    dimensions = [str(one.sub.of.dimension) for one in known]
+    needed = []
+    for labels, few in ((levels, FEW), (sources, FEW), (kinds, MANY), (dimensions, MANY)):
+        groups = [over[np.array(labels) == label] for label in sorted(set(labels))]
         needed += [conformal(group, ASKED) for group in groups if len(group) >= few]
-    return {**stretch, "always": stretch["always"] + max(needed)}
+    return max(needed, default=conformal(over, ASKED))
 
 
 def _regressed(known: Sequence[Told], names: Sequence[str]) -> Stretch:

@@ -24,6 +24,13 @@ OUTCOMES = Path(__file__).with_name("outcomes.csv.gz")
 LEAST_EXPONENT = 0.45  # of a corner; what converges more slowly is not calibrated
 CAUTION = 0.35  # evidence of n levels counts with the power (3 / n)^CAUTION
 HIGHEST_DEGREE = 2
+WORD = "U16"
+OUTCOME = np.dtype(
+    [
+        *(("levels", int), ("kind", WORD), ("degree", int), ("dimension", int), ("source", WORD)),
+        *((f"{what}_{known}", float) for known in ("nothing", "known") for what in ("regularity", "share")),
+    ]
+)
 
 
 @dataclass(frozen=True, eq=False)
@@ -89,9 +96,8 @@ def as_table(found: Mapping[str, Any]) -> Table:
 def outcomes() -> np.ndarray:
     """Return the bank's sub-ladders judged with their families left out, as a structured array.
 
-    Fields: levels, kind, degree, dimension, source; with nothing and with kind and degree known: regularity
-    (half-width over span of the values) and share (error of the best estimate over half-width).
+    Beside what they are, with nothing and with kind and degree known: regularity (half-width over span of the
+    values) and share (error of the best estimate over half-width).
     """
     with gzip.open(OUTCOMES, "rt", encoding="utf-8") as rows:
-        found = np.genfromtxt(rows, delimiter=",", names=True, dtype=None, encoding="utf-8")
-    return np.asarray(found)
+        return np.loadtxt(rows, dtype=OUTCOME, delimiter=",", skiprows=1)
