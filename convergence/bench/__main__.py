@@ -21,7 +21,7 @@ from convergence.bench.page import Pair, Solo, write
 from convergence.bench.peers import MISSING
 
 RECOVERED, MAPPED = "triangles", "tetrahedra"
-LEAST_RUNS = 7  # what a run adds is a difference of two times: it scatters most
+LEAST_RUNS = 8  # what a run adds is a difference of two times: it scatters most
 
 
 def child(module: str, *arguments: str) -> dict[str, Any]:
@@ -58,7 +58,10 @@ def measured(name: str, levels: int, method: str, pairs: int) -> list[Pair]:
 
 
 def solo(chosen: Callable[[str], int], count: int) -> Solo:
-    """Return what is measured of ours alone, `count` times each, the map once; numba in turns."""
+    """Return what is measured of ours alone, `count` times each, the map once; numba in turns.
+
+    Every second time a run comes after solving alone: memory that no process used for a while is slower.
+    """
     finest = str(chosen(RECOVERED))
     compiled = []
     if importlib.util.find_spec("numba") is not None:
@@ -70,7 +73,7 @@ def solo(chosen: Callable[[str], int], count: int) -> Solo:
             ]
     return Solo(
         recoveries=[child("ours", RECOVERED, finest, "recovery", "iteration") for _ in range(count)],
-        runs=[child("runs", finest) for _ in range(max(count, LEAST_RUNS))],
+        runs=[child("runs", finest, *["solve"] * (turn % 2)) for turn in range(max(count, LEAST_RUNS))],
         compiled=compiled,
         maps=[mapped(chosen(MAPPED))],
         held=child("map_coverage")["rows"],

@@ -1,6 +1,7 @@
-"""`python -m convergence.bench.runs LEVELS`: a whole `meshassay run` in a new folder, in JSON.
+"""`python -m convergence.bench.runs LEVELS [solve]`: a whole `meshassay run` in a new folder, in JSON.
 
-The same levels are then meshed, assembled and solved alone: the rest is what a run adds, start-up included.
+The same levels are also meshed, assembled and solved alone, after the run or with `solve` before it: the rest
+is what a run adds, start-up included.
 """
 
 import json
@@ -41,20 +42,27 @@ relative_tolerance = 0.01
 """
 
 
-def run(levels: int) -> dict[str, Any]:
+def measured(levels: int, solve_first: bool) -> dict[str, Any]:
     """Return the seconds of a run and of solving alone, and the unknowns of the finest level."""
-    with tempfile.TemporaryDirectory() as folder:
-        path = Path(folder) / "plate.toml"
+    with tempfile.TemporaryDirectory() as name:
+        path = Path(name) / "plate.toml"
         path.write_text(STUDY.format(levels=levels), encoding="utf-8")
-        command = [sys.executable, "-m", "convergence", "run", str(path), "--out", str(Path(folder) / "out")]
-        start = time.perf_counter()
-        done = subprocess.run(command, capture_output=True, text=True, check=False)
-        whole = time.perf_counter() - start
-        if done.returncode > 1:
-            raise SystemExit(done.stderr.strip() or "the run failed")
         study = load(path)
-        solving, unknowns = solved(study)
+        before = solved(study) if solve_first else None
+        whole = run(path)
+        solving, unknowns = before or solved(study)
     return {"run": whole, "solving": solving, "unknowns": unknowns}
+
+
+def run(path: Path) -> float:
+    """Return the seconds of the command as a user gives it."""
+    command = [sys.executable, "-m", "convergence", "run", str(path), "--out", str(path.with_name("out"))]
+    start = time.perf_counter()
+    done = subprocess.run(command, capture_output=True, text=True, check=False)
+    whole = time.perf_counter() - start
+    if done.returncode > 1:
+        raise SystemExit(done.stderr.strip() or "the run failed")
+    return whole
 
 
 def solved(study: Study) -> tuple[float, int]:
@@ -72,4 +80,4 @@ def solved(study: Study) -> tuple[float, int]:
 
 
 if __name__ == "__main__":
-    print(json.dumps(run(int(sys.argv[1]))))
+    print(json.dumps(measured(int(sys.argv[1]), "solve" in sys.argv[2:])))

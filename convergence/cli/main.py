@@ -1,5 +1,6 @@
 """The entry: commands, exit codes, and one line instead of a stack trace."""
 
+import gc
 import os
 import sys
 
@@ -39,9 +40,12 @@ def main() -> None:
     """Run a command and exit with its code; nothing but a message reaches the user.
 
     Threads of the matrix library only get in the way of our own, so there is one unless the user says more.
+    On its way out Python would look for garbage in all that was loaded, which can take half a second.
     """
     os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
-    sys.exit(outcome(sys.argv[1:]))
+    code = outcome(sys.argv[1:])
+    gc.freeze()
+    sys.exit(code)
 
 
 def outcome(arguments: list[str]) -> int:

@@ -47,7 +47,7 @@ def test_ratios_are_medians_with_their_spread(tmp_path: Path) -> None:
     )
     assert "0.50 of the 2.0 s of that level" in text
     assert "100 ms, 2.0 times the 50 ms" in text
-    assert "a run adds 0.50 [0.25 … 1.00] of the solving, in the median of 3." in text
+    assert "a run adds 0.50 [0.25 … 1.00] of the solving, in the median of 3, every" in text
     assert "triangles 1.25 [1.25 … 1.25]" in text
     assert "1,080,793 nodes" in text and "0.50 of the 80.0 s" in text and "2.50 GB" in text
     assert (
