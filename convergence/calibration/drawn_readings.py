@@ -1,6 +1,8 @@
 """Readings in one line each: `Reading`s under the names of their measures."""
 
 import math
+from collections.abc import Sequence
+from typing import Any
 
 from convergence.calibration.drawn_case import Reading, Way
 
@@ -63,4 +65,47 @@ def held_corner_readings(corner: Place, radius: float, component: str) -> tuple[
         peak("corner nodal", "von_mises", near=corner, radius=radius, singular=True),
         peak("corner gauss", "first_principal", "gauss", corner, radius, singular=True),
         peak("all direct", "von_mises", "direct", singular=True),
+    )
+
+
+def crack_readings(
+    tip: tuple[float, float],
+    shares: tuple[float, float],
+    ligament: float,
+    far: Place,
+    *,
+    upwards: bool = False,
+    radii: Sequence[float] = (),
+) -> tuple[Reading, ...]:
+    """Read energy, what is ahead of the tip, between shares of the ligament and far away, singular stresses.
+
+    The crack runs along x, the part above it, or upwards, the part on its right. Stress intensity is read
+    within `radii`.
+    """
+    along, opening = ((0.0, 1.0), "xx") if upwards else ((1.0, 0.0), "yy")
+
+    def ahead(share: float) -> Place:
+        return tip[0] + share * ligament * along[0], tip[1] + share * ligament * along[1]
+
+    line: dict[str, Any] = {"start": ahead(shares[0]), "end": ahead(shares[1]), "component": opening}
+    near: dict[str, Any] = {"near": tip, "radius": 0.35 * ligament}
+    return (
+        Reading("energy", "energy", "energy"),
+        *(
+            Reading(
+                f"intensity {radius:g}",
+                "intensity",
+                "stress_intensity",
+                {"tip": tip, "ahead": along, "side": -1.0 if upwards else 1.0, "radius": radius},
+            )
+            for radius in radii
+        ),
+        displacement("inside", far, "magnitude"),
+        Reading("membrane", "point_stress", "line_stress", {**line, "part": "membrane"}),
+        stress("ahead", ahead(0.25), opening),
+        stress("far", far, "von_mises", "direct"),
+        stress("tip", tip, opening, singular=True),
+        peak("peak", "von_mises", singular=True),
+        peak("peak gauss", "first_principal", "gauss", **near, singular=True),
+        peak("peak direct", opening, "direct", **near, singular=True),
     )

@@ -10,6 +10,7 @@ from typing import Any
 import ngsolve as ng
 import numpy as np
 
+from convergence.calibration.crack_reading import stress_intensity as stress_intensity
 from convergence.calibration.drawn_case import DrawnCase, Way
 from convergence.calibration.drawn_solution import DrawnSolution, strain
 from convergence.calibration.sampling import means

@@ -5,12 +5,11 @@ mode; `convergence.corners.williams`). Symmetric parts are drawn by half, the li
 """
 
 import math
-from typing import Any
 
 from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading, outline
+from convergence.calibration.drawn_readings import crack_readings
 from convergence.corners.williams import weakest_exponent
 
-Place = tuple[float, float]
 ALUMINIUM = Elastic(young=70_000.0, poisson=0.33)
 
 
@@ -40,7 +39,7 @@ def _double_crack() -> DrawnCase:
         corners=(tip,),
         exponent=_notch_exponent(0.0),
         readings=(
-            *_fields(tip, (0.3, 0.95), 24.0, (13.0, 27.0)),
+            *crack_readings(tip, (0.3, 0.95), 24.0, (13.0, 27.0), radii=(11.0, 15.0)),
             Reading("mouth", "displacement", "displacement", {"at": (0.0, 0.0), "component": "y"}),
             Reading(
                 "middle y", "displacement", "mean_displacement", {"boundary": "middle", "component": "y"}
@@ -73,7 +72,7 @@ def _gripped() -> DrawnCase:
         corners=(tip, (0.0, height), (width, height)),
         exponent=_notch_exponent(0.0),
         readings=(
-            *_fields(tip, (0.15, 0.9), 30.0, (31.0, 33.0)),
+            *crack_readings(tip, (0.15, 0.9), 30.0, (31.0, 33.0), radii=(12.0, 18.0)),
             Reading("mouth", "displacement", "displacement", {"at": (0.0, 0.0), "component": "y"}),
             Reading("back x", "displacement", "mean_displacement", {"boundary": "back", "component": "x"}),
             Reading("force", "reaction", "reaction", {"boundary": "ligament", "component": "y"}),
@@ -105,7 +104,7 @@ def _bent_notch() -> DrawnCase:
         corners=(tip, (patch, depth)),
         exponent=_notch_exponent(60.0),
         readings=(
-            *_fields(tip, (0.15, 0.85), depth - notch, (23.0, 21.0), upwards=True),
+            *crack_readings(tip, (0.15, 0.85), depth - notch, (23.0, 21.0), upwards=True),
             Reading("opening", "displacement", "mean_displacement", {"boundary": "flank", "component": "x"}),
             Reading(
                 "bottom y", "displacement", "mean_displacement", {"boundary": "bottom", "component": "y"}
@@ -141,7 +140,7 @@ def _slanted_notch() -> DrawnCase:
         corners=(tip, *((x, y) for x in (0.0, width) for y in (-half_height, half_height))),
         exponent=_notch_exponent(15.0),
         readings=(
-            *_fields(tip, (0.25, 0.9), width - tip[0], (29.0, -22.0)),
+            *crack_readings(tip, (0.25, 0.9), width - tip[0], (29.0, -22.0)),
             Reading("mouth", "displacement", "displacement", {"at": (0.0, upper), "component": "y"}),
             Reading("right x", "displacement", "mean_displacement", {"boundary": "right", "component": "x"}),
             Reading("turn", "rotation", "rotation", {"start": (0.0, upper), "end": (0.0, half_height)}),
@@ -157,39 +156,3 @@ def _slanted_notch() -> DrawnCase:
 
 def _notch_exponent(angle: float) -> float | None:
     return weakest_exponent(360.0 - angle, ("free", "free"), kappa=2.0)
-
-
-def _fields(
-    tip: Place, shares: tuple[float, float], ligament: float, far: Place, *, upwards: bool = False
-) -> tuple[Reading, ...]:
-    """Return what is read in all cases: ahead of the tip, between shares of the ligament, and far away."""
-    along, opening = ((0.0, 1.0), "xx") if upwards else ((1.0, 0.0), "yy")
-
-    def ahead(share: float) -> Place:
-        return tip[0] + share * ligament * along[0], tip[1] + share * ligament * along[1]
-
-    line: dict[str, Any] = {"start": ahead(shares[0]), "end": ahead(shares[1]), "component": opening}
-    near = {"near": tip, "radius": 0.35 * ligament}
-    return (
-        Reading("energy", "energy", "energy"),
-        Reading("inside", "displacement", "displacement", {"at": far, "component": "magnitude"}),
-        Reading("membrane", "point_stress", "line_stress", {**line, "part": "membrane"}),
-        Reading("ahead", "point_stress", "stress", {"at": ahead(0.25), "component": opening}),
-        Reading("far", "point_stress", "stress", {"at": far, "component": "von_mises", "way": "direct"}),
-        Reading("tip", "point_stress", "stress", {"at": tip, "component": opening}, singular=True),
-        Reading("peak", "peak_stress", "peak", {"component": "von_mises"}, singular=True),
-        Reading(
-            "peak gauss",
-            "peak_stress",
-            "peak",
-            {"component": "first_principal", "way": "gauss", **near},
-            singular=True,
-        ),
-        Reading(
-            "peak direct",
-            "peak_stress",
-            "peak",
-            {"component": opening, "way": "direct", **near},
-            singular=True,
-        ),
-    )
