@@ -132,8 +132,8 @@ REMARKS = """## What these numbers are not
 - Thresholds of growth, the choice of facts and constants such as the least size of a group that is covered by
   itself were made on the whole bank, some of them after earlier coverages had been seen.
   One factor for three levels and more, in place of one for each number of levels, and 900 sub-ladders of a
-  family, in place of 300, are from such a second look, and so is the family of cracked arms: before it, stress
-  intensities were of one family only.
+  family, in place of 300, are from such a second look, and so is the family of cracked arms: before
+  it, stress intensities were of one family only.
 - The nested ladders are mostly similar meshes of mapped parts, which are the regular ones: look at the rows
   of drawn parts too.
 - Sub-ladders of a ladder share levels, and quantities of a part share meshes. The binomial intervals take
