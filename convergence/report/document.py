@@ -68,7 +68,7 @@ def write_report(
     sections.insert(1, record_section(record, sections))
     title = findings.title or study_name
     document = Document(title, f"Discretization error of {study_name}. {date}", sections, up)
-    content = ("findings.json", records.findings_object(findings))
+    content = ("findings.json", records.findings_object(findings, records.acting_object(fields, units)))
     return write_document(document, folder, content, date, forms, names)
 
 

@@ -2,14 +2,18 @@
 
 import math
 import platform
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import asdict
 from importlib import metadata
 from typing import Any
 
 from convergence import __version__
 from convergence.coverage import Coverage
+from convergence.dimensions import Units
 from convergence.envelope import envelope
+from convergence.fields import Fields
+from convergence.report import _acting
+from convergence.report._plane import size_of
 from convergence.report._trust import half_width
 from convergence.report.sections_instead import instead_objects
 from convergence.report.sections_map import mapped_object
@@ -172,6 +176,37 @@ def balance_object(balance: Balance | None) -> dict[str, Any] | None:
     }
 
 
+def acting_object(fields: Sequence[Fields], units: Units) -> dict[str, Any] | None:
+    """Return our own loads and reactions with their sums as the report has them, None where there are none.
+
+    Moments of a row are about its place, those of the sums about the origin.
+    """
+    forces = _acting.forces_of(fields)
+    if forces is None:
+        return None
+    sums, acting = _acting.sums(forces), _acting.cleaned(forces, size_of(fields[-1].points))
+    dimension = len(forces.place)
+    rows = [
+        {
+            "on": name,
+            "what": "load" if acting.is_load[row] else "reaction",
+            "place": acting.place[:, row].tolist(),
+            "force": acting.force[:, row].tolist(),
+            "moment": acting.moment[:, row].tolist(),
+        }
+        for row, name in enumerate(acting.names.tolist())
+    ]
+    together = {"loads": sums.loads, "reactions": sums.reactions, "left": sums.left}
+    return {
+        "units": {"force": units.force, "moment": _acting.moment_unit(units), "place": units.length},
+        "rows": rows,
+        "sums": {
+            name: {"force": parts[:dimension].tolist(), "moment": parts[dimension:].tolist()}
+            for name, parts in together.items()
+        },
+    }
+
+
 def _facts(findings: Findings) -> dict[str, Any]:
     facts = findings.facts
     corners = None if facts.corners is None else [asdict(corner) for corner in facts.corners]
@@ -192,8 +227,8 @@ def versions() -> dict[str, str]:
     return found | {package: metadata.version(package) for package in PACKAGES}
 
 
-def findings_object(findings: Findings) -> dict[str, Any]:
-    """Return everything that is known about one ladder, for findings.json."""
+def findings_object(findings: Findings, acting: dict[str, Any] | None = None) -> dict[str, Any]:
+    """Return everything that is known about one ladder, for findings.json; `acting` by `acting_object`."""
     record = judge_object(findings)
     for quantity in findings.quantities:
         more = _more(quantity, findings.verdicts[quantity.name])
@@ -208,6 +243,7 @@ def findings_object(findings: Findings) -> dict[str, Any]:
         "companion": _companion(findings.companion),
         "checks": [_check(check) for check in findings.checks],
         "balance": balance_object(findings.facts.balance),
+        "acting": acting,
         "facts": _facts(findings),
         "map": {field.name: mapped_object(field) for field in findings.mapped},
         "versions": versions(),

@@ -1,5 +1,6 @@
 """The figure and the section of our own loads and reactions: arrows to scale, labels, sums, what is left."""
 
+import json
 import re
 from collections.abc import Callable
 from dataclasses import replace
@@ -13,6 +14,7 @@ from convergence.fields import Fields, Forces, load_fields
 from convergence.report import _acting, _scene
 from convergence.report.document import write_report
 from convergence.report.figures_equilibrium import MOST_FACES, _arms, equilibrium_figure
+from convergence.report.records import acting_object
 from convergence.report.sections_equilibrium import equilibrium_section
 from convergence.results import Check, Findings
 
@@ -129,6 +131,20 @@ def test_the_report_has_the_section_where_something_acts(
         (path,) = write_report(findings, tmp_path, fields=given, units=units, **about)
         assert ('href="#balance"' in path.read_text()) is there
         assert (tmp_path / "figures" / "equilibrium.png").is_file() is there
+        assert (json.loads((tmp_path / "findings.json").read_text())["acting"] is not None) is there
+
+
+def test_findings_have_what_acts_as_numbers(fields: list[Fields], units: Units) -> None:
+    """The same as the table: without round-off in the rows, with it in what is left."""
+    found = acting_object([replace(fields[-1], forces=HELD)], units)
+    assert found is not None and acting_object(fields, units) is None
+    assert found["units"] == {"force": "N", "moment": "N mm", "place": "mm"}
+    assert found["rows"] == [
+        {"on": "<b>hook</b>", "what": "load", "place": [120, 30], "force": [0, -1000], "moment": [0]},
+        {"on": "wall", "what": "reaction", "place": [0, 60], "force": [0, 1000], "moment": [120_000]},
+    ]
+    assert found["sums"]["loads"]["moment"] == pytest.approx([-120_000], rel=1e-12)
+    assert found["sums"]["left"]["force"] == [-1e-9, 0]
 
 
 def test_forces_are_kept_with_the_fields(fields: list[Fields], tmp_path: Path) -> None:
