@@ -23,11 +23,11 @@ from convergence.calibration.left_out import (
     all_weights,
     finite,
     outcomes,
-    stretches,
     told_as,
     told_left_out,
 )
 from convergence.calibration.promises import promises
+from convergence.calibration.stretches import stretches
 from convergence.calibration.sub_ladders import SubLadder, sub_ladders
 from convergence.checks._corner import STRESS_KINDS
 from convergence.coverage import WITH_COMPANION, Companion, Coverage, Knowledge

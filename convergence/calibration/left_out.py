@@ -7,7 +7,7 @@ from typing import get_args
 import numpy as np
 
 from convergence.calibration.fit import Weighed, fitted_growth, fitted_weights
-from convergence.calibration.stretches import Stretch, Told, all_stretches
+from convergence.calibration.stretches import Told, stretches
 from convergence.calibration.sub_ladders import SubLadder
 from convergence.coverage import Knowledge
 from convergence.histories.belief import Belief
@@ -91,11 +91,6 @@ def _told(
     shape = (len(one.limits), *laws.shape)
     belief = Belief(one.limits, one.likely.reshape(shape) * laws)
     return Told(one.sub, facts(belief, one.sub.h, one.sub.f, kind, degree), belief.limit), belief.growth
-
-
-def stretches(told: Sequence[Told], known: Knowledge) -> dict[str, Stretch]:
-    """Return β by number of levels in a state of knowledge."""
-    return all_stretches(told, kinds=known != "nothing", degrees=known == "kind and degree")
 
 
 def outcomes(told: Sequence[tuple[Told, float]], known: Knowledge) -> list[Outcome]:

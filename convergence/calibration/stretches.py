@@ -11,6 +11,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from convergence.calibration.sub_ladders import SubLadder, family_weights
+from convergence.coverage import Knowledge
 from convergence.histories.width import UNIT, half_width, levels_key
 
 ASKED = 0.95
@@ -43,26 +44,26 @@ class Told:
         return abs(self.limit - self.sub.of.limit)
 
 
-def all_stretches(known: Sequence[Told], *, kinds: bool, degrees: bool) -> dict[str, Stretch]:
-    """Return β by number of levels.
+def stretches(told: Sequence[Told], known: Knowledge) -> dict[str, Stretch]:
+    """Return β by number of levels in a state of knowledge.
 
     Their constants make sure that all ladders of three levels and more, and apart from them those of two, are
     covered as asked: every source of meshes with every number of levels, every kind of quantity and every
     dimension. They come from errors of families that had no part in the β they are held against.
     """
-    levels = np.array([levels_key(one.sub.levels) for one in known])
+    levels = np.array([levels_key(one.sub.levels) for one in told])
     found: dict[str, Stretch] = {}
-    over = np.empty(len(known))
+    over = np.empty(len(told))
     for number in np.unique(levels).tolist():
         at = np.flatnonzero(levels == number)
-        of_these = [known[place] for place in at.tolist()]
-        names = names_of(of_these, kinds=kinds, degrees=degrees)
+        of_these = [told[place] for place in at.tolist()]
+        names = _names(of_these, known)
         found[number] = _regressed(of_these, names)
         over[at] = _left_over(of_these, names)
     for numbers in ({LEAST_LEVELS}, set(found) - {LEAST_LEVELS}):
         at = np.flatnonzero(np.isin(levels, sorted(numbers)))
         if len(at):
-            needed = _needed([known[place] for place in at.tolist()], over[at])
+            needed = _needed([told[place] for place in at.tolist()], over[at])
             for number in numbers:
                 found[number]["always"] += needed
     return found
@@ -115,14 +116,14 @@ def _weights(known: Sequence[Told]) -> np.ndarray:
     return np.asarray(weights * factors[of])
 
 
-def names_of(known: Sequence[Told], *, kinds: bool, degrees: bool) -> list[str]:
+def _names(told: Sequence[Told], known: Knowledge) -> list[str]:
     """Return the facts that vary among some ladders, with those of kind and degree where they are told."""
-    usual = [name for name in known[0].facts if not name.startswith(("is ", "degree ")) and name != UNIT]
-    usual = [n for n in usual if n != "always" and np.ptp([one.facts[n] for one in known]) > 0.0]
-    present = sorted({name for one in known for name in one.facts})
-    if kinds:
+    usual = [name for name in told[0].facts if not name.startswith(("is ", "degree ")) and name != UNIT]
+    usual = [n for n in usual if n != "always" and np.ptp([one.facts[n] for one in told]) > 0.0]
+    present = sorted({name for one in told for name in one.facts})
+    if known != "nothing":
         usual += [name for name in present if name.startswith("is ")][1:]
-    if degrees:
+    if known == "kind and degree":
         usual += [name for name in present if name.startswith("degree ")][1:]
     return ["always", *usual]
 

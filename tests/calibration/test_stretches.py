@@ -6,7 +6,7 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
-from convergence.calibration.stretches import ASKED, FEW, FOLDS, MANY, NEAR, REGRESSED, Told, all_stretches
+from convergence.calibration.stretches import ASKED, FEW, FOLDS, MANY, NEAR, REGRESSED, Told, stretches
 from convergence.calibration.sub_ladders import SubLadder
 from convergence.histories.width import UNIT, half_width
 
@@ -37,7 +37,7 @@ def covered(told: Sequence[Told], stretch: dict[str, float]) -> float:
 
 def test_the_worst_kind_is_covered_and_by_the_least_constant(made) -> None:
     wild, tame = made(10.0 * EVEN, kind="peak_stress"), made(EVEN)
-    stretch = all_stretches([*wild, *tame], kinds=False, degrees=False)["3"]
+    stretch = stretches([*wild, *tame], "nothing")["3"]
     assert ASKED <= covered(wild, stretch) <= ASKED + 1.0 / EACH
     assert covered(tame, stretch) == 1.0
 
@@ -45,7 +45,7 @@ def test_the_worst_kind_is_covered_and_by_the_least_constant(made) -> None:
 def test_a_source_counts_by_its_number_of_levels(made) -> None:
     """At four levels errors are ten times those at three; both have the factor that four levels need."""
     three, four = made(EVEN), made(10.0 * EVEN, levels=4)
-    found = all_stretches([*three, *four], kinds=False, degrees=False)
+    found = stretches([*three, *four], "nothing")
     assert ASKED <= covered(four, found["4"]) <= ASKED + 1.0 / EACH
     assert found["4"]["always"] - found["3"]["always"] == pytest.approx(np.log(10.0), abs=2.0 * NEAR)
 
@@ -56,15 +56,15 @@ def test_a_kind_counts_over_all_numbers_of_levels(made) -> None:
     rare = [made(10.0 * some, levels=levels, kind="rotation") for levels in (3, 4)]
     assert all(len(one) < MANY <= len(rare[0]) + len(rare[1]) for one in rare)
     usual = [made(np.tile(EVEN, 20), levels=levels) for levels in (3, 4)]
-    found = all_stretches([one for told in (*rare, *usual) for one in told], kinds=False, degrees=False)
+    found = stretches([one for told in (*rare, *usual) for one in told], "nothing")
     share = np.mean([covered(one, found[levels]) for one, levels in zip(rare, "34", strict=True)])
     assert share >= ASKED
 
 
 def test_two_levels_have_a_factor_of_their_own(made) -> None:
     two, three = made(EVEN, levels=2), made(10.0 * EVEN)
-    alone = all_stretches(two, kinds=False, degrees=False)["2"]
-    beside = all_stretches([*two, *three], kinds=False, degrees=False)
+    alone = stretches(two, "nothing")["2"]
+    beside = stretches([*two, *three], "nothing")
     assert beside["2"] == alone
     assert ASKED <= covered(two, alone) <= ASKED + 1.0 / EACH
 
@@ -74,6 +74,6 @@ def test_a_handful_sets_nothing(made) -> None:
     handful = made([10.0] * (FEW // FOLDS - 1), kind="rotation")
     for one in handful:
         assert one.sub.of.source == usual[0].sub.of.source
-    found = all_stretches([*usual, *handful], kinds=False, degrees=False)["3"]
+    found = stretches([*usual, *handful], "nothing")["3"]
     assert covered(handful, found) == 0.0
     assert found["always"] >= np.log(REGRESSED) - NEAR
