@@ -8,6 +8,7 @@ from convergence.dimensions import Bounds, Units
 from convergence.errors import Fault, InputError, nearest
 from convergence.quantity_tables import ASSUMED_TOLERANCE, TOLERANCE_KEYS, place_of, read_tolerances
 from convergence.results import Kind, Ladder, Quantity
+from convergence.stated_units import LENGTHS
 from convergence.tomlfile import TomlFile
 
 Degree = Annotated[int, Bounds(1, 10, closed=True)]
@@ -16,11 +17,19 @@ Degree = Annotated[int, Bounds(1, 10, closed=True)]
 def column(
     *,
     column: Annotated[str | None, "the table's column, the quantity's name if not given"] = None,
-    kind: Annotated[Kind, "what the numbers are"] = "unknown",
+    kind: Annotated[Kind | None, "what the numbers are; lengths are displacements if not given"] = None,
     degree: Annotated[Degree | None, "polynomial degree of the elements they come from"] = None,
-) -> tuple[str | None, Kind, int | None]:
+) -> tuple[str | None, Kind | None, int | None]:
     """Return what a study says of a column."""
     return column, kind, degree
+
+
+def kind_by_unit(unit: str) -> Kind:
+    """Return the kind of a column of that unit: a length that a model answers is a displacement.
+
+    A stress may be one at a point or a peak, a force a reaction or a resultant: no unit tells.
+    """
+    return "displacement" if unit in LENGTHS else "unknown"
 
 
 def formal_order(kind: Kind, degree: int | None) -> float | None:
@@ -46,10 +55,11 @@ def read_column(
     faults += more
     if faults:
         return None, "", faults
-    source, kind, degree = column(**arguments)
+    source, said, degree = column(**arguments)
     if (source or name) not in found:
         key = "column" if source else ""
         return None, "", [Fault(place(key), "no such column", nearest(source or name, found), source or name)]
+    kind = said or kind_by_unit(found[source or name])
     quantity = Quantity(
         name=name,
         kind=kind,
@@ -59,6 +69,7 @@ def read_column(
         relative=accepted.relative,
         absolute=accepted.absolute,
         assumed_tolerance=accepted.assumed,
+        assumed_kind=said is None and kind != "unknown",
         description=f"column {source or name}",
     )
     return quantity, source or name, []
@@ -74,19 +85,25 @@ def bare_quantities(
 ) -> tuple[Quantity, ...]:
     """Return a quantity for every column of a bare table; NAME.x and NAME.y are the place of NAME."""
     columns = list(dict.fromkeys(name for level in ladder.levels for name in level.values))
-    return tuple(
-        Quantity(
-            name=name,
-            kind=kinds.get(name, "unknown"),
-            unit=found.get(name, ""),
-            degree=degree,
-            formal_order=formal_order(kinds.get(name, "unknown"), degree),
-            relative=ASSUMED_TOLERANCE if relative is None else relative,
-            assumed_tolerance=relative is None,
+    quantities = []
+    for name in columns:
+        if name.endswith((".x", ".y")) and name[:-2] in columns:
+            continue
+        unit = found.get(name, "")
+        kind = kinds.get(name) or kind_by_unit(unit)
+        quantities.append(
+            Quantity(
+                name=name,
+                kind=kind,
+                unit=unit,
+                degree=degree,
+                formal_order=formal_order(kind, degree),
+                relative=ASSUMED_TOLERANCE if relative is None else relative,
+                assumed_tolerance=relative is None,
+                assumed_kind=name not in kinds and kind != "unknown",
+            )
         )
-        for name in columns
-        if not (name.endswith((".x", ".y")) and name[:-2] in columns)
-    )
+    return tuple(quantities)
 
 
 def kind_of(name: str, word: str) -> Kind:

@@ -89,7 +89,8 @@ class Quantity:
     """A quantity of interest: how it is measured, what theory says of it, what is accepted.
 
     `degree` is that of the elements, `formal_order` holds for a smooth solution; None where not known.
-    `measure` maps a Solution to a float or Located; None for a column of a table.
+    `measure` maps a Solution to a float or Located; None for a column of a table. A kind is assumed where
+    only its unit tells it.
     """
 
     name: str
@@ -100,6 +101,7 @@ class Quantity:
     relative: float | None = None
     absolute: float | None = None
     assumed_tolerance: bool = False
+    assumed_kind: bool = False
     measure: "functools.partial[Any] | None" = None
     description: str = ""
 

@@ -14,6 +14,7 @@ FOUNDATIONS = {
     *(
         "errors",
         "dimensions",
+        "stated_units",
         "rooms",
         "results",
         "fields",

@@ -153,6 +153,8 @@ def _show_methods(screen: "Console", findings: Findings, name: str) -> None:
 
 
 def assumptions(findings: Findings) -> list[str]:
-    """Say where a tolerance was not given."""
-    names = [quantity.name for quantity in findings.quantities if quantity.assumed_tolerance]
-    return [f"Tolerance assumed, 5 % of the value: {', '.join(names)}."] if names else []
+    """Say where a tolerance or a kind was not given."""
+    loose = [quantity.name for quantity in findings.quantities if quantity.assumed_tolerance]
+    lengths = [quantity.name for quantity in findings.quantities if quantity.assumed_kind]
+    said = [f"Tolerance assumed, 5 % of the value: {', '.join(loose)}."] if loose else []
+    return [*said, f"Taken as displacement by its unit: {', '.join(lengths)}."] if lengths else said

@@ -5,7 +5,7 @@ from collections.abc import Collection, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 
 from convergence.errors import Fault, InputError, listing, nearest
-from convergence.intake._units import FORCES, LENGTHS, MOMENTS
+from convergence.stated_units import FORCES, LENGTHS, MOMENTS
 
 FORCE, MOMENT, POINT = ("fx", "fy", "fz"), ("mx", "my", "mz"), ("x", "y", "z")
 NUMBERS = (*FORCE, *MOMENT, *POINT)

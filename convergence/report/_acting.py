@@ -1,13 +1,15 @@
-"""What acts on a part, as figure and table show it: without round-off, and its sums."""
+"""What acts on a part, as figure, table and JSON show it: without round-off, and its sums."""
 
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
+from typing import Any
 
 import numpy as np
 
 from convergence import numbers
 from convergence.dimensions import Units
 from convergence.fields import Fields, Forces
+from convergence.report._plane import size_of
 
 ROUND_OFF = 1e-7  # a component below this share of the largest force is none; moments: times the size
 
@@ -59,6 +61,37 @@ def sums(forces: Forces) -> Sums:
         moment = moment + arms[-len(moment) :]
     rows = np.vstack((forces.force, moment))
     return Sums(rows[:, forces.is_load].sum(axis=1), rows[:, ~forces.is_load].sum(axis=1))
+
+
+def acting_object(fields: Sequence[Fields], units: Units) -> dict[str, Any] | None:
+    """Return our own loads and reactions with their sums as the report has them, None where there are none.
+
+    Moments of a row are about its place, those of the sums about the origin.
+    """
+    forces = forces_of(fields)
+    if forces is None:
+        return None
+    together, acting = sums(forces), cleaned(forces, size_of(fields[-1].points))
+    dimension = len(forces.place)
+    rows = [
+        {
+            "on": name,
+            "what": "load" if acting.is_load[row] else "reaction",
+            "place": acting.place[:, row].tolist(),
+            "force": acting.force[:, row].tolist(),
+            "moment": acting.moment[:, row].tolist(),
+        }
+        for row, name in enumerate(acting.names.tolist())
+    ]
+    summed = {"loads": together.loads, "reactions": together.reactions, "left": together.left}
+    return {
+        "units": {"force": units.force, "moment": moment_unit(units), "place": units.length},
+        "rows": rows,
+        "sums": {
+            name: {"force": parts[:dimension].tolist(), "moment": parts[dimension:].tolist()}
+            for name, parts in summed.items()
+        },
+    }
 
 
 def _in_space(vectors: np.ndarray) -> np.ndarray:

@@ -8,6 +8,7 @@ from convergence.fields import Fields
 from convergence.histories.table import table
 from convergence.record import NOTHING, Record
 from convergence.report import records, sections_fields
+from convergence.report._acting import acting_object
 from convergence.report._decimal_comma import given_names
 from convergence.report.content import Document, Section
 from convergence.report.forms import HTML, Forms, write_document
@@ -68,7 +69,7 @@ def write_report(
     sections.insert(1, record_section(record, sections))
     title = findings.title or study_name
     document = Document(title, f"Discretization error of {study_name}. {date}", sections, up)
-    content = ("findings.json", records.findings_object(findings, records.acting_object(fields, units)))
+    content = ("findings.json", records.findings_object(findings, acting_object(fields, units)))
     return write_document(document, folder, content, date, forms, names)
 
 

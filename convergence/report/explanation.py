@@ -51,6 +51,7 @@ def _interval(quantity: Quantity, verdict: Verdict) -> Iterator[str]:
         yield "There is no interval."
         return
     known = f"kind {_words.plain(quantity.kind)}" if quantity.kind != "unknown" else "kind not known"
+    known += " by its unit" if quantity.assumed_kind else ""
     known += f", degree {quantity.degree}" if quantity.degree else ", degree not known"
     best = _words.with_unit(_trust.best_text(verdict), quantity.unit)
     yield f"Interval ({known}): {_words.with_unit(reach, quantity.unit)}, best estimate {best}."

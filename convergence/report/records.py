@@ -2,18 +2,14 @@
 
 import math
 import platform
-from collections.abc import Mapping, Sequence
+from collections.abc import Mapping
 from dataclasses import asdict
 from importlib import metadata
 from typing import Any
 
 from convergence import __version__
 from convergence.coverage import Coverage
-from convergence.dimensions import Units
 from convergence.envelope import envelope
-from convergence.fields import Fields
-from convergence.report import _acting
-from convergence.report._plane import size_of
 from convergence.report._trust import half_width
 from convergence.report.sections_instead import instead_objects
 from convergence.report.sections_map import mapped_object
@@ -99,6 +95,7 @@ def _more(quantity: Quantity, verdict: Verdict) -> dict[str, Any]:
         "relative_tolerance": _number(quantity.relative),
         "absolute_tolerance": _number(quantity.absolute),
         "assumed_tolerance": quantity.assumed_tolerance,
+        "assumed_kind": quantity.assumed_kind,
         "expected_order": _number(verdict.expected_order),
         "next_cells": _number(verdict.next_cells),
         "next_dofs": _number(verdict.next_dofs),
@@ -176,37 +173,6 @@ def balance_object(balance: Balance | None) -> dict[str, Any] | None:
     }
 
 
-def acting_object(fields: Sequence[Fields], units: Units) -> dict[str, Any] | None:
-    """Return our own loads and reactions with their sums as the report has them, None where there are none.
-
-    Moments of a row are about its place, those of the sums about the origin.
-    """
-    forces = _acting.forces_of(fields)
-    if forces is None:
-        return None
-    sums, acting = _acting.sums(forces), _acting.cleaned(forces, size_of(fields[-1].points))
-    dimension = len(forces.place)
-    rows = [
-        {
-            "on": name,
-            "what": "load" if acting.is_load[row] else "reaction",
-            "place": acting.place[:, row].tolist(),
-            "force": acting.force[:, row].tolist(),
-            "moment": acting.moment[:, row].tolist(),
-        }
-        for row, name in enumerate(acting.names.tolist())
-    ]
-    together = {"loads": sums.loads, "reactions": sums.reactions, "left": sums.left}
-    return {
-        "units": {"force": units.force, "moment": _acting.moment_unit(units), "place": units.length},
-        "rows": rows,
-        "sums": {
-            name: {"force": parts[:dimension].tolist(), "moment": parts[dimension:].tolist()}
-            for name, parts in together.items()
-        },
-    }
-
-
 def _facts(findings: Findings) -> dict[str, Any]:
     facts = findings.facts
     corners = None if facts.corners is None else [asdict(corner) for corner in facts.corners]
@@ -228,7 +194,7 @@ def versions() -> dict[str, str]:
 
 
 def findings_object(findings: Findings, acting: dict[str, Any] | None = None) -> dict[str, Any]:
-    """Return everything that is known about one ladder, for findings.json; `acting` by `acting_object`."""
+    """Return everything that is known about one ladder, for findings.json; `acting` as of `_acting`."""
     record = judge_object(findings)
     for quantity in findings.quantities:
         more = _more(quantity, findings.verdicts[quantity.name])

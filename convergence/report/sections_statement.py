@@ -76,6 +76,9 @@ def never_covered(findings: Findings) -> list[str]:
     assumed = [quantity.name for quantity in findings.quantities if quantity.assumed_tolerance]
     if assumed:
         items.append(f"No tolerance was given for {', '.join(assumed)}: a common one was assumed.")
+    lengths = [quantity.name for quantity in findings.quantities if quantity.assumed_kind]
+    if lengths:
+        items.append(f"No kind was given for {', '.join(lengths)}: by the unit it is taken as displacement.")
     bare = [
         name
         for name, verdict in findings.verdicts.items()

@@ -41,7 +41,8 @@ def test_the_steps_have_the_numbers(table, capsys) -> None:
 def test_only_what_is_asked_for(table, capsys) -> None:
     said = explained(capsys, str(table), "--explain", "tip deflection")
     assert "6.412, 6.498, 6.524, 6.532 mm" in said and "88.4" not in said
-    assert "kind not known, degree not known" in said
+    assert "kind displacement by its unit, degree not known" in said
+    assert "kind not known, degree not known" in explained(capsys, str(table), "--explain", "root peak")
 
 
 def test_an_unknown_name_is_told_with_the_nearest(table, capsys) -> None:

@@ -9,6 +9,9 @@ from convergence.histories.calibrated import FINEST_LEVELS, Calibrated, calibrat
 from convergence.histories.table import table
 
 KNOWN = (("unknown", None), ("displacement", None), ("energy", 2), ("point_stress", 1))
+# Recovered stress of linear cells has order p + 1 at most (Zienkiewicz & Zhu 1992, Int. J. Numer. Meth. Engng
+# 33:1331), so a belief that knows kind and degree need not hold higher ones
+HIGHEST = {("point_stress", 1): 2.0}
 
 
 def sizes(levels: int, ratio: float = 2.0) -> np.ndarray:
@@ -29,7 +32,8 @@ def test_the_limit_of_a_power_law_is_held(order: float, ratio: float, levels: in
             found = calibrated(h, 5.0 + sign * 0.03 * h**order, kind=kind, degree=degree)
             assert found.low <= 5.0 <= found.high, (kind, sign)
             assert found.low < found.limit < found.high
-            assert found.order_low <= order <= found.order_high
+            if order <= HIGHEST.get((kind, degree), np.inf):
+                assert found.order_low <= order <= found.order_high
 
 
 @pytest.mark.parametrize("order", [1.0, 2.0, 3.0])

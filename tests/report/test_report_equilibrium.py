@@ -14,7 +14,6 @@ from convergence.fields import Fields, Forces, load_fields
 from convergence.report import _acting, _scene
 from convergence.report.document import write_report
 from convergence.report.figures_equilibrium import MOST_FACES, _arms, equilibrium_figure
-from convergence.report.records import acting_object
 from convergence.report.sections_equilibrium import equilibrium_section
 from convergence.results import Check, Findings
 
@@ -136,8 +135,8 @@ def test_the_report_has_the_section_where_something_acts(
 
 def test_findings_have_what_acts_as_numbers(fields: list[Fields], units: Units) -> None:
     """The same as the table: without round-off in the rows, with it in what is left."""
-    found = acting_object([replace(fields[-1], forces=HELD)], units)
-    assert found is not None and acting_object(fields, units) is None
+    found = _acting.acting_object([replace(fields[-1], forces=HELD)], units)
+    assert found is not None and _acting.acting_object(fields, units) is None
     assert found["units"] == {"force": "N", "moment": "N mm", "place": "mm"}
     assert found["rows"] == [
         {"on": "<b>hook</b>", "what": "load", "place": [120, 30], "force": [0, -1000], "moment": [0]},

@@ -1,4 +1,4 @@
-"""Units of forces, lengths and moments as headers state them, and their sizes in N and mm."""
+"""Units of forces, lengths and moments as headers of tables state them, and their sizes in N and mm."""
 
 FORCES = {
     "N": 1.0,
