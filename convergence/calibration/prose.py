@@ -101,9 +101,10 @@ first, and {missed} of the singular ones below the second or with a narrow inter
 the narrow ones alone are more). A bare table says nothing of corners, so a stress whose growth is possible is
 *unproven*, unless its half-width is below {settled} of its value. A model that is known is asked for its
 corners instead. Where growth is faster than any corner's (λ < 0.2) a value is left unproven rather than
-called singular; such are counted as singular here. "Neither" may be called sound or refine. Aims at four
-levels and more: at most 2 % of the singular are neither, and at most 2 % of those with a limit are called
-singular; bold falls short.
+called singular; such are counted as singular here. "Neither" may be called sound or refine: the 16 of an
+earlier sample were peaks of a whole part or side that still sat at a regular place, where values do settle,
+as the corner had not outgrown it yet; no table tells that. Aims at four levels and more: at most 2 % of the
+singular are neither, and at most 2 % of those with a limit are called singular; bold falls short.
 """
 
 PROMISE = """## The next mesh
