@@ -11,7 +11,7 @@ from convergence.intervals import Interval
 from convergence.next_mesh import Next, next_mesh
 from convergence.results import Facts, Ladder, Quantity, Verdict, VerdictWord
 
-SETTLED = 0.03  # half-width over value below which 2 % of the bank's singular values lie at most
+SETTLED = 0.025  # half-width over value below which 2 % of the bank's singular values lie at most
 
 
 def verdict(
