@@ -24,12 +24,15 @@ def column(
     return column, kind, degree
 
 
-def kind_by_unit(unit: str) -> Kind:
-    """Return the kind of a column of that unit: a length that a model answers is a displacement.
+def _kind(said: Kind | None, unit: str) -> tuple[Kind, bool]:
+    """Return the kind of a column, and whether only its unit tells it.
 
-    A stress may be one at a point or a peak, a force a reaction or a resultant: no unit tells.
+    A length that a model answers is a displacement. A stress may be one at a point or a peak, a force a
+    reaction or a resultant: no unit tells.
     """
-    return "displacement" if unit in LENGTHS else "unknown"
+    if said is None and unit in LENGTHS:
+        return "displacement", True
+    return said or "unknown", False
 
 
 def formal_order(kind: Kind, degree: int | None) -> float | None:
@@ -59,7 +62,7 @@ def read_column(
     if (source or name) not in found:
         key = "column" if source else ""
         return None, "", [Fault(place(key), "no such column", nearest(source or name, found), source or name)]
-    kind = said or kind_by_unit(found[source or name])
+    kind, assumed_kind = _kind(said, found[source or name])
     quantity = Quantity(
         name=name,
         kind=kind,
@@ -69,7 +72,7 @@ def read_column(
         relative=accepted.relative,
         absolute=accepted.absolute,
         assumed_tolerance=accepted.assumed,
-        assumed_kind=said is None and kind != "unknown",
+        assumed_kind=assumed_kind,
         description=f"column {source or name}",
     )
     return quantity, source or name, []
@@ -90,7 +93,7 @@ def bare_quantities(
         if name.endswith((".x", ".y")) and name[:-2] in columns:
             continue
         unit = found.get(name, "")
-        kind = kinds.get(name) or kind_by_unit(unit)
+        kind, assumed_kind = _kind(kinds.get(name), unit)
         quantities.append(
             Quantity(
                 name=name,
@@ -100,7 +103,7 @@ def bare_quantities(
                 formal_order=formal_order(kind, degree),
                 relative=ASSUMED_TOLERANCE if relative is None else relative,
                 assumed_tolerance=relative is None,
-                assumed_kind=name not in kinds and kind != "unknown",
+                assumed_kind=assumed_kind,
             )
         )
     return tuple(quantities)

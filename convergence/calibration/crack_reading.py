@@ -11,13 +11,10 @@ import numpy as np
 
 from convergence.calibration.drawn_solution import DrawnSolution
 from convergence.fem.material import Material
-from convergence.quantities._crack import tip_slope, tip_stress
+from convergence.quantities._crack import interaction
 
-CIRCLES, PARTS, POINTS = (
-    12,
-    24,
-    12,
-)  # Gauss points across the ring; pieces of a circle and Gauss points of each
+CIRCLES = 12  # as many Gauss points across the ring
+PARTS, POINTS = 24, 12  # pieces of half a circle, and Gauss points of each
 
 
 def stress_intensity(
@@ -46,9 +43,7 @@ def stress_intensity(
     slopes = np.array(ng.Grad(solution.displacement)(at)).reshape(-1, 2, 2).transpose(1, 2, 0)
     stress, slopes = (np.einsum("ai,ijn,bj->abn", turn, tensor, turn) for tensor in (stress, slopes))
     shear = material.shear_modulus
-    alone, slope = tip_stress("I", r, angle), tip_slope("I", r, angle, shear, kappa)
-    flow = (stress * slope[:, None] + alone * slopes[:, :1]).sum(axis=0)
-    flow[0] -= (alone * slopes).sum(axis=(0, 1))
+    flow = interaction(stress, slopes, "I", r, angle, shear, kappa)
     total = ((flow * outwards).sum(axis=0) * _falling(r, radius) * area).sum()
     return float(8.0 * shear / (1.0 + kappa) * total)
 

@@ -11,6 +11,25 @@ import numpy as np
 Mode = Literal["I", "II"]
 
 
+def interaction(
+    stress: np.ndarray,
+    slopes: np.ndarray,
+    mode: Mode,
+    r: np.ndarray,
+    angle: np.ndarray,
+    shear: float,
+    kappa: float,
+) -> np.ndarray:
+    """Return s_ij U_i,1 + S_ij u_i,1 − S_ik u_i,k δ_1j (2, ...), capitals the field of the crack tip.
+
+    Stress and slopes du_i/dx_j (2, 2, ...) are by the axes of the crack.
+    """
+    tip, slope = tip_stress(mode, r, angle), tip_slope(mode, r, angle, shear, kappa)
+    flow = (stress * slope[:, None] + tip * slopes[:, :1]).sum(axis=0)
+    flow[0] -= (tip * slopes).sum(axis=(0, 1))
+    return np.asarray(flow)
+
+
 def tip_stress(mode: Mode, r: np.ndarray, angle: np.ndarray) -> np.ndarray:
     """Return the stress tensor (2, 2, ...) at distance and angle from the tip."""
     c, s = np.cos(0.5 * angle), np.sin(0.5 * angle)

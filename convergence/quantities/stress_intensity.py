@@ -18,7 +18,7 @@ from convergence.fem.loads import BodyForce, TemperatureRise
 from convergence.fem.mesh import Mesh
 from convergence.fem.solution import Solution
 from convergence.fem.stress import gradient_at, stress_at
-from convergence.quantities._crack import Mode, tip_slope, tip_stress
+from convergence.quantities._crack import Mode, interaction
 from convergence.quantities._place import place_of, unit
 from convergence.results import Kind
 
@@ -90,7 +90,7 @@ def _interaction(
     shear: float,
     kappa: float,
 ) -> float:
-    """Return ∫ (s_ij U_i,1 + S_ij u_i,1 − S_ik u_i,k δ_1j) w_,j dA, capitals the field of the crack tip."""
+    """Return ∫ flow_j w_,j dA with the flow of `interaction` and the weight w."""
     mesh = solution.mesh
     at = at_rule(mesh, RULE_ORDER, cells)
     numbers = mesh.cell_nodes[:, cells]
@@ -101,7 +101,5 @@ def _interaction(
     slopes = np.einsum("ai,ij...,bj->ab...", turn, gradient_at(solution, at, cells), turn)
     falling = turn @ np.einsum("nm,ndmq->dmq", weight[numbers], at.gradients).reshape(2, -1)
     falling = falling.reshape(2, *r.shape)
-    tip, slope = tip_stress(mode, r, angle), tip_slope(mode, r, angle, shear, kappa)
-    flow = (stress * slope[:, None] + tip * slopes[:, :1]).sum(axis=0)
-    flow[0] -= (tip * slopes).sum(axis=(0, 1))
+    flow = interaction(stress, slopes, mode, r, angle, shear, kappa)
     return float(((flow * falling).sum(axis=0) * at.dx).sum())

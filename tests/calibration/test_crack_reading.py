@@ -10,10 +10,8 @@ from convergence.calibration.crack_reading import stress_intensity
 from convergence.calibration.drawn_case import DrawnCase, outline
 from convergence.calibration.drawn_ladders import DOUBT, _reference
 
-ISIDA = {
-    0.4: 1.1094,
-    0.6: 1.3033,
-}  # a/W -> F of a long plate; Isida 1971, Int. J. Fracture 7:301, from memory
+# a/W -> F of a long plate; Isida 1971, Int. J. Fracture 7:301, from memory
+ISIDA = {0.4: 1.1094, 0.6: 1.3033}
 HALF_PRINTED = 0.00005
 HALF_WIDTH, TENSION = 20.0, 50.0
 
