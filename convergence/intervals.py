@@ -83,7 +83,7 @@ def _still(f: np.ndarray, noise: float) -> Calibrated:
     """Return the interval of values that do not move by more than round-off or their printed digits."""
     half = max(noise, float(np.ptp(f[-3:])))
     value = float(f[-1])
-    return Calibrated(value, value - half, value + half, math.nan, math.nan, "excluded", None)
+    return Calibrated(value, value - half, value + half, math.nan, math.nan, "excluded", -math.inf, None)
 
 
 def _flaw(h: np.ndarray, f: np.ndarray, usable: np.ndarray) -> str:

@@ -1,8 +1,8 @@
 """`python -m convergence.calibration [FOLDER] [--bank] [--date YYYY-MM-DD]`: bank, table and page.
 
 From the packaged bank of known ladders come histories/table.json, histories/outcomes.csv.gz,
-FOLDER/calibration.md and its plots. With --bank the bank itself is made anew first: about an hour on two
-processors; it needs NGSolve with Netgen.
+FOLDER/calibration.md and its plots. With --bank the bank itself, and the ladders of families that no
+table is made of, are made anew first: about an hour on two processors; it needs NGSolve with Netgen.
 """
 
 import argparse
@@ -10,9 +10,9 @@ import importlib.util
 from datetime import date
 from pathlib import Path
 
-from convergence.calibration.bank import read_bank, write_bank
+from convergence.calibration import making
+from convergence.calibration.bank import BANK, UNSEEN, read_bank, write_bank
 from convergence.calibration.calibrate import calibrate, write_calibrated
-from convergence.calibration.making import made_bank
 from convergence.calibration.page import write_page
 
 MISSING = "calibration: NGSolve is not installed; install it with: pip install -e '.[dev]'"
@@ -34,12 +34,13 @@ def main() -> None:
     if chosen.bank:
         if importlib.util.find_spec("ngsolve") is None:
             raise SystemExit(MISSING)
-        made, failed = made_bank(say)
-        if failed:
-            raise SystemExit(FAILED.format(", ".join(failed)))
-        write_bank(made)
+        for package, path in ((making.FAMILIES, BANK), (making.UNSEEN, UNSEEN)):
+            made, failed = making.made_ladders(package, say)
+            if failed:
+                raise SystemExit(FAILED.format(", ".join(failed)))
+            write_bank(made, path)
     ladders = read_bank()
-    found = calibrate(ladders, chosen.date, say)
+    found = calibrate(ladders, read_bank(UNSEEN), chosen.date, say)
     write_calibrated(found)
     chosen.folder.mkdir(exist_ok=True)
     write_page(chosen.folder, found, ladders)

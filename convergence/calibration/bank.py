@@ -16,6 +16,7 @@ import numpy as np
 from convergence.calibration.known_ladder import KnownLadder
 
 BANK = Path(__file__).with_name("bank.csv.gz")
+UNSEEN = Path(__file__).with_name("unseen.csv.gz")  # ladders of the families that no table is made of
 DIGITS = 12
 
 

@@ -37,7 +37,8 @@ from convergence.histories.width import MOST_LEVELS
 
 FALSE_ALARM = 0.015
 MISSED = 0.015
-MOST = 900  # sub-ladders of a family: as many as 16 GB of evidence hold
+MOST = 550  # sub-ladders of a family: as many as 16 GB of evidence hold
+MOST_UNSEEN = 450  # of a family that no table is made of: two minutes to judge
 DIGITS = 4
 
 
@@ -45,15 +46,22 @@ DIGITS = 4
 class Calibrated:
     """The table as it is written, and every outcome by what was known.
 
-    `aside` are those of ladders the table is not made for, judged with it.
+    `aside` are those of ladders the table is not made for, `unseen` those of families that no table is made
+    of; both are judged with it.
     """
 
     table: Mapping[str, Any]
     outcomes: Mapping[Knowledge, Sequence[Outcome]]
     aside: Mapping[Knowledge, Sequence[Outcome]]
+    unseen: Mapping[Knowledge, Sequence[Outcome]]
 
 
-def calibrate(ladders: Sequence[KnownLadder], made: date, say: Callable[[str], None]) -> Calibrated:
+def calibrate(
+    ladders: Sequence[KnownLadder],
+    unseen: Sequence[KnownLadder],
+    made: date,
+    say: Callable[[str], None],
+) -> Calibrated:
     """Fit weights and stretches to all families, and judge each family without it.
 
     Ladders of parts with a corner of an exponent below LEAST_EXPONENT have no part in it.
@@ -95,7 +103,10 @@ def calibrate(ladders: Sequence[KnownLadder], made: date, say: Callable[[str], N
     table["coverage"][WITH_COMPANION] = together
     say("promises of the next mesh")
     table["next_mesh"] = {name: asdict(one) for name, one in promises(ladders, as_table(table)).items()}
-    return Calibrated(table, judged, kept_aside(sub_ladders(slow, MOST), as_table(table)))
+    say("families that no table is made of")
+    taught = as_table(table)
+    aside = {known: finite(of) for known, of in judged_with(sub_ladders(slow, MOST), taught).items()}
+    return Calibrated(table, judged, aside, judged_with(sub_ladders(unseen, MOST_UNSEEN), taught))
 
 
 def is_slow(ladder: KnownLadder) -> bool:
@@ -103,15 +114,14 @@ def is_slow(ladder: KnownLadder) -> bool:
     return ladder.exponent is not None and ladder.exponent < LEAST_EXPONENT
 
 
-def kept_aside(subs: Sequence[SubLadder], taught: Table) -> dict[Knowledge, list[Outcome]]:
-    """Return the interval of sub-ladders with a limit, by a table that they have no part in."""
+def judged_with(subs: Sequence[SubLadder], taught: Table) -> dict[Knowledge, list[Outcome]]:
+    """Return interval and odds of growth of sub-ladders by a table that they have no part in."""
     found: dict[Knowledge, list[Outcome]] = {}
     for known in KNOWLEDGE:
-        found[known] = []
-        for sub in subs:
-            if not sub.of.singular:
-                one = read(sub.h, sub.f, *told_as(known, sub), taught)
-                found[known].append(Outcome(sub, one.low, one.high, float("nan")))
+        told = [read(sub.h, sub.f, *told_as(known, sub), taught) for sub in subs]
+        found[known] = [
+            Outcome(sub, one.low, one.high, one.odds) for sub, one in zip(subs, told, strict=True)
+        ]
     return found
 
 

@@ -9,6 +9,7 @@ AIM = 0.95
 WIDTHS = {"bare table": 4.5, "kind known": 4.5, "kind and degree known": 3.5}
 SOURCE = "Source of the meshes and levels"
 AIMED = (SOURCE, "Kind of quantity", "Dimension")
+FAMILY = "Family"
 LEAST_LEVELS = 3  # of the groups by anything but the number of levels, and of those with an aimed width
 SOURCES = {
     "nested": ("nested", "similar"),
@@ -49,7 +50,7 @@ def groups(all_of: Sequence[Judged]) -> list[Group]:
         ("Dimension", "dimension"),
         ("Degree", "degree"),
         ("Shape of the cells", "shape"),
-        ("Family", "family"),
+        (FAMILY, "family"),
     ):
         for value in sorted({getattr(one.sub.of, attribute) for one in more}):
 

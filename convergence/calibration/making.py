@@ -1,4 +1,4 @@
-"""The bank made anew: every drawn case meshed and solved, every mapped one, two at a time.
+"""The bank, or the ladders that it is held against, made anew: every case meshed and solved, two at a time.
 
 Each is solved in a process of its own and kept on disk: what was interrupted goes on, unless a source has
 changed that the numbers may depend on. Needs NGSolve with Netgen (`pip install -e .[dev]`). Takes about an
@@ -19,18 +19,22 @@ from convergence.calibration.known_ladder import KnownLadder
 KEPT = Path("out", "bank")
 PACKAGE = Path(__file__).parents[1]
 SOURCES = ("calibration", "corners", "fem", "models", "quantities")
-FAMILIES = Path(__file__).with_name("families")
+FAMILIES, UNSEEN = "families", "unseen"  # packages of drawn cases: of the bank, and those no table is made of
 MAPPED = "mapped"
 PROCESSES = 2
-Task = tuple[str, int]
+Task = tuple[str, str, int]  # package, family, number of the case
 
 
-def made_bank(say: Callable[[str], None], kept: Path = KEPT) -> tuple[list[KnownLadder], list[str]]:
-    """Return all ladders, always in the same order, and the cases that failed; `say` takes a line for each.
+def made_ladders(
+    package: str, say: Callable[[str], None], kept: Path = KEPT
+) -> tuple[list[KnownLadder], list[str]]:
+    """Return all ladders of a package of families, always in the same order, and the cases that failed.
+
+    `say` takes a line for each. The mapped cases belong to the bank.
 
     What is finished is kept in a folder of `kept` for the next call.
     """
-    folder, tasks = kept / _fingerprint(), _tasks()
+    folder, tasks = kept / _fingerprint(), _tasks(package)
     folder.mkdir(parents=True, exist_ok=True)
     found: list[KnownLadder] = []
     failed: list[str] = []
@@ -45,16 +49,16 @@ def made_bank(say: Callable[[str], None], kept: Path = KEPT) -> tuple[list[Known
     return found, failed
 
 
-def family_names() -> list[str]:
-    """Return the families of drawn cases."""
-    return sorted(path.stem for path in FAMILIES.glob("*.py") if path.stem != "__init__")
+def family_names(package: str) -> list[str]:
+    """Return the families of drawn cases in a package."""
+    folder = Path(__file__).with_name(package)
+    return sorted(path.stem for path in folder.glob("*.py") if path.stem != "__init__")
 
 
-def drawn_cases(family: str) -> list[Any]:
+def drawn_cases(package: str, family: str) -> list[Any]:
     """Return the cases of a family of drawn parts."""
-    cases: list[Any] = getattr(
-        importlib.import_module(f"convergence.calibration.families.{family}"), family
-    )()
+    found = importlib.import_module(f"convergence.calibration.{package}.{family}")
+    cases: list[Any] = getattr(found, family)()
     return cases
 
 
@@ -66,10 +70,12 @@ def mapped_cases() -> list[Any]:
     return [*plane_cases(), *solid_cases()]
 
 
-def _tasks() -> list[Task]:
-    """Return a family, or "mapped", and the number of a case."""
-    counts = {name: len(drawn_cases(name)) for name in family_names()} | {MAPPED: len(mapped_cases())}
-    return [(name, number) for name, count in counts.items() for number in range(count)]
+def _tasks(package: str) -> list[Task]:
+    """Return package, family, or "mapped", and the number of each case."""
+    counts = {name: len(drawn_cases(package, name)) for name in family_names(package)}
+    if package == FAMILIES:
+        counts[MAPPED] = len(mapped_cases())
+    return [(package, name, number) for name, count in counts.items() for number in range(count)]
 
 
 def _fingerprint() -> str:
@@ -80,7 +86,7 @@ def _fingerprint() -> str:
 
 def _finished(task: Task, folder: Path) -> Path:
     """Return the path of a case's ladders, solved unless they are there; there is no file where it failed."""
-    path = folder / "{} {}.csv.gz".format(*task)
+    path = folder / "{} {}.csv.gz".format(*task[1:])
     if not path.exists():
         process = multiprocessing.get_context("spawn").Process(target=_make, args=(task, path))
         process.start()
@@ -95,7 +101,7 @@ def _make(task: Task, path: Path) -> None:
 
 
 def _ladders(task: Task) -> list[KnownLadder]:
-    name, number = task
+    package, name, number = task
     if name == MAPPED:
         from convergence.calibration.mapped_ladders import mapped_ladders
 
@@ -105,4 +111,4 @@ def _ladders(task: Task) -> list[KnownLadder]:
     from convergence.calibration.drawn_ladders import drawn_ladders
 
     ngsolve.SetNumThreads(1)  # a second would wait for the processor that the other process has
-    return list(drawn_ladders(name, drawn_cases(name)[number]))
+    return list(drawn_ladders(name, drawn_cases(package, name)[number]))

@@ -12,9 +12,10 @@ from convergence import numbers
 from convergence.calibration import prose
 from convergence.calibration.calibrate import FALSE_ALARM, MISSED, Calibrated
 from convergence.calibration.companions import companion_outcomes, companion_pairs
-from convergence.calibration.groups import AIM, LEVELS, WIDTHS, Group, groups
+from convergence.calibration.groups import AIM, AIMED, FAMILY, LEVELS, WIDTHS, Group, groups
 from convergence.calibration.growth import Called, called
 from convergence.calibration.known_ladder import KnownLadder
+from convergence.calibration.left_out import Outcome
 from convergence.calibration.make_up import FamilyRow, counted, family_rows, left_out
 from convergence.calibration.plots import draw_plots
 from convergence.calibration.shortfalls import COVERED, WIDE, covered_less, summary, wider
@@ -37,8 +38,10 @@ def write_page(folder: Path, found: Calibrated, ladders: Sequence[KnownLadder]) 
         prose.head(found.table["made_of"]),
         prose.method(),
         _bank(ladders, found),
-        _coverage(of, all_of),
+        prose.coverage(len(all_of)),
+        _tables(of),
         _answers(all_of),
+        _unseen(found),
         _companion(found),
         _aside(found),
         _growth(found),
@@ -76,9 +79,9 @@ def _family(row: FamilyRow) -> Sequence[str]:
     return row.name, "; ".join(row.parts), *(f"{count:,}" for count in counts), *words, row.exponents
 
 
-def _coverage(of: Sequence[Group], all_of: Sequence[Judged]) -> str:
+def _tables(of: Sequence[Group]) -> str:
     methods = [*OURS.values(), *rules()]
-    text = [prose.coverage(len(all_of))]
+    text = []
     for heading in dict.fromkeys(group.table for group in of):
         rows = [
             [group.name, f"{len(group.members):,}", *(_cell(group, method) for method in methods)]
@@ -136,14 +139,17 @@ def _answered(count: Tally) -> list[str]:
 
 
 def _growth(found: Calibrated) -> str:
+    text = prose.growth(_odds(found.table["growth"]), FALSE_ALARM, MISSED, SETTLED)
+    return "\n".join([text, _called_table(found, found.outcomes)])
+
+
+def _called_table(found: Calibrated, outcomes: Mapping[Knowledge, Sequence[Outcome]]) -> str:
     head = ("known", "ladders", "levels", "cases", "called singular", "unproven", "neither")
     rows = []
-    for known, outcomes in found.outcomes.items():
-        above: Mapping[str, float] = found.table["growth"][known]
-        counts = called(known, outcomes, above)
+    for known, of in outcomes.items():
+        counts = called(known, of, found.table["growth"][known])
         rows += [[OURS[known], *key, *_called(*key, count)] for key, count in counts.items() if count.cases]
-    text = prose.growth(_odds(found.table["growth"]), FALSE_ALARM, MISSED, SETTLED)
-    return "\n".join([text, _table(head, rows)])
+    return _table(head, rows)
 
 
 def _odds(growth: Mapping[Knowledge, Mapping[str, float]]) -> str:
@@ -188,6 +194,14 @@ def _stated(answers: Sequence[Answer]) -> list[str]:
     share = _marked(numbers.percent(count.share, AIM), count.share < AIM)
     widths = [_width(width, COMPANION_WIDTH) for width in (count.own, count.finest)]
     return [f"{count.cases:,}", f"{share} ({low} to {high})", *widths]
+
+
+def _unseen(found: Calibrated) -> str:
+    """Return coverage, widths and calls of singular values in the families that no table is made of."""
+    of = groups(judged(found.unseen))
+    families = [group.name for group in of if group.table == FAMILY]
+    shown = [group for group in of if group.table in (*AIMED, FAMILY)]
+    return "\n".join([prose.unseen(families), _tables(shown), _called_table(found, found.unseen)])
 
 
 def _aside(found: Calibrated) -> str:

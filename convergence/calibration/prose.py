@@ -74,6 +74,14 @@ ANSWERS = """## Who answers at all
 A rule gives no half-width where its conditions do not hold. All sources together.
 """
 
+UNSEEN = """## Families that no table is made of
+
+Judged with the finished table: {families}. No weight, factor or threshold is chosen by what comes out here;
+a family that is to teach the table joins the bank, and another takes its place. Few families stand in a
+group, so that one of them moves it: the intervals in brackets are of sub-ladders alone. Drawn parts only,
+by the same mesher. Bold falls short.
+"""
+
 COMPANION = """## A companion ladder
 
 Pairs of ladders of one quantity, of another degree or other cells, that end at nearly the same size:
@@ -183,6 +191,11 @@ def bank(out: LeftOut) -> str:
 def coverage(cases: int) -> str:
     """Return what the tables of coverage show."""
     return COVERAGE.format(cases=cases)
+
+
+def unseen(families: Sequence[str]) -> str:
+    """Return what the families are that no table is made of."""
+    return UNSEEN.format(families=", ".join(families))
 
 
 def promise() -> str:

@@ -20,7 +20,10 @@ Growth = Literal["shown", "possible", "excluded"]
 
 @dataclass(frozen=True)
 class Calibrated:
-    """Best estimate of the limit and its interval; the order in 95 % of the belief; growth without limit."""
+    """Best estimate of the limit and its interval; the order in 95 % of the belief; growth without limit.
+
+    `odds`: logarithm of the odds of growth without limit.
+    """
 
     limit: float
     low: float
@@ -28,6 +31,7 @@ class Calibrated:
     order_low: float
     order_high: float
     growth: Growth
+    odds: float
     coverage: Coverage | None
 
     def about(self, value: float) -> float:
@@ -74,6 +78,7 @@ def read(h: np.ndarray, f: np.ndarray, kind: str, degree: int | None, taught: Ta
         order_low=low,
         order_high=high,
         growth=_growth(found, taught.growth[known], len(f)),
+        odds=found.growth,
         coverage=taught.coverage[known][levels],
     )
 

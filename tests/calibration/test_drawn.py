@@ -13,7 +13,7 @@ pytest.importorskip("ngsolve", reason="NGSolve has no package for this system")
 from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading, outline
 from convergence.calibration.drawn_ladders import drawn_ladders
 from convergence.calibration.known_ladder import KnownLadder
-from convergence.calibration.making import drawn_cases, family_names
+from convergence.calibration.making import FAMILIES, UNSEEN, drawn_cases, family_names
 
 INNER, OUTER, HEIGHT, PRESSURE = 17.0, 31.0, 9.0, 40.0
 STEEL = Elastic()
@@ -77,6 +77,7 @@ def test_every_way_of_meshing_converges_to_them(ladders) -> None:
 
 @pytest.mark.slow
 def test_every_family_draws_its_cases() -> None:
-    for family in family_names():
-        cases = drawn_cases(family)
-        assert len({case.name for case in cases}) == len(cases) >= 1, family
+    for package in (FAMILIES, UNSEEN):
+        for family in family_names(package):
+            cases = drawn_cases(package, family)
+            assert len({case.name for case in cases}) == len(cases) >= 1, family

@@ -96,7 +96,7 @@ def test_growth_is_called_as_verdicts_call_it(lawful) -> None:
 
 def test_the_page_says_what_was_counted(packaged, tmp_path: Path) -> None:
     """One outcome in ten misses: every table is there, and the shares are those of the outcomes."""
-    ladders = packaged[::60]
+    ladders = packaged[::59]
     subs = sub_ladders(ladders, 40)
     made = [_made(sub, number) for number, sub in enumerate(subs)]
     names = sorted({one.family for one in ladders})
@@ -112,7 +112,7 @@ def test_the_page_says_what_was_counted(packaged, tmp_path: Path) -> None:
     aside = [one for one in made if is_slow(one.sub.of) and not one.sub.of.singular]
     for folder in (tmp_path / "one", tmp_path / "two"):
         folder.mkdir()
-        write_page(folder, Calibrated(table, same(made), same(aside)), ladders)
+        write_page(folder, Calibrated(table, same(made), same(aside), same(made)), ladders)
     page = (tmp_path / "one" / "calibration.md").read_text(encoding="utf-8")
     assert f"Made 2026-01-02 from {len(ladders):,} ladders of {len(names)} families" in page
     three = [one for one in made if one.sub.levels == 3 and not one.sub.of.singular]

@@ -8,8 +8,8 @@ from typing import Any
 
 from netgen.occ import Glue
 
-from convergence.calibration.drawn_case import DrawnCase, DrawnKind, Elastic, Reading, outline
-from convergence.corners.bonded import Sector, wedge_exponents
+from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading, outline
+from convergence.calibration.exponents import weakest
 
 Place = tuple[float, float]
 STEEL = Elastic(210_000.0, 0.3, 12e-6)
@@ -36,7 +36,7 @@ def _transition() -> DrawnCase:
         tractions={"aluminium_right": (90.0, 0.0)},
         materials={"steel": STEEL, "aluminium": ALUMINIUM},
         corners=((bond, half),),
-        exponent=_weakest("plane_strain", ((STEEL, 90.0), (ALUMINIUM, 90.0))),
+        exponent=weakest("plane_strain", ((STEEL, 90.0), (ALUMINIUM, 90.0))),
         readings=(
             *_fields((bond, half), "xx", (26.0, 9.0), "steel", "xy"),
             Reading("bond end", "displacement", "displacement", {"at": (bond, half), "component": "y"}),
@@ -61,7 +61,7 @@ def _three() -> DrawnCase:
         tractions={"laminate_top": (0.0, -6.0), "bronze_right": (12.0, 0.0)},
         materials={"steel": STEEL, "laminate": LAMINATE, "bronze": BRONZE},
         corners=tuple((x, y) for x in (first, second, length) for y in (-half, half)),
-        exponent=_weakest(
+        exponent=weakest(
             "plane_stress", ((STEEL, 90.0), (LAMINATE, 90.0)), ((LAMINATE, 90.0), (BRONZE, 90.0))
         ),
         readings=(
@@ -91,7 +91,7 @@ def _cladding() -> DrawnCase:
         materials={"steel": STEEL, "bronze": BRONZE},
         temperature=-120.0,
         corners=((length, core),),
-        exponent=_weakest("plane_stress", ((STEEL, 90.0), (BRONZE, 90.0))),
+        exponent=weakest("plane_stress", ((STEEL, 90.0), (BRONZE, 90.0))),
         readings=(
             *_fields((length, core), "yy", (41.0, 9.0), "bronze", "xy"),
             Reading("end", "displacement", "displacement", {"at": (length, 0.0), "component": "x"}),
@@ -121,7 +121,7 @@ def _lap_joint() -> DrawnCase:
         tractions={"plate_left": (-60.0, 0.0)},
         materials={"plate": ALUMINIUM, "glue": GLUE, "strap": ALUMINIUM},
         corners=(above, below, (start, high), (end, low)),
-        exponent=_weakest(
+        exponent=weakest(
             "plane_strain", ((ALUMINIUM, 90.0), (GLUE, 90.0)), ((ALUMINIUM, 180.0), (GLUE, 90.0))
         ),
         readings=(
@@ -149,18 +149,6 @@ def _block(
     )
     face.faces.name = name
     return face
-
-
-def _weakest(kind: DrawnKind, *corners: tuple[tuple[Elastic, float], ...]) -> float:
-    """Return the weakest exponent of corners, each the materials from one free side to the other."""
-
-    def sector(material: Elastic, opening: float) -> Sector:
-        nu = material.poisson
-        kappa = 3.0 - 4.0 * nu if kind == "plane_strain" else (3.0 - nu) / (1.0 + nu)
-        return opening, material.young / (2.0 * (1.0 + nu)), kappa
-
-    wedges = [[sector(*wedge) for wedge in corner] for corner in corners]
-    return min(root.real for wedge in wedges for root in wedge_exponents(wedge, ("free", "free")))
 
 
 def _fields(corner: Place, across: str, inside: Place, region: str, mean: str) -> tuple[Reading, ...]:
