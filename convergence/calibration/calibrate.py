@@ -87,12 +87,7 @@ def calibrate(
     factors = companion_factors(pairs)
     stretch[WITH_COMPANION] = {levels: {"always": float(np.log(one))} for levels, one in factors.items()}
     table: dict[str, Any] = {
-        "made_of": {
-            "date": made.isoformat(),
-            "families": sorted({ladder.family for ladder in ladders}),
-            "ladders": len(ladders),
-            "sub_ladders": len(subs),
-        },
+        "made_of": _made_of(ladders, subs, made),
         "weights": {name: _rounded(values) for name, values in weights.items()},
         "growing": _rounded(growing),
         "growth": {known: _growth(judged[known]) for known in KNOWLEDGE},
@@ -107,6 +102,15 @@ def calibrate(
     taught = as_table(table)
     aside = {known: finite(of) for known, of in judged_with(sub_ladders(slow, MOST), taught).items()}
     return Calibrated(table, judged, aside, judged_with(sub_ladders(unseen, MOST_UNSEEN), taught))
+
+
+def _made_of(ladders: Sequence[KnownLadder], subs: Sequence[SubLadder], made: date) -> dict[str, Any]:
+    return {
+        "date": made.isoformat(),
+        "families": sorted({ladder.family for ladder in ladders}),
+        "ladders": len(ladders),
+        "sub_ladders": len(subs),
+    }
 
 
 def is_slow(ladder: KnownLadder) -> bool:

@@ -80,6 +80,19 @@ def name_edges(shape: Any, names: Mapping[str, tuple[float, float]]) -> None:
         shape.edges.Nearest((*place, 0.0)).name = name
 
 
+def name_sides(solid: Any, rest: str | None = None) -> None:
+    """Name the faces in a plane of the solid's box "min_x" to "max_z"; all others get the name `rest`."""
+    low, high = solid.bounding_box
+    for face in solid.faces:
+        if rest is not None:
+            face.name = rest
+        centre = (face.center.x, face.center.y, face.center.z)
+        for axis, place, lowest, highest in zip("xyz", centre, low, high, strict=True):
+            for end, where in (("min", lowest), ("max", highest)):
+                if abs(place - where) < 1e-6:
+                    face.name = f"{end}_{axis}"
+
+
 def outline(*corners: tuple[float, float, str]) -> Any:
     """Return the face within straight lines through corners, counter-clockwise.
 

@@ -81,3 +81,5 @@ def test_every_family_draws_its_cases() -> None:
         for family in family_names(package):
             cases = drawn_cases(package, family)
             assert len({case.name for case in cases}) == len(cases) >= 1, family
+            for case in cases:
+                assert len({one.label for one in case.readings}) == len(case.readings), case.name

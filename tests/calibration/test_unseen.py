@@ -15,7 +15,7 @@ from convergence.calibration.sub_ladders import BETTER_KNOWN, sub_ladders
 from convergence.coverage import Knowledge
 from convergence.histories.table import TABLE, table
 
-OF_A_FAMILY = 60
+OF_A_FAMILY = 120
 ASKED = 0.95
 SOURCES = ("nested", "perturbed", "remeshed")
 

@@ -5,7 +5,7 @@ from typing import Any
 import ngsolve as ng
 from netgen.occ import WorkPlane
 
-from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading
+from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading, name_sides
 from convergence.calibration.drawn_readings import (
     displacement,
     linearised,
@@ -34,14 +34,7 @@ def _bearer(
     pen = WorkPlane().MoveTo(0.0, radius).Direction(1.0, 0.0).Arc(radius, -45.0).Arc(radius, -45.0)
     face = pen.LineTo(wide, 0.0).LineTo(wide, high).LineTo(0.0, high).Close().Face()
     shape = face.Extrude(deep)
-    for one in shape.faces:
-        one.name = "arch"
-    for one in shape.faces:
-        at = (one.center.x, one.center.y, one.center.z)
-        for axis, place, end in zip("xyz", at, lengths, strict=True):
-            for side, where in (("min", 0.0), ("max", end)):
-                if abs(place - where) < 1e-6:
-                    one.name = f"{side}_{axis}"
+    name_sides(shape, rest="arch")
     crown, haunch = (0.0, radius, 0.0), (radius * 0.5**0.5, radius * 0.5**0.5, deep)
     return DrawnCase(
         name=name,

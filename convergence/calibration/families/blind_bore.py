@@ -5,7 +5,7 @@ from typing import Any
 import ngsolve as ng
 from netgen.occ import Box, Cylinder, Pnt, Sphere, Z
 
-from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading
+from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading, name_sides
 from convergence.calibration.drawn_readings import (
     displacement,
     linearised,
@@ -38,14 +38,7 @@ def _block(
     radius, centre = bore
     hole = Cylinder(Pnt(0, 0, centre), Z, r=radius, h=high) + Sphere(Pnt(0, 0, centre), radius)
     shape = Box(Pnt(0, 0, 0), Pnt(wide, deep, high)) - hole
-    for face in shape.faces:
-        face.name = "wet"
-    for face in shape.faces:
-        at = (face.center.x, face.center.y, face.center.z)
-        for axis, place, end in zip("xyz", at, lengths, strict=True):
-            for side, where in (("min", 0.0), ("max", end)):
-                if abs(place - where) < 1e-6:
-                    face.name = f"{side}_{axis}"
+    name_sides(shape, rest="wet")
     mouth = (radius, 0.0, high)
     bottom, waist = (0.0, 0.0, centre - radius), (radius, 0.0, centre)
     return DrawnCase(

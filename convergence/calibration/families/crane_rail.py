@@ -1,5 +1,7 @@
 """Rails of the davit's trolley: head, web and foot with fillets between them, pressed on the head."""
 
+from typing import Any
+
 import ngsolve as ng
 from netgen.occ import WorkPlane
 
@@ -36,14 +38,6 @@ def _rail(
     (foot_wide, low), (web_wide, rise), (head_wide, high) = foot, web, head
     a, b, c = 0.5 * foot_wide, 0.5 * web_wide, 0.5 * head_wide
     under, top = low + rise, low + rise + high
-    pen = WorkPlane().MoveTo(-a, 0.0).LineTo(a, 0.0).LineTo(a, low).LineTo(b + radius, low)
-    pen.Direction(-1.0, 0.0).Arc(radius, -45.0).Arc(radius, -45.0).LineTo(b, under - radius)
-    pen.Direction(0.0, 1.0).Arc(radius, -45.0).Arc(radius, -45.0).LineTo(c, under).LineTo(c, top)
-    pen.LineTo(-c, top).LineTo(-c, under).LineTo(-b - radius, under)
-    pen.Direction(1.0, 0.0).Arc(radius, -45.0).Arc(radius, -45.0).LineTo(-b, low + radius)
-    pen.Direction(0.0, -1.0).Arc(radius, -45.0).Arc(radius, -45.0).LineTo(-a, low)
-    face = pen.Close().Face()
-    name_edges(face, {"bed": (0.0, 0.0), "side": (a, 0.5 * low), "top": (0.0, top), "cheek": (c, top - 1.0)})
     share = ng.x / c
     bump = (1.0 - share * share) * (1.0 - share * share)
     reach = radius * (1.0 - 0.5**0.5)
@@ -52,7 +46,7 @@ def _rail(
     return DrawnCase(
         name=name,
         kind="plane_strain",
-        shape=face,
+        shape=_face((a, b, c), (low, under, top), radius),
         size=size,
         held={"bed": {"y": 0.0}, "side": {"x": 0.0}},
         tractions={"top": (load[0] * bump, load[1] * bump)},
@@ -62,7 +56,7 @@ def _rail(
             displacement("head y", (c, top), "y"),
             mean_displacement("cheek", "cheek", "x"),
             Reading("head turn", "rotation", "rotation", {"start": (-c, top), "end": (c, top)}),
-            reaction("bed", "side", "x"),
+            reaction("side push", "side", "x"),
             section_force("bed force", "bed", "y"),
             stress("root", root, "first_principal"),
             stress("neck", neck, "yy", "direct"),
@@ -73,3 +67,18 @@ def _rail(
             *linearised("web", (-b, middle), (b, middle), "yy"),
         ),
     )
+
+
+def _face(halves: tuple[float, float, float], heights: tuple[float, float, float], radius: float) -> Any:
+    """Return the drawing; halves: half-widths of foot, web, head; heights: where each of them ends."""
+    a, b, c = halves
+    low, under, top = heights
+    pen = WorkPlane().MoveTo(-a, 0.0).LineTo(a, 0.0).LineTo(a, low).LineTo(b + radius, low)
+    pen.Direction(-1.0, 0.0).Arc(radius, -45.0).Arc(radius, -45.0).LineTo(b, under - radius)
+    pen.Direction(0.0, 1.0).Arc(radius, -45.0).Arc(radius, -45.0).LineTo(c, under).LineTo(c, top)
+    pen.LineTo(-c, top).LineTo(-c, under).LineTo(-b - radius, under)
+    pen.Direction(1.0, 0.0).Arc(radius, -45.0).Arc(radius, -45.0).LineTo(-b, low + radius)
+    pen.Direction(0.0, -1.0).Arc(radius, -45.0).Arc(radius, -45.0).LineTo(-a, low)
+    face = pen.Close().Face()
+    name_edges(face, {"bed": (0.0, 0.0), "side": (a, 0.5 * low), "top": (0.0, top), "cheek": (c, top - 1.0)})
+    return face

@@ -51,8 +51,6 @@ def _groove(
     along = (ng.y - toe[1]) / deep
     force = 25.0 * along * along
     slope = math.radians(lean)
-    near = (toe[0] - 9.0, toe[1])
-    cut = 0.7 * wide
     return DrawnCase(
         name=name,
         kind=kind,
@@ -63,21 +61,28 @@ def _groove(
         materials={"": IRON},
         corners=(toe,),
         exponent=weakest(kind, ((IRON, 360.0 - lean),)),
-        readings=(
-            Reading("energy", "energy", "energy"),
-            displacement("mouth x", (mouth, high), "x"),
-            displacement("mouth y", (mouth, high), "y"),
-            mean_displacement("side", "side", "x"),
-            Reading("lip turn", "rotation", "rotation", {"start": (mouth, high), "end": (wide, high)}),
-            reaction("tie", "middle", "x"),
-            section_force("bed", "bottom", "y"),
-            stress("floor", near, "xx"),
-            stress("side stress", (wide, 0.6 * high), "yy"),
-            stress("inside", (0.83 * wide, 0.31 * high), "von_mises", "direct"),
-            *linearised("foot", (cut, 0.0), (cut, 0.6 * (high - deep)), "xy"),
-            stress("corner", toe, "von_mises", singular=True),
-            peak("nodal", "von_mises", singular=True),
-            peak("direct", "first_principal", "direct", toe, 8.0, singular=True),
-            peak("gauss", "von_mises", "gauss", toe, 8.0, singular=True),
-        ),
+        readings=_readings(block, mouth, toe),
+    )
+
+
+def _readings(block: tuple[float, float], mouth: float, toe: tuple[float, float]) -> tuple[Reading, ...]:
+    """Return what is read."""
+    wide, high = block
+    cut = 0.7 * wide
+    return (
+        Reading("energy", "energy", "energy"),
+        displacement("mouth x", (mouth, high), "x"),
+        displacement("mouth y", (mouth, high), "y"),
+        mean_displacement("side", "side", "x"),
+        Reading("lip turn", "rotation", "rotation", {"start": (mouth, high), "end": (wide, high)}),
+        reaction("tie", "middle", "x"),
+        section_force("bed", "bottom", "y"),
+        stress("floor", (toe[0] - 9.0, toe[1]), "xx"),
+        stress("side stress", (wide, 0.6 * high), "yy"),
+        stress("inside", (0.83 * wide, 0.31 * high), "von_mises", "direct"),
+        *linearised("foot", (cut, 0.0), (cut, 0.6 * toe[1]), "xy"),
+        stress("corner", toe, "von_mises", singular=True),
+        peak("nodal", "von_mises", singular=True),
+        peak("direct", "first_principal", "direct", toe, 8.0, singular=True),
+        peak("gauss", "von_mises", "gauss", toe, 8.0, singular=True),
     )

@@ -101,7 +101,7 @@ def _common(tip: Place, inside: Place, component: str) -> tuple[Reading, ...]:
         Reading("energy", "energy", "energy"),
         displacement("tip x", tip, "x"),
         displacement("tip y", tip, "y"),
-        displacement("inside", inside, "magnitude"),
+        displacement("inside moves", inside, "magnitude"),
         stress("inside", inside, component),
     )
 

@@ -70,10 +70,8 @@ def _ring() -> DrawnCase:
     """A quarter of a tube with flats above and below, under pressure from inside."""
     outer, inner, flat = 30.0, 17.0, 8.0
     pen = WorkPlane().MoveTo(inner + flat, 0.0).LineTo(outer + flat, 0.0).Direction(0.0, 1.0)
-    pen.Arc(outer, 45.0).Arc(outer, 45.0).LineTo(0.0, outer).LineTo(0.0, inner).LineTo(flat, inner).Direction(
-        1.0, 0.0
-    )
-    face = pen.Arc(inner, -90.0).Close().Face()
+    pen.Arc(outer, 45.0).Arc(outer, 45.0).LineTo(0.0, outer).LineTo(0.0, inner).LineTo(flat, inner)
+    face = pen.Direction(1.0, 0.0).Arc(inner, -90.0).Close().Face()
     name_edges(
         face,
         {

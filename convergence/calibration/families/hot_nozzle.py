@@ -1,6 +1,7 @@
 """Nozzles of the exhaust line: walls of revolution with a waist, hot inside or along a steep front."""
 
 import math
+from typing import Any
 
 import ngsolve as ng
 from netgen.occ import WorkPlane
@@ -16,6 +17,7 @@ from convergence.calibration.drawn_readings import (
 )
 
 BEND = 50.0  # degrees of each arc of the waist
+STRAIGHT = 34.0  # length of the pipe
 ALLOY = Elastic(190_000.0, 0.3, 16e-6)
 
 
@@ -29,42 +31,26 @@ def hot_nozzle() -> list[DrawnCase]:
 
 def _nozzle(name: str, bore: float, wall: float, radius: float, size: float, *, front: bool) -> DrawnCase:
     """Return half a nozzle: a straight pipe, then a waist of two arcs up to the plane of symmetry."""
-    straight = 34.0
-    small, large = radius - 0.5 * wall, radius + 0.5 * wall
-    pen = WorkPlane().MoveTo(bore, 0.0).LineTo(bore + wall, 0.0).LineTo(bore + wall, straight)
-    pen.Direction(0.0, 1.0).Arc(large, BEND).Arc(small, -BEND)
     waist_out = (
         bore + wall - 2.0 * radius * (1.0 - math.cos(math.radians(BEND))),
-        straight + 2.0 * radius * math.sin(math.radians(BEND)),
+        STRAIGHT + 2.0 * radius * math.sin(math.radians(BEND)),
     )
     waist_in = (waist_out[0] - wall, waist_out[1])
-    pen.LineTo(*waist_in).Direction(0.0, -1.0).Arc(large, BEND).Arc(small, -BEND)
-    face = pen.Close().Face()
-    middle = 0.5 * (waist_in[0] + waist_out[0])
-    name_edges(
-        face,
-        {
-            "end": (bore + 0.5 * wall, 0.0),
-            "waist": (middle, waist_in[1]),
-            "bore": (bore, 0.5 * straight),
-            "outside": (bore + wall, 0.5 * straight),
-        },
-    )
-    shoulder = (bore + wall, straight)
+    shoulder = (bore + wall, STRAIGHT)
     hot = (
-        250.0 / (1.0 + ng.exp(-(ng.y - straight) / 3.0))
+        250.0 / (1.0 + ng.exp(-(ng.y - STRAIGHT) / 3.0))
         if front
         else 200.0 * ng.exp((bore - ng.x) / 12.0) * (1.0 + ng.y / 90.0)
     )
     return DrawnCase(
         name=name,
         kind="axisymmetric",
-        shape=face,
+        shape=_face(bore, wall, radius, waist_in),
         size=size,
         held={"waist": {"y": 0.0}},
         materials={"": ALLOY},
         temperature=hot,
-        corners=(shoulder, (bore, straight)),
+        corners=(shoulder, (bore, STRAIGHT)),
         readings=(
             Reading("energy", "energy", "energy"),
             displacement("end x", (bore, 0.0), "x"),
@@ -75,11 +61,30 @@ def _nozzle(name: str, bore: float, wall: float, radius: float, size: float, *, 
             section_force("waist shear", "waist", "x"),
             stress("waist hoop", waist_in, "zz"),
             stress("waist axial", waist_out, "yy", "direct"),
-            stress("wall", (bore + 0.4 * wall, 0.6 * straight), "zz", "direct"),
+            stress("wall", (bore + 0.4 * wall, 0.6 * STRAIGHT), "zz", "direct"),
             stress("shoulder", shoulder, "first_principal"),
             peak("nodal", "von_mises"),
             peak("direct", "first_principal", "direct"),
             peak("gauss", "von_mises", "gauss"),
-            *linearised("wall", (bore, 0.7 * straight), (bore + wall, 0.7 * straight), "yy"),
+            *linearised("wall", (bore, 0.7 * STRAIGHT), (bore + wall, 0.7 * STRAIGHT), "yy"),
         ),
     )
+
+
+def _face(bore: float, wall: float, radius: float, waist: tuple[float, float]) -> Any:
+    """Return the drawing; radius: of the middle of its arcs, waist: the inner end of the waist."""
+    small, large = radius - 0.5 * wall, radius + 0.5 * wall
+    pen = WorkPlane().MoveTo(bore, 0.0).LineTo(bore + wall, 0.0).LineTo(bore + wall, STRAIGHT)
+    pen.Direction(0.0, 1.0).Arc(large, BEND).Arc(small, -BEND)
+    pen.LineTo(*waist).Direction(0.0, -1.0).Arc(large, BEND).Arc(small, -BEND)
+    face = pen.Close().Face()
+    name_edges(
+        face,
+        {
+            "end": (bore + 0.5 * wall, 0.0),
+            "waist": (waist[0] + 0.5 * wall, waist[1]),
+            "bore": (bore, 0.5 * STRAIGHT),
+            "outside": (bore + wall, 0.5 * STRAIGHT),
+        },
+    )
+    return face

@@ -40,34 +40,38 @@ def _bar(
         (0.0, half, "jaw"),
     )
     share = ng.y / half
-    pull = (load[0], load[1] * (1.0 - share * share))
-    held = {"low_jaw": {"x": 0.0, "y": 0.0}, "jaw": {"x": 0.0, "y": 0.0}}
-    tip = (jaw, half)
     return DrawnCase(
         name=name,
         kind="plane_stress",
         shape=face,
         size=size,
-        held=held,
-        tractions={"end": pull},
+        held={"low_jaw": {"x": 0.0, "y": 0.0}, "jaw": {"x": 0.0, "y": 0.0}},
+        tractions={"end": (load[0], load[1] * (1.0 - share * share))},
         materials={"": material},
-        corners=(tip, (jaw, -half), (0.0, half), (0.0, -half)),
+        corners=((jaw, half), (jaw, -half), (0.0, half), (0.0, -half)),
         exponent=0.5,
-        readings=(
-            Reading("energy", "energy", "energy"),
-            displacement("end x", (length, half), "x"),
-            displacement("end y", (length, half), "y"),
-            mean_displacement("back", "back", "x"),
-            Reading("end turn", "rotation", "rotation", {"start": (length, -half), "end": (length, half)}),
-            section_force("jaw pull", "jaw", "x"),
-            section_force("jaw push", "jaw", "y"),
-            stress("middle", (jaw, 0.0), "xx"),
-            stress("bar", (0.6 * length, 0.7 * half), "xx", "direct"),
-            stress("inside", (0.5 * jaw, 0.3 * half), "von_mises"),
-            *linearised("bar", (jaw + half, -half), (jaw + half, half), "xx"),
-            stress("jaw end", tip, "xx", singular=True),
-            peak("nodal", "von_mises", singular=True),
-            peak("direct", "first_principal", "direct", tip, 0.6 * half, singular=True),
-            peak("gauss", "von_mises", "gauss", tip, 0.6 * half, singular=True),
-        ),
+        readings=_readings(half, lengths),
+    )
+
+
+def _readings(half: float, lengths: tuple[float, float]) -> tuple[Reading, ...]:
+    """Return what is read."""
+    jaw, length = lengths
+    tip = (jaw, half)
+    return (
+        Reading("energy", "energy", "energy"),
+        displacement("end x", (length, half), "x"),
+        displacement("end y", (length, half), "y"),
+        mean_displacement("back", "back", "x"),
+        Reading("end turn", "rotation", "rotation", {"start": (length, -half), "end": (length, half)}),
+        section_force("jaw pull", "jaw", "x"),
+        section_force("jaw push", "jaw", "y"),
+        stress("middle", (jaw, 0.0), "xx"),
+        stress("bar", (0.6 * length, 0.7 * half), "xx", "direct"),
+        stress("inside", (0.5 * jaw, 0.3 * half), "von_mises"),
+        *linearised("bar", (jaw + half, -half), (jaw + half, half), "xx"),
+        stress("jaw end", tip, "xx", singular=True),
+        peak("nodal", "von_mises", singular=True),
+        peak("direct", "first_principal", "direct", tip, 0.6 * half, singular=True),
+        peak("gauss", "von_mises", "gauss", tip, 0.6 * half, singular=True),
     )

@@ -76,7 +76,7 @@ def _slots() -> DrawnCase:
             mean_displacement("low", "low", "y"),
             Reading("end turn", "rotation", "rotation", {"start": (90.0, 0.0), "end": (90.0, 44.0)}),
             section_force("end force", "end", "x"),
-            reaction("middle force", "end", "y"),
+            reaction("end hold", "end", "y"),
             stress("slot", crown, "first_principal"),
             stress("post", (42.0, 22.0), "xy", "direct"),
             *_peaks(crown, 9.0),

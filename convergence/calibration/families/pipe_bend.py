@@ -39,26 +39,13 @@ def _bend(
 ) -> DrawnCase:
     """Return a bend; radii: of its middle line about the z axis, of the pipe outside and inside."""
     middle, outer, inner = radii
-    pen = WorkPlane(Axes((0, 0, 0), -Y, X)).MoveTo(middle + outer, 0.0).Direction(0.0, 1.0)
-    pen.Arc(outer, 90.0).Arc(outer, 90.0).LineTo(middle - inner, 0.0).Direction(0.0, 1.0)
-    face = pen.Arc(inner, -90.0).Arc(inner, -90.0).Close().Face()
-    shape = Revolve(face, Axis(Pnt(0, 0, 0), Z), 90)
-    slant = 0.5**0.5
-    for way in (-1.0, 1.0):
-        for radius, side in ((outer, "outside"), (inner, "inside")):
-            along = middle + way * radius * slant
-            shape.faces.Nearest((along * slant, along * slant, radius * slant)).name = side
-    for way, side in ((-1.0, "flat"), (1.0, "flat")):
-        along = middle + way * 0.5 * (outer + inner)
-        shape.faces.Nearest((along * slant, along * slant, 0.0)).name = side
-    shape.faces.Min(Y).name, shape.faces.Min(X).name = "start", "end"
     inside = (middle - inner, 0.0, 0.0)
     crown, bore = (middle, 0.0, outer), (middle, 0.0, inner)
     wall = 0.5 * (inner + outer)
     return DrawnCase(
         name=name,
         kind="solid",
-        shape=shape,
+        shape=_solid(radii),
         size=size,
         held={"flat": {"z": 0.0}, "start": {"y": 0.0}, "end": {"x": 0.0}},
         tractions=load,
@@ -83,3 +70,21 @@ def _bend(
             *linearised("side", (middle + inner, 0.0, 0.0), (middle + outer, 0.0, 0.0), "yy"),
         ),
     )
+
+
+def _solid(radii: tuple[float, float, float]) -> Any:
+    """Return the drawing."""
+    middle, outer, inner = radii
+    pen = WorkPlane(Axes((0, 0, 0), -Y, X)).MoveTo(middle + outer, 0.0).Direction(0.0, 1.0)
+    pen.Arc(outer, 90.0).Arc(outer, 90.0).LineTo(middle - inner, 0.0).Direction(0.0, 1.0)
+    face = pen.Arc(inner, -90.0).Arc(inner, -90.0).Close().Face()
+    shape = Revolve(face, Axis(Pnt(0, 0, 0), Z), 90)
+    slant = 0.5**0.5
+    for way in (-1.0, 1.0):
+        for radius, side in ((outer, "outside"), (inner, "inside")):
+            along = middle + way * radius * slant
+            shape.faces.Nearest((along * slant, along * slant, radius * slant)).name = side
+        along = middle + way * 0.5 * (outer + inner)
+        shape.faces.Nearest((along * slant, along * slant, 0.0)).name = "flat"
+    shape.faces.Min(Y).name, shape.faces.Min(X).name = "start", "end"
+    return shape

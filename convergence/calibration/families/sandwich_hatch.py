@@ -60,7 +60,7 @@ def _cover() -> DrawnCase:
             Reading("energy", "energy", "energy"),
             displacement("sag", (0.0, top), "y"),
             displacement("edge", (length, top), "x"),
-            mean_displacement("skin", "skin_top", "y"),
+            mean_displacement("skin sinks", "skin_top", "y"),
             Reading("end turn", "rotation", "rotation", {"start": (length, 0.0), "end": (length, top)}),
             reaction("skin pull", "skin_middle", "x"),
             section_force("core pull", "core_middle", "x"),

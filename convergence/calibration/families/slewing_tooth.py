@@ -4,6 +4,7 @@ The block stands on rollers along its bottom and between rollers at its sides.
 """
 
 import math
+from typing import Any
 
 import ngsolve as ng
 from netgen.occ import WorkPlane
@@ -46,25 +47,6 @@ def _tooth(
     top = half - high * math.tan(slope)
     turn = 90.0 - lean
     reach = radius * math.tan(math.radians(0.5 * turn))
-    pen = WorkPlane().MoveTo(-0.5 * wide, 0.0).LineTo(0.5 * wide, 0.0).LineTo(0.5 * wide, low)
-    pen.LineTo(half + reach, low).Direction(-1.0, 0.0).Arc(radius, -0.5 * turn).Arc(radius, -0.5 * turn)
-    pen.LineTo(top, low + high).LineTo(-top, low + high)
-    pen.LineTo(-half + reach * math.sin(slope), low + reach * math.cos(slope))
-    pen.Direction(-math.sin(slope), -math.cos(slope)).Arc(radius, -0.5 * turn).Arc(
-        radius, -0.5 * turn
-    ).LineTo(-0.5 * wide, low)
-    face = pen.Close().Face()
-    flank = (0.5 * (half + top), low + 0.5 * high)
-    name_edges(
-        face,
-        {
-            "bottom": (0.0, 0.0),
-            "left": (-0.5 * wide, 0.5 * low),
-            "right": (0.5 * wide, 0.5 * low),
-            "flank": flank,
-            "top": (0.0, low + high),
-        },
-    )
     along = (ng.y - low) / high
     pressure = 60.0 * 4.0 * along * (1.0 - along)
     middle = 0.5 * math.radians(turn)
@@ -73,7 +55,7 @@ def _tooth(
     return DrawnCase(
         name=name,
         kind="plane_strain",
-        shape=face,
+        shape=_face(block, (half, top, high), (radius, reach), lean),
         size=size,
         held={"bottom": {"y": 0.0}, "left": {"x": 0.0}, "right": {"x": 0.0}},
         tractions={"flank": (-pressure * math.cos(slope), -pressure * math.sin(slope))},
@@ -95,3 +77,31 @@ def _tooth(
             *linearised("neck", (-neck, at_neck), (neck, at_neck), "yy"),
         ),
     )
+
+
+def _face(
+    block: tuple[float, float], tooth: tuple[float, float, float], fillet: tuple[float, float], lean: float
+) -> Any:
+    """Return the drawing; tooth: half-widths at root and top, height; fillet: radius, reach along a side."""
+    wide, low = block
+    half, top, high = tooth
+    radius, reach = fillet
+    slope, turn = math.radians(lean), 90.0 - lean
+    pen = WorkPlane().MoveTo(-0.5 * wide, 0.0).LineTo(0.5 * wide, 0.0).LineTo(0.5 * wide, low)
+    pen.LineTo(half + reach, low).Direction(-1.0, 0.0).Arc(radius, -0.5 * turn).Arc(radius, -0.5 * turn)
+    pen.LineTo(top, low + high).LineTo(-top, low + high)
+    pen.LineTo(-half + reach * math.sin(slope), low + reach * math.cos(slope))
+    pen.Direction(-math.sin(slope), -math.cos(slope))
+    pen.Arc(radius, -0.5 * turn).Arc(radius, -0.5 * turn)
+    face = pen.LineTo(-0.5 * wide, low).Close().Face()
+    name_edges(
+        face,
+        {
+            "bottom": (0.0, 0.0),
+            "left": (-0.5 * wide, 0.5 * low),
+            "right": (0.5 * wide, 0.5 * low),
+            "flank": (0.5 * (half + top), low + 0.5 * high),
+            "top": (0.0, low + high),
+        },
+    )
+    return face

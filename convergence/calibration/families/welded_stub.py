@@ -9,8 +9,9 @@ from typing import Any
 import ngsolve as ng
 from netgen.occ import Box, Pnt
 
-from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading
+from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading, name_sides
 from convergence.calibration.drawn_readings import (
+    Place,
     displacement,
     linearised,
     mean_displacement,
@@ -39,12 +40,14 @@ def _pulled() -> DrawnCase:
         held={"min_x": {"x": 0.0}, "min_y": {"y": 0.0}, "max_x": {"z": 0.0}},
         load={"max_z": (0.0, 0.0, 70.0 * (1.0 - 0.5 * share * share))},
         material=Elastic(),
-        tip=(16.0, 24.0, 52.0),
         depth=24.0,
-        support=("max_x", "z"),
-        cut="min_x",
-        line=((38.0, 0.0, 0.0), (38.0, 0.0, 14.0), "xx"),
-        points=((0.0, 0.0, 0.0), (40.0, 12.0, 14.0), (7.0, 9.0, 33.0)),
+        readings=_readings(
+            tip=(16.0, 24.0, 52.0),
+            foot=(16.0, 0.0, 14.0),
+            support=("max_x", "z"),
+            line=((38.0, 0.0, 0.0), (38.0, 0.0, 14.0), "xx"),
+            points=((0.0, 0.0, 0.0), (40.0, 12.0, 14.0), (7.0, 9.0, 33.0)),
+        ),
     )
 
 
@@ -60,12 +63,14 @@ def _crossbar() -> DrawnCase:
         held={"min_x": {"x": 0.0}, "min_y": {"y": 0.0}, "min_z": {"z": 0.0}},
         load={"max_z": (0.0, 0.0, -35.0 * share)},
         material=Elastic(70_000.0, 0.33),
-        tip=(50.0, 18.0, 50.0),
         depth=18.0,
-        support=("min_z", "z"),
-        cut="min_x",
-        line=((0.0, 0.0, 38.0), (0.0, 18.0, 38.0), "zz"),
-        points=((0.0, 0.0, 50.0), (20.0, 18.0, 8.0), (28.0, 7.0, 41.0)),
+        readings=_readings(
+            tip=(50.0, 18.0, 50.0),
+            foot=(20.0, 0.0, 30.0),
+            support=("min_z", "z"),
+            line=((0.0, 0.0, 38.0), (0.0, 18.0, 38.0), "zz"),
+            points=((0.0, 0.0, 50.0), (20.0, 18.0, 8.0), (28.0, 7.0, 41.0)),
+        ),
     )
 
 
@@ -78,26 +83,14 @@ def _case(
     held: dict[str, dict[str, float]],
     load: dict[str, tuple[Any, ...]],
     material: Elastic,
-    tip: tuple[float, float, float],
     depth: float,
-    support: tuple[str, str],
-    cut: str,
-    line: tuple[tuple[float, float, float], tuple[float, float, float], str],
-    points: tuple[tuple[float, float, float], ...],
+    readings: tuple[Reading, ...],
 ) -> DrawnCase:
     """Return a case; edge: x and z of the inner edge, which runs along y over the depth."""
-    low, high = shape.bounding_box
-    for face in shape.faces:  # a joined solid may have several in one plane
-        at = (face.center.x, face.center.y, face.center.z)
-        for axis, place, lowest, highest in zip("xyz", at, low, high, strict=True):
-            for end, where in (("min", lowest), ("max", highest)):
-                if abs(place - where) < 1e-6:
-                    face.name = f"{end}_{axis}"
+    name_sides(shape)
     for one in shape.edges:
         if math.dist((one.center.x, one.center.z), edge) < 1e-6:
             one.name = "sharp"
-    foot = (edge[0], 0.0, edge[1])
-    first, second, inside = points
     return DrawnCase(
         name=name,
         kind="solid",
@@ -110,21 +103,36 @@ def _case(
         edges=("sharp",),
         exponent=weakest("solid", ((material, 270.0),)),
         levels=6,
-        readings=(
-            Reading("energy", "energy", "energy"),
-            displacement("tip x", tip, "x"),
-            displacement("tip z", tip, "z"),
-            displacement("inside", inside, "magnitude"),
-            mean_displacement("top", "max_z", "z"),
-            reaction("support", *support),
-            section_force("cut", cut, "x"),
-            stress("surface", first, "xx"),
-            stress("second", second, "von_mises", "direct"),
-            stress("inside", inside, "first_principal"),
-            *linearised("line", *line),
-            stress("edge", foot, "von_mises", singular=True),
-            peak("nodal", "von_mises", singular=True),
-            peak("direct", "first_principal", "direct", singular=True),
-            peak("gauss", "von_mises", "gauss", foot, 10.0, singular=True),
-        ),
+        readings=readings,
+    )
+
+
+def _readings(
+    *,
+    tip: Place,
+    foot: Place,
+    support: tuple[str, str],
+    line: tuple[Place, Place, str],
+    points: tuple[Place, Place, Place],
+) -> tuple[Reading, ...]:
+    """Return what is read; foot: the end of the inner edge in the plane of symmetry, points: two of the
+    surface and one inside.
+    """
+    first, second, inside = points
+    return (
+        Reading("energy", "energy", "energy"),
+        displacement("tip x", tip, "x"),
+        displacement("tip z", tip, "z"),
+        displacement("inside moves", inside, "magnitude"),
+        mean_displacement("top", "max_z", "z"),
+        reaction("support", *support),
+        section_force("cut", "min_x", "x"),
+        stress("surface", first, "xx"),
+        stress("second", second, "von_mises", "direct"),
+        stress("inside", inside, "first_principal"),
+        *linearised("line", *line),
+        stress("edge", foot, "von_mises", singular=True),
+        peak("nodal", "von_mises", singular=True),
+        peak("direct", "first_principal", "direct", singular=True),
+        peak("gauss", "von_mises", "gauss", foot, 10.0, singular=True),
     )
