@@ -55,7 +55,6 @@ def _bolt(
             displacement("end y", (outer, length), "y"),
             displacement("end x", (outer, length), "x"),
             mean_displacement("end mean", "end", "y"),
-            Reading("land turn", "rotation", "rotation", {"start": (middle, 0.0), "end": (outer, 0.0)}),
             section_force("middle force", "middle", "y"),
             section_force("middle shear", "middle", "x"),
             stress("first root", root, "yy"),
