@@ -30,7 +30,7 @@ EXPECTED = {
     "cover_plate": {},
     "cracked_web": {"tip_stress": "singular"},
     "cutout": {"corner_stress": "singular"},
-    "cylinder": {},
+    "cylinder": {"wall_force": "refine"},
     "cylinder_eye": {"bore_stress": "refine"},
     "cylinder_liner": {},
     "cylinder_warm": {},
