@@ -15,7 +15,11 @@ def weakest(kind: DrawnKind, *wedges: Wedge, sides: tuple[str, str] = FREE) -> f
     return min(root.real for wedge in sectors for root in wedge_exponents(wedge, sides))
 
 
+def kappa(kind: DrawnKind, poisson: float) -> float:
+    """Return Kolosov's constant (Muskhelishvili 1953)."""
+    return (3.0 - poisson) / (1.0 + poisson) if kind == "plane_stress" else 3.0 - 4.0 * poisson
+
+
 def _sector(kind: DrawnKind, material: Elastic, opening: float) -> Sector:
     nu = material.poisson
-    kappa = (3.0 - nu) / (1.0 + nu) if kind == "plane_stress" else 3.0 - 4.0 * nu
-    return opening, material.young / (2.0 * (1.0 + nu)), kappa
+    return opening, material.young / (2.0 * (1.0 + nu)), kappa(kind, nu)

@@ -7,6 +7,7 @@ The exponent is that of a clamped and a free side at 90 degrees (Williams 1952;
 from typing import Any
 
 from convergence.calibration.drawn_case import DrawnCase, DrawnKind, Elastic, Reading, outline
+from convergence.calibration.exponents import kappa
 from convergence.corners.williams import weakest_exponent
 
 Place = tuple[float, float]
@@ -87,7 +88,7 @@ def _half_on_rollers() -> DrawnCase:
         tractions={"right": (3.0, 0.0), "top": (0.0, -0.8)},
         materials={"": rubber},
         corners=((clamped, 0.0), *_corners(0.0, width, 0.0, height)),
-        exponent=weakest_exponent(180.0, ("clamped", "roller"), kappa=_kappa("plane_strain", 0.45)),
+        exponent=weakest_exponent(180.0, ("clamped", "roller"), kappa=kappa("plane_strain", 0.45)),
         readings=(
             *_fields((clamped, 0.0), (0.0, 1.0), "xx", (47.0, 23.0)),
             Reading("left x", "displacement", "mean_displacement", {"boundary": "left", "component": "x"}),
@@ -137,12 +138,8 @@ def _between_clamps() -> DrawnCase:
     )
 
 
-def _kappa(kind: DrawnKind, poisson: float) -> float:
-    return 3.0 - 4.0 * poisson if kind == "plane_strain" else (3.0 - poisson) / (1.0 + poisson)
-
-
 def _exponent(kind: DrawnKind, poisson: float) -> float | None:
-    return weakest_exponent(90.0, ("clamped", "free"), kappa=_kappa(kind, poisson))
+    return weakest_exponent(90.0, ("clamped", "free"), kappa=kappa(kind, poisson))
 
 
 def _corners(left: float, right: float, low: float, high: float) -> tuple[Place, ...]:

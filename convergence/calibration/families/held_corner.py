@@ -19,6 +19,7 @@ from convergence.calibration.drawn_readings import (
     section_force,
     stress,
 )
+from convergence.calibration.exponents import kappa
 from convergence.corners.williams import weakest_exponent
 
 Place = tuple[float, float]
@@ -98,7 +99,7 @@ def _case(
         materials={"": material},
         body=body,
         corners=(INNER, tip, (-left, tip[1]), (-left, -depth), (weld, -depth), (weld, 0.0)),
-        exponent=weakest_exponent(opening, ("clamped", "free"), kappa=_kappa(kind, material.poisson)),
+        exponent=weakest_exponent(opening, ("clamped", "free"), kappa=kappa(kind, material.poisson)),
         readings=(
             *_whole(tip, left, depth),
             *_fields(weld, depth),
@@ -125,10 +126,6 @@ def _drawn(opening: float, *, weld: float, free: float, left: float, depth: floa
 
 def _eye_at(left: float, depth: float) -> Place:
     return -0.6 * left, -0.5 * depth
-
-
-def _kappa(kind: DrawnKind, poisson: float) -> float:
-    return 3.0 - 4.0 * poisson if kind == "plane_strain" else (3.0 - poisson) / (1.0 + poisson)
 
 
 def _whole(tip: Place, left: float, depth: float) -> tuple[Reading, ...]:

@@ -8,9 +8,9 @@ import math
 from typing import Any
 
 import ngsolve as ng
-from netgen.occ import WorkPlane, X, Y, Z
+from netgen.occ import WorkPlane
 
-from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading
+from convergence.calibration.drawn_case import DrawnCase, Elastic, Reading, name_sides
 from convergence.calibration.drawn_readings import (
     Place,
     displacement,
@@ -147,8 +147,7 @@ def _prism(outline: list[tuple[float, float]], height: float) -> Any:
     for place in outline[1:]:
         pen.LineTo(*place)
     solid = pen.Close().Face().Extrude(height)
-    for axis, name in ((X, "x"), (Y, "y"), (Z, "z")):
-        solid.faces.Min(axis).name, solid.faces.Max(axis).name = f"min_{name}", f"max_{name}"
+    name_sides(solid)
     for edge in solid.edges:
         if math.dist((edge.center.x, edge.center.y), outline[3]) < 1e-6:
             edge.name = "sharp"
