@@ -2,7 +2,8 @@
 
 Meshes of Netgen: "remeshed" (each size meshed anew), "nested" (each cell cut in two along its edges),
 "perturbed" (nested, the inner nodes moved by a fifth of the cell size). The limit comes from a mesh refined
-geometrically towards the corners, at degree 8; a second one, coarser and of degree 6, bounds its error.
+geometrically towards the corners, at degree 8; a second one, coarser and of degree 7, bounds its error.
+A reading whose values on a ladder are nothing beside its natural scale is left out.
 """
 
 from collections.abc import Iterator
@@ -18,6 +19,7 @@ from convergence.calibration import readings
 from convergence.calibration.drawn_case import DrawnCase, Reading
 from convergence.calibration.drawn_solution import DrawnSolution, solve_drawn
 from convergence.calibration.known_ladder import KnownLadder
+from convergence.calibration.natural_scale import is_nothing, natural_scale
 from convergence.calibration.sampling import nodes, sampled
 
 Source = Literal["remeshed", "nested", "perturbed"]
@@ -57,7 +59,9 @@ CURVED = {2: (5.0, 5.0), 3: (5.0, 4.5)}  # cells of a reference along an arc, as
 
 def drawn_ladders(family: str, case: DrawnCase) -> Iterator[KnownLadder]:
     """Yield all ladders of a case: every reading x plan x degree."""
-    limits = _limits(case)
+    best = _reference(case, fine=True)
+    limits = _limits(case, best)
+    scales = {reading.label: natural_scale(best, reading) for reading in case.readings}
     for number, plan in enumerate(PLANS if case.dimension == 2 else SOLID_PLANS):
         meshes = list(_meshes(case, plan, seed=number))
         for degree in (1, 2):
@@ -70,6 +74,8 @@ def drawn_ladders(family: str, case: DrawnCase) -> Iterator[KnownLadder]:
             shape = _shape(case, plan)
             for reading in case.readings:
                 f = np.array([one.values[reading.label] for one in solved])
+                if is_nothing(f, scales[reading.label]):
+                    continue
                 limit, bound = limits.get(reading.label, (np.nan, np.nan))
                 yield KnownLadder(
                     family=family,
@@ -114,10 +120,10 @@ def _read(reading: Reading, solution: DrawnSolution) -> float:
     return float(getattr(readings, reading.measure)(solution, **reading.arguments))
 
 
-def _limits(case: DrawnCase) -> dict[str, tuple[float, float]]:
+def _limits(case: DrawnCase, best: DrawnSolution) -> dict[str, tuple[float, float]]:
     """Return limit and bound of its error for every reading that has a limit."""
     finite = [reading for reading in case.readings if not reading.singular]
-    best, second = _reference(case, fine=True), _reference(case, fine=False)
+    second = _reference(case, fine=False)
     found = {}
     for reading in finite:
         limit, other = _read(reading, best), _read(reading, second)

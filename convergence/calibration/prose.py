@@ -40,12 +40,14 @@ every family, kinds of quantity and numbers of levels come in equal parts, as fa
 
 Limits are exact where there is a closed form. Otherwise they are read from a reference: for drawn parts a
 mesh refined geometrically towards corners, of degree 5 to 8; for mapped ones a quadratic mesh much finer
-than the ladder's and graded to the corners. A coarser reference bounds its error. A sub-ladder is judged
-only if the error of its finest value is {better:g} times that bound or more: of {with_limit:,} ladders
-with a limit, {too_good:,} have a finest value too good to be judged so, and only coarser runs of them
-count. Runs that hardly move (1e-7 of the value) are left out too. {never:,} ladders have no run in the
-measured sample, for these reasons or because a family's share was full. "Judged" and "singular" count
-sub-ladders with a limit and without one.
+than the ladder's and graded to the corners. A coarser reference bounds its error. Of drawn parts a ladder
+is left out whose values all are nothing (below 1e-4) beside the mean displacement, or the mean stress, of
+the part: what statics or symmetry makes zero is read as round-off. A sub-ladder is judged only if the
+error of its finest value is {better:g} times that bound or more: of {with_limit:,} ladders with a limit,
+{too_good:,} have a finest value too good to be judged so, and only coarser runs of them count. Runs that
+hardly move (1e-7 of the value) are left out too. {never:,} ladders have no run in the measured sample, for
+these reasons or because a family's share was full. "Judged" and "singular" count sub-ladders with a
+limit and without one.
 """
 
 COVERAGE = """## Coverage, whole families left out

@@ -8,7 +8,7 @@ import numpy as np
 import pytest
 
 from convergence import rooms
-from convergence.calibration.bank import BANK, read_bank, write_bank
+from convergence.calibration.bank import BANK, UNSEEN, read_bank, write_bank
 from convergence.calibration.known_ladder import KnownLadder
 from convergence.calibration.making import mapped_cases
 from convergence.calibration.mapped_ladders import mapped_ladders
@@ -51,6 +51,17 @@ def test_every_ladder_of_the_bank_is_sound(packaged) -> None:
         assert np.isfinite(one.f).all(), one
         assert np.isfinite(one.limit) != one.singular, one
         assert one.singular or one.bound >= 0.0, one
+
+
+def test_no_ladder_is_of_round_off(packaged) -> None:
+    """The maker's bar is 1e-4 of a mean over the part; beside the largest value, a peak, 1e-6 is ample."""
+    for ladders in (packaged, read_bank(UNSEEN)):
+        largest: dict[tuple[str, str, str], float] = {}
+        for one in ladders:
+            name = one.family, one.case, one.kind
+            largest[name] = max(largest.get(name, 0.0), float(np.abs(one.f).max()))
+        for one in ladders:
+            assert np.abs(one.f).max() > 1e-6 * largest[one.family, one.case, one.kind], one
 
 
 def test_most_limits_are_known_well_enough_to_judge_by(packaged) -> None:
