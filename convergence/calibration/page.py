@@ -177,15 +177,19 @@ def _companion(found: Calibrated) -> str:
     together = companion_outcomes(pairs)
     rows = []
     for source in sorted({one.sub.of.source for one in together}):
-        for levels in sorted({min(one.sub.levels, MOST_LEVELS) for one in together}):
-            own = [one for one in together if one.sub.of.source == source]
-            own = [one for one in own if min(one.sub.levels, MOST_LEVELS) == levels]
-            if own:
-                rows.append([source, LEVELS[levels], *_stated([ours_of(one) for one in own])])
+        rows += _by_levels(source, [one for one in together if one.sub.of.source == source])
     rows.append(["all", "3 levels and more", *_stated([ours_of(one) for one in together])])
     meet = f"{len(together):,} of {len(pairs):,} pairs meet.\n"
     head = ("meshes", "levels", "pairs", "covers", "U/e best", "U/e finest")
     return "\n".join([prose.COMPANION, meet, _table(head, rows)])
+
+
+def _by_levels(name: str, outcomes: Sequence[Outcome]) -> list[list[str]]:
+    """Return a row for each number of levels."""
+    found: dict[int, list[Answer]] = {}
+    for one in outcomes:
+        found.setdefault(min(one.sub.levels, MOST_LEVELS), []).append(ours_of(one))
+    return [[name, LEVELS[levels], *_stated(own)] for levels, own in sorted(found.items())]
 
 
 def _stated(answers: Sequence[Answer]) -> list[str]:
@@ -206,11 +210,7 @@ def _unseen(found: Calibrated) -> str:
 
 def _aside(found: Calibrated) -> str:
     """Return coverage and widths on the parts that the table is not made for."""
-    rows = []
-    for known, judged_aside in found.aside.items():
-        for levels in sorted({min(one.sub.levels, MOST_LEVELS) for one in judged_aside}):
-            own = [one for one in judged_aside if min(one.sub.levels, MOST_LEVELS) == levels]
-            rows.append([known, LEVELS[levels], *_stated([ours_of(one) for one in own])])
+    rows = [row for known, of in found.aside.items() for row in _by_levels(known, of)]
     families = sorted({one.sub.of.family.replace("_", " ") for one in found.aside["nothing"]})
     exponents = [one.sub.of.exponent for one in found.aside["nothing"] if one.sub.of.exponent is not None]
     text = prose.aside(families, min(exponents), max(exponents)) if exponents else ""
