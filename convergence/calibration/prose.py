@@ -24,8 +24,9 @@ width. The unit is multiplied by exp(β·φ): φ are facts such as the spread of
 and the scatter; β is fitted by quantile regression to the true errors of the bank, in which families count
 the same, and kinds of quantity. A last (conformal) factor, one for three levels and more and one for two,
 covers at least {asked} of every source of meshes with every number of levels, of every kind of quantity and
-every dimension with ladders enough. Shift and scale of the values change nothing; sizes count by their
-ratios.
+every dimension with ladders enough: a point more than is claimed, as leaving out knows only the families
+that were thought of, and new ones were covered less (see the remarks). Shift and scale of the values change
+nothing; sizes count by their ratios.
 
 Measured is by leaving out: a sub-ladder is judged with weights, β and factor that were fitted without its
 family.
@@ -78,8 +79,9 @@ A rule gives no half-width where its conditions do not hold. All sources togethe
 
 UNSEEN = """## Families that no table is made of
 
-Judged with the finished table: {families}. No weight, factor or threshold is chosen by what comes out here;
-a family that is to teach the table joins the bank, and another takes its place. Few families stand in a
+Judged with the finished table: {families}. Nothing is chosen by what comes out here, but the share that the
+last factor covers (see the remarks); a family that is to teach the table joins the bank, and another takes
+its place. Few families stand in a
 group, so that one of them moves it: the intervals in brackets are of sub-ladders alone. Drawn parts only,
 by the same mesher. Bold falls short.
 """
@@ -145,6 +147,12 @@ REMARKS = """## What these numbers are not
   One factor for three levels and more, in place of one for each number of levels, and 900 sub-ladders of a
   family, in place of 300, are from such a second look, and so is the family of cracked arms: before
   it, stress intensities were of one family only.
+- The last factor covers 96 %, not 95, since new families were seen. Two sets were drawn after the table and
+  then held against it, kind and degree known: of the first 92.1 % were covered (plane and ring parts; it has
+  joined the bank), of the second, the one above, 92.7, 92.4 and 96.1 % of the remeshed ladders of three,
+  four, five and more levels, while leaving families out said 95 % and more of every group. Most of what was
+  missed are slow ladders of parts with a singular corner: resultants over a boundary that ends in one, energies and
+  displacements of quadratic cells whose slow part is not seen yet.
 - The nested ladders are mostly similar meshes of mapped parts, which are the regular ones: look at the rows
   of drawn parts too.
 - Sub-ladders of a ladder share levels, and quantities of a part share meshes. The binomial intervals take

@@ -14,7 +14,7 @@ from convergence.calibration.sub_ladders import SubLadder, family_weights
 from convergence.coverage import Knowledge
 from convergence.histories.width import UNIT, half_width, levels_key
 
-ASKED = 0.95
+ASKED = 0.96  # a point more than is claimed: leaving out knows only the families that were thought of
 REGRESSED = 0.955
 STEPS = 80
 NEAR = 1e-3
