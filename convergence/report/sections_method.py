@@ -49,11 +49,11 @@ def _belief(bank: Bank) -> str:
 def _stretch(bank: Bank) -> str:
     return (
         "The half-width is that of the central 70 % of the belief, times a stretch fitted to the true errors"
-        " of the bank so that 95 % and more of its intervals hold the limit on meshes of every source. The stretch"
-        " depends on facts of the ladder that no change of units alters, such as its scatter and how fast its"
-        " changes shrink. Coverage is measured on parts that were not used: each family in turn is left out,"
-        " everything is learned from the others, and the intervals of its ladders are compared with their"
-        " known limits."
+        " of the bank so that 95 % and more of its intervals hold the limit on meshes of every source. The"
+        " stretch depends on facts of the ladder that no change of units alters, such as its scatter and how"
+        " fast its changes shrink. Coverage is measured on parts that were not used: each family in turn is"
+        " left out, everything is learned from the others, and the intervals of its ladders are compared with"
+        " their known limits."
     )
 
 
