@@ -35,7 +35,7 @@ def test_the_steps_have_the_numbers(table, capsys) -> None:
     assert "Accepted: 5 % of the value (assumed, none was given)" in said
     assert "From 112.8 MPa on the finest mesh to the far end of the interval: " in said
     assert "MPa, more than the accepted 5.64 MPa." in said, "5 % of 112.8"
-    assert said.rstrip().endswith("Verdict: refine; next: refine in steps.")
+    assert said.rstrip().endswith("Verdict: refine; next: h = 0.254 mm.")
 
 
 def test_only_what_is_asked_for(table, capsys) -> None:
