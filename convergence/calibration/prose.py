@@ -80,11 +80,11 @@ A rule gives no half-width where its conditions do not hold. All sources togethe
 
 UNSEEN = """## Families that no table is made of
 
-Judged with the finished table: {families}. Nothing is chosen by what comes out here, but the share that the
-last factor covers (see the remarks); a family that is to teach the table joins the bank, and another takes
-its place. Few families stand in a
-group, so that one of them moves it: the intervals in brackets are of sub-ladders alone. Drawn parts only,
-by the same mesher. Bold falls short.
+Judged with the finished table: {families}.
+Nothing is chosen by what comes out here, but the share that the last factor covers (see the remarks); a
+family that is to teach the table joins the bank, and another takes its place. Few families stand in a group,
+so that one of them moves it: the intervals in brackets are of sub-ladders alone. Drawn parts only, by the
+same mesher. Bold falls short.
 """
 
 COMPANION = """## A companion ladder
@@ -156,6 +156,8 @@ REMARKS = """## What these numbers are not
   one, energies and displacements of quadratic cells whose slow part is not seen yet. The other families
   above were drawn after that choice, and nothing was chosen by them:
   {after}.
+  The price is width: with 95 %, median U/e of remeshed ladders of three, four, five and more levels was 4.7,
+  4.2 and 3.4 from bare tables, 3.2, 2.7 and 2.3 with kind and degree known, and fewer groups fell short.
 - The nested ladders are mostly similar meshes of mapped parts, which are the regular ones: look at the rows
   of drawn parts too.
 - Sub-ladders of a ladder share levels, and quantities of a part share meshes. The binomial intervals take
