@@ -68,6 +68,15 @@ def held_corner_readings(corner: Place, radius: float, component: str) -> tuple[
     )
 
 
+def sharp_readings(label: str, place: Place, radius: float) -> tuple[Reading, ...]:
+    """Read what has no limit at a sharp inner corner or edge: the stress there, its peaks within a radius."""
+    ways: tuple[Way, ...] = ("nodal", "direct", "gauss")
+    return (
+        stress(label, place, "yy", singular=True),
+        *(peak(way, "von_mises", way, place, radius, singular=True) for way in ways),
+    )
+
+
 def crack_readings(
     tip: tuple[float, float],
     shares: tuple[float, float],

@@ -51,6 +51,20 @@ class DrawnSolution:
         """Return the means of the stress at the nodes, linear in between, 9 entries."""
         return nodal_means(self.mesh, self.stress, 9)
 
+    @cached_property
+    def rms_displacement(self) -> float:
+        """Return the root mean square of the displacement over the part, in mm."""
+        return self._rms(self.displacement)
+
+    @cached_property
+    def rms_stress(self) -> float:
+        """Return the root mean square of the stress over the part, in MPa."""
+        return self._rms(self.stress)
+
+    def _rms(self, field: Any) -> float:
+        squares = ng.Integrate(self.weight * ng.InnerProduct(field, field) * ng.dx, self.mesh)
+        return float((squares / ng.Integrate(self.weight * ng.dx, self.mesh)) ** 0.5)
+
     @property
     def weight(self) -> Any:
         """Return the volume that a unit of area stands for."""

@@ -4,8 +4,6 @@ A reaction that statics makes zero, or a displacement that symmetry holds, is re
 the rules of integration differ by. Such values have no order and no interval to learn from.
 """
 
-from typing import Any
-
 import ngsolve as ng
 import numpy as np
 
@@ -28,19 +26,13 @@ def natural_scale(solution: DrawnSolution, reading: Reading) -> float:
     """
     match reading.kind:
         case "displacement":
-            return _mean(solution, solution.displacement)
+            return solution.rms_displacement
         case "rotation":
             line = np.subtract(reading.arguments["end"], reading.arguments["start"])
-            return _mean(solution, solution.displacement) / float(np.linalg.norm(line))
+            return solution.rms_displacement / float(np.linalg.norm(line))
         case "point_stress" | "peak_stress":
-            return _mean(solution, solution.stress)
+            return solution.rms_stress
         case "resultant":
             boundary = solution.weight * ng.ds(reading.arguments["boundary"])
-            return _mean(solution, solution.stress) * float(ng.Integrate(boundary, solution.mesh))
+            return solution.rms_stress * float(ng.Integrate(boundary, solution.mesh))
     return 0.0
-
-
-def _mean(solution: DrawnSolution, field: Any) -> float:
-    weight, mesh = solution.weight, solution.mesh
-    squares = ng.Integrate(weight * ng.InnerProduct(field, field) * ng.dx, mesh)
-    return float((squares / ng.Integrate(weight * ng.dx, mesh)) ** 0.5)

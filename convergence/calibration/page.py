@@ -47,7 +47,7 @@ def write_page(folder: Path, found: Calibrated, ladders: Sequence[KnownLadder]) 
         _growth(found),
         _promises(found.table.get("next_mesh", {})),
         _short(of),
-        prose.remarks(),
+        prose.REMARKS,
     ]
     (folder / "calibration.md").write_text("\n".join(parts), encoding="utf-8")
     draw_plots(folder, of, all_of)

@@ -10,9 +10,9 @@ from convergence.calibration.drawn_readings import (
     displacement,
     linearised,
     mean_displacement,
-    peak,
     reaction,
     section_force,
+    sharp_readings,
     stress,
 )
 from convergence.calibration.exponents import weakest
@@ -66,9 +66,6 @@ def _cleat(
             stress("sole", (0.5 * (thick + wide), 0.0, 0.5 * deep), "xx", "direct"),
             stress("inside", (0.5 * thick, 0.6 * high, 0.4 * deep), "von_mises"),
             *linearised("leg", (0.0, 0.7 * high, 0.0), (thick, 0.7 * high, 0.0), "yy"),
-            stress("edge", tip, "yy", singular=True),
-            peak("nodal", "von_mises", near=tip, radius=6.0, singular=True),
-            peak("direct", "von_mises", "direct", tip, 6.0, singular=True),
-            peak("gauss", "von_mises", "gauss", tip, 6.0, singular=True),
+            *sharp_readings("edge", tip, 6.0),
         ),
     )

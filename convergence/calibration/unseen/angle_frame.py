@@ -7,9 +7,9 @@ from convergence.calibration.drawn_readings import (
     displacement,
     linearised,
     mean_displacement,
-    peak,
     reaction,
     section_force,
+    sharp_readings,
     stress,
 )
 from convergence.calibration.exponents import weakest
@@ -73,9 +73,6 @@ def _frame(
             stress("top", (0.6 * reach, high), "xx", "direct"),
             stress("inside", (0.5 * (post + reach), high - 0.3 * beam), "von_mises"),
             *linearised("post", (0.0, 0.4 * high), (post, 0.4 * high), "yy"),
-            stress("corner", inner, "yy", singular=True),
-            peak("nodal", "von_mises", near=inner, radius=8.0, singular=True),
-            peak("direct", "von_mises", "direct", inner, 8.0, singular=True),
-            peak("gauss", "von_mises", "gauss", inner, 8.0, singular=True),
+            *sharp_readings("corner", inner, 8.0),
         ),
     )

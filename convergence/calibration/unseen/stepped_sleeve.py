@@ -9,9 +9,9 @@ from convergence.calibration.drawn_readings import (
     displacement,
     linearised,
     mean_displacement,
-    peak,
     reaction,
     section_force,
+    sharp_readings,
     stress,
 )
 from convergence.calibration.exponents import weakest
@@ -71,9 +71,6 @@ def _sleeve(
             stress("bore axial", (bore, above), "yy", "direct"),
             stress("inside", (0.5 * (tube + collar), 0.4 * step), "von_mises"),
             *linearised("tube", (bore, above), (tube, above), "yy"),
-            stress("corner", corner, "yy", singular=True),
-            peak("nodal", "von_mises", near=corner, radius=5.0, singular=True),
-            peak("direct", "von_mises", "direct", corner, 5.0, singular=True),
-            peak("gauss", "von_mises", "gauss", corner, 5.0, singular=True),
+            *sharp_readings("corner", corner, 5.0),
         ),
     )
